@@ -1,0 +1,102 @@
+import { type Fit, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
+import { asGiven, significant, withError } from "./rounding.js";
+import { fitStudyFile } from "./run-study.js";
+import { textTable } from "./text-table.js";
+
+/** `couplet fit`: every minimum of a study's fit, for people or as JSON. */
+export function runFit(path: string, options: { json?: true }): void {
+  const fit = fitStudyFile(path);
+  process.stdout.write(options.json ? `${JSON.stringify(fitJson(fit), null, 2)}\n` : describeFit(fit));
+}
+
+/** A fit as plain data for programs; minima best first. */
+export function fitJson(fit: Fit) {
+  return {
+    title: fit.model.study.title,
+    minima: fit.minima.map((minimum) => ({
+      chi2: minimum.chi2,
+      ndf: minimum.ndf,
+      probability: minimum.probability ?? null,
+      parameters: minimum.parameters,
+      covariance: minimum.covariance,
+      pulls: minimum.pulls.map(({ observable, fitted, pull }) => ({
+        quantity: observable.label,
+        measured: observable.measured.value,
+        plus: observable.measured.plus,
+        minus: observable.measured.minus,
+        unit: observable.measured.unit,
+        fitted,
+        pull,
+        source: observable.source,
+      })),
+      verdicts: minimum.verdicts,
+    })),
+    notes: fit.model.notes,
+  };
+}
+
+/** A fit in words and tables. */
+export function describeFit(fit: Fit): string {
+  const [best] = fit.minima;
+  const parts = [`${fit.model.study.title}\n`, describeMinimum(best!, "Best minimum"), describePulls(best!)];
+  for (const [k, minimum] of fit.minima.slice(1).entries()) {
+    const distance = minimum.chi2 - best!.chi2;
+    const title = `Minimum ${k + 2}, chi2 higher by ${distance.toFixed(2)}`;
+    parts.push(
+      distance < LISTED_DELTA_CHI2 ? describeMinimum(minimum, title) : `\n${title}: ${shortText(minimum)}\n`,
+    );
+  }
+  if (fit.minima.length === 1) parts.push("\nThere is no other minimum.\n");
+  parts.push(...fit.model.notes.map((note) => `\nNote: ${note}\n`));
+  return parts.join("");
+}
+
+function shortText({ parameters }: StudyMinimum): string {
+  return parameters.map(({ name, value }) => `${name} ${significant(value, 4)}`).join(", ");
+}
+
+/** Chi-square, parameters and verdicts of one minimum. */
+export function describeMinimum(minimum: StudyMinimum, title: string): string {
+  const chance =
+    minimum.probability === undefined ? "" : `, probability ${minimum.probability.toPrecision(3)}`;
+  const head = `\n${title}: chi2 ${minimum.chi2.toFixed(2)} with ${minimum.ndf} degrees of freedom${chance}\n`;
+  const rows = minimum.parameters.map(({ name, value, error, unit }) => [
+    name,
+    withError(value, error),
+    unit === "1" ? "" : unit,
+  ]);
+  return head + textTable(rows, { indent: 2 }) + describeVerdicts(minimum);
+}
+
+function describeVerdicts({ verdicts, parameters }: StudyMinimum): string {
+  const lines: string[] = [];
+  if (!verdicts.converged)
+    lines.push(`did not converge (${verdicts.stoppedBy} after ${verdicts.iterations} iterations)`);
+  for (const k of verdicts.atBound) lines.push(`${parameters[k]!.name} is at its bound`);
+  for (const direction of verdicts.degenerateDirections) {
+    const terms = direction
+      .map((c, k) => ({ c, name: parameters[k]!.name }))
+      .filter(({ c }) => Math.abs(c) > 1e-3);
+    lines.push(`the data do not fix ${terms.map(({ c, name }) => `${c.toFixed(3)} ${name}`).join(" + ")}`);
+  }
+  if (!verdicts.covariancePositiveDefinite) lines.push("the covariance matrix is not positive definite");
+  return lines.map((line) => `  WARNING: ${line}\n`).join("");
+}
+
+/** Measurements against the fit, the largest pulls marked. */
+export function describePulls({ pulls }: StudyMinimum): string {
+  const rows = pulls.map(({ observable, fitted, pull }) => {
+    const { value, plus, minus, unit } = observable.measured;
+    const mark = Math.abs(pull) >= 2 ? "<- contradicts the others" : "";
+    return [
+      observable.label,
+      asGiven(value, plus, minus),
+      unit === "1" ? "" : unit,
+      fitted.toPrecision(4),
+      pull.toFixed(2),
+      mark,
+    ];
+  });
+  const head = ["quantity", "measured", "", "fitted", "pull", ""];
+  return `\n${textTable([head, ...rows], { indent: 2, right: [1, 3, 4] })}`;
+}

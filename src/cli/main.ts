@@ -1,0 +1,98 @@
+#!/usr/bin/env node
+import { Command, CommanderError } from "commander";
+import { CoupletError } from "../errors.js";
+import { packageVersion } from "../version.js";
+
+// Each command's module is loaded when it runs, so that `couplet --help` starts fast.
+function program(): Command {
+  const root = new Command("couplet")
+    .description(
+      "Complete, signed, charge-by-charge decay tables from a few measured decays, by SU(3) flavour symmetry",
+    )
+    .version(packageVersion())
+    .exitOverride()
+    .showHelpAfterError("(`couplet --help` lists the commands)")
+    .addHelpText(
+      "after",
+      `
+An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 3 a damaged or newer table file;
+4 a request too large; 70 a bug of ours; 130 stopped by the user.`,
+    );
+  root
+    .command("demo")
+    .description("write an invented study, run it to a decay table, say what to open")
+    .option("-o, --out <folder>", "where to write", "couplet-demo")
+    .action(async (options: { out: string }) => (await import("./demo.js")).runDemo(options));
+  root
+    .command("product")
+    .description("decompose a product of any number of irreps")
+    .argument("<irreps...>", "two or more irreps, coupled from left to right")
+    .option("--json", "canonical JSON of couplet.v1.Product")
+    .action(async (irreps: string[], options: { json?: true }) =>
+      (await import("./product.js")).runProduct(irreps, options),
+    );
+  root
+    .command("factors")
+    .description("isoscalar factors of a product of two irreps")
+    .argument("<left>", "first factor; the baryon in decays")
+    .argument("<right>", "second factor; the meson in decays")
+    .option("--into <irrep>", "only this irrep of the product")
+    .option("--states", "full coefficients between states instead")
+    .option("--json", "canonical JSON of couplet.v1.FactorTable")
+    .option("--out <file>", "write a Protocol Buffers file instead of printing")
+    .action(
+      async (
+        left: string,
+        right: string,
+        options: { into?: string; states?: true; json?: true; out?: string },
+      ) => (await import("./factors.js")).runFactors(left, right, options),
+    );
+  root
+    .command("fit")
+    .description("fit a study's reduced couplings: F and D, every minimum, pulls")
+    .argument("<study>", "a study file (YAML)")
+    .option("--json", "minima, pulls and verdicts as JSON")
+    .action(async (study: string, options: { json?: true }) =>
+      (await import("./fit.js")).runFit(study, options),
+    );
+  root
+    .command("tables")
+    .description("fit a study, complete it, write its decay table")
+    .argument("<study>", "a study file (YAML)")
+    .requiredOption("-o, --out <folder>", "where to write")
+    .option("--json", "print what was written as JSON")
+    .action(async (study: string, options: { out: string; json?: true }) =>
+      (await import("./tables.js")).runTables(study, options),
+    );
+  root
+    .command("show")
+    .description("what a table file holds, for people")
+    .argument("<file>", "a .pb file written by Couplet")
+    .option("--parent <name>", "only this hadron, in detail")
+    .option("--json", "canonical JSON of the message in the file")
+    .action(async (file: string, options: { parent?: string; json?: true }) =>
+      (await import("./show.js")).runShow(file, options),
+    );
+  return root;
+}
+
+function report(error: unknown): number {
+  if (error instanceof CommanderError) return error.exitCode === 0 ? 0 : 2;
+  if (error instanceof CoupletError) {
+    process.stderr.write(`couplet: ${error.message}\n`);
+    return error.exitCode;
+  }
+  process.stderr.write(`couplet: this is a bug in Couplet; please report it with the command you ran.\n`);
+  process.stderr.write(`${error instanceof Error ? (error.stack ?? error.message) : String(error)}\n`);
+  return 70;
+}
+
+process.on("SIGINT", () => process.exit(130));
+// A reader such as `head` may close the pipe early; that is no error.
+process.stdout.on("error", (error: NodeJS.ErrnoException) => process.exit(error.code === "EPIPE" ? 0 : 70));
+
+program()
+  .parseAsync()
+  .catch((error: unknown) => {
+    process.exitCode = report(error);
+  });

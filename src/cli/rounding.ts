@@ -1,0 +1,39 @@
+/**
+ * A value and its error rounded for people: with the three highest digits of the error between 100 and 354 it keeps two
+ * digits, between 355 and 949 one, above that it is rounded up to 1000 and keeps two; the value follows.
+ *
+ * Source: Particle Data Group, Review of Particle Physics, introduction, "Rounding". Provenance: memory.
+ * @returns e.g. `-0.240 +- 0.033`; without an error (0 or not finite) four significant digits
+ */
+export function withError(value: number, error: number): string {
+  if (!(error > 0) || !Number.isFinite(error)) return significant(value, 4);
+  const decimals = errorDecimals(error);
+  return `${fixed(value, decimals)} +- ${fixed(error, decimals)}`;
+}
+
+/** A measurement with every digit its author gave, `20.4 +- 3.6` or `58 +4 -3`. */
+export function asGiven(value: number, plus: number, minus: number): string {
+  if (plus === 0 && minus === 0) return String(value);
+  return plus === minus ? `${value} +- ${plus}` : `${value} +${plus} -${minus}`;
+}
+
+/** A number with a given count of significant digits, never in exponent form between 1e-4 and 1e7. */
+export function significant(value: number, digits: number): string {
+  if (value === 0) return "0";
+  const size = Math.abs(value);
+  if (size < 1e-4 || size >= 1e7) return value.toExponential(digits - 1);
+  return fixed(value, Math.max(0, digits - 1 - Math.floor(Math.log10(size))));
+}
+
+/** Decimal places the error keeps; negative where it is rounded to tens or more. */
+function errorDecimals(error: number): number {
+  const exponent = Math.floor(Math.log10(error));
+  const leading = Math.round(error / 10 ** (exponent - 2));
+  return leading <= 354 ? 1 - exponent : -exponent;
+}
+
+function fixed(value: number, decimals: number): string {
+  if (decimals >= 0) return value.toFixed(Math.min(decimals, 100));
+  const unit = 10 ** -decimals;
+  return String(Math.round(value / unit) * unit);
+}

@@ -1,0 +1,101 @@
+import { InputError } from "../errors.js";
+import { couplet } from "../gen/couplet.js";
+import { nearestNames } from "../hadrons/nearest-names.js";
+import { canonicalJson } from "../tables/canonical-json.js";
+import { decodeDecays } from "../tables/decode-decays.js";
+import { checkSeal, digestOf } from "../tables/sealed-bytes.js";
+import { readInput } from "./read-input.js";
+import { significant, withError } from "./rounding.js";
+import { textTable } from "./text-table.js";
+
+import v1 = couplet.v1;
+
+/** `couplet show`: what a table file holds. */
+export function runShow(path: string, options: { parent?: string; json?: true }): void {
+  const bytes = readInput(path);
+  const kind = checkSeal(bytes, path);
+  if (options.json) {
+    const message =
+      kind === "couplet.v1.DecayTables" ? decodeDecays(bytes, path) : v1.FactorTable.decode(bytes);
+    process.stdout.write(`${JSON.stringify(canonicalJson(kind, message), null, 2)}\n`);
+  } else if (kind === "couplet.v1.DecayTables") {
+    const tables = decodeDecays(bytes, path);
+    const parents =
+      options.parent === undefined ? tables.parents : [parentNamed(tables, options.parent, path)];
+    process.stdout.write(
+      describeHeader(tables, path, digestOf(bytes)) + parents.map(describeParent).join(""),
+    );
+  } else process.stdout.write(describeFactorFile(v1.FactorTable.decode(bytes), path, digestOf(bytes)));
+}
+
+function parentNamed({ parents }: v1.DecayTables, name: string, path: string): v1.Parent {
+  const found = parents.find(({ hadron }) => hadron?.name === name);
+  if (found !== undefined) return found;
+  const names = parents.map(({ hadron }) => hadron?.name ?? "");
+  throw new InputError(
+    `${path}: expected a parent of this table, got ${JSON.stringify(name)}. Nearest: ${nearestNames(name, names).join(", ")}.`,
+  );
+}
+
+function describeHeader(
+  { header, fit, parents, externals }: v1.DecayTables,
+  path: string,
+  digest: string,
+): string {
+  const best = fit?.minima?.[fit.used ?? 0];
+  const lines = [
+    `${path}: ${header.title}`,
+    `decay tables by ${header.producer}, schema 1.${header.schemaMinor}, sha256 ${digest.slice(0, 16)}..., masses and widths in ${header.unit}`,
+    `convention ${header.convention}; ${parents.length} parents; daughters to be known elsewhere: ${externals.map(({ name }) => name).join(", ")}`,
+    `fit: minimum ${(fit?.used ?? 0) + 1} of ${fit?.minima?.length ?? 0} (mirrors: ${fit?.mirrors}), chi2 ${best?.chi2?.toFixed(2)} with ${best?.ndf} degrees of freedom`,
+    ...(best?.parameters ?? []).map(
+      ({ name, value, error, unit }) =>
+        `  ${name}  ${withError(value ?? 0, error ?? 0)}${unit === "1" ? "" : ` ${unit}`}`,
+    ),
+    ...header.cautions.map((caution) => `caution: ${caution}`),
+    ...header.notes.map((note) => `note: ${note}`),
+  ];
+  return `${lines.join("\n")}\n`;
+}
+
+const ORIGIN_WORDS = ["?", "measured", "predicted", "remainder"];
+const FLAG_WORDS = ["?", "isospin split", "undecayable", "near threshold", "small amplitude"];
+
+/** One parent's table in words: fractions in percent with errors from data and, behind `br.`, from breaking. */
+export function describeParent(parent: v1.Parent): string {
+  const { hadron } = parent;
+  const mc = hadron?.mcNumber == null ? "no Monte Carlo number" : `Monte Carlo number ${hadron.mcNumber}`;
+  const width = withError(parent.totalWidth ?? 0, parent.totalWidthError ?? 0);
+  const origin = parent.totalOrigin === v1.TotalOrigin.TOTAL_ORIGIN_SUM ? "sum of rows" : "measured";
+  const head = `\n${hadron?.name}  mass ${significant(hadron?.mass ?? 0, 6)} MeV, width ${width} MeV (${origin}), ${mc}\n`;
+  const rows = parent.rows.map((row) => {
+    const { fraction } = row;
+    const percent = (x: number | null | undefined) => 100 * (x ?? 0);
+    const statistical = (percent(fraction?.plus) + percent(fraction?.minus)) / 2;
+    const closed = row.kinematics === v1.Kinematics.KINEMATICS_CLOSED;
+    return [
+      row.id,
+      closed ? "closed" : withError(percent(fraction?.value), statistical),
+      closed || !fraction?.breaking ? "" : `br. ${significant(percent(fraction.breaking), 2)}`,
+      significant(row.width?.value ?? 0, 4),
+      String(row.partsPerBillion),
+      ORIGIN_WORDS[row.origin ?? 0]!,
+      (row.flags ?? []).map((flag) => FLAG_WORDS[flag]).join(", "),
+    ];
+  });
+  const titles = ["channel", "percent", "", "MeV", "parts per 10^9", "origin", ""];
+  return (
+    head +
+    textTable([titles, ...rows], { indent: 2, right: [1, 3, 4] }) +
+    (parent.warnings ?? []).map((w) => `  WARNING: ${w}\n`).join("")
+  );
+}
+
+function describeFactorFile(table: v1.FactorTable, path: string, digest: string): string {
+  const name = (irrep: v1.Irrep.$Properties | null | undefined) => `(${irrep?.p},${irrep?.q})`;
+  return (
+    `${path}: isoscalar factors of ${name(table.left)} x ${name(table.right)} by ${table.producer}\n` +
+    `convention ${table.convention}; copies by ${table.multiplicityRule}; sha256 ${digest.slice(0, 16)}...\n` +
+    `${table.factors.length} factors that are not zero, ${table.states.length} coefficients between states\n`
+  );
+}

@@ -1,0 +1,80 @@
+import type { Hadron } from "../hadrons/hadron.js";
+import type { Fit } from "../model/fit-model.js";
+import type { Parent } from "../model/model.js";
+
+/** A value whose errors are kept apart; all are standard deviations in the value's unit. */
+export interface Estimate {
+  readonly value: number;
+  readonly plus: number;
+  readonly minus: number;
+  /** From breaking of the symmetry; 0 for measured values. */
+  readonly breaking: number;
+}
+
+/** Where a row's number comes from. */
+export type Origin = "measured" | "predicted" | "remainder";
+
+/** What a user of a row must know. */
+export type Flag = "isospin-split" | "undecayable" | "near-threshold" | "small-amplitude";
+
+/** A measurement beside the fit's value of the same quantity. */
+export interface Comparison {
+  readonly quantity: string;
+  readonly value: number;
+  readonly plus: number;
+  readonly minus: number;
+  readonly unit: string;
+  /** Undefined where the measurement did not enter the fit. */
+  readonly fitted?: number;
+  readonly pull?: number;
+}
+
+/** One partial wave of a row; the squares of all amplitudes add up to the row's partial width. */
+export interface RowWave {
+  readonly L: number;
+  readonly twoS: number;
+  /** sqrt(MeV); real here, since couplings are. */
+  readonly re: number;
+  readonly im: number;
+  /** Index into the model's decays: width model and its options. */
+  readonly decay: number;
+  /** Of the fit, in the coupling's unit. */
+  readonly flavourAmplitude: number;
+}
+
+/** One decay channel of one parent. */
+export interface Row {
+  readonly id: string;
+  readonly daughters: readonly Hadron[];
+  readonly partsPerBillion: number;
+  readonly fraction: Estimate;
+  readonly widthMeV: Estimate;
+  readonly origin: Origin;
+  readonly flags: readonly Flag[];
+  readonly sources: readonly string[];
+  readonly measurement?: Comparison;
+  readonly open: boolean;
+  readonly thresholdMeV: number;
+  readonly momentumMeV: number;
+  readonly identicalFactor: number;
+  readonly waves: readonly RowWave[];
+}
+
+/** The decay table of one charge state. */
+export interface ParentTable {
+  readonly parent: Parent;
+  readonly totalWidthMeV: number;
+  readonly totalWidthErrorMeV: number;
+  readonly rows: readonly Row[];
+  readonly warnings: readonly string[];
+}
+
+/** Decay tables of all members and charge states of a study, for one minimum of its fit. */
+export interface Tables {
+  readonly fit: Fit;
+  /** Index of the minimum the rows use. */
+  readonly minimum: number;
+  readonly parents: readonly ParentTable[];
+  /** Daughters that are no parents of these tables. */
+  readonly externals: readonly Hadron[];
+}

@@ -1,0 +1,422 @@
+import { refuse, requireInteger, requirePositive } from "../require.js";
+import { curvatureAt, newtonStep } from "./curvature.js";
+import { type FitEstimate, fitEstimate } from "./fit-estimate.js";
+import { type Bound, type DifferenceScheme, numericalJacobian } from "./numerical-jacobian.js";
+import { type LinearModel, linearModel, trustRegionStep } from "./trust-region.js";
+
+/** A sum of squares to be minimised; residuals are (predicted - measured) / error where a covariance is wanted. */
+export interface LeastSquaresProblem {
+  residuals(parameters: readonly number[]): readonly number[];
+  /** Rows = residuals, columns = parameters; numerical derivatives stand in where it is absent. */
+  jacobian?(parameters: readonly number[]): readonly (readonly number[])[];
+  readonly bounds?: readonly Bound[] | undefined;
+}
+
+/** Choices for one fit; every default is stated. */
+export interface FitOptions {
+  /** Default 1000. */
+  readonly maximumIterations?: number;
+  /** Converged when |U^T r| <= this times |r|, U spanning the columns of the Jacobian. Default 1e-7. */
+  readonly offsetTolerance?: number;
+  /** Converged when the scaled Gauss-Newton step is at most this times the scaled parameters. Default 1e-10. */
+  readonly stepTolerance?: number;
+  /** Singular values of the column-normalised Jacobian below this fraction of the largest are degenerate. Default 1e-9. */
+  readonly rankTolerance?: number;
+  /** First trust radius in units of the scaled length of the start. Default 1. */
+  readonly initialRadius?: number;
+  /** Least sizes by which numerical steps are measured, > 0. Default |start| / 100, and 1 where the start is 0. */
+  readonly typicalSizes?: readonly number[];
+  /** The part of a step, 0 to 1, that may be taken from a point; for a search that must not leave a region. */
+  readonly allowedPart?: (parameters: readonly number[], step: readonly number[]) => number;
+  /** Ends with undamped steps on extrapolated derivatives, for the last digits. Default true. */
+  readonly refine?: boolean;
+}
+
+/** The test that ended a fit; the last two mean that it did not converge. */
+export type StoppingRule =
+  | "zero residuals"
+  | "relative offset"
+  | "relative step"
+  | "newton step"
+  | "scaled gradient"
+  | "iteration limit"
+  | "no descent";
+
+/** Separate answers about one fit. */
+export interface FitVerdicts {
+  readonly converged: boolean;
+  readonly stoppedBy: StoppingRule;
+  readonly iterations: number;
+  /** Calls of `residuals`, those for numerical derivatives included. */
+  readonly evaluations: number;
+  /** |U^T r| / |r| at the end; 0 at a stationary point. */
+  readonly relativeOffset: number;
+  /** Indices of the parameters held at a bound that the fit would like to cross. */
+  readonly atBound: readonly number[];
+  /** False if a free parameter, or a combination of them, is not determined. */
+  readonly covariancePositiveDefinite: boolean;
+  /** Unit vectors in the space of the parameters along which no residual changes to first order. */
+  readonly degenerateDirections: readonly (readonly number[])[];
+}
+
+/** What a fit found, as plain data. A fit that did not converge is a result too: see `verdicts`. */
+export interface FitResult {
+  readonly parameters: number[];
+  readonly residuals: number[];
+  /** Sum of the squared residuals. */
+  readonly chi2: number;
+  /**
+   * (J^T J)^-1, never rescaled by chi2/ndf: errors follow from the errors put into the residuals alone. Rows and
+   * columns of parameters held at a bound are 0; degenerate directions are left out.
+   */
+  readonly covariance: number[][];
+  readonly verdicts: FitVerdicts;
+}
+
+interface Point {
+  readonly parameters: number[];
+  readonly residuals: number[];
+  readonly chi2: number;
+}
+
+/** Chi-square cannot tell two points apart once a step promises less than this part of it. */
+const CHI2_RESOLUTION = 1e-15;
+const REFINEMENT_STEPS = 40;
+const NEWTON_STEPS = 10;
+/** When so many iterations together lower chi-square by less than 1e-4 of it, Newton steps are tried. */
+const STALL_ITERATIONS = 20;
+
+/** Sum of squares. */
+const squares = (values: readonly number[]) => values.reduce((sum, value) => sum + value * value, 0);
+
+/**
+ * Least-squares fit by the Levenberg-Marquardt method in its trust-region form, with bounds by projection.
+ *
+ * Scales follow the largest column norms of the Jacobian seen, so the path does not depend on the units of the
+ * parameters. Linear algebra is by singular values. Sources: J.J. More, Lecture Notes in Mathematics 630 (1978) 105
+ * (trust region, scales); D.M. Bates and D.G. Watts, Technometrics 23 (1981) 179 (relative offset as stopping rule).
+ * @param start - one finite number per parameter; moved onto the bounds where it lies outside
+ * @throws InputError if the residuals or the Jacobian are not finite at the start (names the entry), if their sizes
+ * disagree, or if a bound or an option makes no sense
+ */
+export function levenbergMarquardt(
+  problem: LeastSquaresProblem,
+  start: readonly number[],
+  options: FitOptions = {},
+): FitResult {
+  checkArguments(problem, start, options);
+  const search = new Search(problem, start, options);
+  search.descend();
+  if (options.refine ?? true) search.refine();
+  search.finish();
+  return search.result();
+}
+
+/** One fit under way: the point reached, its Jacobian, the scales and the count of calls. */
+class Search {
+  private point: Point;
+  private jacobian: number[][];
+  private readonly scales: number[];
+  private readonly typicalSizes: readonly number[];
+  private iterations = 0;
+  private evaluations = 0;
+  private ending: "iteration limit" | "no descent" | undefined;
+  /** Length of the last Newton step over that of the parameters, both scaled. */
+  private newtonLength = Number.POSITIVE_INFINITY;
+
+  constructor(
+    private readonly problem: LeastSquaresProblem,
+    start: readonly number[],
+    private readonly options: FitOptions,
+  ) {
+    this.typicalSizes = options.typicalSizes ?? start.map((value) => Math.abs(value) / 100 || 1);
+    const point = this.pointAt(this.insideBounds(start));
+    const bad = point.residuals.findIndex((value) => !Number.isFinite(value));
+    if (bad >= 0) {
+      refuse(`levenbergMarquardt: residual ${bad} at the start`, "a finite number", point.residuals[bad]);
+    }
+    this.point = point;
+    this.jacobian = this.jacobianAt(point, "two-point");
+    checkJacobian(this.jacobian, point, this.problem.jacobian !== undefined);
+    this.scales = columnNorms(this.jacobian, start.length).map((norm) => (norm > 0 ? norm : 1));
+  }
+
+  /** Trust-region iterations until chi-square can tell no more. */
+  descend(): void {
+    const limit = this.options.maximumIterations ?? 1000;
+    let radius = (this.options.initialRadius ?? 1) * (this.scaledLength(this.point.parameters) || 1);
+    const history: number[] = [];
+    while (this.iterations < limit) {
+      history.push(this.point.chi2);
+      if (history.length > STALL_ITERATIONS && history[0]! - this.point.chi2 <= 1e-4 * this.point.chi2) {
+        if (this.newtonSteps()) return;
+        history.length = 0;
+      } else if (history.length > STALL_ITERATIONS) history.shift();
+      const model = this.model();
+      if (offset(model, this.point) ** 2 <= CHI2_RESOLUTION || this.point.chi2 === 0) return;
+      if (this.gaussNewtonLength(model) <= 1e-13 * this.scaledLength(this.point.parameters)) return;
+      this.iterations++;
+      const next = this.descentFrom(model, radius);
+      if (next === undefined) {
+        break;
+      }
+      radius = next;
+    }
+    this.ending = this.iterations < limit ? "no descent" : "iteration limit";
+  }
+
+  /** Shrinks the trust region until a step lowers chi-square, takes it, and returns the radius for the next. */
+  private descentFrom(model: LinearModel, startRadius: number): number | undefined {
+    let radius = startRadius;
+    const smallest = 1e-16 * this.scaledLength(this.point.parameters);
+    while (radius > smallest && radius > Number.MIN_VALUE) {
+      const whole = trustRegionStep(model, radius, this.scales.length);
+      const part = this.options.allowedPart?.(this.point.parameters, whole.step) ?? 1;
+      const step = whole.step.map((value) => part * value);
+      const length = part * whole.length;
+      const { damping } = whole;
+      const trial = this.pointAt(
+        this.insideBounds(this.point.parameters.map((value, j) => value + step[j]!)),
+      );
+      const moved = trial.parameters.map((value, j) => value - this.point.parameters[j]!);
+      const predicted = this.point.chi2 - squares(this.linearised(moved));
+      const ratio = (this.point.chi2 - trial.chi2) / predicted;
+      if (predicted > 0 && ratio > 1e-4 && trial.chi2 < this.point.chi2 && this.moveTo(trial, "two-point")) {
+        if (ratio < 0.25) return length / 2;
+        return ratio > 0.75 || damping === 0 ? Math.max(radius, 2 * length) : radius;
+      }
+      // Far outside the region where the linear model holds, or where nothing is finite: shrink faster.
+      radius = Math.min(radius, length) * (Number.isFinite(ratio) && ratio > -10 ? 0.4 : 0.1);
+    }
+    return undefined;
+  }
+
+  /**
+   * Undamped steps as long as they lower the relative offset, which stays exact where chi-square is rounded.
+   *
+   * A few steps on two-point derivatives come first where derivatives are numerical: the extrapolated ones are dear.
+   */
+  refine(): void {
+    if (this.ending !== "iteration limit" && !this.problem.jacobian) this.undampedSteps("two-point");
+    const jacobian = this.jacobianAt(this.point, "extrapolated");
+    if (jacobian.every((row) => row.every(Number.isFinite))) this.jacobian = jacobian;
+    if (this.ending === "iteration limit") return;
+    this.undampedSteps("extrapolated");
+  }
+
+  /** Newton steps if nothing else converged. */
+  finish(): void {
+    if (this.result().verdicts.stoppedBy === "no descent") this.newtonSteps();
+  }
+
+  /**
+   * Steps by the true Hessian; says whether they converged.
+   *
+   * Where an amplitude vanishes, or residuals are large and curved, J^T J misleads and only these arrive.
+   */
+  private newtonSteps(): boolean {
+    if (this.options.allowedPart) return false;
+    for (let round = 0; round < NEWTON_STEPS; round++) {
+      const step = newtonStep(
+        curvatureAt(this.problem, this.point.parameters, this.heldAtBound()),
+        this.scales.length,
+      );
+      if (step === undefined) return false;
+      this.newtonLength = this.scaledLength(step) / this.scaledLength(this.point.parameters);
+      if (this.newtonLength <= (this.options.stepTolerance ?? 1e-10)) return true;
+      const trial = this.pointAt(
+        this.insideBounds(this.point.parameters.map((value, j) => value + step[j]!)),
+      );
+      if (!(trial.chi2 <= this.point.chi2 * (1 + 1e-9)) || !this.moveTo(trial, "two-point")) return false;
+    }
+    return false;
+  }
+
+  private undampedSteps(scheme: DifferenceScheme): void {
+    for (let round = 0; round < REFINEMENT_STEPS; round++) {
+      const model = this.model();
+      const before = { point: this.point, jacobian: this.jacobian, offset: offset(model, this.point) };
+      if (before.offset === 0) return;
+      const { step } = trustRegionStep(model, Number.POSITIVE_INFINITY, this.scales.length);
+      const trial = this.pointAt(
+        this.insideBounds(this.point.parameters.map((value, j) => value + step[j]!)),
+      );
+      // Chi-square may only rise by what rounding can explain.
+      if (!(trial.chi2 <= this.point.chi2 * (1 + 1e-9)) || !this.moveTo(trial, scheme)) return;
+      if (offset(this.model(), this.point) >= 0.9 * before.offset) {
+        this.point = before.point;
+        this.jacobian = before.jacobian;
+        return;
+      }
+    }
+  }
+
+  /** The result at the point reached, judged with the scales of that point. */
+  result(): FitResult {
+    const estimate = fitEstimate(
+      this.jacobian,
+      this.point.residuals,
+      this.heldAtBound(),
+      this.options.rankTolerance,
+    );
+    const stoppedBy = this.stoppingRule(estimate);
+    return {
+      parameters: this.point.parameters,
+      residuals: this.point.residuals,
+      chi2: this.point.chi2,
+      covariance: estimate.covariance,
+      verdicts: {
+        converged: stoppedBy !== "iteration limit" && stoppedBy !== "no descent",
+        stoppedBy,
+        iterations: this.iterations,
+        evaluations: this.evaluations,
+        relativeOffset: offset(estimate.model, this.point),
+        atBound: this.heldAtBound(),
+        covariancePositiveDefinite: estimate.degenerateDirections.length === 0,
+        degenerateDirections: estimate.degenerateDirections,
+      },
+    };
+  }
+
+  private stoppingRule(estimate: FitEstimate): StoppingRule {
+    const size = Math.sqrt(this.point.chi2);
+    if (this.point.chi2 === 0) return "zero residuals";
+    if (offset(estimate.model, this.point) <= (this.options.offsetTolerance ?? 1e-7))
+      return "relative offset";
+    const step = trustRegionStep(estimate.model, Number.POSITIVE_INFINITY, this.scales.length);
+    const scaled = step.step.map((value, j) => value * estimate.scales[j]!);
+    const length = Math.hypot(...this.point.parameters.map((value, j) => value * estimate.scales[j]!));
+    if (Math.hypot(...scaled) <= (this.options.stepTolerance ?? 1e-10) * length) return "relative step";
+    if (this.newtonLength <= (this.options.stepTolerance ?? 1e-10)) return "newton step";
+    const held = this.heldAtBound();
+    const steepest = this.gradient().map((value, j) =>
+      held.includes(j) ? 0 : Math.abs(value) / this.scales[j]!,
+    );
+    if (Math.max(0, ...steepest) <= 1e-10 * size) return "scaled gradient";
+    return this.ending ?? "no descent";
+  }
+
+  private pointAt(parameters: number[]): Point {
+    this.evaluations++;
+    const residuals = [...this.problem.residuals(parameters)];
+    if (this.point !== undefined && residuals.length !== this.point.residuals.length) {
+      refuse(
+        "levenbergMarquardt: residuals",
+        `${this.point.residuals.length} at every point`,
+        residuals.length,
+      );
+    }
+    const chi2 = squares(residuals);
+    return { parameters, residuals, chi2: Number.isFinite(chi2) ? chi2 : Number.POSITIVE_INFINITY };
+  }
+
+  private jacobianAt(point: Point, scheme: DifferenceScheme): number[][] {
+    if (this.problem.jacobian) return this.problem.jacobian(point.parameters).map((row) => [...row]);
+    const { bounds } = this.problem;
+    const counted = (parameters: readonly number[]) => {
+      this.evaluations++;
+      return this.problem.residuals(parameters);
+    };
+    return numericalJacobian(counted, point.parameters, { scheme, bounds, typicalSizes: this.typicalSizes });
+  }
+
+  /** Moves to a point unless the Jacobian is not finite there; says whether it did. */
+  private moveTo(point: Point, scheme: DifferenceScheme): boolean {
+    const jacobian = this.jacobianAt(point, scheme);
+    if (!jacobian.every((row) => row.every(Number.isFinite))) return false;
+    this.point = point;
+    this.jacobian = jacobian;
+    this.newtonLength = Number.POSITIVE_INFINITY;
+    columnNorms(jacobian, this.scales.length).forEach((norm, j) => {
+      this.scales[j] = Math.max(this.scales[j]!, norm);
+    });
+    return true;
+  }
+
+  private model(): LinearModel {
+    const held = this.heldAtBound();
+    const columns = this.scales.map((_, j) => j).filter((j) => !held.includes(j));
+    return linearModel(
+      this.jacobian,
+      this.point.residuals,
+      columns,
+      columns.map((j) => this.scales[j]!),
+    );
+  }
+
+  private linearised(step: readonly number[]): number[] {
+    return this.point.residuals.map((r, i) =>
+      step.reduce((sum, value, j) => sum + value * this.jacobian[i]![j]!, r),
+    );
+  }
+
+  private gradient(): number[] {
+    return this.scales.map((_, j) =>
+      this.point.residuals.reduce((sum, r, i) => sum + r * this.jacobian[i]![j]!, 0),
+    );
+  }
+
+  /** Parameters on a bound with chi-square falling towards the outside. */
+  private heldAtBound(): number[] {
+    const { bounds } = this.problem;
+    if (!bounds) return [];
+    const gradient = this.gradient();
+    return this.point.parameters.flatMap((value, j) => {
+      const { lower, upper } = bounds[j]!;
+      const held = (value <= lower && gradient[j]! >= 0) || (value >= upper && gradient[j]! <= 0);
+      return held ? [j] : [];
+    });
+  }
+
+  private insideBounds(parameters: readonly number[]): number[] {
+    const { bounds } = this.problem;
+    if (!bounds) return [...parameters];
+    return parameters.map((value, j) => Math.min(Math.max(value, bounds[j]!.lower), bounds[j]!.upper));
+  }
+
+  private scaledLength(vector: readonly number[]): number {
+    return Math.hypot(...vector.map((value, j) => value * this.scales[j]!));
+  }
+
+  private gaussNewtonLength(model: LinearModel): number {
+    return trustRegionStep(model, Number.POSITIVE_INFINITY, this.scales.length).length;
+  }
+}
+
+/** |U^T r| / |r|: the part of the residuals that a change of the free parameters could still remove. */
+function offset(model: LinearModel, point: Point): number {
+  return point.chi2 === 0 ? 0 : Math.hypot(...model.projections) / Math.sqrt(point.chi2);
+}
+
+function columnNorms(jacobian: readonly (readonly number[])[], columns: number): number[] {
+  return Array.from({ length: columns }, (_, j) => Math.hypot(...jacobian.map((row) => row[j]!)));
+}
+
+function checkArguments(problem: LeastSquaresProblem, start: readonly number[], options: FitOptions): void {
+  start.forEach((value, j) => {
+    if (!Number.isFinite(value)) refuse(`levenbergMarquardt: start ${j}`, "a finite number", value);
+  });
+  const { bounds } = problem;
+  if (bounds && bounds.length !== start.length) {
+    refuse("levenbergMarquardt: bounds", `${start.length} intervals, one per parameter`, bounds.length);
+  }
+  bounds?.forEach(({ lower, upper }, j) => {
+    if (!(lower <= upper))
+      refuse(`levenbergMarquardt: bounds ${j}`, "lower <= upper", `[${lower}, ${upper}]`);
+  });
+  requireInteger("levenbergMarquardt: maximumIterations", options.maximumIterations ?? 1, 0);
+  requirePositive("levenbergMarquardt: initialRadius", options.initialRadius ?? 1);
+}
+
+function checkJacobian(jacobian: readonly (readonly number[])[], point: Point, analytic: boolean): void {
+  const rows = point.residuals.length;
+  const columns = point.parameters.length;
+  const where = analytic ? "levenbergMarquardt: jacobian" : "levenbergMarquardt: numerical derivative";
+  if (jacobian.length !== rows) refuse(where, `${rows} rows, one per residual`, jacobian.length);
+  jacobian.forEach((row, i) => {
+    if (row.length !== columns)
+      refuse(`${where} row ${i}`, `${columns} columns, one per parameter`, row.length);
+    const bad = row.findIndex((value) => !Number.isFinite(value));
+    if (bad >= 0) refuse(`${where} [${i}][${bad}] at the start`, "a finite number", row[bad]);
+  });
+}

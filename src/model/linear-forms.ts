@@ -1,0 +1,66 @@
+import type { MinimaProblem } from "../fit/minima.js";
+import type { Evaluator } from "./evaluate.js";
+import type { Observable, WidthSum } from "./model.js";
+
+/** Two linear forms count as one when their unit vectors agree to this. */
+const SAME_DIRECTION = 1e-9;
+
+/**
+ * The linear forms whose signs tell the minima apart, and the amplitudes that single widths and fractions fix.
+ *
+ * Every wave of every channel that enters a fitted observable gives one form; parallel ones count once.
+ */
+export function signProblem(
+  { model, rows }: Evaluator,
+  fitted: readonly Observable[],
+): Pick<MinimaProblem, "forms" | "amplitudeTargets"> {
+  const forms: number[][] = [];
+  const formOf = (row: readonly number[]): { form: number; square: number } | undefined => {
+    const norm = Math.hypot(...row);
+    if (norm === 0) return undefined;
+    const lead = row.find((c) => Math.abs(c) > SAME_DIRECTION * norm)!;
+    const unit = row.map((c) => c / (Math.sign(lead) * norm));
+    let form = forms.findIndex((other) => other.every((c, k) => Math.abs(c - unit[k]!) < SAME_DIRECTION));
+    if (form < 0) form = forms.push(unit) - 1;
+    return { form, square: norm * norm };
+  };
+  /** The form and the factor of its square, if the sum of widths is the square of a single form. */
+  const asSquare = (sum: WidthSum): { form: number; factor: number } | undefined => {
+    const squares = new Map<number, number>();
+    for (const { channel, weight } of sum) {
+      const { identicalFactor, waves } = model.channels[channel]!;
+      for (const [w, row] of rows[channel]!.entries()) {
+        const found = formOf(row);
+        if (found === undefined) continue;
+        const factor = weight * identicalFactor * waves[w]!.kinematicFactor * found.square;
+        squares.set(found.form, (squares.get(found.form) ?? 0) + factor);
+      }
+    }
+    const [first, ...others] = [...squares].map(([form, factor]) => ({ form, factor }));
+    return others.length === 0 && first !== undefined && first.factor > 0 ? first : undefined;
+  };
+  const amplitudeTargets: { form: number; amplitude: number; sigma: number }[] = [];
+  for (const { numerator, denominator, measured } of fitted) {
+    const square = asSquare(numerator);
+    if (denominator.kind === "sum") {
+      asSquare(denominator.sum);
+      continue;
+    }
+    if (square === undefined) continue;
+    const total =
+      denominator.kind === "one"
+        ? 1
+        : denominator.kind === "fixed"
+          ? denominator.widthMeV
+          : model.parameters[denominator.index]!.start;
+    const amplitude = Math.sqrt((measured.value * total) / square.factor);
+    const error = ((measured.plus + measured.minus) / 2) * (total / square.factor);
+    // d(a^2) = 2 a da; near zero the error of the square itself limits the amplitude.
+    amplitudeTargets.push({
+      form: square.form,
+      amplitude,
+      sigma: error / Math.max(2 * amplitude, Math.sqrt(error)),
+    });
+  }
+  return { forms, amplitudeTargets };
+}

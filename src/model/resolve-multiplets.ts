@@ -1,0 +1,123 @@
+import { findParticle } from "../hadrons/catalogue.js";
+import { catalogueMultiplet, catalogueMultipletIds } from "../hadrons/catalogue-multiplet.js";
+import { chargeStates } from "../hadrons/charge-states.js";
+import { assembleMultiplet, type MemberParticles, type Multiplet } from "../hadrons/multiplet.js";
+import { nearestNames } from "../hadrons/nearest-names.js";
+import type { Particle } from "../hadrons/particle.js";
+import { placeOf } from "../hadrons/place.js";
+import { refuse } from "../require.js";
+import type { StudyChargeState, StudyMember, StudyMultiplet } from "../study/study.js";
+import { type Irrep, parseIrrep } from "../su3/irrep.js";
+import type { Problems } from "./problems.js";
+
+/** A multiplet with what only a study knows of it. */
+export interface StudyBoundMultiplet {
+  readonly multiplet: Multiplet;
+  /** Names of charge states whose total width is the sum of their rows. */
+  readonly summed: ReadonlySet<string>;
+}
+
+/** The multiplet of an id: the study's own, else the catalogue's. Problems are noted where the id stands. */
+export function resolveMultiplet(
+  id: string,
+  path: string,
+  own: ReadonlyMap<string, StudyBoundMultiplet>,
+  problems: Problems,
+): StudyBoundMultiplet | undefined {
+  const found = own.get(id);
+  if (found !== undefined) return found;
+  const known = catalogueMultipletIds();
+  if (known.includes(id)) return { multiplet: catalogueMultiplet(id), summed: new Set() };
+  const [nearest] = nearestNames(id, [...own.keys(), ...known], 1);
+  problems.add(
+    path,
+    `expected a multiplet of this study (${[...own.keys()].join(", ") || "it has none"}) or of the catalogue (${known.join(", ")}), got ${JSON.stringify(id)}.${nearest === undefined ? "" : ` Did you mean ${nearest}?`}`,
+  );
+  return undefined;
+}
+
+/** A multiplet that a study writes member by member, with catalogue values where the study gives none. */
+export function studyMultiplet(
+  id: string,
+  written: StudyMultiplet,
+  problems: Problems,
+): StudyBoundMultiplet | undefined {
+  const path = `multiplets/${id}`;
+  const irrep = problems.attempt(`${path}/irrep`, () => parseIrrep(written.irrep));
+  if (irrep === undefined) return undefined;
+  const members = written.members.map((member, k) =>
+    problems.attempt(`${path}/members/${k}`, () => memberParticles(irrep, written, member)),
+  );
+  const usable = members.filter((member) => member !== undefined);
+  if (usable.length < members.length) return undefined;
+  const multiplet = problems.attempt(path, () =>
+    assembleMultiplet(id, { irrep, ...quantumNumbers(written) }, usable),
+  );
+  if (multiplet === undefined) return undefined;
+  const summed = written.members
+    .filter((member) => member.width === "sum")
+    .flatMap((member) => multiplet.members.find(({ name }) => name === member.name)!.hadrons)
+    .map((hadron) => hadron.name);
+  return { multiplet, summed: new Set(summed) };
+}
+
+function quantumNumbers({ twoJ, parity, baryonNumber }: StudyMultiplet) {
+  return { twoJ, parity, baryonNumber, charm: 0 };
+}
+
+function memberParticles(irrep: Irrep, written: StudyMultiplet, member: StudyMember): MemberParticles {
+  const place = placeOf(irrep, member.place);
+  const { mass, width } = member;
+  const quantum = { irrep, ...quantumNumbers(written) };
+  const states = chargeStates(member.name, place, quantum, {
+    massMeV: mass?.value ?? Number.NaN,
+    massErrorMeV: mass ?? { plus: 0, minus: 0 },
+    widthMeV: width === undefined || width === "sum" ? null : width.value,
+    widthErrorMeV: width === undefined || width === "sum" ? null : width,
+  });
+  const names = states.map(({ name }) => name);
+  for (const name of Object.keys(member.chargeStates)) {
+    if (!names.includes(name)) refuse(`${member.name}: charge state`, `one of ${names.join(", ")}`, name);
+  }
+  const particles = states.map((state) => particleOf(state, member, member.chargeStates[state.name] ?? {}));
+  return { name: member.name, particles };
+}
+
+/** A charge state's values: its own in the study, else the member's, else the catalogue's. */
+function particleOf(state: Particle, member: StudyMember, own: StudyChargeState): Particle {
+  const known = findParticle(state.name);
+  const fromCatalogue = member.mass === undefined && own.mass === undefined;
+  if (fromCatalogue && known === undefined) {
+    refuse(
+      `${member.name}: mass`,
+      "a mass, since the catalogue has no such particle",
+      state.name,
+      "Add `mass: ... MeV`.",
+    );
+  }
+  const mass = own.mass ?? member.mass;
+  const width = own.width ?? (member.width === "sum" ? undefined : member.width);
+  const useKnownWidth = width === undefined && member.width === undefined;
+  const widthMeV = width?.value ?? (useKnownWidth ? (known?.widthMeV ?? null) : null);
+  if (widthMeV === null && member.width !== "sum") {
+    refuse(
+      `${member.name}: width`,
+      "a total width, since the catalogue has none",
+      state.name,
+      "Add `width: ... MeV`, or `width: sum`.",
+    );
+  }
+  return {
+    ...state,
+    mcNumber: own.mcNumber ?? state.mcNumber,
+    massMeV: mass?.value ?? known!.massMeV,
+    massErrorMeV: errors(mass) ?? known!.massErrorMeV,
+    widthMeV,
+    widthErrorMeV: errors(width) ?? (useKnownWidth ? (known?.widthErrorMeV ?? null) : null),
+    chargeAveraged: own.mass === undefined && (mass !== undefined || known!.chargeAveraged),
+  };
+}
+
+function errors(quantity: { plus: number; minus: number } | undefined) {
+  return quantity === undefined ? undefined : { plus: quantity.plus, minus: quantity.minus };
+}

@@ -1,0 +1,50 @@
+import { InputError, InternalError } from "./errors.js";
+
+/** Prints a value for an error message: short, quoted where it is text. */
+function shown(value: unknown): string {
+  if (typeof value === "string") return JSON.stringify(value);
+  if (typeof value === "bigint") return String(value);
+  if (typeof value === "object" && value !== null) return JSON.stringify(value);
+  return String(value);
+}
+
+/**
+ * Throws an InputError in the one wording all argument checks share: where, expected, got, how to mend it.
+ *
+ * @param where - the function or the field, e.g. `isoscalarFactor: q`
+ * @param expected - what would have been right, e.g. `an integer >= 0`
+ * @param mend - a sentence that says what to do; may be empty
+ */
+export function refuse(where: string, expected: string, got: unknown, mend = ""): never {
+  throw new InputError(`${where}: expected ${expected}, got ${shown(got)}.${mend === "" ? "" : ` ${mend}`}`);
+}
+
+/** Checks for an integer in [minimum, maximum]; throws InputError otherwise. */
+export function requireInteger(
+  where: string,
+  value: number,
+  minimum: number,
+  mend = "",
+  maximum = Number.MAX_SAFE_INTEGER,
+): void {
+  if (Number.isInteger(value) && value >= minimum && value <= maximum) return;
+  const range =
+    maximum === Number.MAX_SAFE_INTEGER
+      ? `an integer >= ${minimum}`
+      : `an integer from ${minimum} to ${maximum}`;
+  refuse(where, range, value, mend);
+}
+
+/** Checks for a finite number > 0; throws InputError otherwise. */
+export function requirePositive(where: string, value: number, mend = ""): void {
+  if (Number.isFinite(value) && value > 0) return;
+  refuse(where, "a finite number > 0", value, mend);
+}
+
+/** Checks an identity that must hold whatever the input; a failure is our bug and throws InternalError. */
+export function requireIdentity(where: string, holds: boolean, detail: () => string): void {
+  if (holds) return;
+  throw new InternalError(
+    `${where}: ${detail()}. This is a bug in Couplet; please report it with the command you ran.`,
+  );
+}

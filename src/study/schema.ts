@@ -1,0 +1,162 @@
+import { z } from "zod";
+import { parseQuantity, type QuantityProblem, quantityForm } from "./quantity.js";
+import type { Quantity } from "./study.js";
+
+const DESCRIPTIONS = {
+  MeV: "A number with its unit, e.g. `58 +- 3 MeV`, `0.12 GeV` or `58 +4 -3 MeV`",
+  1: "A pure number, e.g. `0.40 +- 0.05`, `0.40 +0.05 -0.04` or `40 +- 5 %`",
+};
+
+/** A quantity in `unit`; `check` says what else it must be, in words, or undefined. */
+function quantity(unit: Quantity["unit"], check: (q: Quantity) => string | undefined = () => undefined) {
+  return z
+    .union([z.string(), z.number()], { error: `expected ${quantityForm(unit)}` })
+    .transform((input, context): Quantity => {
+      const read = parseQuantity(String(input), unit);
+      const problem = isProblem(read) ? read.problem : check(read);
+      if (problem === undefined) return read as Quantity;
+      context.addIssue({
+        code: "custom",
+        message: isProblem(read) ? problem : `${problem}, got ${JSON.stringify(input)}`,
+      });
+      return z.NEVER;
+    })
+    .describe(DESCRIPTIONS[unit]);
+}
+
+function isProblem(read: Quantity | QuantityProblem): read is QuantityProblem {
+  return "problem" in read;
+}
+
+const positive = (what: string) => (q: Quantity) => (q.value > 0 ? undefined : `expected a ${what} > 0`);
+const mass = quantity("MeV", positive("mass"));
+const width = quantity("MeV", positive("width"));
+
+const SPIN_PARITY = /^(?<number>\d+)(?<half>\/2)?(?<sign>[+-])$/;
+
+const spinParity = z
+  .string()
+  .transform((text, context) => {
+    const groups = SPIN_PARITY.exec(text)?.groups;
+    const number = Number(groups?.["number"]);
+    if (groups === undefined || (groups["half"] !== undefined && number % 2 === 0)) {
+      context.addIssue({
+        code: "custom",
+        message: `expected spin and parity such as \`5/2-\` or \`1+\`, got ${JSON.stringify(text)}`,
+      });
+      return z.NEVER;
+    }
+    return {
+      twoJ: groups["half"] === undefined ? 2 * number : number,
+      parity: groups["sign"] === "+" ? (1 as const) : (-1 as const),
+    };
+  })
+  .describe("Spin and parity, e.g. `5/2-`");
+
+const spin = z
+  .union([z.string().regex(/^\d+(\/2)?$/), z.int().min(0)], { error: "expected a spin such as 1 or 3/2" })
+  .transform((text) => (String(text).endsWith("/2") ? Number.parseInt(String(text), 10) : 2 * Number(text)));
+
+const chargeState = z
+  .strictObject({ mass: mass.optional(), width: width.optional(), mcNumber: z.int().optional() })
+  .describe("What one charge state has of its own");
+
+const member = z.strictObject({
+  name: z.string().min(1).describe("Name of the isospin multiplet, e.g. `Lambda(1830)`"),
+  place: z
+    .string()
+    .min(1)
+    .describe("Place in the irrep: N, Lambda, Sigma, Xi, Delta, Omega, pi, K, Kbar, eta, or `Y=0 I=1`"),
+  mass: mass.optional().describe("Default: of the catalogue, by name"),
+  width: z
+    .union([z.literal("sum"), width], { error: "expected a total width > 0 with its unit, or `sum`" })
+    .optional()
+    .describe("Total width, or `sum` for the sum of the rows. Default: of the catalogue, by name"),
+  chargeStates: z.record(z.string(), chargeState).optional(),
+});
+
+const multiplet = z.strictObject({
+  irrep: z
+    .union([z.string(), z.int()], { error: "expected an irrep such as 8, 10bar or `2,1`" })
+    .transform(String)
+    .describe("e.g. 8, 10, 10bar, 27 or `2,1`"),
+  spinParity,
+  baryonNumber: z.int().optional().describe("Default: 1 for half-integer spin, 0 for integer spin"),
+  members: z.array(member).min(1),
+});
+
+const option = z
+  .union([z.number(), z.string()], { error: "expected a number, or one with its unit" })
+  .transform((input, context): number | Quantity => {
+    if (typeof input === "number") return input;
+    const read = parseQuantity(input, "MeV");
+    if (!isProblem(read)) return read;
+    context.addIssue({ code: "custom", message: read.problem });
+    return z.NEVER;
+  });
+
+const model = z
+  .union(
+    [
+      z.string().transform((id) => ({ id, options: {} as Record<string, number | Quantity> })),
+      z
+        .object({ id: z.string() })
+        .catchall(option)
+        .transform(({ id, ...options }) => ({ id, options })),
+    ],
+    { error: "expected a width model's name, or a mapping with its `id` and options" },
+  )
+  .describe("Width model by name, or its name as `id` with options");
+
+const decay = z.strictObject({
+  name: z
+    .string()
+    .min(1)
+    .optional()
+    .describe("Prefix of the couplings' names; needed only to tell several decays apart"),
+  from: z.string().describe("A multiplet of this study, or one of the catalogue"),
+  to: z
+    .tuple([z.string(), z.string()])
+    .describe("Two multiplets, baryon first, meson second: the order fixes the sign of F"),
+  L: z.int().min(0).max(8).describe("Orbital angular momentum"),
+  S: spin.optional().describe("Total spin of the daughters; needed only where L leaves a choice"),
+  model,
+  masses: z
+    .enum(["charge", "average"])
+    .default("charge")
+    .describe("Masses of each charge state, or isospin averages"),
+});
+
+const use = z.enum(["fit", "table", "both"]).default("both").describe("Where the value counts");
+const source = z.string().min(1).describe("Where the value comes from: it goes into the table");
+const nonNegative = (q: Quantity) => (q.value >= 0 ? undefined : "expected a value >= 0");
+const fraction = (q: Quantity) =>
+  q.value >= 0 && q.value <= 1 ? undefined : "expected a fraction from 0 to 1";
+
+const measurement = z.union(
+  [
+    z.strictObject({ width: z.string(), value: quantity("MeV", nonNegative), source, use }),
+    z.strictObject({ fraction: z.string(), value: quantity("1", fraction), source, use }),
+    z.strictObject({
+      ratio: z.tuple([z.string(), z.string()]),
+      value: quantity("1", nonNegative),
+      source,
+      use: z.literal("fit").default("fit"),
+    }),
+  ],
+  { error: "expected a measurement: one of `width`, `fraction` or `ratio`, with `value` and `source`" },
+);
+
+/** The form of a study file; from this one description come the checks and their messages. */
+export const studySchema = z.strictObject({
+  couplet: z.literal(1).describe("Version of the study format"),
+  title: z.string().min(1),
+  multiplets: z.record(z.string(), multiplet).default({}),
+  decays: z.array(decay).min(1),
+  measurements: z.array(measurement).min(1),
+  fit: z.strictObject({ mirrors: z.enum(["refuse", "best", "each"]).default("refuse") }).prefault({}),
+  tables: z.strictObject({ breaking: z.number().min(0).max(1).default(0.2) }).prefault({}),
+});
+
+/** A study that passed the form check, still in the file's own layout. */
+export type StudyDocument = z.infer<typeof studySchema>;

@@ -1,0 +1,182 @@
+import type {
+  Comparison,
+  Estimate,
+  Flag,
+  Origin,
+  ParentTable,
+  Row,
+  RowWave,
+  Tables,
+} from "../completion/tables.js";
+import { couplet } from "../gen/couplet.js";
+import type { Hadron } from "../hadrons/hadron.js";
+import { type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
+import type { Decay, Model } from "../model/model.js";
+import { MULTIPLICITY_RULE } from "../su3/engine/copies.js";
+import { CONVENTION } from "../su3/isoscalar-factors.js";
+import { producerName } from "../version.js";
+import { widthModelDefinitions } from "../widths/width-model.js";
+import { CAUTIONS } from "./cautions.js";
+import { sealBytes } from "./sealed-bytes.js";
+
+import v1 = couplet.v1;
+
+/** Lowest minor version of the schema a reader of our decay tables must know. */
+export const DECAYS_SCHEMA_MINOR = 0;
+
+/**
+ * Decay tables as the bytes of a sealed `couplet.v1.DecayTables` file. The same tables give the same bytes.
+ */
+export function encodeDecays(tables: Tables): Uint8Array {
+  return sealBytes(v1.DecayTables.encode(decaysMessage(tables)).finish());
+}
+
+/** Decay tables as a message, without the digest. */
+export function decaysMessage(tables: Tables): v1.DecayTables.$Properties {
+  const { model } = tables.fit;
+  return {
+    kind: "couplet.v1.DecayTables",
+    header: header(model),
+    fit: {
+      minima: listedMinima(tables.fit.minima).map(minimumMessage),
+      otherMinima: tables.fit.minima.length - listedMinima(tables.fit.minima).length,
+      used: tables.minimum,
+      mirrors: model.study.mirrors,
+    },
+    parents: tables.parents.map((parent) => parentMessage(parent, model)),
+    externals: tables.externals.map(hadronMessage),
+  };
+}
+
+function header({ study, notes, editions }: Model): v1.Header.$Properties {
+  return {
+    schemaMinor: DECAYS_SCHEMA_MINOR,
+    producer: producerName(),
+    title: study.title,
+    studyText: study.text,
+    convention: CONVENTION,
+    multiplicityRule: MULTIPLICITY_RULE,
+    unit: "MeV",
+    editions: [...editions],
+    cautions: [...CAUTIONS],
+    notes: [...notes],
+    breaking: study.breaking,
+  };
+}
+
+function listedMinima(minima: readonly StudyMinimum[]): StudyMinimum[] {
+  return minima.filter(({ chi2 }) => chi2 - minima[0]!.chi2 < LISTED_DELTA_CHI2);
+}
+
+function minimumMessage(minimum: StudyMinimum): v1.Minimum.$Properties {
+  return {
+    chi2: minimum.chi2,
+    ndf: minimum.ndf,
+    probability: minimum.probability ?? null,
+    parameters: minimum.parameters.map((parameter: FittedParameter) => ({ ...parameter })),
+    pulls: minimum.pulls.map(({ observable, fitted, pull }) => ({
+      quantity: observable.label,
+      measured: observable.measured.value,
+      plus: observable.measured.plus,
+      minus: observable.measured.minus,
+      fitted,
+      pull,
+      unit: observable.measured.unit,
+      source: observable.source,
+    })),
+  };
+}
+
+function parentMessage(table: ParentTable, model: Model): v1.Parent.$Properties {
+  const { hadron, multiplet, total } = table.parent;
+  return {
+    hadron: hadronMessage(hadron),
+    multiplet,
+    totalWidth: table.totalWidthMeV,
+    totalWidthError: table.totalWidthErrorMeV,
+    totalOrigin:
+      total.kind === "sum" ? v1.TotalOrigin.TOTAL_ORIGIN_SUM : v1.TotalOrigin.TOTAL_ORIGIN_MEASURED,
+    rows: table.rows.map((row) => rowMessage(row, model.decays)),
+    warnings: [...table.warnings],
+  };
+}
+
+function hadronMessage(hadron: Hadron): v1.Hadron.$Properties {
+  const mean = (error: { plus: number; minus: number } | null) =>
+    error === null ? null : (error.plus + error.minus) / 2;
+  return {
+    name: hadron.name,
+    mcNumber: hadron.mcNumber,
+    mass: hadron.massMeV,
+    massError: mean(hadron.massErrorMeV),
+    width: hadron.widthMeV,
+    widthError: mean(hadron.widthErrorMeV),
+    twoJ: hadron.twoJ,
+    parity: hadron.parity,
+    charge: hadron.charge,
+    baryonNumber: hadron.baryonNumber,
+    strangeness: hadron.strangeness,
+    charm: hadron.charm,
+    antiparticle: hadron.antiparticle,
+    content: hadron.content.map(({ leg, weight }) => ({
+      multiplet: leg.multiplet,
+      state: { ...leg.state },
+      weight,
+    })),
+    notes: [...hadron.notes],
+  };
+}
+
+const ORIGINS: Readonly<Record<Origin, v1.Origin>> = {
+  measured: v1.Origin.ORIGIN_MEASURED,
+  predicted: v1.Origin.ORIGIN_PREDICTED,
+  remainder: v1.Origin.ORIGIN_REMAINDER,
+};
+
+const FLAGS: Readonly<Record<Flag, v1.Flag>> = {
+  "isospin-split": v1.Flag.FLAG_ISOSPIN_SPLIT,
+  undecayable: v1.Flag.FLAG_UNDECAYABLE,
+  "near-threshold": v1.Flag.FLAG_NEAR_THRESHOLD,
+  "small-amplitude": v1.Flag.FLAG_SMALL_AMPLITUDE,
+};
+
+function rowMessage(row: Row, decays: readonly Decay[]): v1.Row.$Properties {
+  return {
+    id: row.id,
+    daughters: row.daughters.map(({ name, mcNumber }) => ({ name, mcNumber })),
+    partsPerBillion: row.partsPerBillion,
+    fraction: estimateMessage(row.fraction),
+    width: estimateMessage(row.widthMeV),
+    origin: ORIGINS[row.origin],
+    flags: row.flags.map((flag) => FLAGS[flag]),
+    sources: [...row.sources],
+    ...(row.measurement === undefined ? {} : { measurement: comparisonMessage(row.measurement) }),
+    kinematics: row.open ? v1.Kinematics.KINEMATICS_OPEN : v1.Kinematics.KINEMATICS_CLOSED,
+    threshold: row.thresholdMeV,
+    momentum: row.momentumMeV,
+    identicalFactor: row.identicalFactor,
+    waves: row.waves.map((wave) => waveMessage(wave, decays[wave.decay]!)),
+  };
+}
+
+function comparisonMessage({ fitted, pull, ...measured }: Comparison): v1.Comparison.$Properties {
+  return { ...measured, fitted: fitted ?? null, pull: pull ?? null };
+}
+
+function estimateMessage({ value, plus, minus, breaking }: Estimate): v1.Estimate.$Properties {
+  return { value, plus, minus, breaking };
+}
+
+function waveMessage({ L, twoS, re, im, flavourAmplitude }: RowWave, { model }: Decay): v1.Wave.$Properties {
+  const definition = widthModelDefinitions().find(({ id }) => id === model.id)!;
+  return {
+    twoL: 2 * L,
+    twoS,
+    re,
+    im,
+    phase: v1.Phase.PHASE_KNOWN,
+    model: model.id,
+    options: definition.options.map(({ name, unit }) => ({ name, unit, value: model.options[name]! })),
+    flavourAmplitude,
+  };
+}
