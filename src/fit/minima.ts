@@ -13,7 +13,10 @@ export interface MinimaProblem {
   /** Couplings first, then nuisance parameters. */
   readonly parameterNames: readonly string[];
   readonly couplingCount: number;
-  /** Linear forms in the couplings whose sign matters: the amplitudes that enter observables. */
+  /**
+   * Linear forms in the couplings whose sign matters: the amplitudes that enter observables, and those to be predicted.
+   * Couplings that no form joins count as unrelated in sign, and of (a, b) and (a, -b) only one is listed.
+   */
   readonly forms: readonly Vector[];
   /** What is known of |forms[form] . g|, for starts only; may be empty. `amplitude` >= 0, `sigma` > 0. */
   readonly amplitudeTargets: readonly {
@@ -69,7 +72,7 @@ export interface Minima {
   readonly unconverged: number;
 }
 
-/** Two points are one minimum when every block of couplings, and every nuisance parameter, agrees to this. */
+/** Two points are one minimum when every block of couplings, and every nuisance parameter, agrees to this part. */
 const SAME_MINIMUM = 1e-3;
 /** Scaled curvature below which a stationary point is no minimum; rounding and differences stay far below it. */
 const SADDLE_CURVATURE = -1e-4;
@@ -89,7 +92,7 @@ export function findMinima(problem: MinimaProblem, options: MinimaOptions = {}):
   requirePositive("findMinima: deltaChi2", Math.min(deltaChi2, Number.MAX_VALUE));
   requireInteger("findMinima: maximumStarts", options.maximumStarts ?? 20_000, 1);
   const { blocks, starts } = minimaStarts(problem, options.maximumStarts ?? 20_000);
-  const gathering = new Gathering(problem, blocks);
+  const gathering = new Gathering(problem, blocks, starts);
   for (const [done, start] of starts.entries()) {
     options.signal?.throwIfAborted();
     const fit = fitFrom(problem, start);
@@ -163,13 +166,20 @@ function asMinimum(fit: FitResult): Minimum {
 /** The distinct minima met so far. */
 class Gathering {
   private readonly distinct: FitResult[] = [];
+  /** Of each block: its largest size among the starts; a block a million times smaller is 0. */
+  private readonly typicalSizes: readonly number[];
   private best: FitResult | undefined;
   unconverged = 0;
 
   constructor(
     private readonly problem: MinimaProblem,
     private readonly blocks: readonly CouplingBlock[],
-  ) {}
+    starts: readonly MinimaStart[],
+  ) {
+    this.typicalSizes = blocks.map((block) =>
+      starts.reduce((most, { parameters }) => Math.max(most, blockSize(parameters, block)), 0),
+    );
+  }
 
   /** Keeps a fit's result if it is a minimum not met before; from a saddle, goes on downhill. */
   add(fit: FitResult, descents = 3): void {
@@ -239,11 +249,13 @@ class Gathering {
   private same(a: FitResult, b: FitResult): boolean {
     if (Math.abs(a.chi2 - b.chi2) > 1e-5 * (1 + Math.min(a.chi2, b.chi2))) return false;
     const apart = (j: number) => a.parameters[j]! - b.parameters[j]!;
-    const closeBlocks = this.blocks.every(({ couplings }) => {
-      const size = (values: Vector) => Math.hypot(...couplings.map((j) => values[j]!));
-      return (
-        Math.hypot(...couplings.map(apart)) <= SAME_MINIMUM * Math.max(size(a.parameters), size(b.parameters))
-      );
+    const closeBlocks = this.blocks.every((block, k) => {
+      const sizes = [
+        blockSize(a.parameters, block),
+        blockSize(b.parameters, block),
+        1e-3 * this.typicalSizes[k]!,
+      ];
+      return Math.hypot(...block.couplings.map(apart)) <= SAME_MINIMUM * Math.max(...sizes);
     });
     const closeNuisances = a.parameters.every((value, j) => {
       const size = Math.max(Math.abs(value), Math.abs(b.parameters[j]!), Math.sqrt(a.covariance[j]![j]!));
@@ -251,6 +263,10 @@ class Gathering {
     });
     return (closeBlocks && closeNuisances) || sameValley(this.problem, a, b, this.blocks);
   }
+}
+
+function blockSize(parameters: Vector, block: CouplingBlock): number {
+  return Math.hypot(...block.couplings.map((j) => parameters[j]!));
 }
 
 function compareVectors(a: Vector, b: Vector): number {

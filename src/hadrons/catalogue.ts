@@ -1,7 +1,7 @@
 import { refuse } from "../require.js";
 import edition2024 from "./data/particles-2024.json";
 import { nearestNames } from "./nearest-names.js";
-import { antiparticle, type Particle } from "./particle.js";
+import { antiparticle, antiparticleName, type Particle } from "./particle.js";
 
 /** Where the numbers of the catalogue come from, for the header of a table. */
 export interface CatalogueEdition {
@@ -34,7 +34,11 @@ export function catalogueParticles(): Particle[] {
  */
 export function findParticle(name: string): Particle | undefined {
   const canonical = canonicalName(name);
-  return catalogueParticles().find((particle) => particle.name === canonical);
+  for (const particle of listedParticles()) {
+    if (particle.name === canonical) return particle;
+    if (antiparticleName(particle) === canonical) return antiparticle(particle) ?? undefined;
+  }
+  return undefined;
 }
 
 /**
@@ -63,7 +67,7 @@ export function canonicalName(name: string): string {
   const barLast = name.replace(/^([A-Z][a-z]*)bar(.*0)$/, "$1$2bar");
   const [, stem = barLast, charge = "", bar = ""] = /^(.*?)([+-]+|0)?(bar)?$/.exec(barLast) ?? [];
   const stems: Readonly<Record<string, string>> = edition2024.stems;
-  return `${stems[stem] ?? stem}${charge}${bar}`;
+  return `${Object.hasOwn(stems, stem) ? stems[stem] : stem}${charge}${bar}`;
 }
 
 /** The entries as they stand in the file; its shape and the ranges of its values are tested. */

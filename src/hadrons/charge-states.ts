@@ -54,8 +54,8 @@ export function chargeStates(
 /**
  * Name of one charge state: the name of the isospin multiplet and the charge; a neutral isosinglet keeps its bare name.
  *
- * The nucleons are `p` and `n`. A bar goes to the end, where the charge permits two readings of it: `Kbar` gives
- * `K0bar` and, charge conjugate of `K+`, `K-`.
+ * The nucleons are `p` and `n`. Of a multiplet of antikaons (`Kbar`, `Kbar*(892)`) the neutral one keeps the bar, at the
+ * end (`K0bar`), and the charged one needs none (`K-`).
  * @example chargeStateName("Sigma(1775)", 2, -1) // "Sigma(1775)-"
  */
 export function chargeStateName(name: string, twoI: number, charge: number): string {

@@ -73,8 +73,10 @@ export function placeOf(irrep: Irrep, name: string): IsospinMultiplet {
 }
 
 function placeFromName(name: string): IsospinMultiplet | undefined {
-  const place = PLACES[name.replace(/\(\d+\)$/, "")];
-  return place === undefined ? undefined : { threeY: place[0], twoI: place[1] };
+  const bare = name.replace(/\(\d+\)$/, "");
+  if (!Object.hasOwn(PLACES, bare)) return undefined;
+  const [threeY, twoI] = PLACES[bare]!;
+  return { threeY, twoI };
 }
 
 function placeFromLabels(text: string): IsospinMultiplet | undefined {

@@ -20,6 +20,7 @@ test(`for two couplings the search finds exactly the minima of the profile over 
     const scanned = minimaOfPlaneProfile(problem, 20_000).sort((a, b) => a.chi2 - b.chi2);
     expect([seed, found.length]).toEqual([seed, scanned.length]);
     for (const { angle } of scanned) {
+      if (angle === null) continue;
       const direction = [Math.cos(angle), Math.sin(angle)];
       const met = found.some(({ parameters }) => {
         const length = Math.hypot(...parameters);

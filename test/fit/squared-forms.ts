@@ -45,14 +45,17 @@ export function randomProblem(uniform: () => number, couplings: number, observab
   return { planted, forms, squares, sigmas, problem: squaredForms(forms, squares, sigmas) };
 }
 
+/** A minimum in the plane of two couplings: its direction in radians, null at the origin. */
+export interface PlaneMinimum {
+  readonly angle: number | null;
+  readonly chi2: number;
+}
+
 /**
  * Minima of a two-coupling problem of squared forms, by another way: for each direction in the plane the best length
  * is linear least squares in its square, and the minima of that profile over the angle are those of chi-square.
  */
-export function minimaOfPlaneProfile(
-  problem: MinimaProblem,
-  steps = 200_000,
-): { angle: number; chi2: number }[] {
+export function minimaOfPlaneProfile(problem: MinimaProblem, steps = 200_000): PlaneMinimum[] {
   const profile = (angle: number) => {
     const [none, full] = [problem.residuals([0, 0]), problem.residuals([Math.cos(angle), Math.sin(angle)])];
     const slope = full.map((value, k) => value - none[k]!);
@@ -61,6 +64,8 @@ export function minimaOfPlaneProfile(
     return none.reduce((sum, value, k) => sum + (value + square * slope[k]!) ** 2, 0);
   };
   const values = Array.from({ length: steps }, (_, i) => profile((Math.PI * i) / steps));
+  // Where every direction does best at length 0, that point is the one minimum.
+  if (values.every((value) => value === values[0])) return [{ angle: null, chi2: values[0]! }];
   return values.flatMap((chi2, i) => {
     const [before, after] = [values.at(i - 1)!, values[(i + 1) % steps]!];
     return chi2 < before && chi2 <= after ? [{ angle: (Math.PI * i) / steps, chi2 }] : [];

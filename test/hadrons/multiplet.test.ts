@@ -173,9 +173,9 @@ describe("place of a name", () => {
           "It has: Y=1 I=1/2 (N or K), Y=0 I=1 (Sigma or pi), Y=0 I=0 (Lambda or eta), Y=-1 I=1/2 (Xi or Kbar).",
       ),
     );
-    expect(() => placeOf(decuplet, "Foo")).toThrow(
+    expect(() => placeOf(decuplet, "constructor")).toThrow(
       new InputError(
-        'placeOf: name: expected an isospin multiplet of the 10, got "Foo". ' +
+        'placeOf: name: expected an isospin multiplet of the 10, got "constructor". ' +
           "It has: Y=1 I=3/2 (Delta), Y=0 I=1 (Sigma or pi), Y=-1 I=1/2 (Xi or Kbar), Y=-2 I=0 (Omega).",
       ),
     );

@@ -155,10 +155,11 @@ class Descent {
 
   /** Keeps a vector of BigInt, as numbers if they hold it. */
   #store(m: number, vector: readonly bigint[]): void {
-    const largest = vector.reduce(
-      (bound, value) => (value > bound ? value : -value > bound ? -value : bound),
-      0n,
-    );
+    let largest = 0n;
+    for (const value of vector) {
+      const size = value < 0n ? -value : value;
+      if (size > largest) largest = size;
+    }
     this.#largest[m] = Number(largest);
     if (largest > Number.MAX_SAFE_INTEGER) {
       this.#big.set(m, vector);
