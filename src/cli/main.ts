@@ -1,7 +1,11 @@
 #!/usr/bin/env node
+import { isMainThread } from "node:worker_threads";
 import { Command, CommanderError } from "commander";
 import { CoupletError } from "../errors.js";
 import { packageVersion } from "../version.js";
+import { needsOwnThread, runInOwnThread } from "./own-thread.js";
+import type { ProductOptions } from "./product.js";
+import type { ServeOptions } from "./serve.js";
 
 // Each command's module is loaded when it runs, so that `couplet --help` starts fast.
 function program(): Command {
@@ -27,8 +31,11 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
     .command("product")
     .description("decompose a product of any number of irreps")
     .argument("<irreps...>", "two or more irreps, coupled from left to right")
+    .option("--into <irrep>", "only this irrep of the product")
+    .option("--content", "each state as a superposition of quarks; the factors are 3 and 3bar")
+    .option("--colour", "with --content: colours r, g, b instead of quarks u, d, s")
     .option("--json", "canonical JSON of couplet.v1.Product")
-    .action(async (irreps: string[], options: { json?: true }) =>
+    .action(async (irreps: string[], options: ProductOptions) =>
       (await import("./product.js")).runProduct(irreps, options),
     );
   root
@@ -56,8 +63,20 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
       (await import("./fit.js")).runFit(study, options),
     );
   root
+    .command("couplings")
+    .description("fit a study, print the coupling of every vertex, exact and as a number")
+    .argument("<study>", "a study file (YAML)")
+    .option(
+      "--json",
+      "canonical JSON of couplet.v1.CouplingTables; a list where the study wants each minimum",
+    )
+    .option("--out <file>", "write a Protocol Buffers file instead of printing")
+    .action(async (study: string, options: { json?: true; out?: string }) =>
+      (await import("./couplings.js")).runCouplings(study, options),
+    );
+  root
     .command("tables")
-    .description("fit a study, complete it, write its decay table")
+    .description("fit a study, complete it, write its decay and coupling tables")
     .argument("<study>", "a study file (YAML)")
     .requiredOption("-o, --out <folder>", "where to write")
     .option("--json", "print what was written as JSON")
@@ -73,6 +92,29 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
     .action(async (file: string, options: { parent?: string; json?: true }) =>
       (await import("./show.js")).runShow(file, options),
     );
+  root
+    .command("serve")
+    .description("serve tables and their evaluation to event generators over gRPC")
+    .argument("[files...]", "decay table files; without any, built-in ground-state tables")
+    .option("--listen <address>", "HOST:PORT or unix:PATH", "127.0.0.1:50610")
+    .option(
+      "--metrics <address>",
+      "where to answer GET /metrics, on this machine only; or none",
+      "127.0.0.1:50611",
+    )
+    .option("--tls-cert <file>", "the server's certificate and those above it (PEM)")
+    .option("--tls-key <file>", "its key (PEM)")
+    .option("--tls-client-ca <file>", "serve only clients with a certificate of these authorities (PEM)")
+    .option("--allow-insecure-network", "serve other machines without TLS")
+    .option("--drain-seconds <n>", "how long SIGTERM waits for running calls", "30")
+    .option(
+      "--log-level <level>",
+      "debug, info, warn or error; the log is JSON lines on standard error",
+      "info",
+    )
+    .action(async (files: string[], options: ServeOptions) =>
+      (await import("./serve.js")).runServe(files, options),
+    );
   return root;
 }
 
@@ -87,12 +129,23 @@ function report(error: unknown): number {
   return 70;
 }
 
-process.on("SIGINT", () => process.exit(130));
-// A reader such as `head` may close the pipe early; that is no error.
-process.stdout.on("error", (error: NodeJS.ErrnoException) => process.exit(error.code === "EPIPE" ? 0 : 70));
+function run(): void {
+  if (isMainThread) {
+    process.on("SIGINT", () => process.exit(130));
+    // A reader such as `head` may close the pipe early; that is no error.
+    process.stdout.on("error", (error: NodeJS.ErrnoException) =>
+      process.exit(error.code === "EPIPE" ? 0 : 70),
+    );
+  }
+  if (isMainThread && needsOwnThread(process.argv.slice(2))) {
+    runInOwnThread(__filename);
+    return;
+  }
+  program()
+    .parseAsync()
+    .catch((error: unknown) => {
+      process.exitCode = report(error);
+    });
+}
 
-program()
-  .parseAsync()
-  .catch((error: unknown) => {
-    process.exitCode = report(error);
-  });
+run();

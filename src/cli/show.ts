@@ -2,8 +2,11 @@ import { InputError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { nearestNames } from "../hadrons/nearest-names.js";
 import { canonicalJson } from "../tables/canonical-json.js";
+import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
-import { checkSeal, digestOf } from "../tables/sealed-bytes.js";
+import { decodeFactors } from "../tables/decode-factors.js";
+import { checkSeal, digestOf, type TableKind } from "../tables/sealed-bytes.js";
+import { describeCouplings } from "./describe-couplings.js";
 import { readInput } from "./read-input.js";
 import { significant, withError } from "./rounding.js";
 import { textTable } from "./text-table.js";
@@ -15,9 +18,7 @@ export function runShow(path: string, options: { parent?: string; json?: true })
   const bytes = readInput(path);
   const kind = checkSeal(bytes, path);
   if (options.json) {
-    const message =
-      kind === "couplet.v1.DecayTables" ? decodeDecays(bytes, path) : v1.FactorTable.decode(bytes);
-    process.stdout.write(`${JSON.stringify(canonicalJson(kind, message), null, 2)}\n`);
+    process.stdout.write(`${JSON.stringify(canonicalJson(kind, decoded(kind, bytes, path)), null, 2)}\n`);
   } else if (kind === "couplet.v1.DecayTables") {
     const tables = decodeDecays(bytes, path);
     const parents =
@@ -25,7 +26,16 @@ export function runShow(path: string, options: { parent?: string; json?: true })
     process.stdout.write(
       describeHeader(tables, path, digestOf(bytes)) + parents.map(describeParent).join(""),
     );
-  } else process.stdout.write(describeFactorFile(v1.FactorTable.decode(bytes), path, digestOf(bytes)));
+  } else if (kind === "couplet.v1.CouplingTables") {
+    const tables = decodeCouplings(bytes, path);
+    process.stdout.write(`${describeCouplings(tables, path)}sha256 ${digestOf(bytes)}\n`);
+  } else process.stdout.write(describeFactorFile(decodeFactors(bytes, path), path, digestOf(bytes)));
+}
+
+function decoded(kind: TableKind, bytes: Uint8Array, path: string): object {
+  if (kind === "couplet.v1.DecayTables") return decodeDecays(bytes, path);
+  if (kind === "couplet.v1.CouplingTables") return decodeCouplings(bytes, path);
+  return decodeFactors(bytes, path);
 }
 
 function parentNamed({ parents }: v1.DecayTables, name: string, path: string): v1.Parent {

@@ -1,7 +1,7 @@
 import { InputError } from "../errors.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import type { Fit } from "../model/fit-model.js";
-import type { Channel, Model, Observable, Parent } from "../model/model.js";
+import type { Channel, Model, Observable, Parent, Quantum } from "../model/model.js";
 import { partsPerBillion } from "./parts-per-billion.js";
 import { type Predictions, predict } from "./predictions.js";
 import type { Comparison, Flag, ParentTable, Row, RowWave, Tables } from "./tables.js";
@@ -52,18 +52,27 @@ interface MeasuredShare {
 }
 
 interface Measured {
-  readonly observables: readonly Observable[];
+  readonly observables: readonly Settling[];
   readonly byChannel: ReadonlyMap<number, MeasuredShare>;
+}
+
+type Settling = Observable & { readonly quantum: Extract<Quantum, { kind: "width" | "fraction" }> };
+
+/** Whether a measurement stands in the table: a width or fraction of whole channels that the study puts there. */
+function settlesRows(observable: Observable): observable is Settling {
+  const { quantum, use, measured } = observable;
+  if (use === "fit" || measured.limit !== undefined) return false;
+  return (quantum.kind === "width" || quantum.kind === "fraction") && quantum.of.every(({ waves }) => waves === undefined);
 }
 
 /** The channels that measurements settle, and how each measured sum splits into charge states. */
 function measuredWidths(model: Model, predictions: Predictions): Measured {
-  const observables = model.observables.filter((o) => o.use !== "fit" && o.kind !== "ratio");
+  const observables = model.observables.filter(settlesRows);
   const byChannel = new Map<number, MeasuredShare>();
   for (const [index, observable] of observables.entries()) {
-    const parents = new Set(observable.numerator.map(({ channel }) => model.channels[channel]!.parent.name));
+    const parents = new Set(observable.quantum.of.map(({ channel }) => model.channels[channel]!.parent.name));
     for (const parent of parents) {
-      const channels = observable.numerator
+      const channels = observable.quantum.of
         .map(({ channel }) => channel)
         .filter((c) => model.channels[c]!.parent.name === parent);
       const weights = channels.map((channel) =>
@@ -85,7 +94,7 @@ function measuredWidths(model: Model, predictions: Predictions): Measured {
 function chargeWeight(channel: Channel, amplitudes: readonly number[]): number {
   const known = amplitudes.some((amplitude) => amplitude !== 0);
   return channel.waves.reduce((sum, wave, w) => {
-    const square = known ? amplitudes[w]! ** 2 : channel.isospinShare;
+    const square = known ? amplitudes[w]! ** 2 : channel.isospinCoefficient ** 2;
     return sum + channel.identicalFactor * square * wave.kinematicFactor;
   }, 0);
 }
@@ -110,10 +119,10 @@ function entryOf(model: Model, predictions: Predictions, index: number, measured
   const { widthMeV, gradient, breakingMeV } = predictions.channels[index]!;
   const found = measured.byChannel.get(index);
   if (found === undefined) return { id, kind: "predicted", widthMeV, gradient, breakingMeV };
-  const { kind, measured: quantity } = measured.observables[found.observable]!;
+  const { quantum, measured: quantity } = measured.observables[found.observable]!;
   return {
     id,
-    kind: kind === "width" ? "measured width" : "measured fraction",
+    kind: quantum.kind === "width" ? "measured width" : "measured fraction",
     observable: found.observable,
     share: found.share,
     value: quantity.value * found.share,
@@ -154,7 +163,7 @@ function parentTable(
       thresholdMeV: channel.thresholdMeV,
       momentumMeV: channel.momentumMeV,
       identicalFactor: channel.identicalFactor,
-      waves: wavesOf(model, channel, predictions.channels[index]!, widthMeV.value),
+      waves: wavesOf(channel, predictions.channels[index]!, widthMeV.value),
     };
   });
   if (remainder !== undefined) rows.push(remainderRow(parent, parts.at(-1)!, remainder));
@@ -204,19 +213,18 @@ function flagsOf(channel: Channel, entry: Entry, relativeStrength: number): Flag
 
 /** Amplitudes whose squares add up to the row's width: the fit's, scaled to a measured width where there is one. */
 function wavesOf(
-  model: Model,
   channel: Channel,
   { amplitudes, widthMeV }: { amplitudes: readonly number[]; widthMeV: number },
   rowWidthMeV: number,
 ): RowWave[] {
   return channel.waves.map((wave, w): RowWave => {
-    const { L, twoS } = model.decays[wave.decay]!;
+    const { L, twoS } = wave;
     const fitted = amplitudes[w]! * Math.sqrt(channel.identicalFactor * wave.kinematicFactor);
     const scaled =
       widthMeV > 0
         ? fitted * Math.sqrt(rowWidthMeV / widthMeV)
         : Math.sqrt(rowWidthMeV / channel.waves.length);
-    return { L, twoS, re: scaled, im: 0, decay: wave.decay, flavourAmplitude: amplitudes[w]! };
+    return { L, twoS, re: scaled, im: 0, model: wave.model, flavourAmplitude: amplitudes[w]! };
   });
 }
 

@@ -14,8 +14,8 @@ export function minimaToTabulate(fit: Fit): number[] {
   const mirrors = fit.minima.flatMap((minimum, k) =>
     minimum.chi2 - best.chi2 < MIRROR_DELTA_CHI2 ? [k] : [],
   );
-  if (study.mirrors === "best" || mirrors.length === 1) return [0];
-  if (study.mirrors === "each") {
+  if (study.fit.mirrors === "best" || mirrors.length === 1) return [0];
+  if (study.fit.mirrors === "each") {
     for (const k of mirrors) requireSound(fit, fit.minima[k]!);
     return mirrors;
   }

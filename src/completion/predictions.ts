@@ -1,4 +1,4 @@
-import { channelWidth, type Evaluator, evaluator, flavourAmplitudes } from "../model/evaluate.js";
+import { Evaluation, evaluator } from "../model/evaluate.js";
 import type { Fit, StudyMinimum } from "../model/fit-model.js";
 
 /** What one minimum of a fit says about one channel. */
@@ -19,6 +19,8 @@ export interface Prediction {
 export interface Predictions {
   readonly fit: Fit;
   readonly minimum: StudyMinimum;
+  /** The model at the minimum. */
+  readonly evaluation: Evaluation;
   readonly channels: readonly Prediction[];
 }
 
@@ -31,30 +33,23 @@ export interface Predictions {
  */
 export function predict(fit: Fit, minimumIndex: number): Predictions {
   const minimum = fit.minima[minimumIndex]!;
-  const evaluation = evaluator(fit.model);
-  return {
-    fit,
-    minimum,
-    channels: fit.model.channels.map((_, index) => predictChannel(evaluation, minimum, index)),
-  };
+  const evaluation = new Evaluation(evaluator(fit.model), minimum.vector);
+  return { fit, minimum, evaluation, channels: fit.model.channels.map((_, index) => predictChannel(evaluation, index)) };
 }
 
-function predictChannel(evaluation: Evaluator, minimum: StudyMinimum, index: number): Prediction {
+function predictChannel(evaluation: Evaluation, index: number): Prediction {
   const { model } = evaluation;
   const channel = model.channels[index]!;
-  const amplitudes = flavourAmplitudes(evaluation, index, minimum.vector);
-  const { value, gradient } = channelWidth(evaluation, index, minimum.vector);
+  const amplitudes = channel.waves.map((_, w) => evaluation.amplitude(index, w).value);
+  const { value, gradient } = evaluation.width(index);
   let variance = 0;
   let relativeStrength = 0;
-  for (const [w, wave] of channel.waves.entries()) {
-    const { firstParameter, reduced } = model.decays[wave.decay]!;
-    const strength = Math.hypot(...minimum.vector.slice(firstParameter, firstParameter + reduced.length));
-    const isospinLength = Math.sqrt(channel.isospinShare) * strength;
+  for (const w of channel.waves.keys()) {
+    const isospinLength = Math.abs(channel.isospinCoefficient) * evaluation.couplingStrength(index, w).value;
     const sigma = model.study.breaking * isospinLength;
-    const scale = channel.identicalFactor * wave.kinematicFactor;
+    const scale = channel.identicalFactor * evaluation.kinematicFactor(index, w);
     variance += scale * scale * (4 * amplitudes[w]! ** 2 * sigma ** 2 + 2 * sigma ** 4);
-    if (isospinLength > 0)
-      relativeStrength = Math.max(relativeStrength, Math.abs(amplitudes[w]!) / isospinLength);
+    if (isospinLength > 0) relativeStrength = Math.max(relativeStrength, Math.abs(amplitudes[w]!) / isospinLength);
   }
   return { widthMeV: value, gradient, breakingMeV: Math.sqrt(variance), amplitudes, relativeStrength };
 }

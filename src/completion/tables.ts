@@ -1,6 +1,6 @@
 import type { Hadron } from "../hadrons/hadron.js";
 import type { Fit } from "../model/fit-model.js";
-import type { Parent } from "../model/model.js";
+import type { Parent, WidthModelChoice } from "../model/model.js";
 
 /** A value whose errors are kept apart; all are standard deviations in the value's unit. */
 export interface Estimate {
@@ -36,8 +36,7 @@ export interface RowWave {
   /** sqrt(MeV); real here, since couplings are. */
   readonly re: number;
   readonly im: number;
-  /** Index into the model's decays: width model and its options. */
-  readonly decay: number;
+  readonly model: WidthModelChoice;
   /** Of the fit, in the coupling's unit. */
   readonly flavourAmplitude: number;
 }

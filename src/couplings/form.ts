@@ -1,3 +1,4 @@
+import { addRoots } from "../exact/root-sum.js";
 import { formatRoot, multiplyRoots, type SignedRoot } from "../exact/signed-root.js";
 import type { Leg } from "../hadrons/hadron.js";
 import { refuse, requireIdentity } from "../require.js";
@@ -6,7 +7,6 @@ import type { CouplingStep } from "../su3/product.js";
 import { requireState, type State, sameState, states } from "../su3/state.js";
 import { type ReachedState, StateCoupler } from "./coupled-states.js";
 import type { DecayScheme, Reduced } from "./reduced-coupling.js";
-import { addRoots } from "./root-sum.js";
 
 /**
  * One term of a form: the index of a reduced coupling in its list, and its exact coefficient, never 0.

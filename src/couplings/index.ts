@@ -16,4 +16,3 @@ export {
   type Reduced,
   reducedCouplings,
 } from "./reduced-coupling.js";
-export { addRoots } from "./root-sum.js";

@@ -29,26 +29,28 @@ export interface Curvature {
  *
  * Unlike J^T J it tells a minimum from a saddle, and does not vanish where an amplitude does.
  * @param held - parameters kept fixed; those without room for a difference inside their bounds are kept fixed too
+ * @param typicalSizes - least sizes of the parameters, > 0; default a hundredth of the largest parameter
  */
 export function curvatureAt(
   problem: CurvedProblem,
   parameters: Vector,
   held: readonly number[] = [],
+  typicalSizes?: Vector,
 ): Curvature {
+  const largest = Math.max(...parameters.map(Math.abs)) || 1;
+  const sizes = parameters.map((value, j) => Math.max(Math.abs(value), typicalSizes?.[j] ?? largest / 100));
+  const { bounds } = problem;
+  const options = { scheme: "two-point", bounds, typicalSizes: sizes } as const;
   const jacobianAt = (at: Vector) =>
-    problem.jacobian?.(at) ??
-    numericalJacobian((x) => problem.residuals(x), at, { scheme: "two-point", bounds: problem.bounds });
+    problem.jacobian?.(at) ?? numericalJacobian((x) => problem.residuals(x), at, options);
   const gradientAt = (at: Vector) => {
     const [residuals, jacobian] = [problem.residuals(at), jacobianAt(at)];
     return at.map((_, j) => residuals.reduce((sum, r, i) => sum + r * jacobian[i]![j]!, 0));
   };
   const jacobian = jacobianAt(parameters);
   const norms = parameters.map((_, j) => Math.hypot(...jacobian.map((row) => row[j]!)));
-  const largest = Math.max(...parameters.map(Math.abs)) || 1;
-  // A thousandth of the change one residual unit allows; of the parameter where the derivative vanishes.
-  const steps = norms.map(
-    (norm, j) => 1e-3 * Math.min(1 / norm, norm > 0 && parameters[j] ? 10 * largest : largest),
-  );
+  // A thousandth of the change that moves one residual by its error, and of the parameter itself.
+  const steps = norms.map((norm, j) => 1e-3 * Math.min(1 / norm, sizes[j]!));
   const room = (j: number) => {
     const bound = problem.bounds?.[j];
     return !bound || Math.min(bound.upper - parameters[j]!, parameters[j]! - bound.lower) > steps[j]!;

@@ -1,77 +1,24 @@
-import { refuse, requireInteger, requirePositive } from "../require.js";
+import { refuse } from "../require.js";
 import { curvatureAt, newtonStep } from "./curvature.js";
 import { type FitEstimate, fitEstimate } from "./fit-estimate.js";
-import { type Bound, type DifferenceScheme, numericalJacobian } from "./numerical-jacobian.js";
+import {
+  checkArguments,
+  checkJacobian,
+  type FitOptions,
+  type FitResult,
+  type LeastSquaresProblem,
+  type StoppingRule,
+} from "./least-squares.js";
+import { type DifferenceScheme, numericalJacobian } from "./numerical-jacobian.js";
 import { type LinearModel, linearModel, trustRegionStep } from "./trust-region.js";
 
-/** A sum of squares to be minimised; residuals are (predicted - measured) / error where a covariance is wanted. */
-export interface LeastSquaresProblem {
-  residuals(parameters: readonly number[]): readonly number[];
-  /** Rows = residuals, columns = parameters; numerical derivatives stand in where it is absent. */
-  jacobian?(parameters: readonly number[]): readonly (readonly number[])[];
-  readonly bounds?: readonly Bound[] | undefined;
-}
-
-/** Choices for one fit; every default is stated. */
-export interface FitOptions {
-  /** Default 1000. */
-  readonly maximumIterations?: number;
-  /** Converged when |U^T r| <= this times |r|, U spanning the columns of the Jacobian. Default 1e-7. */
-  readonly offsetTolerance?: number;
-  /** Converged when the scaled Gauss-Newton step is at most this times the scaled parameters. Default 1e-10. */
-  readonly stepTolerance?: number;
-  /** Singular values of the column-normalised Jacobian below this fraction of the largest are degenerate. Default 1e-9. */
-  readonly rankTolerance?: number;
-  /** First trust radius in units of the scaled length of the start. Default 1. */
-  readonly initialRadius?: number;
-  /** Least sizes by which numerical steps are measured, > 0. Default |start| / 100, and 1 where the start is 0. */
-  readonly typicalSizes?: readonly number[];
-  /** The part of a step, 0 to 1, that may be taken from a point; for a search that must not leave a region. */
-  readonly allowedPart?: (parameters: readonly number[], step: readonly number[]) => number;
-  /** Ends with undamped steps on extrapolated derivatives, for the last digits. Default true. */
-  readonly refine?: boolean;
-}
-
-/** The test that ended a fit; the last two mean that it did not converge. */
-export type StoppingRule =
-  | "zero residuals"
-  | "relative offset"
-  | "relative step"
-  | "newton step"
-  | "scaled gradient"
-  | "iteration limit"
-  | "no descent";
-
-/** Separate answers about one fit. */
-export interface FitVerdicts {
-  readonly converged: boolean;
-  readonly stoppedBy: StoppingRule;
-  readonly iterations: number;
-  /** Calls of `residuals`, those for numerical derivatives included. */
-  readonly evaluations: number;
-  /** |U^T r| / |r| at the end; 0 at a stationary point. */
-  readonly relativeOffset: number;
-  /** Indices of the parameters held at a bound that the fit would like to cross. */
-  readonly atBound: readonly number[];
-  /** False if a free parameter, or a combination of them, is not determined. */
-  readonly covariancePositiveDefinite: boolean;
-  /** Unit vectors in the space of the parameters along which no residual changes to first order. */
-  readonly degenerateDirections: readonly (readonly number[])[];
-}
-
-/** What a fit found, as plain data. A fit that did not converge is a result too: see `verdicts`. */
-export interface FitResult {
-  readonly parameters: number[];
-  readonly residuals: number[];
-  /** Sum of the squared residuals. */
-  readonly chi2: number;
-  /**
-   * (J^T J)^-1, never rescaled by chi2/ndf: errors follow from the errors put into the residuals alone. Rows and
-   * columns of parameters held at a bound are 0; degenerate directions are left out.
-   */
-  readonly covariance: number[][];
-  readonly verdicts: FitVerdicts;
-}
+export type {
+  FitOptions,
+  FitResult,
+  FitVerdicts,
+  LeastSquaresProblem,
+  StoppingRule,
+} from "./least-squares.js";
 
 interface Point {
   readonly parameters: number[];
@@ -86,7 +33,6 @@ const NEWTON_STEPS = 10;
 /** When so many iterations together lower chi-square by less than 1e-4 of it, Newton steps are tried. */
 const STALL_ITERATIONS = 20;
 
-/** Sum of squares. */
 const squares = (values: readonly number[]) => values.reduce((sum, value) => sum + value * value, 0);
 
 /**
@@ -137,7 +83,7 @@ class Search {
     }
     this.point = point;
     this.jacobian = this.jacobianAt(point, "two-point");
-    checkJacobian(this.jacobian, point, this.problem.jacobian !== undefined);
+    checkJacobian(this.jacobian, point.residuals.length, start.length, this.problem.jacobian !== undefined);
     this.scales = columnNorms(this.jacobian, start.length).map((norm) => (norm > 0 ? norm : 1));
   }
 
@@ -154,12 +100,10 @@ class Search {
       } else if (history.length > STALL_ITERATIONS) history.shift();
       const model = this.model();
       if (offset(model, this.point) ** 2 <= CHI2_RESOLUTION || this.point.chi2 === 0) return;
-      if (this.gaussNewtonLength(model) <= 1e-13 * this.scaledLength(this.point.parameters)) return;
+      if (this.gaussNewtonLength(model) <= 1e-13 * this.size()) return;
       this.iterations++;
       const next = this.descentFrom(model, radius);
-      if (next === undefined) {
-        break;
-      }
+      if (next === undefined) break;
       radius = next;
     }
     this.ending = this.iterations < limit ? "no descent" : "iteration limit";
@@ -217,12 +161,12 @@ class Search {
   private newtonSteps(): boolean {
     if (this.options.allowedPart) return false;
     for (let round = 0; round < NEWTON_STEPS; round++) {
-      const step = newtonStep(
-        curvatureAt(this.problem, this.point.parameters, this.heldAtBound()),
-        this.scales.length,
-      );
+      const held = this.heldAtBound();
+      const curvature = curvatureAt(this.problem, this.point.parameters, held, this.typicalSizes);
+      if (curvature.free.length + held.length < this.scales.length) return false;
+      const step = newtonStep(curvature, this.scales.length);
       if (step === undefined) return false;
-      this.newtonLength = this.scaledLength(step) / this.scaledLength(this.point.parameters);
+      this.newtonLength = this.scaledLength(step) / this.size();
       if (this.newtonLength <= (this.options.stepTolerance ?? 1e-10)) return true;
       const trial = this.pointAt(
         this.insideBounds(this.point.parameters.map((value, j) => value + step[j]!)),
@@ -279,7 +223,6 @@ class Search {
   }
 
   private stoppingRule(estimate: FitEstimate): StoppingRule {
-    const size = Math.sqrt(this.point.chi2);
     if (this.point.chi2 === 0) return "zero residuals";
     if (offset(estimate.model, this.point) <= (this.options.offsetTolerance ?? 1e-7))
       return "relative offset";
@@ -288,11 +231,6 @@ class Search {
     const length = Math.hypot(...this.point.parameters.map((value, j) => value * estimate.scales[j]!));
     if (Math.hypot(...scaled) <= (this.options.stepTolerance ?? 1e-10) * length) return "relative step";
     if (this.newtonLength <= (this.options.stepTolerance ?? 1e-10)) return "newton step";
-    const held = this.heldAtBound();
-    const steepest = this.gradient().map((value, j) =>
-      held.includes(j) ? 0 : Math.abs(value) / this.scales[j]!,
-    );
-    if (Math.max(0, ...steepest) <= 1e-10 * size) return "scaled gradient";
     return this.ending ?? "no descent";
   }
 
@@ -378,6 +316,13 @@ class Search {
     return Math.hypot(...vector.map((value, j) => value * this.scales[j]!));
   }
 
+  /** Scaled length of the parameters, none counted below its typical size. */
+  private size(): number {
+    return this.scaledLength(
+      this.point.parameters.map((v, j) => Math.max(Math.abs(v), this.typicalSizes[j]!)),
+    );
+  }
+
   private gaussNewtonLength(model: LinearModel): number {
     return trustRegionStep(model, Number.POSITIVE_INFINITY, this.scales.length).length;
   }
@@ -390,33 +335,4 @@ function offset(model: LinearModel, point: Point): number {
 
 function columnNorms(jacobian: readonly (readonly number[])[], columns: number): number[] {
   return Array.from({ length: columns }, (_, j) => Math.hypot(...jacobian.map((row) => row[j]!)));
-}
-
-function checkArguments(problem: LeastSquaresProblem, start: readonly number[], options: FitOptions): void {
-  start.forEach((value, j) => {
-    if (!Number.isFinite(value)) refuse(`levenbergMarquardt: start ${j}`, "a finite number", value);
-  });
-  const { bounds } = problem;
-  if (bounds && bounds.length !== start.length) {
-    refuse("levenbergMarquardt: bounds", `${start.length} intervals, one per parameter`, bounds.length);
-  }
-  bounds?.forEach(({ lower, upper }, j) => {
-    if (!(lower <= upper))
-      refuse(`levenbergMarquardt: bounds ${j}`, "lower <= upper", `[${lower}, ${upper}]`);
-  });
-  requireInteger("levenbergMarquardt: maximumIterations", options.maximumIterations ?? 1, 0);
-  requirePositive("levenbergMarquardt: initialRadius", options.initialRadius ?? 1);
-}
-
-function checkJacobian(jacobian: readonly (readonly number[])[], point: Point, analytic: boolean): void {
-  const rows = point.residuals.length;
-  const columns = point.parameters.length;
-  const where = analytic ? "levenbergMarquardt: jacobian" : "levenbergMarquardt: numerical derivative";
-  if (jacobian.length !== rows) refuse(where, `${rows} rows, one per residual`, jacobian.length);
-  jacobian.forEach((row, i) => {
-    if (row.length !== columns)
-      refuse(`${where} row ${i}`, `${columns} columns, one per parameter`, row.length);
-    const bad = row.findIndex((value) => !Number.isFinite(value));
-    if (bad >= 0) refuse(`${where} [${i}][${bad}] at the start`, "a finite number", row[bad]);
-  });
 }

@@ -1,8 +1,7 @@
 import { Matrix, SingularValueDecomposition } from "ml-matrix";
 import { LimitError } from "../errors.js";
-import { refuse, requirePositive } from "../require.js";
 import { type CouplingBlock, couplingBlocks, flipBlock } from "./coupling-blocks.js";
-import type { MinimaProblem } from "./minima.js";
+import { checkMinimaProblem, type MinimaProblem } from "./minima-problem.js";
 import { signCellBound, signCells } from "./sign-cells.js";
 
 type Vector = readonly number[];
@@ -31,18 +30,13 @@ export interface MinimaStart {
  * @throws InputError if forms or targets do not fit the problem
  */
 export function minimaStarts(problem: MinimaProblem, maximumStarts: number): MinimaStarts {
-  checkProblem(problem);
+  checkMinimaProblem(problem);
   const blocks = couplingBlocks(problem.forms, problem.couplingCount);
   const bounds = blocks.map((block) =>
     Math.max(1, signCellBound(blockForms(problem, block), block.couplings.length)),
   );
   const estimate = (2 + problem.forms.length) * bounds.reduce((product, count) => product * count, 1);
-  if (estimate > maximumStarts) {
-    throw new LimitError(
-      `findMinima: ${problem.couplingCount} couplings with ${problem.forms.length} forms need up to ${estimate} starts, ` +
-        `more than the limit of ${maximumStarts}. Fix or leave out couplings, or raise the limit maximumStarts.`,
-    );
-  }
+  refuseTooMany(problem, estimate, maximumStarts);
   const nowhere = [...new Array<number>(problem.couplingCount).fill(0), ...problem.nuisanceStarts];
   let combinations: Combination[] = [{ near: nowhere, inside: [nowhere] }];
   for (const block of blocks) {
@@ -58,8 +52,17 @@ export function minimaStarts(problem: MinimaProblem, maximumStarts: number): Min
     ...start,
     parameters: flipBlock(start.parameters, block),
   });
+  refuseTooMany(problem, list.length * 2 ** felt.length, maximumStarts);
   const starts = felt.reduce((all, block) => all.flatMap((start) => [start, turned(start, block)]), list);
   return { blocks, starts };
+}
+
+function refuseTooMany(problem: MinimaProblem, count: number, maximumStarts: number): void {
+  if (count <= maximumStarts) return;
+  throw new LimitError(
+    `findMinima: ${problem.couplingCount} couplings with ${problem.forms.length} forms need up to ${count} starts, ` +
+      `more than the limit of ${maximumStarts}. Fix or leave out couplings, or raise the limit maximumStarts.`,
+  );
 }
 
 /** Starts in one cell: that of linear least squares, and those inside, the deep one first. */
@@ -165,37 +168,6 @@ function chiSquared(problem: MinimaProblem, parameters: Vector): number {
 
 function blockForms(problem: MinimaProblem, block: CouplingBlock): number[][] {
   return block.forms.map((k) => block.couplings.map((j) => problem.forms[k]![j]!));
-}
-
-function checkProblem(problem: MinimaProblem): void {
-  const nuisances = problem.parameterNames.length - problem.couplingCount;
-  if (nuisances < 0 || problem.nuisanceStarts.length !== nuisances) {
-    refuse(
-      "findMinima: nuisanceStarts",
-      `${nuisances} numbers, one per name after the couplings`,
-      problem.nuisanceStarts,
-    );
-  }
-  if (problem.bounds && problem.bounds.length !== problem.parameterNames.length) {
-    refuse(
-      "findMinima: bounds",
-      `${problem.parameterNames.length} intervals, one per parameter`,
-      problem.bounds.length,
-    );
-  }
-  for (const [k, form] of problem.forms.entries()) {
-    if (form.length === problem.couplingCount && form.every(Number.isFinite)) continue;
-    refuse(`findMinima: forms ${k}`, `${problem.couplingCount} finite numbers, one per coupling`, form);
-  }
-  for (const [i, { form, amplitude, sigma }] of problem.amplitudeTargets.entries()) {
-    if (problem.forms[form] === undefined) {
-      refuse(`findMinima: amplitudeTargets ${i}, form`, `an index below ${problem.forms.length}`, form);
-    }
-    requirePositive(`findMinima: amplitudeTargets ${i}, sigma`, sigma);
-    if (!(amplitude >= 0 && Number.isFinite(amplitude))) {
-      refuse(`findMinima: amplitudeTargets ${i}, amplitude`, "a finite number >= 0", amplitude);
-    }
-  }
 }
 
 function dot(a: Vector, b: Vector): number {

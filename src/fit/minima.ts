@@ -3,35 +3,13 @@ import { chiSquareProbability } from "./chi-square.js";
 import { type CouplingBlock, flipBlock, standsInReportedSign } from "./coupling-blocks.js";
 import { curvatureAt, unscaledStep } from "./curvature.js";
 import { type FitResult, type FitVerdicts, levenbergMarquardt } from "./levenberg-marquardt.js";
+import type { MinimaProblem } from "./minima-problem.js";
 import { type MinimaStart, minimaStarts } from "./minima-starts.js";
 import { sameValley } from "./valley.js";
 
 type Vector = readonly number[];
 
-/** A fit of couplings whose observables do not tell the signs of some amplitudes, as plain numbers. */
-export interface MinimaProblem {
-  /** Couplings first, then nuisance parameters. */
-  readonly parameterNames: readonly string[];
-  readonly couplingCount: number;
-  /**
-   * Linear forms in the couplings whose sign matters: the amplitudes that enter observables, and those to be predicted.
-   * Couplings that no form joins count as unrelated in sign, and of (a, b) and (a, -b) only one is listed.
-   */
-  readonly forms: readonly Vector[];
-  /** What is known of |forms[form] . g|, for starts only; may be empty. `amplitude` >= 0, `sigma` > 0. */
-  readonly amplitudeTargets: readonly {
-    readonly form: number;
-    readonly amplitude: number;
-    readonly sigma: number;
-  }[];
-  readonly nuisanceStarts: readonly number[];
-  /** One interval per parameter. */
-  readonly bounds?: readonly { readonly lower: number; readonly upper: number }[];
-  /** (predicted - measured) / error, priors of nuisance parameters included. */
-  residuals(parameters: Vector): number[];
-  /** Rows = residuals. */
-  jacobian?(parameters: Vector): number[][];
-}
+export type { MinimaProblem } from "./minima-problem.js";
 
 /** One minimum of chi-square. */
 export interface Minimum {
@@ -81,9 +59,10 @@ const SADDLE_CURVATURE = -1e-4;
  * Every distinct minimum of chi-square for observables that feel real amplitudes l_k . g up to their signs.
  *
  * Each pattern of signs that some g can have is a cell of the hyperplanes l_k . g = 0; there are at most
- * sum_(i<p) 2 C(n-1, i) of them, not 2^n. A full fit is begun twice in one cell of each pair +-, and the results are
- * gathered into distinct minima. Stationary points that are no minima are left downhill. If a direction is degenerate
- * its valley is listed once, with the direction in the verdicts.
+ * sum_(i<p) 2 C(n-1, i) of them, not 2^n. In one cell of each pair +- fits begin at the linear least-squares solution
+ * for its signs, deep inside, and beside each wall; the results are gathered into distinct minima. Stationary points
+ * that are no minima are left downhill. Where a direction is degenerate its valley is listed once, with the direction in
+ * the verdicts. Not proven to be complete, since chi-square need not be convex in a cell; tested against random starts.
  * @throws LimitError beforehand if the starts could exceed `maximumStarts`
  * @throws InputError if the problem does not fit together, or a residual is not finite at a start
  */
@@ -228,18 +207,41 @@ class Gathering {
       if (standsInReportedSign(result.parameters, block)) continue;
       const turned = flipBlock(result.parameters, block);
       const mirrored =
-        this.fitNear(turned, result.chi2) ?? this.fitNear(this.withNuisanceStarts(turned), result.chi2);
+        this.mirrored(result, turned) ??
+        this.fitNear(turned, result.chi2) ??
+        this.fitNear(this.withNuisanceStarts(turned), result.chi2);
       if (mirrored && standsInReportedSign(mirrored.parameters, block)) result = mirrored;
     }
     return result;
   }
 
+  /** The fit at its mirror image, if chi-square is the same there: signs turn, sizes stay. */
+  private mirrored(fit: FitResult, parameters: number[]): FitResult | undefined {
+    if (!this.allowed(parameters)) return undefined;
+    const residuals = this.problem.residuals(parameters);
+    const chi2 = residuals.reduce((sum, value) => sum + value * value, 0);
+    if (!(Math.abs(chi2 - fit.chi2) <= 1e-9 * (1 + fit.chi2))) return undefined;
+    const sign = parameters.map((value, j) => (value === fit.parameters[j] ? 1 : -1));
+    const turn = (vector: Vector) => vector.map((value, j) => sign[j]! * value);
+    const degenerateDirections = fit.verdicts.degenerateDirections.map(turn);
+    return {
+      parameters,
+      residuals,
+      chi2,
+      covariance: fit.covariance.map((row, j) => turn(row).map((value) => sign[j]! * value)),
+      verdicts: { ...fit.verdicts, degenerateDirections },
+    };
+  }
+
   private fitNear(start: Vector, chi2: number): FitResult | undefined {
-    const { bounds } = this.problem;
-    if (bounds && start.some((value, j) => value < bounds[j]!.lower || value > bounds[j]!.upper))
-      return undefined;
-    const fit = levenbergMarquardt(this.problem, start, { initialRadius: 0.01 });
+    if (!this.allowed(start)) return undefined;
+    const fit = levenbergMarquardt(this.problem, start, { ...QUICK_FIT, initialRadius: 0.01 });
     return fit.verdicts.converged && Math.abs(fit.chi2 - chi2) <= 1e-6 * (1 + chi2) ? fit : undefined;
+  }
+
+  private allowed(parameters: Vector): boolean {
+    const { bounds } = this.problem;
+    return !bounds || parameters.every((v, j) => v >= bounds[j]!.lower && v <= bounds[j]!.upper);
   }
 
   private withNuisanceStarts(parameters: Vector): number[] {

@@ -1,125 +1,146 @@
 import { FormMaker } from "../couplings/form.js";
 import { STRONG } from "../couplings/operator.js";
-import { rationalToNumber } from "../exact/rational.js";
-import { signedSquare } from "../exact/signed-root.js";
-import type { Hadron } from "../hadrons/hadron.js";
-import { isospinAveragedMassMeV, type Member } from "../hadrons/multiplet.js";
+import { rootToNumber } from "../exact/signed-root.js";
+import { InputError } from "../errors.js";
 import { clebschGordan } from "../su2/clebsch-gordan.js";
 import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
 import { identicalFactor } from "../widths/partial-width.js";
+import { widthModel } from "../widths/width-model.js";
 import { channelName } from "./channel-names.js";
-import { PAIR_WEIGHT } from "./identical-multiplets.js";
-import type { Channel, Decay, Wave } from "./model.js";
-import { modelOf } from "./resolve-decays.js";
+import { logarithmicSlope, type MassParameters } from "./masses.js";
+import type { Channel, Component, Decay, Wave } from "./model.js";
+import { type Placed, placedIn } from "./placed.js";
+import type { MixedStates } from "./resolve-mixing.js";
+import { exchangeSign } from "./selection-rules.js";
+
+/** The three hadrons of one contribution to a channel, daughters in the order of the decay. */
+interface Vertex {
+  readonly parent: Placed;
+  readonly first: Placed;
+  readonly second: Placed;
+  readonly coefficient: number;
+}
+
+/** A channel while its contributions are being collected. */
+interface Growing {
+  readonly vertex: Vertex;
+  readonly waves: Map<string, { wave: Omit<Wave, "components">; masses: Decay["masses"]; components: Component[] }>;
+}
 
 /**
- * Every charge channel of the decays, in the order of decays, parents, daughters. A channel that several decays reach
- * (in other waves) is one channel with several waves.
+ * Every charge channel of the decays, in the order of decays, parents, daughters.
+ *
+ * A channel collects what all decays contribute to it: other waves side by side, and in one wave the components that
+ * mixing brings together. Two daughters that can be exchanged are one channel: with daughters from one multiplet the two
+ * orders make one normalised state, (c(a, b) + sign c(b, a))/sqrt2; for a = b both count, and the identical-particle
+ * factor 1/2 of the width goes with that.
+ *
+ * @throws InputError if two decays give one wave of a channel different width models or masses
  */
-export function channelsOf(decays: readonly Decay[]): Channel[] {
-  const channels = new Map<string, Channel>();
+export function channelsOf(
+  decays: readonly Decay[],
+  groups: readonly MixedStates[],
+  masses: MassParameters,
+): Channel[] {
+  const growing = new Map<string, Growing>();
   for (const [index, decay] of decays.entries()) {
-    for (const channel of channelsOfDecay(decay, index)) {
-      const known = channels.get(channel.id);
-      channels.set(
-        channel.id,
-        known === undefined ? channel : { ...known, waves: [...known.waves, ...channel.waves] },
-      );
+    const maker = new FormMaker({ ...decay, operator: STRONG }, decay.reduced);
+    const isPair = decay.to[0].id === decay.to[1].id;
+    for (const vertex of verticesOf(decay, groups)) {
+      const { parent, first, second } = vertex;
+      const [a, b] = [first.hadron.name, second.hadron.name];
+      const direct = channelName(parent.hadron.name, [a, b]);
+      const swapped = channelName(parent.hadron.name, [b, a]);
+      const id = growing.has(swapped) && !growing.has(direct) ? swapped : direct;
+      const channel = growing.get(id) ?? { vertex, waves: new Map() };
+      growing.set(id, channel);
+      const sign = exchangeSign(decay);
+      const norm = isPair ? Math.SQRT1_2 : 1;
+      const orders = a === b ? 1 + sign : id === direct ? 1 : sign;
+      if (orders === 0) continue;
+      addComponent(channel, decay, masses, {
+        decay: index,
+        weight: norm * orders,
+        mixing: [parent, first, second].flatMap(({ mixing }) => (mixing === undefined ? [] : [mixing])),
+        form: maker.chargeForm(parent.state, [first.state, second.state]),
+      });
     }
   }
-  return [...channels.values()];
+  return [...growing.values()].filter(({ waves }) => waves.size > 0).map(finishedChannel);
 }
 
-/** One hadron with the member it belongs to. */
-interface Placed {
-  readonly member: Member;
-  readonly hadron: Hadron;
-  readonly twoI3: number;
-}
-
-function channelsOfDecay(decay: Decay, index: number): Channel[] {
-  const maker = new FormMaker({ ...decay, operator: STRONG }, decay.reduced);
-  const [first, second] = decay.to.map(({ members }) => placed(members));
-  const isPair = decay.to[0].id === decay.to[1].id;
-  return placed(decay.from.members).flatMap((parent) =>
-    first!.flatMap((a, i) =>
-      second!.flatMap((b, j) => {
-        if (isPair && j < i) return [];
-        const share = isospinShare(parent, a, b);
-        if (share === 0) return [];
-        return [channelOf(decay, index, maker, parent, [a, b], share, isPair)];
+function verticesOf(decay: Decay, groups: readonly MixedStates[]): Vertex[] {
+  const [firsts, seconds] = decay.to.map((multiplet) => placedIn(multiplet, groups)) as [Placed[], Placed[]];
+  return placedIn(decay.from, groups).flatMap((parent) =>
+    firsts.flatMap((first) =>
+      seconds.flatMap((second) => {
+        const coefficient = isospinCoefficient(parent, first, second);
+        return coefficient === 0 ? [] : [{ parent, first, second, coefficient }];
       }),
     ),
   );
 }
 
-function placed(members: readonly Member[]): Placed[] {
-  return members.flatMap((member) =>
-    member.hadrons.map((hadron, k) => ({ member, hadron, twoI3: member.twoI - 2 * k })),
-  );
+/** SU(2) coefficient of a channel; 0 where charge, hypercharge or isospin are not conserved. */
+function isospinCoefficient({ state: r }: Placed, { state: a }: Placed, { state: b }: Placed): number {
+  if (a.threeY + b.threeY !== r.threeY || a.twoI3 + b.twoI3 !== r.twoI3) return 0;
+  if (r.twoI < Math.abs(a.twoI - b.twoI) || r.twoI > a.twoI + b.twoI) return 0;
+  return rootToNumber(clebschGordan(a.twoI, a.twoI3, b.twoI, b.twoI3, r.twoI, r.twoI3));
 }
 
-/** Square of the SU(2) coefficient; 0 where charge, hypercharge or isospin are not conserved. */
-function isospinShare(parent: Placed, a: Placed, b: Placed): number {
-  if (a.member.threeY + b.member.threeY !== parent.member.threeY || a.twoI3 + b.twoI3 !== parent.twoI3)
-    return 0;
-  const { twoI } = parent.member;
-  if (twoI < Math.abs(a.member.twoI - b.member.twoI) || twoI > a.member.twoI + b.member.twoI) return 0;
-  const coefficient = clebschGordan(a.member.twoI, a.twoI3, b.member.twoI, b.twoI3, twoI, parent.twoI3);
-  return Math.abs(rationalToNumber(signedSquare(coefficient)));
-}
-
-function channelOf(
+function addComponent(
+  channel: Growing,
   decay: Decay,
-  index: number,
-  maker: FormMaker,
-  parent: Placed,
-  daughters: readonly [Placed, Placed],
-  isospinShare: number,
-  isPair: boolean,
-): Channel {
-  const [a, b] = daughters;
-  const mass = ({ hadron, member }: Placed) =>
-    decay.masses === "charge" ? hadron.massMeV : isospinAveragedMassMeV(member);
-  const wave: Wave = {
-    decay: index,
-    components: componentsOf(maker, parent.hadron, a.hadron, b.hadron, isPair ? PAIR_WEIGHT : 1),
-    kinematicFactor: modelOf(decay).kinematicFactorMeV(mass(parent), mass(a), mass(b), {
-      L: decay.L,
-      parent: decay.from,
-      daughters: decay.to,
-    }),
-  };
-  return {
-    id: channelName(parent.hadron.name, [a.hadron.name, b.hadron.name]),
-    parent: parent.hadron,
-    daughters: [a.hadron, b.hadron],
-    isospinChannel: channelName(parent.member.name, [a.member.name, b.member.name]),
-    isospinShare,
-    identicalFactor: identicalFactor(a.hadron.name === b.hadron.name) as 1 | 0.5,
-    thresholdMeV: mass(a) + mass(b),
-    momentumMeV: breakupMomentumMeV(mass(parent), mass(a), mass(b)),
-    waves: [wave],
-  };
+  massParameters: MassParameters,
+  component: Component,
+): void {
+  const { L, twoS, model, masses } = decay;
+  const key = `${L}/${twoS}`;
+  const known = channel.waves.get(key);
+  if (known === undefined) {
+    const kinematics = kinematicsOf(channel.vertex, decay, massParameters);
+    channel.waves.set(key, { wave: { L, twoS, model, ...kinematics }, masses, components: [component] });
+    return;
+  }
+  if (known.masses !== masses || JSON.stringify(known.wave.model) !== JSON.stringify(model)) {
+    const { parent, first, second } = channel.vertex;
+    throw new InputError(
+      `${channelName(parent.hadron.name, [first.hadron.name, second.hadron.name])}: expected one width model for all decays that add up in a wave, got ${JSON.stringify(known.wave.model)} and ${JSON.stringify(model)}. Give them the same model, options and masses.`,
+    );
+  }
+  known.components.push(component);
 }
 
-/** Exact forms between the pure states in three hadrons, with the products of their weights. */
-function componentsOf(
-  maker: FormMaker,
-  parent: Hadron,
-  a: Hadron,
-  b: Hadron,
-  weight: number,
-): Wave["components"] {
-  const { from, to } = maker.scheme;
-  const terms = (hadron: Hadron, multiplet: string) =>
-    hadron.content.filter(({ leg }) => leg.multiplet === multiplet);
-  return terms(parent, from.id).flatMap((p) =>
-    terms(a, to[0]!.id).flatMap((x) =>
-      terms(b, to[1]!.id).map((y) => ({
-        weight: weight * p.weight * x.weight * y.weight,
-        form: maker.chargeForm(p.leg.state, [x.leg.state, y.leg.state]),
-      })),
-    ),
-  );
+function kinematicsOf(
+  { parent, first, second }: Vertex,
+  decay: Decay,
+  massParameters: MassParameters,
+): Pick<Wave, "kinematicFactor" | "massSlopes"> {
+  const mass = ({ hadron, averageMassMeV }: Placed) =>
+    decay.masses === "charge" ? hadron.massMeV : averageMassMeV;
+  const model = widthModel(decay.model.id, decay.model.options);
+  const vertex = { L: decay.L, parent: decay.from, daughters: decay.to };
+  const factor = (massMeV: number) => model.kinematicFactorMeV(massMeV, mass(first), mass(second), vertex);
+  const kinematicFactor = factor(mass(parent));
+  const parameter = massParameters.get(parent.member);
+  if (parameter === undefined || kinematicFactor === 0) return { kinematicFactor, massSlopes: [] };
+  const slope = logarithmicSlope(factor, mass(parent), mass(first) + mass(second));
+  return { kinematicFactor, massSlopes: [{ parameter, slope }] };
+}
+
+function finishedChannel({ vertex, waves }: Growing): Channel {
+  const { parent, first, second, coefficient } = vertex;
+  const average = [...waves.values()].every(({ masses }) => masses === "average");
+  const mass = ({ hadron, averageMassMeV }: Placed) => (average ? averageMassMeV : hadron.massMeV);
+  return {
+    id: channelName(parent.hadron.name, [first.hadron.name, second.hadron.name]),
+    parent: parent.hadron,
+    daughters: [first.hadron, second.hadron],
+    isospinChannel: channelName(parent.member, [first.member, second.member]),
+    isospinCoefficient: coefficient,
+    identicalFactor: identicalFactor(first.hadron.name === second.hadron.name) as 1 | 0.5,
+    thresholdMeV: mass(first) + mass(second),
+    momentumMeV: breakupMomentumMeV(mass(parent), mass(first), mass(second)),
+    waves: [...waves.values()].map(({ wave, components }) => ({ ...wave, components })),
+  };
 }

@@ -1,5 +1,8 @@
+import { antisymmetricCouplingOfF, hasFAndD, symmetricCouplingOfD } from "../couplings/f-and-d.js";
+import { STRONG } from "../couplings/operator.js";
 import { rootToNumber } from "../exact/signed-root.js";
-import type { Channel, Denominator, Model, Observable, Wave, WidthSum } from "./model.js";
+import { type MixingMatrix, mixingMatrix } from "./mixing-matrix.js";
+import type { Component, Decay, Model, Observable, PriorTarget, Total, Wave, WidthSum } from "./model.js";
 
 /** A value with its derivatives with respect to all parameters of the model. */
 export interface Graded {
@@ -7,107 +10,271 @@ export interface Graded {
   readonly gradient: readonly number[];
 }
 
-/**
- * The row vector r of a wave, length `model.couplingCount`: its flavour amplitude is r . couplings. Here exact forms
- * meet mixing weights and become numbers.
- */
-export function amplitudeRow(model: Model, wave: Wave): number[] {
+/** A model made ready for many evaluations: every component's exact form as a row of numbers, once. */
+export interface Evaluator {
+  readonly model: Model;
+  /** By channel, wave, component: weight times form, as coefficients of the model's couplings. */
+  readonly rows: readonly (readonly (readonly (readonly number[])[])[])[];
+}
+
+/** The evaluator of a model. Here exact forms become numbers. */
+export function evaluator(model: Model): Evaluator {
+  return {
+    model,
+    rows: model.channels.map(({ waves }) =>
+      waves.map(({ components }) => components.map((component) => componentRow(model, component))),
+    ),
+  };
+}
+
+function componentRow(model: Model, { decay, weight, form }: Component): number[] {
   const row = new Array<number>(model.couplingCount).fill(0);
-  const { firstParameter } = model.decays[wave.decay]!;
-  for (const { weight, form } of wave.components) {
-    for (const { reduced, c } of form.terms) row[firstParameter + reduced]! += weight * rootToNumber(c);
+  const { couplingRows } = model.decays[decay]!;
+  for (const { reduced, c } of form.terms) {
+    const size = weight * rootToNumber(c);
+    for (const [k, d] of couplingRows[reduced]!.entries()) row[k]! += size * d;
   }
   return row;
 }
 
-/** A model made ready for many evaluations: every wave's row vector, once. */
-export interface Evaluator {
+/** A model at one parameter vector. Widths are computed when first asked for. */
+export class Evaluation {
+  readonly #evaluator: Evaluator;
+  readonly #matrices: readonly MixingMatrix[];
+  readonly #widths = new Map<string, Graded>();
   readonly model: Model;
-  /** By channel, then wave. */
-  readonly rows: readonly (readonly (readonly number[])[])[];
-}
 
-/** The evaluator of a model. */
-export function evaluator(model: Model): Evaluator {
-  return {
-    model,
-    rows: model.channels.map((channel) => channel.waves.map((wave) => amplitudeRow(model, wave))),
-  };
-}
-
-/** Flavour amplitude of each wave of a channel, in the coupling's unit. */
-export function flavourAmplitudes(
-  evaluation: Evaluator,
-  channel: number,
-  parameters: readonly number[],
-): number[] {
-  return evaluation.rows[channel]!.map((row) => dot(row, parameters));
-}
-
-/** Partial width of a channel in MeV: identical factor times the sum over waves of |A|^2 K, with its gradient. */
-export function channelWidth(evaluation: Evaluator, index: number, parameters: readonly number[]): Graded {
-  const channel: Channel = evaluation.model.channels[index]!;
-  const gradient = new Array<number>(parameters.length).fill(0);
-  let value = 0;
-  for (const [w, row] of evaluation.rows[index]!.entries()) {
-    const amplitude = dot(row, parameters);
-    const scale = channel.identicalFactor * channel.waves[w]!.kinematicFactor;
-    value += scale * amplitude * amplitude;
-    for (let k = 0; k < row.length; k++) gradient[k]! += 2 * scale * amplitude * row[k]!;
+  constructor(
+    evaluator: Evaluator,
+    readonly parameters: readonly number[],
+  ) {
+    this.#evaluator = evaluator;
+    this.model = evaluator.model;
+    this.#matrices = this.model.mixing.map((mixing) => mixingMatrix(mixing, parameters));
   }
-  return { value, gradient };
+
+  /** The mixing matrix of a group of the model, by its index. */
+  mixing(index: number): MixingMatrix {
+    return this.#matrices[index]!;
+  }
+
+  /**
+   * Row r of a wave's flavour amplitude, length `couplingCount`: A = r . couplings at the present mixing angles,
+   * without breaking.
+   */
+  amplitudeRow(channel: number, wave: number): number[] {
+    const row = new Array<number>(this.model.couplingCount).fill(0);
+    for (const [c, component] of this.#wave(channel, wave).components.entries()) {
+      const size = this.#mixingFactor(component);
+      for (const [k, d] of this.#evaluator.rows[channel]![wave]![c]!.entries()) row[k]! += size * d;
+    }
+    return row;
+  }
+
+  /** Flavour amplitude of a wave of a channel, in the coupling's unit, breaking included. */
+  amplitude(channel: number, wave: number): Graded {
+    const row = this.amplitudeRow(channel, wave);
+    const gradient = this.#zero();
+    for (const [k, d] of row.entries()) gradient[k] = d;
+    let value = dot(row, this.parameters);
+    for (const [c, component] of this.#wave(channel, wave).components.entries()) {
+      if (component.mixing.length === 0) continue;
+      const bare = dot(this.#evaluator.rows[channel]![wave]![c]!, this.parameters);
+      for (const { parameter, factor } of this.#mixingDerivatives(component)) gradient[parameter]! += factor * bare;
+    }
+    const { breaking } = this.#wave(channel, wave);
+    if (breaking !== undefined) {
+      const strength = this.couplingStrength(channel, wave);
+      const size = this.model.study.fit.theoryError * this.model.channels[channel]!.isospinCoefficient;
+      const z = this.parameters[breaking]!;
+      value += size * strength.value * z;
+      for (const [k, d] of strength.gradient.entries()) gradient[k]! += size * z * d;
+      gradient[breaking]! += size * strength.value;
+    }
+    return { value, gradient };
+  }
+
+  /** Length |g| of the vector of reduced couplings behind a wave, in the coupling's unit. */
+  couplingStrength(channel: number, wave: number): Graded {
+    const gradient = this.#zero();
+    let square = 0;
+    for (const decay of new Set(this.#wave(channel, wave).components.map((component) => component.decay))) {
+      for (const row of this.model.decays[decay]!.couplingRows) {
+        const g = dot(row, this.parameters);
+        square += g * g;
+        for (const [k, d] of row.entries()) gradient[k]! += g * d;
+      }
+    }
+    const value = Math.sqrt(square);
+    return { value, gradient: value === 0 ? gradient.fill(0) : gradient.map((d) => d / value) };
+  }
+
+  /** K of a wave at the present masses. */
+  kinematicFactor(channel: number, wave: number): number {
+    const { kinematicFactor, massSlopes } = this.#wave(channel, wave);
+    return kinematicFactor * Math.exp(massSlopes.reduce((sum, { parameter, slope }) => sum + slope * this.#shift(parameter), 0));
+  }
+
+  /** Partial width of a channel in MeV, or of some of its waves: identical factor times the sum of |A|^2 K. */
+  width(channel: number, waves?: readonly number[]): Graded {
+    const key = `${channel}/${waves?.join() ?? ""}`;
+    const known = this.#widths.get(key);
+    if (known !== undefined) return known;
+    const { identicalFactor, waves: all } = this.model.channels[channel]!;
+    const gradient = this.#zero();
+    let value = 0;
+    for (const w of waves ?? all.keys()) {
+      const amplitude = this.amplitude(channel, w);
+      const scale = identicalFactor * this.kinematicFactor(channel, w);
+      const width = scale * amplitude.value ** 2;
+      value += width;
+      for (const [k, d] of amplitude.gradient.entries()) gradient[k]! += 2 * scale * amplitude.value * d;
+      for (const { parameter, slope } of all[w]!.massSlopes) gradient[parameter]! += width * slope;
+    }
+    const graded = { value, gradient };
+    this.#widths.set(key, graded);
+    return graded;
+  }
+
+  /** A weighted sum of partial widths in MeV. */
+  widthSum(sum: WidthSum): Graded {
+    return sum.reduce<Graded>(
+      (total, { channel, weight, waves }) => combine(total, 1, this.width(channel, waves), weight),
+      { value: 0, gradient: this.#zero() },
+    );
+  }
+
+  /** A total width in MeV. */
+  total(total: Total): Graded {
+    if (total.kind === "fixed") return { value: total.widthMeV, gradient: this.#zero() };
+    return total.kind === "parameter" ? this.#parameter(total.index) : this.widthSum(total.sum);
+  }
+
+  /** The model's value of an observable in its unit. Ratios with a vanishing denominator are infinite, 0/0 is 0. */
+  observable(observable: Observable): Graded {
+    const value = this.#unnormalised(observable);
+    if (observable.normalisation === undefined) return value;
+    const { parameter, error } = observable.normalisation;
+    const factor = 1 + error * this.parameters[parameter]!;
+    const gradient = value.gradient.map((d, k) => d * factor + (k === parameter ? error * value.value : 0));
+    return { value: value.value * factor, gradient };
+  }
+
+  #unnormalised({ quantum }: Observable): Graded {
+    switch (quantum.kind) {
+      case "width":
+      case "total":
+        return this.widthSum(quantum.of);
+      case "fraction":
+        return quotient(this.widthSum(quantum.of), this.total(quantum.total));
+      case "ratio":
+        return quotient(this.widthSum(quantum.of), this.widthSum(quantum.over));
+      case "product": {
+        const total = this.total(quantum.total);
+        return times(quotient(this.widthSum(quantum.of), total), quotient(this.widthSum(quantum.by), total));
+      }
+      case "amplitude": {
+        const t = quotient(this.#isospinProduct(quantum.pair), this.total(quantum.total));
+        return combine(t, quantum.sign, t, 0);
+      }
+      case "residue": {
+        const product = this.#isospinProduct(quantum.pair);
+        return combine(product, quantum.signed || product.value >= 0 ? 0.5 : -0.5, product, 0);
+      }
+      case "axial": {
+        const gradient = this.#zero();
+        for (const [k, d] of quantum.row.entries()) gradient[k] = d;
+        return { value: dot(quantum.row, this.parameters), gradient };
+      }
+      case "parameter":
+        return this.#priorTarget(quantum.parameter);
+    }
+  }
+
+  /** A_i A_f sqrt(k_i k_f) in MeV, where A is an isospin amplitude and k its phase space summed over charges. */
+  #isospinProduct([entrance, exit]: readonly [WidthSum, WidthSum]): Graded {
+    const [a, b] = [entrance, exit].map((sum): Graded => {
+      const { channel, waves } = sum[0]!;
+      const wave = waves?.[0] ?? 0;
+      const coefficient = this.model.channels[channel]!.isospinCoefficient;
+      const amplitude = this.amplitude(channel, wave);
+      const phaseSpace = sum.reduce((total, { channel: c, weight }) => {
+        const { identicalFactor, isospinCoefficient } = this.model.channels[c]!;
+        return total + weight * identicalFactor * isospinCoefficient ** 2 * this.kinematicFactor(c, wave);
+      }, 0);
+      return combine(amplitude, Math.sqrt(phaseSpace) / coefficient, amplitude, 0);
+    });
+    return times(a!, b!);
+  }
+
+  #priorTarget(target: PriorTarget): Graded {
+    if ("parameter" in target) return this.#parameter(target.parameter);
+    const decay = this.model.decays[target.decay]!;
+    const [s, a] = decay.couplingRows.map((row) => this.#linear(row)) as [Graded, Graded];
+    const d = combine(s, 1 / rootToNumber(symmetricCouplingOfD()), s, 0);
+    const f = combine(a, 1 / rootToNumber(antisymmetricCouplingOfF()), a, 0);
+    const sum = combine(d, 1, f, 1);
+    const ofName = { D: () => d, F: () => f, "F/D": () => quotient(f, d), alpha_F: () => quotient(f, sum), alpha_D: () => quotient(d, sum) };
+    return ofName[target.name]();
+  }
+
+  #linear(row: readonly number[]): Graded {
+    const gradient = this.#zero();
+    for (const [k, d] of row.entries()) gradient[k] = d;
+    return { value: dot(row, this.parameters), gradient };
+  }
+
+  #parameter(index: number): Graded {
+    const gradient = this.#zero();
+    gradient[index] = 1;
+    return { value: this.parameters[index]!, gradient };
+  }
+
+  #wave(channel: number, wave: number): Wave {
+    return this.model.channels[channel]!.waves[wave]!;
+  }
+
+  #shift(parameter: number): number {
+    return this.parameters[parameter]! - this.model.parameters[parameter]!.start;
+  }
+
+  #mixingFactor({ mixing }: Component): number {
+    return mixing.reduce((product, { mixing: m, state, bare }) => product * this.#matrices[m]!.value[state]![bare]!, 1);
+  }
+
+  /** Derivatives of a component's mixing factor, by parameter; a parameter may come up more than once. */
+  #mixingDerivatives({ mixing }: Component): { parameter: number; factor: number }[] {
+    return mixing.flatMap(({ mixing: m, state, bare }, k) => {
+      const others = mixing.reduce(
+        (product, e, j) => (j === k ? product : product * this.#matrices[e.mixing]!.value[e.state]![e.bare]!),
+        1,
+      );
+      return this.#matrices[m]!.derivatives.map(({ parameter, value }) => ({ parameter, factor: others * value[state]![bare]! }));
+    });
+  }
+
+  #zero(): number[] {
+    return new Array<number>(this.model.parameters.length).fill(0);
+  }
 }
 
-/** A weighted sum of partial widths in MeV, with its gradient. */
-export function widthSum(evaluation: Evaluator, sum: WidthSum, parameters: readonly number[]): Graded {
-  const gradient = new Array<number>(parameters.length).fill(0);
-  let value = 0;
-  for (const { channel, weight } of sum) {
-    const width = channelWidth(evaluation, channel, parameters);
-    value += weight * width.value;
-    for (let k = 0; k < gradient.length; k++) gradient[k]! += weight * width.gradient[k]!;
-  }
-  return { value, gradient };
+/** Whether F and D are defined for a decay: a strong decay of an octet into two octets with both couplings. */
+export function decayHasFAndD(decay: Decay): boolean {
+  return decay.reduced.length === 2 && hasFAndD({ ...decay, operator: STRONG });
 }
 
-/**
- * The model's value of an observable, in its unit, with its gradient. A ratio whose denominator vanishes is infinite;
- * 0/0 counts as 0.
- */
-export function observableValue(
-  evaluation: Evaluator,
-  observable: Observable,
-  parameters: readonly number[],
-): Graded {
-  const numerator = widthSum(evaluation, observable.numerator, parameters);
-  const denominator = denominatorValue(evaluation, observable.denominator, parameters);
-  if (numerator.value === 0 && denominator.value === 0) {
-    return { value: 0, gradient: numerator.gradient.map(() => 0) };
-  }
-  const value = numerator.value / denominator.value;
-  return {
-    value,
-    gradient: numerator.gradient.map((d, k) => (d - value * denominator.gradient[k]!) / denominator.value),
-  };
+function combine(a: Graded, x: number, b: Graded, y: number): Graded {
+  return { value: x * a.value + y * b.value, gradient: a.gradient.map((d, k) => x * d + y * b.gradient[k]!) };
 }
 
-function denominatorValue(
-  evaluation: Evaluator,
-  denominator: Denominator,
-  parameters: readonly number[],
-): Graded {
-  const gradient = new Array<number>(parameters.length).fill(0);
-  switch (denominator.kind) {
-    case "one":
-      return { value: 1, gradient };
-    case "fixed":
-      return { value: denominator.widthMeV, gradient };
-    case "parameter":
-      gradient[denominator.index] = 1;
-      return { value: parameters[denominator.index]!, gradient };
-    case "sum":
-      return widthSum(evaluation, denominator.sum, parameters);
-  }
+function times(a: Graded, b: Graded): Graded {
+  return { value: a.value * b.value, gradient: a.gradient.map((d, k) => d * b.value + a.value * b.gradient[k]!) };
+}
+
+function quotient(a: Graded, b: Graded): Graded {
+  if (a.value === 0 && b.value === 0) return { value: 0, gradient: a.gradient.map(() => 0) };
+  const value = a.value / b.value;
+  return { value, gradient: a.gradient.map((d, k) => (d - value * b.gradient[k]!) / b.value) };
 }
 
 function dot(row: readonly number[], parameters: readonly number[]): number {

@@ -1,12 +1,13 @@
-import { fAndD, hasFAndD } from "../couplings/f-and-d.js";
-import { STRONG } from "../couplings/operator.js";
+import { fAndD } from "../couplings/f-and-d.js";
 import { InputError } from "../errors.js";
 import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
-import { asymmetricSigma } from "../fit/measurement-errors.js";
 import { findMinima, type MinimaProblem, type Minimum } from "../fit/minima.js";
-import { type Evaluator, evaluator, type Graded, observableValue } from "./evaluate.js";
+import { sumsOf } from "./breaking.js";
+import { distinctPhysics } from "./distinct-physics.js";
+import { decayHasFAndD, Evaluation, type Evaluator, evaluator } from "./evaluate.js";
 import { signProblem } from "./linear-forms.js";
-import type { Model, Observable } from "./model.js";
+import type { Model, Observable, Parameter } from "./model.js";
+import { comparisons, priorResidual, reactionSigns } from "./residuals.js";
 
 /** A parameter after the fit, or a number computed from fitted ones. */
 export interface FittedParameter {
@@ -39,6 +40,10 @@ export interface StudyMinimum {
   readonly covariance: readonly (readonly number[])[];
   readonly pulls: readonly Pull[];
   readonly verdicts: FitVerdicts;
+  /** Fitted sign of each reaction whose sign the study leaves free. */
+  readonly reactionSigns: Readonly<Record<string, 1 | -1>>;
+  /** Other parameter values with the same predictions for every channel, counted and not listed. */
+  readonly equivalents: number;
 }
 
 /** Every minimum of a study's chi2, best first. */
@@ -53,76 +58,101 @@ export const LISTED_DELTA_CHI2 = 9;
 /** Below this chi2 above the best, a second minimum is not excluded by the data. */
 export const MIRROR_DELTA_CHI2 = 4;
 
+/** Free mixing angles are searched from starts this far apart, over half a turn; the other half only changes signs. */
+const ANGLE_STEP = Math.PI / 12;
+
+/** Choices for a fit. */
+export interface FitModelOptions {
+  readonly signal?: AbortSignal;
+  readonly onProgress?: (done: number, total: number) => void;
+}
+
 /**
  * The fit of a model to its observables: every minimum, however far above the best.
  *
- * @param options - progress and a way to stop
- * @throws InputError if the observables cannot determine the couplings
+ * At given mixing angles amplitudes are linear in the couplings, and all sign patterns are enumerated; free angles are
+ * searched from a grid of starts, each with its own enumeration. Minima with equal predictions are one.
+ *
+ * @throws InputError if a coupling enters no fitted observable
+ * @throws LimitError if there are too many sign patterns
  */
-export function fitModel(
-  model: Model,
-  options: { signal?: AbortSignal; onProgress?: (done: number, total: number) => void } = {},
-): Fit {
-  const evaluation = evaluator(model);
-  const fitted = model.observables.filter((observable) => observable.use !== "table");
-  requireConstrained(evaluation, fitted);
-  const { minima } = findMinima(minimaProblem(evaluation, fitted), {
-    deltaChi2: Number.POSITIVE_INFINITY,
-    ...options,
-  });
-  return { model, minima: minima.map((minimum) => studyMinimum(evaluation, fitted, minimum)) };
+export function fitModel(model: Model, options: FitModelOptions = {}): Fit {
+  const ready = evaluator(model);
+  const fitted = fittedObservables(model);
+  requireConstrained(ready, fitted);
+  const starts = nuisanceStarts(model);
+  const found: Minimum[] = [];
+  for (const [k, nuisance] of starts.entries()) {
+    const { onProgress, ...rest } = options;
+    const progress = (done: number, total: number) => onProgress?.(k * total + done, starts.length * total);
+    const problem = minimaProblem(ready, fitted, nuisance);
+    found.push(...findMinima(problem, { deltaChi2: Number.POSITIVE_INFINITY, ...rest, onProgress: progress }).minima);
+  }
+  const minima = distinctPhysics(ready, found).map(({ minimum, equivalents }) =>
+    studyMinimum(ready, fitted, minimum, equivalents),
+  );
+  return { model, minima };
 }
 
-function minimaProblem(evaluation: Evaluator, fitted: readonly Observable[]): MinimaProblem {
-  const { model } = evaluation;
-  const nuisance = model.parameters.slice(model.couplingCount);
+/** The observables of a model that enter the fit. */
+export function fittedObservables(model: Model): Observable[] {
+  return model.observables.filter((observable) => observable.use !== "table");
+}
+
+/** Parameters after the couplings, at every combination of starts of the free mixing angles. */
+function nuisanceStarts(model: Model): number[][] {
+  const count = Math.round(Math.PI / ANGLE_STEP);
+  return model.parameters.slice(model.couplingCount).reduce<number[][]>(
+    (starts, { kind, start, prior }) => {
+      const isFree = kind === "mixing angle" && prior === undefined;
+      const values = isFree ? Array.from({ length: count }, (_, k) => (k - count / 2 + 0.5) * ANGLE_STEP) : [start];
+      return starts.flatMap((rest) => values.map((value) => [...rest, value]));
+    },
+    [[]],
+  );
+}
+
+/** Chi-square of a model as a problem for the search of minima, from given starts of all but the couplings. */
+export function minimaProblem(
+  ready: Evaluator,
+  fitted: readonly Observable[],
+  nuisance: readonly number[],
+): MinimaProblem {
+  const { model } = ready;
+  const constrained = model.parameters.map((parameter, index) => ({ parameter, index })).filter(({ parameter }) => parameter.prior !== undefined);
   const terms = (parameters: readonly number[]) => [
-    ...fitted.map((observable) =>
-      residual(observableValue(evaluation, observable, parameters), observable.measured),
-    ),
-    ...nuisance.map((parameter, k) => {
-      const index = model.couplingCount + k;
-      const gradient = parameters.map((_, j) => (j === index ? 1 : 0));
-      return residual({ value: parameters[index]!, gradient }, parameter.prior!);
-    }),
+    ...comparisons(new Evaluation(ready, parameters), fitted),
+    ...constrained.map(({ parameter, index }) => priorResidual(parameter, index, parameters)),
   ];
+  const start = [...new Array<number>(model.couplingCount).fill(0), ...nuisance];
   return {
     parameterNames: model.parameters.map((parameter) => parameter.name),
     couplingCount: model.couplingCount,
-    ...signProblem(evaluation, fitted),
-    nuisanceStarts: nuisance.map((parameter) => parameter.start),
-    bounds: model.parameters.map((parameter) => ({
-      lower: parameter.kind === "coupling" ? Number.NEGATIVE_INFINITY : 1e-3 * parameter.start,
-      upper: Number.POSITIVE_INFINITY,
-    })),
+    ...signProblem(new Evaluation(ready, start), fitted),
+    nuisanceStarts: nuisance,
+    bounds: model.parameters.map(boundsOf),
     residuals: (parameters) => terms(parameters).map((term) => term.residual),
-    jacobian: (parameters) => terms(parameters).map((term) => term.gradient),
+    jacobian: (parameters) => terms(parameters).map((term) => [...term.gradient]),
   };
 }
 
-/**
- * (predicted - measured) / error and its gradient. The error slides from one side's to the other's between them, so
- * its slope belongs to the derivative.
- */
-function residual(
-  predicted: Graded,
-  { value, plus, minus }: { readonly value: number; readonly plus: number; readonly minus: number },
-): { residual: number; gradient: number[] } {
-  const sigma = asymmetricSigma(value, minus, plus, predicted.value);
-  const distance = predicted.value - value;
-  const between = distance > -minus && distance < plus;
-  const slope = between ? (plus - minus) / (plus + minus) : 0;
-  const derivative = (1 - (distance * slope) / sigma) / sigma;
-  return { residual: distance / sigma, gradient: predicted.gradient.map((d) => d * derivative) };
+function boundsOf({ kind, start }: Parameter): { lower: number; upper: number } {
+  const isPositive = kind === "total width" || kind === "mass";
+  return { lower: isPositive ? 1e-3 * start : Number.NEGATIVE_INFINITY, upper: Number.POSITIVE_INFINITY };
 }
 
 /** Every coupling must enter some observable that is fitted, else the data say nothing about it. */
 function requireConstrained({ model, rows }: Evaluator, fitted: readonly Observable[]): void {
   const touched = new Set<number>();
-  for (const { numerator, denominator } of fitted) {
-    const sums = denominator.kind === "sum" ? [...numerator, ...denominator.sum] : numerator;
-    for (const { channel } of sums) {
-      for (const row of rows[channel]!) for (const [k, c] of row.entries()) if (c !== 0) touched.add(k);
+  const touch = (row: readonly number[]) => {
+    for (const [k, c] of row.entries()) if (c !== 0) touched.add(k);
+  };
+  for (const { quantum } of fitted) {
+    for (const { channel } of sumsOf(quantum).flat()) rows[channel]!.flat().forEach(touch);
+    if (quantum.kind === "axial") touch(quantum.row);
+    if (quantum.kind === "parameter") {
+      if ("parameter" in quantum.parameter) touched.add(quantum.parameter.parameter);
+      else model.decays[quantum.parameter.decay]!.couplingRows.forEach(touch);
     }
   }
   const free = model.parameters.slice(0, model.couplingCount).filter((_, k) => !touched.has(k));
@@ -133,26 +163,23 @@ function requireConstrained({ model, rows }: Evaluator, fitted: readonly Observa
   );
 }
 
-function studyMinimum(evaluation: Evaluator, fitted: readonly Observable[], minimum: Minimum): StudyMinimum {
-  const { model } = evaluation;
-  const error = (index: number) => Math.sqrt(Math.max(0, minimum.covariance[index]?.[index] ?? 0));
+function studyMinimum(
+  ready: Evaluator,
+  fitted: readonly Observable[],
+  minimum: Minimum,
+  equivalents: number,
+): StudyMinimum {
+  const { model } = ready;
+  const evaluation = new Evaluation(ready, minimum.parameters);
   const direct = model.parameters.map(
-    (parameter, k): FittedParameter => ({
-      name: parameter.name,
+    ({ name, unit }, k): FittedParameter => ({
+      name,
       value: minimum.parameters[k]!,
-      error: error(k),
-      unit: parameter.unit,
+      error: Math.sqrt(Math.max(0, minimum.covariance[k]?.[k] ?? 0)),
+      unit,
       derived: false,
     }),
   );
-  const pulls = fitted.map((observable): Pull => {
-    const { value } = observableValue(evaluation, observable, minimum.parameters);
-    return {
-      observable,
-      fitted: value,
-      pull: residual({ value, gradient: [] }, observable.measured).residual,
-    };
-  });
   return {
     chi2: minimum.chi2,
     ndf: minimum.ndf,
@@ -160,27 +187,30 @@ function studyMinimum(evaluation: Evaluator, fitted: readonly Observable[], mini
     parameters: [...direct, ...model.decays.flatMap((_, index) => derivedParameters(model, index, minimum))],
     vector: minimum.parameters,
     covariance: minimum.covariance,
-    pulls,
+    pulls: comparisons(evaluation, fitted).map(({ observable, fitted: value, residual }) => ({
+      observable,
+      fitted: value,
+      pull: residual,
+    })),
     verdicts: minimum.verdicts,
+    reactionSigns: Object.fromEntries(reactionSigns(evaluation, fitted)),
+    equivalents,
   };
 }
 
 /** F, D and what is made of them, for a strong decay of an octet into two octets. */
 function derivedParameters(model: Model, index: number, minimum: Minimum): FittedParameter[] {
   const decay = model.decays[index]!;
-  if (decay.reduced.length !== 2 || !hasFAndD({ ...decay, operator: STRONG })) return [];
-  const [s, a] = [decay.firstParameter, decay.firstParameter + 1];
-  const block = [s, a].map((i) => [s, a].map((j) => minimum.covariance[i]![j]!));
-  const { D, F, fOverD, alphaF, alphaD } = fAndD(minimum.parameters[s]!, minimum.parameters[a]!, block);
-  const { unit } = model.parameters[s]!;
+  if (!decayHasFAndD(decay)) return [];
+  const value = (row: readonly number[]) => row.reduce((sum, c, k) => sum + c * minimum.parameters[k]!, 0);
+  const covariance = (a: readonly number[], b: readonly number[]) =>
+    a.reduce((sum, x, i) => sum + b.reduce((inner, y, j) => inner + x * minimum.covariance[i]![j]! * y, 0), 0);
+  const rows = decay.couplingRows;
+  const block = rows.map((a) => rows.map((b) => covariance(a, b)));
+  const { D, F, fOverD, alphaF, alphaD } = fAndD(value(rows[0]!), value(rows[1]!), block);
+  const unit = model.parameters[rows[0]!.findIndex((c) => c !== 0)]!.unit;
   const prefix = decay.name === "" ? "" : `${decay.name}.`;
-  const named = {
-    D: [D, unit],
-    F: [F, unit],
-    "F/D": [fOverD, "1"],
-    alpha_F: [alphaF, "1"],
-    alpha_D: [alphaD, "1"],
-  } as const;
+  const named = { D: [D, unit], F: [F, unit], "F/D": [fOverD, "1"], alpha_F: [alphaF, "1"], alpha_D: [alphaD, "1"] } as const;
   return Object.entries(named).flatMap(([name, [estimate, ofUnit]]) =>
     estimate === null ? [] : [{ name: `${prefix}${name}`, ...estimate, unit: ofUnit, derived: true }],
   );

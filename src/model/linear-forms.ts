@@ -1,17 +1,21 @@
 import type { MinimaProblem } from "../fit/minima.js";
-import type { Evaluator } from "./evaluate.js";
+import { sumsOf } from "./breaking.js";
+import type { Evaluation } from "./evaluate.js";
 import type { Observable, WidthSum } from "./model.js";
 
 /** Two linear forms count as one when their unit vectors agree to this. */
 const SAME_DIRECTION = 1e-9;
 
+type Target = MinimaProblem["amplitudeTargets"][number];
+
 /**
- * The linear forms whose signs tell the minima apart, and the amplitudes that single widths and fractions fix.
+ * The linear forms whose signs tell the minima apart, and the amplitudes that single widths and fractions fix, at the
+ * mixing angles of an evaluation.
  *
  * Every wave of every channel that enters a fitted observable gives one form; parallel ones count once.
  */
 export function signProblem(
-  { model, rows }: Evaluator,
+  evaluation: Evaluation,
   fitted: readonly Observable[],
 ): Pick<MinimaProblem, "forms" | "amplitudeTargets"> {
   const forms: number[][] = [];
@@ -27,40 +31,28 @@ export function signProblem(
   /** The form and the factor of its square, if the sum of widths is the square of a single form. */
   const asSquare = (sum: WidthSum): { form: number; factor: number } | undefined => {
     const squares = new Map<number, number>();
-    for (const { channel, weight } of sum) {
-      const { identicalFactor, waves } = model.channels[channel]!;
-      for (const [w, row] of rows[channel]!.entries()) {
-        const found = formOf(row);
+    for (const { channel, weight, waves } of sum) {
+      const { identicalFactor, waves: all } = evaluation.model.channels[channel]!;
+      for (const w of waves ?? all.keys()) {
+        const found = formOf(evaluation.amplitudeRow(channel, w));
         if (found === undefined) continue;
-        const factor = weight * identicalFactor * waves[w]!.kinematicFactor * found.square;
+        const factor = weight * identicalFactor * evaluation.kinematicFactor(channel, w) * found.square;
         squares.set(found.form, (squares.get(found.form) ?? 0) + factor);
       }
     }
     const [first, ...others] = [...squares].map(([form, factor]) => ({ form, factor }));
     return others.length === 0 && first !== undefined && first.factor > 0 ? first : undefined;
   };
-  const amplitudeTargets: { form: number; amplitude: number; sigma: number }[] = [];
-  for (const { numerator, denominator, measured } of fitted) {
-    const square = asSquare(numerator);
-    if (denominator.kind === "sum") {
-      asSquare(denominator.sum);
-      continue;
-    }
-    if (square === undefined) continue;
-    const total =
-      denominator.kind === "one"
-        ? 1
-        : denominator.kind === "fixed"
-          ? denominator.widthMeV
-          : model.parameters[denominator.index]!.start;
-    const amplitude = Math.sqrt((measured.value * total) / square.factor);
+  const amplitudeTargets: Target[] = [];
+  for (const { quantum, measured } of fitted) {
+    const squares = sumsOf(quantum).map(asSquare);
+    const total = quantum.kind === "width" ? 1 : quantum.kind === "fraction" && quantum.total.kind !== "sum" ? evaluation.total(quantum.total).value : 0;
+    const [square] = squares;
+    if (square === undefined || total === 0) continue;
+    const amplitude = Math.sqrt(Math.max(0, measured.value * total) / square.factor);
     const error = ((measured.plus + measured.minus) / 2) * (total / square.factor);
     // d(a^2) = 2 a da; near zero the error of the square itself limits the amplitude.
-    amplitudeTargets.push({
-      form: square.form,
-      amplitude,
-      sigma: error / Math.max(2 * amplitude, Math.sqrt(error)),
-    });
+    amplitudeTargets.push({ form: square.form, amplitude, sigma: error / Math.max(2 * amplitude, Math.sqrt(error)) });
   }
   return { forms, amplitudeTargets };
 }

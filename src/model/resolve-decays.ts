@@ -4,22 +4,24 @@ import type { Multiplet } from "../hadrons/multiplet.js";
 import { refuse } from "../require.js";
 import type { Quantity, Study, StudyDecay } from "../study/study.js";
 import { allowedWaves } from "../widths/allowed-waves.js";
-import { type WidthModel, widthModel } from "../widths/width-model.js";
-import { exchangeSymmetric } from "./identical-multiplets.js";
-import type { Decay } from "./model.js";
+import { widthModel } from "../widths/width-model.js";
+import type { Decay, Parameter } from "./model.js";
 import type { Problems } from "./problems.js";
+import { quarkLineCouplings } from "./quark-line.js";
 import { resolveMultiplet, type StudyBoundMultiplet } from "./resolve-multiplets.js";
+import { chargeConjugationEven, exchangeSymmetric } from "./selection-rules.js";
 
-/** The decays of a study, with their reduced couplings numbered through; what cannot be resolved is noted. */
+/** A decay before its reduced couplings are expressed in the couplings that are fitted. */
+export type UntiedDecay = Omit<Decay, "couplingRows">;
+
+/** The decays of a study and the couplings that are fitted; what cannot be resolved is noted. */
 export function resolveDecays(
   study: Study,
   own: ReadonlyMap<string, StudyBoundMultiplet>,
   problems: Problems,
-): Decay[] {
-  const decays: Decay[] = [];
-  let firstParameter = 0;
+): { decays: Decay[]; couplings: Parameter[] } {
   const names = new Set<string>();
-  for (const [k, written] of study.decays.entries()) {
+  const untied = study.decays.map((written, k) => {
     const path = `decays/${k}`;
     if (names.has(written.name)) {
       problems.add(
@@ -28,45 +30,78 @@ export function resolveDecays(
       );
     }
     names.add(written.name);
-    const decay = resolveDecay(written, path, own, firstParameter, problems);
-    if (decay === undefined) continue;
-    decays.push(decay);
-    firstParameter += decay.reduced.length;
+    return resolveDecay(written, path, own, problems);
+  });
+  const resolved = untied.filter((decay) => decay !== undefined);
+  if (resolved.length < untied.length) return { decays: [], couplings: [] };
+  return tie(study, resolved, problems);
+}
+
+/** Expresses every reduced coupling in the ones that are fitted: itself, or those the quark-line rule leaves. */
+function tie(study: Study, untied: readonly UntiedDecay[], problems: Problems): { decays: Decay[]; couplings: Parameter[] } {
+  const couplings: Parameter[] = [];
+  const rows: (readonly number[])[][] = untied.map(() => []);
+  const families = study.quarkLine.map((names, k) => {
+    const members = names.map((name) => untied.findIndex((decay) => decay.name === name));
+    for (const [j, index] of members.entries()) {
+      if (index < 0) problems.add(`quarkLine/${k}/${j}`, `expected the name of a decay of this study, got ${JSON.stringify(names[j])}.`);
+    }
+    return members.filter((index) => index >= 0);
+  });
+  const parameterOf = (decay: UntiedDecay, name: string): number =>
+    couplings.push({ name, kind: "coupling", unit: unitOf(decay), start: 1 }) - 1;
+  for (const [k, family] of families.entries()) {
+    const tied = problems.attempt(`quarkLine/${k}`, () => quarkLineCouplings(family.map((index) => untied[index]!)));
+    if (tied === undefined) continue;
+    const columns = tied.free.map(({ decay, reduced }) => {
+      const owner = untied[family[decay]!]!;
+      return parameterOf(owner, owner.reduced[reduced]!.name);
+    });
+    for (const [m, index] of family.entries()) {
+      rows[index] = tied.rows[m]!.map((row) => sparse(columns.map((column, j) => [column, row[j]!])));
+    }
   }
-  return decays;
+  for (const [index, decay] of untied.entries()) {
+    if (families.some((family) => family.includes(index))) continue;
+    rows[index] = decay.reduced.map(({ name }) => sparse([[parameterOf(decay, name), 1]]));
+  }
+  const filled = (row: readonly number[]) => Array.from({ length: couplings.length }, (_, k) => row[k] ?? 0);
+  return { decays: untied.map((decay, index) => ({ ...decay, couplingRows: rows[index]!.map(filled) })), couplings };
+}
+
+function sparse(entries: readonly (readonly [number, number])[]): number[] {
+  const row: number[] = [];
+  for (const [column, value] of entries) row[column] = value;
+  return row;
+}
+
+function unitOf(decay: UntiedDecay): string {
+  const { id, options } = decay.model;
+  return widthModel(id, options).amplitudeUnit({ L: decay.L, parent: decay.from, daughters: decay.to });
 }
 
 function resolveDecay(
   written: StudyDecay,
   path: string,
   own: ReadonlyMap<string, StudyBoundMultiplet>,
-  firstParameter: number,
   problems: Problems,
-): Decay | undefined {
+): UntiedDecay | undefined {
   const from = resolveMultiplet(written.from, `${path}/from`, own, problems)?.multiplet;
   const first = resolveMultiplet(written.to[0], `${path}/to/0`, own, problems)?.multiplet;
   const second = resolveMultiplet(written.to[1], `${path}/to/1`, own, problems)?.multiplet;
   const model = problems.attempt(`${path}/model`, () =>
     widthModel(written.model.id, plainOptions(written.model.options)),
   );
-  if (from === undefined || first === undefined || second === undefined || model === undefined)
-    return undefined;
+  if (from === undefined || first === undefined || second === undefined || model === undefined) return undefined;
   return problems.attempt(path, () => {
     requireBaryonFirst(from, first, second);
     const twoS = waveSpin(written, from, first, second);
     const reduced = couplingsOf(written, from, first, second, twoS);
     const { id, options } = model;
-    return {
-      name: written.name,
-      from,
-      to: [first, second],
-      L: written.L,
-      twoS,
-      model: { id, options },
-      masses: written.masses,
-      reduced,
-      firstParameter,
-    };
+    const { name, L, masses } = written;
+    // Asked for here, so that a model without a formula for this vertex is refused at its decay.
+    model.amplitudeUnit({ L, parent: from, daughters: [first, second] });
+    return { name, from, to: [first, second] as const, L, twoS, model: { id, options }, masses, reduced };
   });
 }
 
@@ -78,23 +113,13 @@ function plainOptions(options: Readonly<Record<string, number | Quantity>>): Rec
 }
 
 function requireBaryonFirst(from: Multiplet, first: Multiplet, second: Multiplet): void {
-  if (first.baryonNumber + second.baryonNumber !== from.baryonNumber) {
-    refuse(
-      "to",
-      `two multiplets of baryon number ${from.baryonNumber} together`,
-      first.baryonNumber + second.baryonNumber,
-    );
-  }
-  if (first.charm + second.charm !== from.charm) {
-    refuse("to", `two multiplets of charm ${from.charm} together`, first.charm + second.charm);
+  for (const [key, word] of [["baryonNumber", "baryon number"], ["charm", "charm"]] as const) {
+    const sum = first[key] + second[key];
+    if (sum !== from[key]) refuse("to", `two multiplets of ${word} ${from[key]} together`, sum);
   }
   if (first.baryonNumber === 0 && second.baryonNumber !== 0) {
-    refuse(
-      "to",
-      "the baryon first, the meson second",
-      `${first.id}, ${second.id}`,
-      "Exchange them: the order fixes the sign of F.",
-    );
+    const mend = "Exchange them: the order fixes the sign of F.";
+    refuse("to", "the baryon first, the meson second", `${first.id}, ${second.id}`, mend);
   }
 }
 
@@ -106,15 +131,12 @@ function waveSpin(written: StudyDecay, from: Multiplet, first: Multiplet, second
   );
   const text = waves.map(({ L, twoS }) => `L=${L} S=${twoS % 2 === 0 ? twoS / 2 : `${twoS}/2`}`).join(", ");
   if (withL.length === 0) {
-    refuse(
-      "L",
-      "a wave that spin and parity allow",
-      written.L,
-      text === "" ? "They allow none; check the spins and parities." : `They allow: ${text}.`,
-    );
+    const mend = text === "" ? "They allow none; check the spins and parities." : `They allow: ${text}.`;
+    refuse("L", "a wave that spin and parity allow", written.L, mend);
   }
-  if (withL.length > 1)
+  if (withL.length > 1) {
     refuse("S", "the daughters' total spin, since L leaves a choice", "nothing", `Allowed: ${text}.`);
+  }
   return withL[0]!.twoS;
 }
 
@@ -127,19 +149,14 @@ function couplingsOf(
 ): Reduced[] {
   const scheme = { from, to: [first, second], operator: STRONG, L: written.L, twoS };
   const all = reducedCouplings(scheme, written.name);
-  const reduced = first.id === second.id ? exchangeSymmetric(scheme, all) : all;
+  const exchanged = first.id === second.id ? exchangeSymmetric(scheme, all) : all;
+  if (exchanged.length === 0) {
+    const mend = "Exchange of the two daughters forbids every coupling here.";
+    refuse("L", "a wave that two members of one multiplet can be in", written.L, mend);
+  }
+  const reduced = chargeConjugationEven(scheme, exchanged, [from, first, second]);
   if (reduced.length === 0) {
-    refuse(
-      "L",
-      "a wave that two members of one multiplet can be in",
-      written.L,
-      "Exchange of the daughters forbids every coupling here.",
-    );
+    refuse("from", "a decay that C parity allows", `${from.id} to ${first.id} ${second.id}`, "Check the C parities.");
   }
   return reduced;
-}
-
-/** The width model of a decay, made ready. */
-export function modelOf(decay: Decay): WidthModel {
-  return widthModel(decay.model.id, decay.model.options);
 }

@@ -1,168 +1,193 @@
-import { canonicalName } from "../hadrons/catalogue.js";
-import type { Hadron } from "../hadrons/hadron.js";
-import type { Multiplet } from "../hadrons/multiplet.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
-import type { Study, StudyMeasurement } from "../study/study.js";
-import { parseChannel } from "./channel-names.js";
-import type { Channel, Denominator, Observable, Parameter, Parent, WidthSum } from "./model.js";
+import { upperLimitSigma } from "../fit/measurement-errors.js";
+import type { Quantity, Study, StudyMeasurement } from "../study/study.js";
+import { axialRow } from "./axial.js";
+import type { Decay, Observable, Parameter, Parent, Quantum, Total, WidthSum } from "./model.js";
 import type { Problems } from "./problems.js";
+import { hadronsNamed, type Known, widthSumOf } from "./width-sums.js";
 
 /** What measurements are resolved against. */
-export interface Resolved {
-  readonly channels: readonly Channel[];
-  readonly parents: readonly Parent[];
-  readonly multiplets: readonly Multiplet[];
-  readonly couplings: readonly Parameter[];
-}
-
-/** Observables of a study and the total widths that become parameters because a fraction is fitted. */
-export interface Measurements {
-  readonly observables: readonly Observable[];
-  readonly totals: readonly Parameter[];
+export interface Context extends Known {
+  readonly study: Study;
+  readonly decays: readonly Decay[];
+  /** Parameters so far; total widths and normalisations are appended. */
+  readonly parameters: Parameter[];
 }
 
 /** Ties every measurement to the channels it is about; what cannot be tied is noted. */
-export function resolveMeasurements(study: Study, resolved: Resolved, problems: Problems): Measurements {
-  const totals: Parameter[] = [];
-  const observables = study.measurements.map((measurement, k) =>
-    resolveMeasurement(measurement, `measurements/${k}`, resolved, totals, problems),
-  );
-  return { observables: observables.filter((observable) => observable !== undefined), totals };
+export function resolveMeasurements(context: Context, problems: Problems): Observable[] {
+  return context.study.measurements
+    .map((measurement, k) => resolveMeasurement(measurement, `measurements/${k}`, context, problems))
+    .filter((observable) => observable !== undefined);
 }
 
 function resolveMeasurement(
   measurement: StudyMeasurement,
   path: string,
-  resolved: Resolved,
-  totals: Parameter[],
+  context: Context,
   problems: Problems,
 ): Observable | undefined {
-  const { kind, channels, value, source, use } = measurement;
-  const paths = kind === "ratio" ? [`${path}/ratio/0`, `${path}/ratio/1`] : [`${path}/${kind}`];
-  const sums = channels.map((text, k) => widthSumOf(text, paths[k]!, resolved, problems));
-  if (use !== "table" && value.plus === 0) {
+  const { kind, channels, signOnly, source, use } = measurement;
+  const measured = withLimit(measurement.value);
+  if (use !== "table" && !signOnly && measured.plus === 0) {
     problems.add(
       `${path}/value`,
       "expected an error, since the value enters the fit. Write `value +- error`, or give it `use: table`.",
     );
     return undefined;
   }
-  const [numerator, other] = sums;
-  if (numerator === undefined || (kind === "ratio" && other === undefined)) return undefined;
-  const label = `${kind} ${channels.join(" / ")}`;
-  const common = {
-    label,
-    kind,
-    measured: value,
-    source,
-    use,
-    numerator,
-    position: problems.positionOf(path),
-  };
-  if (kind === "width") return { ...common, denominator: { kind: "one" } };
-  if (kind === "ratio") return { ...common, denominator: { kind: "sum", sum: other! } };
-  const denominator = totalWidthOf(numerator, use !== "table", resolved, totals);
-  return { ...common, denominator };
+  const quantum = quantumOf(measurement, path, context, problems);
+  if (quantum === undefined) return undefined;
+  const common = { measured, signOnly, source, use, position: problems.positionOf(path) };
+  const observable = { ...common, label: `${kind} ${channels.join(kind === "ratio" ? " / " : ", ")}`, quantum };
+  const normalisation = normalisationOf(measurement, path, context, problems);
+  return normalisation === undefined ? observable : { ...observable, normalisation };
 }
 
-/**
- * The sum of widths a written channel means. Names of isospin multiplets stand for all their charge states: daughters
- * are summed over, and the parents that can decay so are averaged.
- */
-function widthSumOf(
-  text: string,
+/** An upper limit as a half-Gaussian at 0. */
+function withLimit(quantity: Quantity): Quantity {
+  if (quantity.limit === undefined) return quantity;
+  const sigma = upperLimitSigma(quantity.plus, quantity.limit.confidence);
+  return { ...quantity, plus: sigma, minus: sigma };
+}
+
+function quantumOf(
+  measurement: StudyMeasurement,
   path: string,
-  resolved: Resolved,
+  context: Context,
   problems: Problems,
-): WidthSum | undefined {
-  const written = parseChannel(text);
-  if (written === undefined) {
-    problems.add(path, `expected a channel such as \`N(1675) -> N pi\`, got ${JSON.stringify(text)}.`);
+): Quantum | undefined {
+  const { kind, channels, use } = measurement;
+  const fitted = use !== "table";
+  if (kind === "axial") {
+    const row = problems.attempt(`${path}/axial`, () => axialRow(channels[0]!, context.decays));
+    return row && { kind, row: padded(row, context.parameters.length) };
+  }
+  if (kind === "total") {
+    const of = totalSum(channels[0]!, `${path}/total`, context, problems);
+    return of && { kind, of };
+  }
+  const paths = channels.length === 2 ? [`${path}/${kind}/0`, `${path}/${kind}/1`] : [`${path}/${kind}`];
+  const [of, other] = channels.map((text, k) => widthSumOf(text, paths[k]!, context, problems));
+  if (of === undefined) return undefined;
+  if (kind === "width") return { kind, of };
+  if (kind === "fraction") return { kind, of, total: totalWidthOf(of, fitted, context) };
+  if (other === undefined) return undefined;
+  if (kind === "ratio") return { kind, of, over: other };
+  if (!sameParents(of, other, context)) {
+    problems.add(`${path}/${kind}`, `expected two channels of the same parent, got ${JSON.stringify(channels)}.`);
     return undefined;
   }
-  const names = [written.parent, ...written.daughters];
-  const sets = names.map((name) => hadronsNamed(name, resolved.multiplets));
-  for (const [k, set] of sets.entries()) {
-    if (set.size > 0) continue;
-    const known = resolved.multiplets.flatMap(({ members }) =>
-      members.flatMap(({ name, hadrons }) => [name, ...hadrons.map((h) => h.name)]),
-    );
-    const near = nearestNames(names[k]!, [...new Set(known)]).join(", ");
-    problems.add(
-      path,
-      `expected a hadron of this study, got ${JSON.stringify(names[k])}.${near === "" ? "" : ` Did you mean ${near}?`}`,
-    );
-    return undefined;
-  }
-  const [parents, first, second] = sets as [Set<string>, Set<string>, Set<string>];
-  const matching = resolved.channels
-    .map((channel, index) => ({ channel, index }))
-    .filter(({ channel }) => parents.has(channel.parent.name) && matches(channel.daughters, first, second));
-  if (matching.length === 0) {
-    const there = [
-      ...new Set(
-        resolved.channels.filter(({ parent }) => parents.has(parent.name)).map((c) => c.isospinChannel),
-      ),
-    ];
-    problems.add(
-      path,
-      there.length === 0
-        ? `expected a parent that decays in this study, got ${JSON.stringify(written.parent)}.`
-        : `expected a channel of this study that conserves charge, isospin and strangeness, got ${JSON.stringify(text)}. There are: ${there.join("; ")}.`,
-    );
-    return undefined;
-  }
-  const weight = 1 / new Set(matching.map(({ channel }) => channel.parent.name)).size;
-  return matching.map(({ index }) => ({ channel: index, weight }));
+  const total = totalWidthOf(of, fitted, context);
+  if (kind === "product") return { kind, of, by: other, total };
+  const pair = [of, other] as const;
+  for (const [k, sum] of pair.entries()) if (!oneWave(sum, paths[k]!, context, problems)) return undefined;
+  if (kind === "residue") return { kind, pair, signed: measurement.phase !== undefined };
+  const sign = measurement.sign === "free" ? 1 : measurement.sign;
+  return { kind, pair, total, sign, ...(measurement.sign === "free" ? { reaction: reactionOf(pair, context) } : {}) };
 }
 
-function matches([a, b]: readonly [Hadron, Hadron], first: Set<string>, second: Set<string>): boolean {
-  return (first.has(a.name) && second.has(b.name)) || (first.has(b.name) && second.has(a.name));
+function padded(row: readonly number[], length: number): number[] {
+  return Array.from({ length }, (_, k) => row[k] ?? 0);
 }
 
-/** Names of the charge states a name stands for: one, or all of an isospin multiplet. */
-function hadronsNamed(name: string, multiplets: readonly Multiplet[]): Set<string> {
-  const canonical = canonicalName(name);
-  const names = new Set<string>();
-  for (const member of multiplets.flatMap(({ members }) => members)) {
-    const wholeMember = member.name === name || member.name === canonical;
-    for (const hadron of member.hadrons) {
-      if (wholeMember || hadron.name === name || hadron.name === canonical) names.add(hadron.name);
-    }
+function parentNames(sum: WidthSum, { channels }: Known): string[] {
+  return [...new Set(sum.map(({ channel }) => channels[channel]!.parent.name))];
+}
+
+function sameParents(a: WidthSum, b: WidthSum, known: Known): boolean {
+  return parentNames(a, known).join() === parentNames(b, known).join();
+}
+
+/** A signed amplitude is of one isospin channel and one wave. */
+function oneWave(sum: WidthSum, path: string, { channels }: Known, problems: Problems): boolean {
+  const isospin = new Set(sum.map(({ channel }) => channels[channel]!.isospinChannel));
+  const waves = sum.map(({ channel, waves }) => waves?.length ?? channels[channel]!.waves.length);
+  if (isospin.size === 1 && waves.every((count) => count === 1)) return true;
+  problems.add(path, "expected a single isospin channel in a single wave. Add the wave, such as `L=0`, or name the isospin multiplets.");
+  return false;
+}
+
+/** Key of the unknown sign of a reaction: entrance and exit by their daughters, isospin, and (L, S) of each. */
+function reactionOf([entrance, exit]: readonly [WidthSum, WidthSum], { channels }: Known): string {
+  const side = (sum: WidthSum) => {
+    const { channel, waves } = sum[0]!;
+    const { isospinChannel, waves: all, parent } = channels[channel]!;
+    const { L, twoS } = all[waves?.[0] ?? 0]!;
+    const members = isospinChannel.split(" -> ")[1]!;
+    return { text: `${members} L=${L} 2S=${twoS}`, twoI: parent.content[0]!.leg.state.twoI };
+  };
+  const [from, to] = [side(entrance), side(exit)];
+  return `${from.text} -> ${to.text}, 2I=${from.twoI}`;
+}
+
+/** All channels of a parent, averaged over the charge states a name stands for. */
+function totalSum(name: string, path: string, context: Context, problems: Problems): WidthSum | undefined {
+  const names = hadronsNamed(name, path, context.members, problems);
+  if (names.size === 0) return undefined;
+  const parents = context.parents.filter(({ hadron }) => names.has(hadron.name));
+  if (parents.length === 0) {
+    problems.add(path, `expected a parent that decays in this study, got ${JSON.stringify(name)}.`);
+    return undefined;
   }
-  return names;
+  return sumOfParents(parents);
+}
+
+function sumOfParents(parents: readonly Parent[]): WidthSum {
+  return parents.flatMap(({ channels }) => channels.map((channel) => ({ channel, weight: 1 / parents.length })));
 }
 
 /**
  * What a fraction's numerator is divided by: the mean total width of the parents. A total width with an error that
  * enters the fit becomes a parameter with that width as its prior, once for each set of parents.
  */
-function totalWidthOf(
-  numerator: WidthSum,
-  fitted: boolean,
-  resolved: Resolved,
-  totals: Parameter[],
-): Denominator {
-  const names = [...new Set(numerator.map(({ channel }) => resolved.channels[channel]!.parent.name))];
-  const parents = names.map((name) => resolved.parents.find(({ hadron }) => hadron.name === name)!);
-  if (parents.some(({ total }) => total.kind === "sum")) {
-    const sum = parents.flatMap(({ channels }) =>
-      channels.map((channel) => ({ channel, weight: 1 / parents.length })),
-    );
-    return { kind: "sum", sum };
-  }
+function totalWidthOf(numerator: WidthSum, fitted: boolean, context: Context): Total {
+  const names = parentNames(numerator, context);
+  const parents = names.map((name) => context.parents.find(({ hadron }) => hadron.name === name)!);
+  if (parents.some(({ total }) => total.kind === "sum")) return { kind: "sum", sum: sumOfParents(parents) };
   const mean = (of: (parent: Parent) => number) =>
     parents.reduce((sum, parent) => sum + of(parent), 0) / parents.length;
   const value = mean(({ total }) => total.widthMeV);
   const plus = mean(({ total }) => total.plusMeV);
   const minus = mean(({ total }) => total.minusMeV);
   if (!fitted || plus === 0 || minus === 0) return { kind: "fixed", widthMeV: value };
-  const name = `total width ${names.join(", ")}`;
-  let position = totals.findIndex((parameter) => parameter.name === name);
-  if (position < 0) {
-    position =
-      totals.push({ name, kind: "total width", unit: "MeV", start: value, prior: { value, plus, minus } }) -
-      1;
+  const prior = { value, plus, minus };
+  return {
+    kind: "parameter",
+    index: parameterIndex(context.parameters, {
+      name: `total width ${names.join(", ")}`,
+      kind: "total width",
+      unit: "MeV",
+      start: value,
+      prior,
+    }),
+  };
+}
+
+/** Index of a parameter by its name; appended if it is new. */
+function parameterIndex(parameters: Parameter[], parameter: Parameter): number {
+  const known = parameters.findIndex(({ name }) => name === parameter.name);
+  return known >= 0 ? known : parameters.push(parameter) - 1;
+}
+
+function normalisationOf(
+  { normalisation, use }: StudyMeasurement,
+  path: string,
+  { study, parameters }: Context,
+  problems: Problems,
+): Observable["normalisation"] | undefined {
+  if (normalisation === undefined || use === "table") return undefined;
+  const error = study.normalisations[normalisation];
+  if (error === undefined) {
+    const known = Object.keys(study.normalisations).join(", ");
+    problems.add(`${path}/normalisation`, `expected a name among \`normalisations\` (${known || "there are none"}), got ${JSON.stringify(normalisation)}.`);
+    return undefined;
   }
-  return { kind: "parameter", index: resolved.couplings.length + position };
+  const parameter = parameterIndex(parameters, {
+    name: `normalisation ${normalisation}`,
+    kind: "normalisation",
+    unit: "1",
+    start: 0,
+    prior: { value: 0, plus: 1, minus: 1 },
+  });
+  return { parameter, error };
 }

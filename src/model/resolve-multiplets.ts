@@ -1,13 +1,13 @@
 import { findParticle } from "../hadrons/catalogue.js";
 import { catalogueMultiplet, catalogueMultipletIds } from "../hadrons/catalogue-multiplet.js";
 import { chargeStates } from "../hadrons/charge-states.js";
-import { assembleMultiplet, type MemberParticles, type Multiplet } from "../hadrons/multiplet.js";
+import { assembleMultiplet, type MemberParticles, type Multiplet, type MultipletQuantumNumbers } from "../hadrons/multiplet.js";
 import { nearestNames } from "../hadrons/nearest-names.js";
 import type { Particle } from "../hadrons/particle.js";
 import { placeOf } from "../hadrons/place.js";
 import { refuse } from "../require.js";
 import type { StudyChargeState, StudyMember, StudyMultiplet } from "../study/study.js";
-import { type Irrep, parseIrrep } from "../su3/irrep.js";
+import { type IsospinMultiplet, parseIrrep } from "../su3/irrep.js";
 import type { Problems } from "./problems.js";
 
 /** A multiplet with what only a study knows of it. */
@@ -46,7 +46,9 @@ export function studyMultiplet(
   const irrep = problems.attempt(`${path}/irrep`, () => parseIrrep(written.irrep));
   if (irrep === undefined) return undefined;
   const members = written.members.map((member, k) =>
-    problems.attempt(`${path}/members/${k}`, () => memberParticles(irrep, written, member)),
+    problems.attempt(`${path}/members/${k}`, () =>
+      memberParticles(placeOf(irrep, member.place), { irrep, ...quantumNumbers(written) }, member),
+    ),
   );
   const usable = members.filter((member) => member !== undefined);
   if (usable.length < members.length) return undefined;
@@ -65,10 +67,17 @@ function quantumNumbers({ twoJ, parity, baryonNumber }: StudyMultiplet) {
   return { twoJ, parity, baryonNumber, charm: 0 };
 }
 
-function memberParticles(irrep: Irrep, written: StudyMultiplet, member: StudyMember): MemberParticles {
-  const place = placeOf(irrep, member.place);
+/**
+ * The charge states of a member of a study, with the catalogue's values where the study gives none.
+ *
+ * @throws InputError where neither has a mass or a width
+ */
+export function memberParticles(
+  place: IsospinMultiplet,
+  quantum: MultipletQuantumNumbers,
+  member: Omit<StudyMember, "place">,
+): MemberParticles {
   const { mass, width } = member;
-  const quantum = { irrep, ...quantumNumbers(written) };
   const states = chargeStates(member.name, place, quantum, {
     massMeV: mass?.value ?? Number.NaN,
     massErrorMeV: mass ?? { plus: 0, minus: 0 },
@@ -84,7 +93,7 @@ function memberParticles(irrep: Irrep, written: StudyMultiplet, member: StudyMem
 }
 
 /** A charge state's values: its own in the study, else the member's, else the catalogue's. */
-function particleOf(state: Particle, member: StudyMember, own: StudyChargeState): Particle {
+function particleOf(state: Particle, member: Omit<StudyMember, "place">, own: StudyChargeState): Particle {
   const known = findParticle(state.name);
   const fromCatalogue = member.mass === undefined && own.mass === undefined;
   if (fromCatalogue && known === undefined) {

@@ -2,12 +2,19 @@ import { catalogueEdition } from "../hadrons/catalogue.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import type { Multiplet } from "../hadrons/multiplet.js";
 import type { Study } from "../study/study.js";
+import { withBreaking } from "./breaking.js";
 import { channelsOf } from "./channels.js";
+import { massParameters } from "./masses.js";
+import { mixingMatrix } from "./mixing-matrix.js";
 import type { Channel, Decay, Model, Parameter, Parent, TotalWidth } from "./model.js";
+import { type Placed, placedIn } from "./placed.js";
 import { Problems } from "./problems.js";
-import { modelOf, resolveDecays } from "./resolve-decays.js";
+import { resolveDecays } from "./resolve-decays.js";
 import { resolveMeasurements } from "./resolve-measurements.js";
+import { type MixedStates, resolveMixing } from "./resolve-mixing.js";
 import { type StudyBoundMultiplet, studyMultiplet } from "./resolve-multiplets.js";
+import { resolvePriors } from "./resolve-priors.js";
+import type { NamedMember } from "./width-sums.js";
 
 /**
  * A study with hadrons, exact forms, parameters and observables looked up.
@@ -21,49 +28,47 @@ export function resolveStudy(study: Study): Model {
     const multiplet = studyMultiplet(id, written, problems);
     if (multiplet !== undefined) own.set(id, multiplet);
   }
-  // A missing multiplet would only make its decays fail as well.
+  // A missing multiplet would only make its decays and mixing fail as well.
   problems.throwIfAny();
-  const decays = resolveDecays(study, own, problems);
+  const { decays, couplings } = resolveDecays(study, own, problems);
+  const { groups, angles } = resolveMixing(study.mixing, own, couplings.length, problems);
   problems.throwIfAny();
-  const channels = channelsOf(decays);
-  const couplings = decays.flatMap(couplingParameters);
-  const parents = parentsOf(decays, channels, own, problems);
-  const multiplets = uniqueMultiplets(decays);
-  const { observables, totals } = resolveMeasurements(
-    study,
-    { channels, parents, multiplets, couplings },
-    problems,
-  );
+  const parameters: Parameter[] = [...couplings, ...angles];
+  const masses = massParameters(study, decays, groups, own, parameters);
+  const plain = problems.attempt("decays", () => channelsOf(decays, groups, masses)) ?? [];
+  const parents = parentsOf(decays, groups, plain, own, problems);
   problems.throwIfAny();
+  const context = { study, decays, channels: plain, parents, members: membersOf(decays, groups), parameters };
+  const observables = [...resolveMeasurements(context, problems), ...resolvePriors(study, decays, parameters, problems)];
+  problems.throwIfAny();
+  const channels = withBreaking(study, plain, observables, parameters);
   return {
     study,
-    parameters: [...couplings, ...totals],
+    parameters,
     couplingCount: couplings.length,
     decays,
+    mixing: groups.map(({ mixing }) => mixing),
     parents,
     channels,
     observables,
-    notes: notesOf(multiplets),
+    notes: notesOf(decays, groups),
     editions: [`hadrons: ${catalogueEdition().edition}, ${catalogueEdition().source}`],
   };
 }
 
-function couplingParameters(decay: Decay): Parameter[] {
-  const unit = modelOf(decay).amplitudeUnit({ L: decay.L, parent: decay.from, daughters: decay.to });
-  return decay.reduced.map(({ name }) => ({ name, kind: "coupling", unit, start: 1 }));
-}
-
 function parentsOf(
   decays: readonly Decay[],
+  groups: readonly MixedStates[],
   channels: readonly Channel[],
   own: ReadonlyMap<string, StudyBoundMultiplet>,
   problems: Problems,
 ): Parent[] {
+  const summed = new Set([...own.values(), ...groups].flatMap((source) => [...source.summed]));
   const parents: Parent[] = [];
   for (const [k, { from }] of decays.entries()) {
-    for (const hadron of from.members.flatMap(({ hadrons }) => hadrons)) {
+    for (const { hadron } of placedIn(from, groups)) {
       if (parents.some((parent) => parent.hadron.name === hadron.name)) continue;
-      const total = totalOf(hadron, own.get(from.id));
+      const total = totalOf(hadron, summed);
       if (total === undefined) {
         problems.add(
           `decays/${k}/from`,
@@ -78,22 +83,42 @@ function parentsOf(
   return parents;
 }
 
-function totalOf(hadron: Hadron, bound: StudyBoundMultiplet | undefined): TotalWidth | undefined {
-  if (bound?.summed.has(hadron.name)) return { kind: "sum", widthMeV: 0, plusMeV: 0, minusMeV: 0 };
+function totalOf(hadron: Hadron, summed: ReadonlySet<string>): TotalWidth | undefined {
+  if (summed.has(hadron.name)) return { kind: "sum", widthMeV: 0, plusMeV: 0, minusMeV: 0 };
   if (hadron.widthMeV === null) return undefined;
   const { plus, minus } = hadron.widthErrorMeV ?? { plus: 0, minus: 0 };
   return { kind: "measured", widthMeV: hadron.widthMeV, plusMeV: plus, minusMeV: minus };
 }
 
-function uniqueMultiplets(decays: readonly Decay[]): Multiplet[] {
-  const byId = new Map<string, Multiplet>();
-  for (const { from, to } of decays) for (const multiplet of [from, ...to]) byId.set(multiplet.id, multiplet);
-  return [...byId.values()];
+/** Everything that is placed in a multiplet of the decays, each multiplet once. */
+function placedInDecays(decays: readonly Decay[], groups: readonly MixedStates[]): Placed[] {
+  const multiplets = new Map<string, Multiplet>();
+  for (const { from, to } of decays) for (const multiplet of [from, ...to]) multiplets.set(multiplet.id, multiplet);
+  return [...multiplets.values()].flatMap((multiplet) => placedIn(multiplet, groups));
 }
 
-function notesOf(multiplets: readonly Multiplet[]): string[] {
-  const notes = multiplets.flatMap(({ members }) =>
-    members.flatMap(({ hadrons }) => hadrons.flatMap((hadron) => hadron.notes)),
-  );
+function membersOf(decays: readonly Decay[], groups: readonly MixedStates[]): NamedMember[] {
+  const hadrons = new Map<string, Set<string>>();
+  for (const { member, hadron } of placedInDecays(decays, groups)) {
+    hadrons.set(member, (hadrons.get(member) ?? new Set()).add(hadron.name));
+  }
+  return [...hadrons].map(([name, names]) => ({ name, hadrons: [...names] }));
+}
+
+function notesOf(decays: readonly Decay[], groups: readonly MixedStates[]): string[] {
+  const notes = placedInDecays(decays, groups).flatMap(({ hadron }) => hadron.notes);
+  const used = new Set(decays.flatMap(({ from, to }) => [from.id, ...to.map(({ id }) => id)]));
+  for (const { mixing, bare } of groups) {
+    for (const { multiplet } of bare) {
+      if (used.has(multiplet.id)) continue;
+      notes.push(`${mixing.states.join(", ")} have a component in ${multiplet.id}, for which no decay is declared; it counts as 0.`);
+    }
+    const weights = mixingMatrix({ ...mixing, rotations: mixing.rotations.map(({ parameter: _, ...fixed }) => fixed) }, []).value;
+    const fixed = mixing.rotations.every(({ parameter }) => parameter === undefined);
+    for (const [k, name] of mixing.states.entries()) {
+      const terms = weights[k]!.map((w, r) => `${w.toFixed(4)} ${mixing.bare[r]}`).join(" + ");
+      if (fixed) notes.push(`${name} = ${terms}.`.replaceAll("+ -", "- "));
+    }
+  }
   return [...new Set(notes)];
 }

@@ -2,7 +2,7 @@ import { type Document, isNode, LineCounter, parseDocument } from "yaml";
 import type { z } from "zod";
 import { InputError, type SourcePosition } from "../errors.js";
 import { type StudyDocument, studySchema } from "./schema.js";
-import type { Study, StudyMeasurement, StudyMultiplet } from "./study.js";
+import type { Study, StudyMeasurement, StudyMember, StudyMultiplet } from "./study.js";
 
 /** Largest study file read, in bytes. A study is written by hand; anything larger is another file. */
 export const MAX_STUDY_BYTES = 1_000_000;
@@ -186,7 +186,7 @@ function toStudy(
       irrep: multiplet.irrep,
       ...multiplet.spinParity,
       baryonNumber: multiplet.baryonNumber ?? multiplet.spinParity.twoJ % 2,
-      members: multiplet.members.map((member) => ({ ...member, chargeStates: member.chargeStates ?? {} })),
+      members: multiplet.members.map(withChargeStates),
     },
   ]);
   return {
@@ -194,18 +194,46 @@ function toStudy(
     text,
     title: document.title,
     multiplets: Object.fromEntries(multiplets),
+    mixing: document.mixing.map(({ bare, states, angle, angles, convention }) => ({
+      bare,
+      states: states.map(withChargeStates),
+      angles: angles ?? (angle === undefined ? [] : [angle]),
+      convention,
+    })),
     decays: document.decays.map(({ S, ...decay }) => ({ ...decay, twoS: S, name: decay.name ?? "" })),
+    quarkLine: document.quarkLine,
     measurements: document.measurements.map(toMeasurement),
-    mirrors: document.fit.mirrors,
+    normalisations: Object.fromEntries(
+      Object.entries(document.normalisations).map(([name, q]) => [name, q.value]),
+    ),
+    priors: document.priors,
+    fit: document.fit,
     breaking: document.tables.breaking,
     positions,
   };
 }
 
-function toMeasurement(measurement: StudyDocument["measurements"][number]): StudyMeasurement {
-  const { value, source, use } = measurement;
-  if ("width" in measurement) return { kind: "width", channels: [measurement.width], value, source, use };
-  if ("fraction" in measurement)
-    return { kind: "fraction", channels: [measurement.fraction], value, source, use };
-  return { kind: "ratio", channels: measurement.ratio, value, source, use };
+function withChargeStates<T extends { chargeStates?: StudyMember["chargeStates"] | undefined }>(member: T) {
+  return { ...member, chargeStates: member.chargeStates ?? {} };
+}
+
+const KINDS = ["width", "fraction", "ratio", "product", "amplitude", "residue", "total", "axial"] as const;
+
+function toMeasurement(written: StudyDocument["measurements"][number]): StudyMeasurement {
+  const kind = KINDS.find((name) => name in written)!;
+  const channels = (written as Partial<Record<string, string | readonly string[]>>)[kind]!;
+  const { value, source, use } = written;
+  const sign = "sign" in written ? written.sign : 1;
+  return {
+    kind,
+    channels: typeof channels === "string" ? [channels] : channels,
+    value:
+      typeof value === "string" ? { value: value === "+" ? 1 : -1, plus: 0, minus: 0, unit: "1" } : value,
+    signOnly: typeof value === "string",
+    sign: sign === "free" ? "free" : sign === "-" || sign === -1 ? -1 : 1,
+    phase: "phase" in written ? written.phase : undefined,
+    normalisation: "normalisation" in written ? written.normalisation : undefined,
+    source,
+    use,
+  };
 }

@@ -4,6 +4,7 @@ import type { Quantity } from "./study.js";
 
 const DESCRIPTIONS = {
   MeV: "A number with its unit, e.g. `58 +- 3 MeV`, `0.12 GeV` or `58 +4 -3 MeV`",
+  rad: "An angle with its unit, e.g. `-15.4 +- 1 deg`",
   1: "A pure number, e.g. `0.40 +- 0.05`, `0.40 +0.05 -0.04` or `40 +- 5 %`",
 };
 
@@ -32,7 +33,7 @@ const positive = (what: string) => (q: Quantity) => (q.value > 0 ? undefined : `
 const mass = quantity("MeV", positive("mass"));
 const width = quantity("MeV", positive("width"));
 
-const SPIN_PARITY = /^(?<number>\d+)(?<half>\/2)?(?<sign>[+-])$/;
+const SPIN_PARITY = /^(?<number>\d+)(?<half>\/2)?(?<sign>[+-])(?<charge>[+-])?$/;
 
 const spinParity = z
   .string()
@@ -49,9 +50,11 @@ const spinParity = z
     return {
       twoJ: groups["half"] === undefined ? 2 * number : number,
       parity: groups["sign"] === "+" ? (1 as const) : (-1 as const),
+      cParity:
+        groups["charge"] === undefined ? null : groups["charge"] === "+" ? (1 as const) : (-1 as const),
     };
   })
-  .describe("Spin and parity, e.g. `5/2-`");
+  .describe("Spin and parity, e.g. `5/2-`; of mesons also the C parity of their neutral members, e.g. `1--`");
 
 const spin = z
   .union([z.string().regex(/^\d+(\/2)?$/), z.int().min(0)], { error: "expected a spin such as 1 or 3/2" })
@@ -127,24 +130,94 @@ const decay = z.strictObject({
     .describe("Masses of each charge state, or isospin averages"),
 });
 
+const angle = z
+  .union([z.enum(["free", "quadratic masses", "linear masses"]), quantity("rad")], {
+    error: `expected \`free\`, \`quadratic masses\`, \`linear masses\`, or ${quantityForm("rad")}`,
+  })
+  .describe("A mixing angle: fitted, from the masses of a meson octet and its singlet, or given");
+
+const mixing = z.strictObject({
+  bare: z
+    .array(z.string())
+    .min(2)
+    .describe("Bare states as `multiplet/place`, e.g. `pseudoscalar-octet/eta`"),
+  states: z
+    .array(member.omit({ place: true }))
+    .min(2)
+    .describe("Physical states, as many as bare ones"),
+  angle: angle.optional().describe("The angle of two states"),
+  angles: z.array(angle).min(1).optional().describe("Angles of n states: (1,2), (1,3), ..., (2,3), ..."),
+  convention: z
+    .enum(["rotation", "meson", "quark"])
+    .default("rotation")
+    .describe(
+      "rotation: |1> = cos|a> + sin|b>; meson: |1> = cos|8> - sin|1>; quark: |1> = cos|nn> - sin|ss>",
+    ),
+});
+
 const use = z.enum(["fit", "table", "both"]).default("both").describe("Where the value counts");
 const source = z.string().min(1).describe("Where the value comes from: it goes into the table");
 const nonNegative = (q: Quantity) => (q.value >= 0 ? undefined : "expected a value >= 0");
 const fraction = (q: Quantity) =>
   q.value >= 0 && q.value <= 1 ? undefined : "expected a fraction from 0 to 1";
+const signedFraction = (q: Quantity) =>
+  Math.abs(q.value) <= 1 ? undefined : "expected a number from -1 to 1";
+const onlyFit = z.literal("fit").default("fit").describe("Such a value settles no row by itself");
+const normalisation = z.string().optional().describe("Name of a common normalisation");
+const pair = z.tuple([z.string(), z.string()]);
 
 const measurement = z.union(
   [
-    z.strictObject({ width: z.string(), value: quantity("MeV", nonNegative), source, use }),
-    z.strictObject({ fraction: z.string(), value: quantity("1", fraction), source, use }),
+    z.strictObject({ width: z.string(), value: quantity("MeV", nonNegative), normalisation, source, use }),
+    z.strictObject({ fraction: z.string(), value: quantity("1", fraction), normalisation, source, use }),
+    z.strictObject({ ratio: pair, value: quantity("1", nonNegative), normalisation, source, use: onlyFit }),
     z.strictObject({
-      ratio: z.tuple([z.string(), z.string()]),
-      value: quantity("1", nonNegative),
+      product: pair.describe("Two channels of one parent; the value is the product of their fractions"),
+      value: quantity("1", fraction),
+      normalisation,
       source,
-      use: z.literal("fit").default("fit"),
+      use: onlyFit,
+    }),
+    z.strictObject({
+      amplitude: pair.describe("Entrance and exit channel of one parent; the value is sqrt(G_i G_f)/G_total"),
+      value: z.union([z.enum(["+", "-"]), quantity("1", signedFraction)], {
+        error: "expected a signed number such as `-0.25 +- 0.03`, or `+` or `-` alone",
+      }),
+      sign: z
+        .union([z.enum(["+", "-", "free"]), z.literal(1), z.literal(-1)])
+        .default("free")
+        .describe("Sign s_f of the reaction against these phases; `free` is fitted, one for each reaction"),
+      source,
+      use: onlyFit,
+    }),
+    z.strictObject({
+      residue: pair.describe("Entrance and exit channel of one parent; the value is the residue's modulus"),
+      value: quantity("MeV", nonNegative),
+      phase: quantity("rad").optional(),
+      source,
+      use: onlyFit,
+    }),
+    z.strictObject({
+      total: z.string().describe("A parent; the value is the sum of its channels in this study"),
+      value: quantity("MeV", nonNegative),
+      source,
+      use: onlyFit,
+    }),
+    z.strictObject({
+      axial: z.string().describe("A semileptonic transition such as `n -> p`; the value is g1/f1"),
+      value: quantity("1"),
+      source,
+      use: onlyFit,
     }),
   ],
-  { error: "expected a measurement: one of `width`, `fraction` or `ratio`, with `value` and `source`" },
+  {
+    error:
+      "expected a measurement: one of `width`, `fraction`, `ratio`, `product`, `amplitude`, `residue`, `total` or `axial`, with `value` and `source`",
+  },
+);
+
+const relativeError = quantity("1", (q) =>
+  q.value > 0 && q.value < 1 ? undefined : "expected a relative error > 0 and < 1",
 );
 
 /** The form of a study file; from this one description come the checks and their messages. */
@@ -152,9 +225,30 @@ export const studySchema = z.strictObject({
   couplet: z.literal(1).describe("Version of the study format"),
   title: z.string().min(1),
   multiplets: z.record(z.string(), multiplet).default({}),
+  mixing: z.array(mixing).default([]),
   decays: z.array(decay).min(1),
+  quarkLine: z
+    .array(z.array(z.string()).min(1))
+    .default([])
+    .describe("Families of decays, by name, whose couplings the quark-line rule ties together"),
   measurements: z.array(measurement).min(1),
-  fit: z.strictObject({ mirrors: z.enum(["refuse", "best", "each"]).default("refuse") }).prefault({}),
+  normalisations: z
+    .record(z.string(), relativeError)
+    .default({})
+    .describe("Relative errors that several measurements share, by name"),
+  priors: z
+    .array(
+      z.strictObject({ parameter: z.string(), value: z.union([quantity("1"), quantity("rad")]), source }),
+    )
+    .default([])
+    .describe("What is known beforehand of a coupling, an angle, F, D, F/D, alpha_F or alpha_D"),
+  fit: z
+    .strictObject({
+      mirrors: z.enum(["refuse", "best", "each"]).default("refuse"),
+      theoryError: z.number().min(0).max(1).default(0),
+      masses: z.enum(["fixed", "vary"]).default("vary"),
+    })
+    .prefault({}),
   tables: z.strictObject({ breaking: z.number().min(0).max(1).default(0.2) }).prefault({}),
 });
 

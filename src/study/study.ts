@@ -8,8 +8,12 @@ export interface Quantity {
   readonly value: number;
   readonly plus: number;
   readonly minus: number;
-  /** `MeV` after conversion, or `1` for a pure number. */
-  readonly unit: "MeV" | "1";
+  /** `MeV` or `rad` after conversion, or `1` for a pure number. */
+  readonly unit: "MeV" | "rad" | "1";
+  /** True for a range `a to b`, whose half-width is no standard deviation. */
+  readonly soft?: boolean;
+  /** Set for an upper limit; the value is then 0 and `plus` and `minus` are the limit itself. */
+  readonly limit?: { readonly confidence: number };
 }
 
 /** One isospin multiplet of a study's multiplet. Masses and widths in MeV. */
@@ -37,6 +41,8 @@ export interface StudyMultiplet {
   readonly irrep: string;
   readonly twoJ: number;
   readonly parity: 1 | -1;
+  /** Of a meson multiplet's neutral members; null where it is not given. */
+  readonly cParity: 1 | -1 | null;
   readonly baryonNumber: number;
   readonly members: readonly StudyMember[];
 }
@@ -55,18 +61,58 @@ export interface StudyDecay {
   readonly masses: "charge" | "average";
 }
 
-/** What a measurement is of: a partial width, a fraction of the total width, or a ratio of partial widths. */
-export type MeasuredKind = "width" | "fraction" | "ratio";
+/**
+ * Physical states that mix: state k is the sum over r of U(k, r) times the bare state r, U orthogonal and built from
+ * plane rotations, one angle for each pair of states in the order (1,2), (1,3), ..., (2,3), ...
+ */
+export interface StudyMixing {
+  /** Places of the bare states, `multiplet/place`, e.g. `pseudoscalar-octet/eta`. */
+  readonly bare: readonly string[];
+  /** As many states; `place` is absent. */
+  readonly states: readonly Omit<StudyMember, "place">[];
+  readonly angles: readonly StudyAngle[];
+  /** How the angle of two states is meant; see the README. */
+  readonly convention: "rotation" | "meson" | "quark";
+}
 
-/** One measurement. `channels` has one entry, or two for a ratio (numerator, denominator). */
+/** A mixing angle: fitted freely, given in radians (with an error: fitted under it), or from the states' masses. */
+export type StudyAngle = "free" | "quadratic masses" | "linear masses" | Quantity;
+
+/** What a measurement is of. */
+export type MeasuredKind =
+  | "width"
+  | "fraction"
+  | "ratio"
+  | "product"
+  | "amplitude"
+  | "residue"
+  | "total"
+  | "axial";
+
+/** One measurement. `channels` has one entry, or two for a ratio, a product, an amplitude or a residue. */
 export interface StudyMeasurement {
   readonly kind: MeasuredKind;
-  /** As written, e.g. `N(1675) -> N pi`. */
+  /** As written, e.g. `N(1675) -> N pi`; for a total width the parent's name. */
   readonly channels: readonly string[];
+  /** The value; for an amplitude of which only the sign is known, +1 or -1. */
   readonly value: Quantity;
+  readonly signOnly: boolean;
+  /** Sign s_f of an amplitude's reaction; `free` is fitted, one for each reaction. */
+  readonly sign: 1 | -1 | "free";
+  /** Phase of a residue; undefined where it is not given. */
+  readonly phase?: Quantity | undefined;
+  /** Name of a common normalisation. */
+  readonly normalisation?: string | undefined;
   readonly source: string;
   /** Where it counts: in the fit, in the table, or in both. */
   readonly use: "fit" | "table" | "both";
+}
+
+/** What is known of a parameter, or of F, D and their ratios, before the fit. */
+export interface StudyPrior {
+  readonly parameter: string;
+  readonly value: Quantity;
+  readonly source: string;
 }
 
 /** A study as written: checked for form, units resolved, nothing looked up. */
@@ -76,12 +122,27 @@ export interface Study {
   readonly text: string;
   readonly title: string;
   readonly multiplets: Readonly<Record<string, StudyMultiplet>>;
+  readonly mixing: readonly StudyMixing[];
   readonly decays: readonly StudyDecay[];
+  /** Families of decays tied by the quark-line rule, by the decays' names. */
+  readonly quarkLine: readonly (readonly string[])[];
   readonly measurements: readonly StudyMeasurement[];
-  /** What to do about a second minimum within the chi2 distance that does not exclude it. */
-  readonly mirrors: "refuse" | "best" | "each";
+  /** Relative standard deviations of common normalisations, by name. */
+  readonly normalisations: Readonly<Record<string, number>>;
+  readonly priors: readonly StudyPrior[];
+  readonly fit: StudyFitOptions;
   /** Breaking of the symmetry in amplitude, relative to a decay's coupling strength; for predictions' errors. */
   readonly breaking: number;
   /** Position of every value, by path such as `measurements/0/value`. */
   readonly positions: ReadonlyMap<string, SourcePosition>;
+}
+
+/** How a study wants to be fitted. */
+export interface StudyFitOptions {
+  /** What to do about a second minimum within the chi2 distance that does not exclude it. */
+  readonly mirrors: "refuse" | "best" | "each";
+  /** Breaking in amplitude that enters the fit, relative to a decay's coupling strength; 0 leaves it out. */
+  readonly theoryError: number;
+  /** Whether the parents' masses move within their errors. */
+  readonly masses: "fixed" | "vary";
 }

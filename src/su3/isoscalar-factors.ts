@@ -148,7 +148,7 @@ export class IsoscalarTable {
   columns(): FactorColumns {
     const { segments, count } = this.#segments();
     const columns = emptyColumns(count);
-    const finish = finisher(this.#solution.product.table);
+    const finish = finisher(this.#solution.product);
     this.#eachMultiplet((lowered, m, start) => finish(lowered, m, columns, start));
     return { segments, ...columns };
   }

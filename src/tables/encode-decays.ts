@@ -10,8 +10,8 @@ import type {
 } from "../completion/tables.js";
 import { couplet } from "../gen/couplet.js";
 import type { Hadron } from "../hadrons/hadron.js";
-import { type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
-import type { Decay, Model } from "../model/model.js";
+import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
+import type { Model, WidthModelChoice } from "../model/model.js";
 import { MULTIPLICITY_RULE } from "../su3/engine/copies.js";
 import { CONVENTION } from "../su3/isoscalar-factors.js";
 import { producerName } from "../version.js";
@@ -36,19 +36,15 @@ export function decaysMessage(tables: Tables): v1.DecayTables.$Properties {
   const { model } = tables.fit;
   return {
     kind: "couplet.v1.DecayTables",
-    header: header(model),
-    fit: {
-      minima: listedMinima(tables.fit.minima).map(minimumMessage),
-      otherMinima: tables.fit.minima.length - listedMinima(tables.fit.minima).length,
-      used: tables.minimum,
-      mirrors: model.study.mirrors,
-    },
-    parents: tables.parents.map((parent) => parentMessage(parent, model)),
+    header: headerMessage(model),
+    fit: fitMessage(tables.fit, tables.minimum),
+    parents: tables.parents.map(parentMessage),
     externals: tables.externals.map(hadronMessage),
   };
 }
 
-function header({ study, notes, editions }: Model): v1.Header.$Properties {
+/** The header that all tables of a study share; `schemaMinor` is that of decay tables. */
+export function headerMessage({ study, notes, editions }: Model): v1.Header.$Properties {
   return {
     schemaMinor: DECAYS_SCHEMA_MINOR,
     producer: producerName(),
@@ -61,6 +57,17 @@ function header({ study, notes, editions }: Model): v1.Header.$Properties {
     cautions: [...CAUTIONS],
     notes: [...notes],
     breaking: study.breaking,
+  };
+}
+
+/** The fit behind a table: every minimum near the best one, and which of them the table is from. */
+export function fitMessage(fit: Fit, used: number): v1.Fit.$Properties {
+  const listed = listedMinima(fit.minima);
+  return {
+    minima: listed.map(minimumMessage),
+    otherMinima: fit.minima.length - listed.length,
+    used,
+    mirrors: fit.model.study.fit.mirrors,
   };
 }
 
@@ -87,7 +94,7 @@ function minimumMessage(minimum: StudyMinimum): v1.Minimum.$Properties {
   };
 }
 
-function parentMessage(table: ParentTable, model: Model): v1.Parent.$Properties {
+function parentMessage(table: ParentTable): v1.Parent.$Properties {
   const { hadron, multiplet, total } = table.parent;
   return {
     hadron: hadronMessage(hadron),
@@ -96,7 +103,7 @@ function parentMessage(table: ParentTable, model: Model): v1.Parent.$Properties 
     totalWidthError: table.totalWidthErrorMeV,
     totalOrigin:
       total.kind === "sum" ? v1.TotalOrigin.TOTAL_ORIGIN_SUM : v1.TotalOrigin.TOTAL_ORIGIN_MEASURED,
-    rows: table.rows.map((row) => rowMessage(row, model.decays)),
+    rows: table.rows.map(rowMessage),
     warnings: [...table.warnings],
   };
 }
@@ -140,7 +147,7 @@ const FLAGS: Readonly<Record<Flag, v1.Flag>> = {
   "small-amplitude": v1.Flag.FLAG_SMALL_AMPLITUDE,
 };
 
-function rowMessage(row: Row, decays: readonly Decay[]): v1.Row.$Properties {
+function rowMessage(row: Row): v1.Row.$Properties {
   return {
     id: row.id,
     daughters: row.daughters.map(({ name, mcNumber }) => ({ name, mcNumber })),
@@ -155,7 +162,7 @@ function rowMessage(row: Row, decays: readonly Decay[]): v1.Row.$Properties {
     threshold: row.thresholdMeV,
     momentum: row.momentumMeV,
     identicalFactor: row.identicalFactor,
-    waves: row.waves.map((wave) => waveMessage(wave, decays[wave.decay]!)),
+    waves: row.waves.map(waveMessage),
   };
 }
 
@@ -163,12 +170,12 @@ function comparisonMessage({ fitted, pull, ...measured }: Comparison): v1.Compar
   return { ...measured, fitted: fitted ?? null, pull: pull ?? null };
 }
 
-function estimateMessage({ value, plus, minus, breaking }: Estimate): v1.Estimate.$Properties {
+/** A value with its errors as a message. */
+export function estimateMessage({ value, plus, minus, breaking }: Estimate): v1.Estimate.$Properties {
   return { value, plus, minus, breaking };
 }
 
-function waveMessage({ L, twoS, re, im, flavourAmplitude }: RowWave, { model }: Decay): v1.Wave.$Properties {
-  const definition = widthModelDefinitions().find(({ id }) => id === model.id)!;
+function waveMessage({ L, twoS, re, im, flavourAmplitude, model }: RowWave): v1.Wave.$Properties {
   return {
     twoL: 2 * L,
     twoS,
@@ -176,7 +183,13 @@ function waveMessage({ L, twoS, re, im, flavourAmplitude }: RowWave, { model }: 
     im,
     phase: v1.Phase.PHASE_KNOWN,
     model: model.id,
-    options: definition.options.map(({ name, unit }) => ({ name, unit, value: model.options[name]! })),
+    options: optionMessages(model),
     flavourAmplitude,
   };
+}
+
+/** Every option of a width model with its unit and value. */
+export function optionMessages({ id, options }: WidthModelChoice): v1.Option.$Properties[] {
+  const definition = widthModelDefinitions().find((model) => model.id === id)!;
+  return definition.options.map(({ name, unit }) => ({ name, unit, value: options[name]! }));
 }

@@ -1,9 +1,10 @@
-import { rootToNumber, type SignedRoot } from "../exact/signed-root.js";
+import type { SignedRoot } from "../exact/signed-root.js";
 import { couplet } from "../gen/couplet.js";
 import { su3ClebschGordan } from "../su3/clebsch-gordan.js";
 import type { IsoscalarTable } from "../su3/isoscalar-factors.js";
 import { type State, states } from "../su3/state.js";
 import { producerName } from "../version.js";
+import { exactMessage } from "./exact-message.js";
 import { sealBytes } from "./sealed-bytes.js";
 
 import v1 = couplet.v1;
@@ -62,14 +63,5 @@ export function factorsMessage(
     states: options.states
       ? [...stateCoefficients(table)].map((c) => ({ ...c, value: exactMessage(c.value) }))
       : [],
-  };
-}
-
-function exactMessage(root: SignedRoot): v1.Exact.$Properties {
-  return {
-    sign: root.sign,
-    numerator: String(root.num),
-    denominator: String(root.den),
-    value: rootToNumber(root),
   };
 }

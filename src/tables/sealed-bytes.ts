@@ -2,7 +2,11 @@ import { createHash } from "node:crypto";
 import { InputError, TableError } from "../errors.js";
 
 /** What a table file can hold; the first field of the file says which. */
-export const TABLE_KINDS = ["couplet.v1.DecayTables", "couplet.v1.FactorTable"] as const;
+export const TABLE_KINDS = [
+  "couplet.v1.CouplingTables",
+  "couplet.v1.DecayTables",
+  "couplet.v1.FactorTable",
+] as const;
 
 /** Full name of the message in a table file. */
 export type TableKind = (typeof TABLE_KINDS)[number];
@@ -29,20 +33,54 @@ export function sealBytes(body: Uint8Array): Uint8Array {
  */
 export function checkSeal(bytes: Uint8Array, file: string): TableKind {
   const kind = kindOf(bytes);
-  if (kind === undefined) {
-    throw new InputError(
-      `${file}: expected a table file written by Couplet, got something else (${bytes.length} bytes). Give a .pb file that \`couplet tables\` or \`couplet factors --out\` wrote.`,
-    );
-  }
-  const body = bytes.subarray(0, bytes.length - SEAL_LENGTH);
-  const seal = Buffer.from(bytes.subarray(bytes.length - SEAL_LENGTH));
-  const digest = createHash("sha256").update(body).digest();
-  if (bytes.length < SEAL_LENGTH || !seal.equals(Buffer.concat([SEAL_HEAD, digest]))) {
+  const sealed = hasSeal(bytes);
+  if (kind !== undefined && sealed) return kind;
+  if (kind !== undefined) {
     throw new TableError(
       `${file}: the file is damaged: its digest does not match its content (${bytes.length} bytes). Nothing was read; get a fresh copy or write the table again.`,
     );
   }
-  return kind;
+  if (sealed && hasHead(bytes, "couplet.v")) {
+    throw new TableError(
+      `${file}: expected one of ${TABLE_KINDS.join(", ")}, got a table of another kind. Read it with a newer Couplet.`,
+    );
+  }
+  throw new InputError(
+    `${file}: expected a table file written by Couplet, got something else (${bytes.length} bytes). Give a .pb file that \`couplet tables\`, \`couplet couplings --out\` or \`couplet factors --out\` wrote.`,
+  );
+}
+
+/**
+ * The message in a sealed table of a given kind.
+ *
+ * @param decode - the message's decoder
+ * @throws InputError if the file is not one of ours at all; TableError if it is damaged, or of another kind
+ */
+export function openSealed<T>(
+  bytes: Uint8Array,
+  file: string,
+  wanted: TableKind,
+  decode: (bytes: Uint8Array) => T,
+): T {
+  const kind = checkSeal(bytes, file);
+  if (kind !== wanted)
+    throw new TableError(`${file}: expected ${wanted}, got ${kind}. Use \`couplet show\` on it.`);
+  try {
+    return decode(bytes);
+  } catch (cause) {
+    throw new TableError(
+      `${file}: expected a message ${wanted}, got bytes that are none (${(cause as Error).message}). The file was written by something else; write it again.`,
+      { cause },
+    );
+  }
+}
+
+/** Whether the last field is the digest of every byte before it. */
+function hasSeal(bytes: Uint8Array): boolean {
+  if (bytes.length < SEAL_LENGTH) return false;
+  const body = bytes.subarray(0, bytes.length - SEAL_LENGTH);
+  const digest = createHash("sha256").update(body).digest();
+  return Buffer.concat([SEAL_HEAD, digest]).equals(bytes.subarray(body.length));
 }
 
 /** The digest of a sealed table, in hexadecimal. */
@@ -51,8 +89,10 @@ export function digestOf(sealed: Uint8Array): string {
 }
 
 function kindOf(bytes: Uint8Array): TableKind | undefined {
-  return TABLE_KINDS.find((kind) => {
-    const head = Buffer.concat([Buffer.from([0x0a, kind.length]), Buffer.from(kind)]);
-    return head.equals(bytes.subarray(0, head.length));
-  });
+  return TABLE_KINDS.find((kind) => bytes[1] === kind.length && hasHead(bytes, kind));
+}
+
+/** Whether the first field is a text that starts so. */
+function hasHead(bytes: Uint8Array, start: string): boolean {
+  return bytes[0] === 0x0a && Buffer.from(start).equals(bytes.subarray(2, 2 + start.length));
 }

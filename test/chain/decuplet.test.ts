@@ -1,5 +1,5 @@
 import { expect, test } from "vitest";
-import { fitOf, rowWidthMeV, studyText, tablesOf, valueOf, withMeasurements } from "./run.js";
+import { fitOf, parameterValue, rowWidthMeV, studyText, tablesOf, withMeasurements } from "./run.js";
 
 // Model outputs for one coupling fixed by Delta -> N pi = 117 MeV, computed by an independent program from masses of the
 // Particle Data Group quoted from memory; g^2 refers to widths in MeV and momenta in GeV.
@@ -20,7 +20,7 @@ test.each(LADDERS)(
     const tables = tablesOf(text);
     const relative = (value: number, wanted: number) => Math.abs(value / wanted - 1);
     expect(others).toEqual([]);
-    expect(relative(1000 * valueOf(minimum!, "g(10)") ** 2, g2)).toBeLessThan(1e-3);
+    expect(relative(1000 * parameterValue(minimum!, "g(10)") ** 2, g2)).toBeLessThan(1e-3);
     expect(relative(rowWidthMeV(tables, "Sigma(1385)+", ["Lambda pi+"]), lambdaPi)).toBeLessThan(1e-3);
     expect(relative(rowWidthMeV(tables, "Sigma(1385)+", ["Sigma+ pi0", "Sigma0 pi+"]), sigmaPi)).toBeLessThan(
       1e-3,

@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest";
-import { fitOf, rowWidthMeV, studyText, tablesOf, valueOf, withMeasurements } from "./run.js";
+import { fitOf, parameterValue, rowWidthMeV, studyText, tablesOf, withMeasurements } from "./run.js";
 
 const STUDY = studyText("octet-5-2");
 
@@ -7,10 +7,10 @@ describe("the 5/2- octet with two couplings", () => {
   // Scan over alpha_F of the same six widths by an independent program; inputs rounded from the PDG, from memory.
   test("model a gives alpha_F = -0.240 and chi2 = 5.32 with 4 degrees of freedom", () => {
     const [best] = fitOf(STUDY).minima;
-    expect(Math.abs(valueOf(best!, "alpha_F") + 0.24)).toBeLessThan(0.002);
+    expect(Math.abs(parameterValue(best!, "alpha_F") + 0.24)).toBeLessThan(0.002);
     expect(Math.abs(best!.chi2 - 5.32)).toBeLessThan(0.02);
     expect(best!.ndf).toBe(4);
-    expect(valueOf(best!, "alpha_D")).toBeCloseTo(1 - valueOf(best!, "alpha_F"), 12);
+    expect(parameterValue(best!, "alpha_D")).toBeCloseTo(1 - parameterValue(best!, "alpha_F"), 12);
   });
 
   // The radius is 1/GeV.
@@ -19,7 +19,7 @@ describe("the 5/2- octet with two couplings", () => {
     { model: "{ id: c, radiusFm: 0.1973269804 }", alpha: -0.216 },
   ])("model $model moves alpha_F to $alpha", ({ model, alpha }) => {
     const [best] = fitOf(STUDY.replace("model: a", `model: ${model}`)).minima;
-    expect(Math.abs(valueOf(best!, "alpha_F") - alpha)).toBeLessThan(0.002);
+    expect(Math.abs(parameterValue(best!, "alpha_F") - alpha)).toBeLessThan(0.002);
   });
 
   // One ratio of widths allows two values of alpha_F; pairs from the closed formula a = (r u2 - u1)/(v1 - r v2).
@@ -31,7 +31,7 @@ describe("the 5/2- octet with two couplings", () => {
     { channel: "Lambda(1830) -> Sigma pi", pair: [-0.172, 2.172] },
   ])("N -> N pi with $channel alone has the mirror solutions $pair", ({ channel, pair }) => {
     const { minima } = fitOf(withMeasurements(STUDY, ["N(1675)", channel]));
-    const found = minima.map((minimum) => valueOf(minimum, "alpha_F")).sort((a, b) => a - b);
+    const found = minima.map((minimum) => parameterValue(minimum, "alpha_F")).sort((a, b) => a - b);
     expect(found).toHaveLength(2);
     for (const [k, alpha] of pair.entries()) expect(Math.abs(found[k]! - alpha)).toBeLessThan(0.0016);
     for (const { chi2 } of minima) expect(chi2).toBeLessThan(1e-12);

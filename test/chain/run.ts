@@ -22,7 +22,7 @@ export function tablesOf(text: string): Tables {
 }
 
 /** Value of a fitted or derived parameter. */
-export function valueOf(minimum: StudyMinimum, name: string): number {
+export function parameterValue(minimum: StudyMinimum, name: string): number {
   const found = minimum.parameters.find((parameter) => parameter.name === name);
   if (found === undefined)
     throw new Error(`no parameter ${name} among ${minimum.parameters.map((p) => p.name).join(", ")}`);

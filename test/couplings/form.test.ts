@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import type { Form, FormMaker } from "../../src/couplings/form.js";
-import { addRoots } from "../../src/couplings/root-sum.js";
 import { InputError } from "../../src/errors.js";
+import { addRoots } from "../../src/exact/root-sum.js";
 import { formatRoot, multiplyRoots, rootToNumber, type SignedRoot } from "../../src/exact/signed-root.js";
 import { clebschGordan } from "../../src/su2/clebsch-gordan.js";
 import { isospinMultiplets } from "../../src/su3/irrep.js";

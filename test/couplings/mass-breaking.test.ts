@@ -2,7 +2,7 @@ import { EigenvalueDecomposition, Matrix } from "ml-matrix";
 import { describe, expect, test } from "vitest";
 import type { FormMaker } from "../../src/couplings/form.js";
 import { MASS_BREAKING } from "../../src/couplings/operator.js";
-import { addRoots } from "../../src/couplings/root-sum.js";
+import { addRoots } from "../../src/exact/root-sum.js";
 import {
   divideRoots,
   formatRoot,

@@ -1,4 +1,6 @@
 import { describe, expect, test } from "vitest";
+import { fAndDForm } from "../../src/couplings/f-and-d.js";
+import { MatrixConvention } from "../../src/couplings/matrix-convention.js";
 import {
   formatRoot,
   multiplyRoots,
@@ -14,7 +16,7 @@ import {
   overlap,
   product,
 } from "../../src/su3/matrix-phases.js";
-import { type State, sameState } from "../../src/su3/state.js";
+import { type State, sameState, states } from "../../src/su3/state.js";
 import { BARYONS, DECUPLET, MESONS, makerOf, stateOf } from "./schemes.js";
 
 /**
@@ -209,6 +211,73 @@ describe("decuplet forms and tensors", () => {
       return [names.join(" "), formatRoot(multiplyRoots(c, inverse(unit)))];
     });
     expect(Object.fromEntries(found)).toEqual(expected);
+  });
+});
+
+describe("the matrix convention of tables", () => {
+  const matrices = new MatrixConvention();
+
+  test("has S+, p, n, Xi0 minus and the other baryons plus their matrix, and mesons likewise", () => {
+    const signs = (multiplet: typeof BARYONS) =>
+      multiplet.members.flatMap(({ hadrons }) =>
+        hadrons.flatMap(({ name, content }) => (matrices.phase(content[0]!.leg.state) === -1 ? [name] : [])),
+      );
+    expect(signs(BARYONS)).toEqual(["p", "n", "Sigma+", "Xi0"]);
+    expect(signs(MESONS)).toEqual(["K+", "K0", "pi+", "K0bar"]);
+    expect(signs(DECUPLET)).toEqual([]);
+  });
+
+  test("gives the vertices of sqrt2 {D Tr(Bbar {M, B}) + F Tr(Bbar [M, B])} for all 512 charge triples", () => {
+    for (const R of octet) {
+      for (const B of octet) {
+        for (const M of octet) {
+          const { terms } = octets.chargeForm(R.state, [B.state, M.state]);
+          const { D, F } = fAndDForm(terms, octets.scheme);
+          const trace = (sign: 1 | -1, first: Matrix, second: Matrix) =>
+            formatRoot(
+              times(
+                "sqrt(2)",
+                overlap(R.entries, plus(product(first, second), product(second, first), sign)),
+                R.square * B.square * M.square,
+              ),
+            );
+          const vertex = [R.state, B.state, M.state];
+          expect(formatRoot(matrices.coefficient(D, vertex)!)).toBe(trace(1, M.entries, B.entries));
+          expect(formatRoot(matrices.coefficient(F, vertex)!)).toBe(trace(-1, M.entries, B.entries));
+        }
+      }
+    }
+  });
+
+  test("has phase +1 for quarks and -1 for each ubar in tensors, and no phase for the 27", () => {
+    const phases = (p: number, q: number) => states({ p, q }).map((state) => matrices.phase(state));
+    expect(phases(0, 0)).toEqual([1]);
+    expect(phases(2, 0)).toEqual([1, 1, 1, 1, 1, 1]);
+    expect(phases(0, 1)).toEqual([1, 1, -1]);
+    expect(phases(0, 2)).toEqual([1, 1, -1, 1, -1, 1]);
+    expect(phases(2, 2).every((phase) => phase === undefined)).toBe(true);
+    const top = states({ p: 2, q: 2 })[0]!;
+    expect(matrices.coefficient(parseRoot("1"), [top])).toBeNull();
+  });
+
+  test("lays its matrix out as rows of quarks and columns of antiquarks", () => {
+    const text = matrices.octetLayout().map(({ row, column, parts }) => {
+      const sum = parts.map(
+        ({ state, times: c }) => `${formatRoot(c)} ${nameOf("pseudoscalar-octet", state)}`,
+      );
+      return `${row}${column}: ${sum.join(", ")}`;
+    });
+    expect(text).toEqual([
+      "11: sqrt(1/2) pi0, sqrt(1/6) eta",
+      "12: 1 pi+",
+      "13: 1 K+",
+      "21: 1 pi-",
+      "22: -sqrt(1/2) pi0, sqrt(1/6) eta",
+      "23: 1 K0",
+      "31: 1 K-",
+      "32: 1 K0bar",
+      "33: -sqrt(2/3) eta",
+    ]);
   });
 });
 

@@ -35,7 +35,7 @@ test("the tail reproduces the percentage points of chi-square printed in handboo
   }
 });
 
-/** Q for even ndf = 2 m by the finite sum exp(-y) sum_(k<m) y^k / k!, y = chi2/2 (Abramowitz and Stegun 26.4.21). */
+/** Q for even ndf = 2 m by the finite sum exp(-y) sum_(k<m) y^k / k!, y = chi2/2 (Abramowitz and Stegun 26.4.21; provenance: memory). */
 function evenTail(chi2: number, ndf: number): number {
   const y = chi2 / 2;
   let [term, sum] = [1, 0];
@@ -61,7 +61,7 @@ test("for even degrees of freedom the tail equals its finite sum, from 1e-9 to 1
 });
 
 test("for odd degrees of freedom the tail obeys the recurrence Q(nu+2) = Q(nu) + (chi2/2)^(nu/2) e^(-chi2/2) / Gamma(nu/2+1)", () => {
-  // Abramowitz and Stegun 26.4.8. Gamma(nu/2 + 1) for odd nu from Gamma(1/2) = sqrt(pi).
+  // Abramowitz and Stegun 26.4.8, provenance: memory. Gamma(nu/2 + 1) for odd nu from Gamma(1/2) = sqrt(pi).
   for (const chi2 of [0.3, 2, 9, 40, 300]) {
     let gamma = Math.sqrt(Math.PI) / 2;
     for (let nu = 1; nu <= 21; nu += 2) {

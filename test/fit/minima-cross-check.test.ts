@@ -40,12 +40,12 @@ test(`for two couplings the search finds exactly the minima of the profile over 
 
 test(`for 2, 3 and 4 couplings with 4 to 10 observables random starts find no minimum that the search misses (seeds from ${FIRST_SEED})`, () => {
   const tally = { problems: 0, starts: 0, minima: 0, byChance: 0 };
-  for (let seed = FIRST_SEED; seed < FIRST_SEED + 63; seed++) {
+  for (let seed = FIRST_SEED; seed < FIRST_SEED + 42; seed++) {
     const uniform = seededUniform(seed);
     const [couplings, observables] = [2 + (seed % 3), 4 + (Math.floor(seed / 3) % 7)];
     const { problem } = randomProblem(uniform, couplings, observables, 1 + (seed % 4));
     const { minima, starts } = findMinima(problem, { deltaChi2: Number.POSITIVE_INFINITY });
-    const chance = minimaByChance(problem, uniform, 150, 1.5);
+    const chance = minimaByChance(problem, uniform, 100, 1.5);
     const missed = chance.filter(
       (other) => !minima.some((m) => apart(m.parameters, other.parameters) < 1e-3),
     );
@@ -61,10 +61,10 @@ test(`for 2, 3 and 4 couplings with 4 to 10 observables random starts find no mi
   }
   console.log(
     `${tally.problems} problems: ${tally.minima} minima from ${tally.starts} starts; ` +
-      `${tally.byChance} of them by chance from ${150 * tally.problems}`,
+      `${tally.byChance} of them by chance from ${100 * tally.problems}`,
   );
   expect(tally.minima).toBeGreaterThanOrEqual(tally.byChance);
-});
+}, 180_000);
 
 test(`planted couplings come back from exact squares, with chi-square 0 (seeds from ${FIRST_SEED})`, () => {
   for (let seed = FIRST_SEED; seed < FIRST_SEED + 12; seed++) {

@@ -43,9 +43,9 @@ function agreement(problem: NistProblem, start: readonly number[], analytic: boo
   };
 }
 
-const names = readdirSync(join(__dirname, "nist-strd"))
+const problems = readdirSync(join(__dirname, "nist-strd"))
   .filter((file) => file.endsWith(".dat"))
-  .map((file) => file.slice(0, -".dat".length));
+  .map((file) => readNistProblem(file.slice(0, -".dat".length)));
 
 test("the comparison of digits rejects a wrong sign, NaN and a wrong digit", () => {
   expect(digits(-1, 1)).toBeLessThan(0);
@@ -55,7 +55,7 @@ test("the comparison of digits rejects a wrong sign, NaN and a wrong digit", () 
 });
 
 test("all 27 NIST problems are carried over, at three levels of difficulty", () => {
-  const levels = names.map((name) => readNistProblem(name).level);
+  const levels = problems.map(({ level }) => level);
   const count = (level: string) => levels.filter((other) => other === level).length;
   expect([count("Lower"), count("Average"), count("Higher")]).toEqual([8, 11, 8]);
 });
@@ -66,8 +66,8 @@ for (const derivatives of ["analytic", "numerical"] as const) {
       `NIST StRD, ${derivatives} derivatives: certified digits of parameters / errors / sum of squares`,
     ];
     const failures: string[] = [];
-    for (const name of names) {
-      const problem = readNistProblem(name);
+    for (const problem of problems) {
+      const { name } = problem;
       const both = problem.starts.map((start) => agreement(problem, start, derivatives === "analytic"));
       const cells = both.map(({ parameters, errors, squares, fit }) => {
         const numbers = [parameters, errors, squares]
@@ -93,8 +93,8 @@ for (const derivatives of ["analytic", "numerical"] as const) {
 }
 
 test("the symbolic derivatives of every NIST model equal the numerical ones to 9 digits at the certified point", () => {
-  for (const name of names) {
-    const problem = readNistProblem(name);
+  for (const problem of problems) {
+    const { name } = problem;
     const analytic = problem.jacobian(problem.certified);
     expect([name, worstColumn(problem, analytic) < 1e-9]).toEqual([name, true]);
   }

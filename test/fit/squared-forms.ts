@@ -15,11 +15,12 @@ export function squaredForms(
     parameterNames: forms[0]!.map((_, j) => `g${j + 1}`),
     couplingCount: forms[0]!.length,
     forms,
-    amplitudeTargets: squares.flatMap((square, form) =>
-      square > 0
-        ? [{ form, amplitude: Math.sqrt(square), sigma: sigmas[form]! / (2 * Math.sqrt(square)) }]
-        : [],
-    ),
+    // Near 0 the error of a root is at most the root of the error; a square below 0 asks for the amplitude 0.
+    amplitudeTargets: squares.map((square, form) => {
+      const amplitude = Math.sqrt(Math.max(0, square));
+      const rootOfError = Math.sqrt(sigmas[form]!);
+      return { form, amplitude, sigma: Math.min(rootOfError, sigmas[form]! / (2 * amplitude || 1e-300)) };
+    }),
     nuisanceStarts: [],
     residuals: (g) => forms.map((form, k) => (amplitude(form, g) ** 2 - squares[k]!) / sigmas[k]!),
     jacobian: (g) =>

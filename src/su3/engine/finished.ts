@@ -1,5 +1,6 @@
 import { gcd, gcdOfNumbers } from "../../exact/integer.js";
 import type { PrimeTable } from "../../exact/prime-powers.js";
+import type { ProductBlocks } from "./blocks.js";
 import type { LoweredCopy } from "./lowering.js";
 
 /**
@@ -36,64 +37,123 @@ export type Finisher = (lowered: LoweredCopy, m: number, columns: FinishedColumn
 
 const LARGEST = Number.MAX_SAFE_INTEGER;
 const POWERS = 64;
+/** Stands for a cofactor where y itself is no number. */
+const NO_NUMBER = 2n ** 64n;
 
 /**
- * The finisher for the products of one prime table: lowest terms by taking the primes of the denominator out of y,
+ * The numbers of one multiplet while primes are moved between them, per channel: factor^2 is
+ * above · aboveRest · y^2 / (below · belowRest), the rests 1 until a product would pass 2^53.
+ */
+interface Scratch {
+  readonly y: Float64Array;
+  readonly above: Float64Array;
+  readonly aboveRest: Float64Array;
+  readonly below: Float64Array;
+  readonly belowRest: Float64Array;
+}
+
+/**
+ * The finisher for a product: lowest terms by taking the primes of the denominator out of y, one prime after another,
  * without a greatest common divisor except against the cofactor of N.
  */
-export function finisher(table: PrimeTable): Finisher {
-  const primes = Float64Array.from(table.primes);
-  const width = primes.length;
-  const powers = Float64Array.from(
-    { length: width * POWERS },
-    (_, i) => primes[Math.floor(i / POWERS)]! ** (i % POWERS),
-  );
-  return (lowered, m, { sign, num, den, big }, start) => {
+export function finisher({ table, largestBlock }: ProductBlocks): Finisher {
+  const width = table.primes.length;
+  const powers = Array.from(table.primes, (p) => Float64Array.from({ length: POWERS }, (_, e) => p ** e));
+  const column = () => new Float64Array(largestBlock);
+  const scratch = { y: column(), above: column(), aboveRest: column(), below: column(), belowRest: column() };
+  return (lowered, m, columns, start) => {
     const { layout, integers, normExponents } = lowered;
     const { weights, size } = layout.blocks[m]!;
-    const cofactor = lowered.normCofactors[m]!;
     const bigVector = lowered.big.get(m);
-    const small = bigVector === undefined && cofactor <= LARGEST;
-    const cofactorNumber = Number(cofactor);
-    const first = layout.starts[m]!;
     for (let c = 0; c < size; c++) {
-      const value = bigVector === undefined ? integers[first + c]! : Math.sign(Number(bigVector[c]!));
-      if (value === 0) continue;
-      const place = start + c;
-      sign[place] = value < 0 ? -1 : 1;
-      let y = Math.abs(value);
-      let above = 1;
-      let below = cofactorNumber;
-      const exact = small && (cofactorNumber === 1 || gcdOfNumbers(y, cofactorNumber) === 1);
-      for (let j = 0; j < width; j++) {
-        let e = weights[c * width + j]! - normExponents[m * width + j]!;
-        if (e < 0) {
-          const p = primes[j]!;
-          for (let q = y / p; e < 0 && q === Math.floor(q); q = y / p) {
-            y = q;
-            e += 2;
-          }
-          if (e < 0) below *= e > -POWERS ? powers[j * POWERS - e]! : Infinity;
-        }
-        if (e > 0) above *= e < POWERS ? powers[j * POWERS + e]! : Infinity;
-      }
-      const square = above * y * y;
-      if (exact && square <= LARGEST && below <= LARGEST) {
-        num[place] = square;
-        den[place] = below;
-        continue;
-      }
-      num[place] = 0;
-      den[place] = 0;
-      const whole = exact && above <= LARGEST && below <= LARGEST;
-      big.set(
-        place,
-        whole
-          ? { num: BigInt(above) * BigInt(y) ** 2n, den: BigInt(below) }
-          : exactSquare(table, lowered, m, c),
-      );
+      const value =
+        bigVector === undefined ? integers[layout.starts[m]! + c]! : Math.sign(Number(bigVector[c]!));
+      columns.sign[start + c] = Math.sign(value);
+      scratch.y[c] = Math.abs(value);
     }
+    for (const name of ["above", "aboveRest", "below", "belowRest"] as const) scratch[name].fill(1, 0, size);
+    for (let j = 0; j < width; j++) {
+      movePrime(scratch, size, weights, j, width, normExponents[m * width + j]!, powers[j]!);
+    }
+    const cofactor = bigVector === undefined ? lowered.normCofactors[m]! : NO_NUMBER;
+    writeFractions(scratch, size, cofactor, columns, start, (c) => exactSquare(table, lowered, m, c));
   };
+}
+
+/** Moves the power of one prime in F/N of each channel to its place, less what cancels against y. */
+function movePrime(
+  { y, above, aboveRest, below, belowRest }: Scratch,
+  size: number,
+  weights: Int16Array,
+  j: number,
+  width: number,
+  norm: number,
+  powers: Float64Array,
+): void {
+  const p = powers[1]!;
+  for (let c = 0, i = j; c < size; c++, i += width) {
+    let e = weights[i]! - norm;
+    if (e < 0) {
+      let value = y[c]!;
+      for (let quotient = value / p; quotient === Math.floor(quotient); quotient = value / p) {
+        value = quotient;
+        e += 2;
+        if (e >= 0) break;
+      }
+      y[c] = value;
+      if (e < 0) multiplyInto(below, belowRest, c, e > -POWERS ? powers[-e]! : Infinity);
+    }
+    if (e > 0) multiplyInto(above, aboveRest, c, e < POWERS ? powers[e]! : Infinity);
+  }
+}
+
+/** Multiplies product · rest by a factor, keeping each below 2^53 as long as two numbers can hold it. */
+function multiplyInto(product: Float64Array, rest: Float64Array, c: number, factor: number): void {
+  const next = product[c]! * factor;
+  if (next <= LARGEST) {
+    product[c] = next;
+  } else {
+    rest[c]! *= product[c]!;
+    product[c] = factor;
+  }
+}
+
+/** Writes the fractions, less what y^2 and the cofactor of N have in common; `settle` does it where numbers fail. */
+function writeFractions(
+  { y, above, aboveRest, below, belowRest }: Scratch,
+  size: number,
+  cofactor: bigint,
+  { sign, num, den, big }: FinishedColumns,
+  start: number,
+  settle: (c: number) => BigFraction,
+): void {
+  const small = cofactor <= LARGEST;
+  const divisor = small ? Number(cofactor) : 1;
+  for (let c = 0; c < size; c++) {
+    const place = start + c;
+    if (sign[place] === 0) continue;
+    // gcd(y^2, cofactor) = common · again, whatever powers of primes the two hold.
+    const common = divisor === 1 ? 1 : gcdOfNumbers(y[c]!, divisor);
+    const again = common === 1 ? 1 : gcdOfNumbers(common, divisor / common);
+    multiplyInto(below, belowRest, c, divisor / (common * again));
+    const root = y[c]! / common;
+    const otherRoot = y[c]! / again;
+    const square = above[c]! * root * otherRoot;
+    if (small && square <= LARGEST && below[c]! <= LARGEST && aboveRest[c] === 1 && belowRest[c] === 1) {
+      num[place] = square;
+      den[place] = below[c]!;
+      continue;
+    }
+    num[place] = 0;
+    den[place] = 0;
+    const largest = Math.max(above[c]!, aboveRest[c]!, below[c]!, belowRest[c]!);
+    if (small && largest <= LARGEST) {
+      big.set(place, {
+        num: BigInt(above[c]!) * BigInt(aboveRest[c]!) * BigInt(root) * BigInt(otherRoot),
+        den: BigInt(below[c]!) * BigInt(belowRest[c]!),
+      });
+    } else big.set(place, settle(c));
+  }
 }
 
 /** The square of a factor other than 0, in lowest terms, for any size. */

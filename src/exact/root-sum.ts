@@ -1,11 +1,5 @@
-import { addRational, type Rational, rational } from "../exact/rational.js";
-import {
-  divideRoots,
-  multiplyRoots,
-  rootToRational,
-  type SignedRoot,
-  signedRoot,
-} from "../exact/signed-root.js";
+import { addRational, type Rational, rational } from "./rational.js";
+import { divideRoots, multiplyRoots, rootToRational, type SignedRoot, signedRoot } from "./signed-root.js";
 
 /**
  * A sum of signed roots in the fewest terms: roots whose ratio is rational are added up, zeros drop out.

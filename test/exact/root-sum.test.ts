@@ -1,6 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
-import { addRoots } from "../../src/couplings/root-sum.js";
+import { addRoots } from "../../src/exact/root-sum.js";
 import { formatRoot, parseRoot, rootToNumber } from "../../src/exact/signed-root.js";
 
 const SEED = 5;

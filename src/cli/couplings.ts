@@ -1,0 +1,35 @@
+import { extname } from "node:path";
+import { minimaToTabulate } from "../completion/mirrors.js";
+import { couplingTable } from "../completion/tabulate-couplings.js";
+import { canonicalJson } from "../tables/canonical-json.js";
+import { couplingsMessage, encodeCouplings } from "../tables/encode-couplings.js";
+import { writeWhole } from "../tables/whole-file.js";
+import { describeCouplings } from "./describe-couplings.js";
+import { fitStudyFile } from "./run-study.js";
+
+/** `couplet couplings`: the coupling of every vertex of a study, for people, as JSON or into a file. */
+export function runCouplings(path: string, options: { json?: true; out?: string }): void {
+  const fit = fitStudyFile(path);
+  const tables = minimaToTabulate(fit).map((minimum) => couplingTable(fit, minimum));
+  if (options.out !== undefined) {
+    for (const table of tables) {
+      const file = tables.length === 1 ? options.out : minimumFile(options.out, table.minimum);
+      const bytes = encodeCouplings(table);
+      writeWhole(file, bytes);
+      if (!options.json) process.stdout.write(`wrote ${file} (${bytes.length} bytes)\n`);
+    }
+  }
+  const messages = tables.map((table) => couplingsMessage(table));
+  if (options.json) {
+    const shown = messages.map((message) => canonicalJson("couplet.v1.CouplingTables", message));
+    process.stdout.write(`${JSON.stringify(shown.length === 1 ? shown[0] : shown, null, 2)}\n`);
+  } else if (options.out === undefined) {
+    process.stdout.write(messages.map((message) => describeCouplings(message, path)).join("\n"));
+  }
+}
+
+/** `couplings.pb` as `couplings.minimum-2.pb`, for the second minimum. */
+function minimumFile(out: string, minimum: number): string {
+  const extension = extname(out);
+  return `${out.slice(0, out.length - extension.length)}.minimum-${minimum + 1}${extension}`;
+}

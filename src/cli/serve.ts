@@ -1,0 +1,71 @@
+import pino from "pino";
+import { refuse, requireInteger } from "../require.js";
+import { parseAddress } from "../sidecar/address.js";
+import type { TlsFiles } from "../sidecar/credentials.js";
+import { type Sidecar, startSidecar } from "../sidecar/sidecar.js";
+
+/** Options of `couplet serve` as the command line gives them. */
+export interface ServeOptions {
+  readonly listen: string;
+  readonly metrics: string;
+  readonly tlsCert?: string;
+  readonly tlsKey?: string;
+  readonly tlsClientCa?: string;
+  readonly allowInsecureNetwork?: true;
+  readonly drainSeconds: string;
+  readonly logLevel: string;
+}
+
+const LOG_LEVELS = ["debug", "info", "warn", "error"];
+
+/** `couplet serve`: runs the sidecar until it is told to stop. SIGTERM drains, SIGHUP reads the files again. */
+export async function runServe(files: readonly string[], options: ServeOptions): Promise<void> {
+  const drainSeconds = Number(options.drainSeconds);
+  requireInteger("--drain-seconds", drainSeconds, 0, "", 3600);
+  if (!LOG_LEVELS.includes(options.logLevel))
+    refuse("--log-level", `one of ${LOG_LEVELS.join(", ")}`, options.logLevel);
+  const log = pino({ level: options.logLevel, base: null }, pino.destination({ fd: 2, sync: true }));
+  const sidecar = await startSidecar({
+    listen: parseAddress("--listen", options.listen),
+    metrics: options.metrics === "none" ? undefined : parseAddress("--metrics", options.metrics),
+    files,
+    log,
+    tls: tlsFiles(options),
+    allowInsecureNetwork: options.allowInsecureNetwork === true,
+  });
+  // A call's state is its own, so an error that escaped one leaves the others whole: say it and live on.
+  for (const event of ["uncaughtException", "unhandledRejection"] as const) {
+    process.on(event, (error: unknown) => {
+      sidecar.metrics.uncaught.inc();
+      log.error({ err: error }, "an error escaped its call; this is a bug");
+    });
+  }
+  process.on("SIGHUP", () => sidecar.replaceTables());
+  await stopped(sidecar, drainSeconds);
+}
+
+function tlsFiles({ tlsCert, tlsKey, tlsClientCa }: ServeOptions): TlsFiles | undefined {
+  if (tlsCert === undefined && tlsKey === undefined && tlsClientCa === undefined) return undefined;
+  if (tlsCert === undefined || tlsKey === undefined)
+    refuse("TLS", "--tls-cert and --tls-key together", [tlsCert, tlsKey, tlsClientCa]);
+  return { certificate: tlsCert, key: tlsKey, clientAuthorities: tlsClientCa };
+}
+
+/** Waits for SIGTERM or SIGINT and drains; a second one stops at once. */
+function stopped(sidecar: Sidecar, drainSeconds: number): Promise<void> {
+  return new Promise((resolve) => {
+    // The command line's own handler leaves at once; here calls may run.
+    process.removeAllListeners("SIGINT");
+    for (const [signal, exitCode] of [
+      ["SIGTERM", 0],
+      ["SIGINT", 130],
+    ] as const) {
+      process.once(signal, () => {
+        process.exitCode = exitCode;
+        process.once("SIGTERM", () => process.exit(exitCode));
+        process.once("SIGINT", () => process.exit(exitCode));
+        sidecar.drain(1000 * drainSeconds).then(resolve);
+      });
+    }
+  });
+}

@@ -1,0 +1,167 @@
+import { Matrix, SingularValueDecomposition } from "ml-matrix";
+import { FormMaker } from "../couplings/form.js";
+import { STRONG } from "../couplings/operator.js";
+import { rootToNumber } from "../exact/signed-root.js";
+import { refuse } from "../require.js";
+import { su3ClebschGordan } from "../su3/clebsch-gordan.js";
+import { type Irrep, sameIrrep } from "../su3/irrep.js";
+import { conjugateState, type State, states } from "../su3/state.js";
+import type { UntiedDecay } from "./resolve-decays.js";
+
+/** Sizes below this, relative to 1, are rounding: coefficients here are ratios of small roots. */
+const NULL = 1e-9;
+
+/** What the rule leaves: couplings that stay free, and every reduced coupling as a combination of them. */
+export interface QuarkLineCouplings {
+  /** The free ones, as (decay, reduced coupling) indices. */
+  readonly free: readonly { readonly decay: number; readonly reduced: number }[];
+  /** By decay, reduced coupling, free coupling. */
+  readonly rows: readonly (readonly (readonly number[])[])[];
+}
+
+/**
+ * The couplings that the quark-line rule leaves for a family of decays.
+ *
+ * The rule (nonet rule): no amplitude whose quark lines are disconnected, that is in which a meson's quark and antiquark
+ * both end within that meson. Meson octets and singlets are written as quark-antiquark states, baryons by the quarks
+ * they hold; every disconnected amplitude gives one linear equation for the reduced couplings. For the baryon octet this
+ * is S = F - D; for three meson nonets the couplings of Tr T Tr(PP), Tr(TP) Tr P and their like vanish.
+ * Source: S. Okubo, Phys. Lett. 5 (1963) 165; G. Zweig, CERN reports TH-401 and TH-412 (1964); J. Iizuka, Prog. Theor.
+ * Phys. Suppl. 37 (1966) 21. Provenance: memory.
+ *
+ * @param decays - octet and singlet parts of the same hadrons
+ * @throws InputError if a meson multiplet is neither octet nor singlet, or every coupling vanishes
+ */
+export function quarkLineCouplings(decays: readonly UntiedDecay[]): QuarkLineCouplings {
+  const columns = decays.flatMap(({ reduced }, decay) => reduced.map((_, r) => ({ decay, reduced: r })));
+  const equations = disconnectedAmplitudes(decays, columns);
+  const { pivots, rows } = rowReduced(nullSpace(equations, columns.length));
+  if (pivots.length === 0) {
+    const mend = "Every coupling vanishes; is a decay missing from the family?";
+    refuse("quarkLine", "decays that can obey the rule together", decays.map(({ name }) => name), mend);
+  }
+  const column = (decay: number, reduced: number) =>
+    columns.findIndex((c) => c.decay === decay && c.reduced === reduced);
+  return {
+    free: pivots.map((pivot) => columns[pivot]!),
+    rows: decays.map(({ reduced }, d) => reduced.map((_, r) => rows.map((row) => row[column(d, r)]!))),
+  };
+}
+
+/** A state of a slot in the quark basis: its quark lines, and its overlap with the states of each multiplet. */
+interface Lines {
+  /** Quark and antiquark of a meson, 0 = u, 1 = d, 2 = s; undefined for a baryon. */
+  readonly meson?: readonly [number, number];
+  /** Numbers of u, d and s quarks of a baryon. */
+  readonly quarks?: readonly number[];
+  overlap(irrep: Irrep): { state: State; weight: number }[];
+}
+
+function disconnectedAmplitudes(
+  decays: readonly UntiedDecay[],
+  columns: readonly { decay: number; reduced: number }[],
+): number[][] {
+  const slots = [0, 1, 2].map((slot) => {
+    const multiplets = decays.map(({ from, to }) => [from, ...to][slot]!);
+    return multiplets[0]!.baryonNumber === 0 ? mesonLines(multiplets) : baryonLines(multiplets);
+  });
+  const makers = decays.map((decay) => new FormMaker({ ...decay, operator: STRONG }, decay.reduced));
+  const equations: number[][] = [];
+  for (const parent of slots[0]!) {
+    for (const first of slots[1]!) {
+      for (const second of slots[2]!) {
+        if (isConnected(parent, first, second)) continue;
+        const row = columns.map(() => 0);
+        for (const [d, { from, to }] of decays.entries()) {
+          for (const r of parent.overlap(from.irrep)) {
+            for (const a of first.overlap(to[0].irrep)) {
+              for (const b of second.overlap(to[1].irrep)) {
+                if (a.state.threeY + b.state.threeY !== r.state.threeY) continue;
+                if (a.state.twoI3 + b.state.twoI3 !== r.state.twoI3) continue;
+                for (const { reduced, c } of makers[d]!.chargeForm(r.state, [a.state, b.state]).terms) {
+                  const k = columns.findIndex((column) => column.decay === d && column.reduced === reduced);
+                  row[k]! += r.weight * a.weight * b.weight * rootToNumber(c);
+                }
+              }
+            }
+          }
+        }
+        if (row.some((value) => Math.abs(value) > NULL)) equations.push(row);
+      }
+    }
+  }
+  return equations;
+}
+
+function isConnected(parent: Lines, first: Lines, second: Lines): boolean {
+  if (parent.meson === undefined) {
+    const [k, l] = second.meson!;
+    return k !== l || parent.quarks![k]! > 0;
+  }
+  const [[i, j], [k, l], [m, n]] = [parent.meson, first.meson!, second.meson!];
+  return (i === k && l === m && n === j) || (i === m && n === k && l === j);
+}
+
+/** Flavours 0 = u, 1 = d, 2 = s, in the order of the triplet's states. */
+const FLAVOURS = [0, 1, 2];
+
+function mesonLines(multiplets: readonly { readonly id: string; readonly irrep: Irrep }[]): Lines[] {
+  for (const { id, irrep } of multiplets) {
+    if (irrep.p === irrep.q && irrep.p <= 1) continue;
+    refuse("quarkLine", "meson octets and singlets", id, "The rule speaks of quark-antiquark states.");
+  }
+  const triplet = states({ p: 1, q: 0 });
+  return FLAVOURS.flatMap((quark) =>
+    FLAVOURS.map((antiquark): Lines => {
+      const image = conjugateState(triplet[antiquark]!);
+      return {
+        meson: [quark, antiquark],
+        overlap: (irrep) =>
+          states(irrep).flatMap((state) => {
+            const c = su3ClebschGordan(triplet[quark]!, image.state, state, 1);
+            return c.sign === 0 ? [] : [{ state, weight: image.phase * rootToNumber(c) }];
+          }),
+      };
+    }),
+  );
+}
+
+function baryonLines(multiplets: readonly { readonly irrep: Irrep }[]): Lines[] {
+  const [{ irrep }] = multiplets as [{ irrep: Irrep }];
+  return states(irrep).map((state): Lines => {
+    const strange = 1 - state.threeY / 3;
+    return {
+      quarks: [(3 - strange + state.twoI3) / 2, (3 - strange - state.twoI3) / 2, strange],
+      overlap: (other) => (sameIrrep(other, irrep) ? [{ state, weight: 1 }] : []),
+    };
+  });
+}
+
+/** A basis of the null space of the equations, as rows. */
+function nullSpace(equations: readonly (readonly number[])[], count: number): number[][] {
+  const identity = Array.from({ length: count }, (_, k) => Array.from({ length: count }, (_, j) => (j === k ? 1 : 0)));
+  if (equations.length === 0) return identity;
+  // Rows of zeros make the matrix at least square, so that all right vectors come out.
+  const padded = [...equations, ...identity.map((row) => row.map(() => 0))];
+  const { diagonal, rightSingularVectors } = new SingularValueDecomposition(new Matrix(padded.map((row) => [...row])));
+  const largest = Math.max(...diagonal, 1);
+  return diagonal.flatMap((value, k) => (value < NULL * largest ? [rightSingularVectors.getColumn(k)] : []));
+}
+
+/** Reduced row echelon form; the pivots are the first columns that can be. */
+function rowReduced(basis: readonly (readonly number[])[]): { pivots: number[]; rows: number[][] } {
+  const rows = basis.map((row) => [...row]);
+  const pivots: number[] = [];
+  for (let column = 0; column < (rows[0]?.length ?? 0) && pivots.length < rows.length; column++) {
+    const at = pivots.length;
+    const best = rows.slice(at).reduce((top, row, k) => (Math.abs(row[column]!) > Math.abs(rows[top]![column]!) ? at + k : top), at);
+    if (Math.abs(rows[best]![column]!) < NULL) continue;
+    [rows[at], rows[best]] = [rows[best]!, rows[at]!];
+    rows[at] = rows[at]!.map((value) => value / rows[at]![column]!);
+    for (const [k, row] of rows.entries()) {
+      if (k !== at) rows[k] = row.map((value, j) => value - row[column]! * rows[at]![j]!);
+    }
+    pivots.push(column);
+  }
+  return { pivots, rows: rows.map((row) => row.map((value) => (Math.abs(value) < NULL ? 0 : value))) };
+}

@@ -1,0 +1,41 @@
+import type { Study } from "../study/study.js";
+import { decayHasFAndD } from "./evaluate.js";
+import type { Decay, Observable, Parameter, PriorTarget } from "./model.js";
+import type { Problems } from "./problems.js";
+
+const RATIOS = ["D", "F", "F/D", "alpha_F", "alpha_D"] as const;
+
+/** Priors of a study as observables; what they are on must exist. */
+export function resolvePriors(
+  study: Study,
+  decays: readonly Decay[],
+  parameters: readonly Parameter[],
+  problems: Problems,
+): Observable[] {
+  const targets = targetsOf(decays, parameters);
+  return study.priors.flatMap(({ parameter, value, source }, k): Observable[] => {
+    const target = targets.get(parameter);
+    if (target === undefined) {
+      problems.add(`priors/${k}/parameter`, `expected one of ${[...targets.keys()].join(", ")}, got ${JSON.stringify(parameter)}.`);
+      return [];
+    }
+    if (value.plus === 0) {
+      problems.add(`priors/${k}/value`, "expected an error. Write `value +- error`.");
+      return [];
+    }
+    const position = problems.positionOf(`priors/${k}`);
+    return [{ label: `prior ${parameter}`, quantum: { kind: "parameter", parameter: target }, measured: value, signOnly: false, source, use: "fit", position }];
+  });
+}
+
+function targetsOf(decays: readonly Decay[], parameters: readonly Parameter[]): Map<string, PriorTarget> {
+  const targets = new Map<string, PriorTarget>();
+  for (const [index, { name, kind }] of parameters.entries()) {
+    if (kind === "coupling" || kind === "mixing angle") targets.set(name, { parameter: index });
+  }
+  for (const [decay, resolved] of decays.entries()) {
+    if (!decayHasFAndD(resolved)) continue;
+    for (const name of RATIOS) targets.set(resolved.name === "" ? name : `${resolved.name}.${name}`, { decay, name });
+  }
+  return targets;
+}

@@ -1,0 +1,146 @@
+import { performance } from "node:perf_hooks";
+import {
+  type handleBidiStreamingCall,
+  type handleUnaryCall,
+  type ServiceDefinition,
+  status,
+  type UntypedServiceImplementation,
+} from "@grpc/grpc-js";
+import type { Logger } from "pino";
+import { METHODS } from "./calls/index.js";
+import type { Method, Snapshot } from "./calls/method.js";
+import type { Clients } from "./clients.js";
+import type { SidecarMetrics } from "./metrics.js";
+import { type CallStatus, statusOf } from "./status.js";
+
+/** Full name of the service. */
+export const SERVICE_NAME = "couplet.v1.SidecarService";
+
+/** Answers of one stream that may wait for its client before the server stops reading its requests. */
+const STREAM_WINDOW_BYTES = 256 * 1024;
+
+/** What the calls share. */
+export interface ServiceContext {
+  snapshot(): Snapshot;
+  readonly clients: Clients;
+  readonly metrics: SidecarMetrics;
+  readonly log: Logger;
+  readonly methods?: readonly Method[];
+}
+
+/** The service for `Server.addService`: messages stay bytes there, so that each call decodes, refuses and counts itself. */
+export function sidecarService(context: ServiceContext): [ServiceDefinition, UntypedServiceImplementation] {
+  const methods = context.methods ?? METHODS;
+  const same = (bytes: Buffer) => bytes;
+  const definition = methods.map(({ name, streaming }) => [
+    name,
+    {
+      path: `/${SERVICE_NAME}/${name}`,
+      requestStream: streaming,
+      responseStream: streaming,
+      requestSerialize: same,
+      requestDeserialize: same,
+      responseSerialize: same,
+      responseDeserialize: same,
+    },
+  ]);
+  const handlers = methods.map((method) => [
+    method.name,
+    method.streaming ? streamHandler(method, context) : unaryHandler(method, context),
+  ]);
+  return [Object.fromEntries(definition), Object.fromEntries(handlers)];
+}
+
+/** Whether nobody waits for an answer any more. */
+function isOver(call: { readonly cancelled: boolean; getDeadline(): Date | number }): boolean {
+  return call.cancelled || Number(call.getDeadline()) <= Date.now();
+}
+
+function unaryHandler(method: Method, context: ServiceContext): handleUnaryCall<Buffer, Uint8Array> {
+  const { clients, metrics } = context;
+  return (call, respond) => {
+    const started = performance.now();
+    const client = clients.of(call.getPeer());
+    if (isOver(call)) {
+      metrics.ended(method.name, status.CANCELLED, performance.now() - started);
+      return;
+    }
+    try {
+      client.requireRoom();
+      const { bytes, rowsEvaluated, draws } = method.answer(context.snapshot(), call.request);
+      client.leave(bytes.length);
+      // grpc-js says `cancelled` when a call is over for any reason, which includes: its answer was taken.
+      call.once("cancelled", () => client.taken(bytes.length));
+      metrics.worked(rowsEvaluated, draws);
+      metrics.ended(method.name, status.OK, performance.now() - started);
+      respond(null, bytes);
+    } catch (error) {
+      const refusal = refusalOf(error, method, context);
+      metrics.ended(method.name, refusal.code, performance.now() - started);
+      respond(refusal);
+    }
+  };
+}
+
+function streamHandler(method: Method, context: ServiceContext): handleBidiStreamingCall<Buffer, Uint8Array> {
+  const { clients, metrics } = context;
+  return (call) => {
+    const started = performance.now();
+    const client = clients.of(call.getPeer());
+    const snapshot = context.snapshot();
+    let waitingBytes = 0;
+    let code = status.OK;
+    const refuse = (error: unknown) => {
+      const refusal = refusalOf(error, method, context);
+      code = refusal.code;
+      call.emit("error", refusal);
+    };
+    try {
+      client.openStream();
+    } catch (error) {
+      call.once("cancelled", () => metrics.ended(method.name, code, performance.now() - started));
+      refuse(error);
+      return;
+    }
+    metrics.streams.inc();
+    call.once("cancelled", () => {
+      client.closeStream();
+      client.taken(waitingBytes);
+      waitingBytes = 0;
+      metrics.streams.dec();
+      const ended = code === status.OK && !call.writableFinished ? status.CANCELLED : code;
+      metrics.ended(method.name, ended, performance.now() - started);
+    });
+    call.on("data", (request: Buffer) => {
+      if (code !== status.OK || isOver(call)) return;
+      try {
+        client.requireRoom();
+        const { bytes, rowsEvaluated, draws } = method.answer(snapshot, request);
+        metrics.worked(rowsEvaluated, draws);
+        client.leave(bytes.length);
+        waitingBytes += bytes.length;
+        call.write(bytes, () => {
+          // After the end of the call everything has been taken off already.
+          const taken = Math.min(bytes.length, waitingBytes);
+          waitingBytes -= taken;
+          client.taken(taken);
+          if (waitingBytes <= STREAM_WINDOW_BYTES / 2 && call.isPaused()) call.resume();
+        });
+        if (waitingBytes > STREAM_WINDOW_BYTES) call.pause();
+      } catch (error) {
+        refuse(error);
+      }
+    });
+    call.on("end", () => call.end());
+  };
+}
+
+/** The status of a call that threw; a bug of ours is logged with its stack, since the client does not get it. */
+function refusalOf(error: unknown, method: Method, { log, metrics }: ServiceContext): CallStatus {
+  const refusal = statusOf(error);
+  if (refusal.code === status.INTERNAL)
+    log.error({ err: error, call: method.name }, "a call failed by a bug");
+  else log.debug({ call: method.name, status: status[refusal.code], details: refusal.details }, "refused");
+  if (refusal.code === status.RESOURCE_EXHAUSTED) metrics.limited.inc();
+  return refusal;
+}

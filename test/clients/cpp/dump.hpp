@@ -1,0 +1,103 @@
+// Every field of the plain structs as text, to compare what two readers saw.
+//
+// Structured bindings name all members, so that a field added to a struct and forgotten here does not compile.
+// `blanks` counts the fields that are missing, zero or empty: none may be in a table where every field is set.
+#ifndef COUPLET_TEST_DUMP_HPP
+#define COUPLET_TEST_DUMP_HPP
+
+#include <cmath>
+#include <cstdio>
+
+#include "couplet_tables.hpp"
+
+class Dump {
+ public:
+  std::string text;
+  int blanks = 0;
+
+  template <class... Fields>
+  void all(const Fields&... fields) {
+    text += '{';
+    (add(fields), ...);
+    text += '}';
+  }
+
+  void add(const std::string& s) { field(std::to_string(s.size()) + ':' + s, s.empty()); }
+  void add(double x) {
+    char hex[64];
+    std::snprintf(hex, sizeof hex, "%a", x);
+    field(hex, std::isnan(x) || x == 0);
+  }
+  void add(std::uint32_t n) { field(std::to_string(n), n == 0); }
+  void add(std::int32_t n) { field(std::to_string(n), n == 0); }
+  template <class Enum, std::enable_if_t<std::is_enum_v<Enum>, bool> = true>
+  void add(Enum e) {
+    add(static_cast<std::int32_t>(e));
+  }
+  template <class T>
+  void add(const std::optional<T>& value) {
+    if (value) {
+      add(*value);
+    } else {
+      field("absent", true);
+    }
+  }
+  template <class T>
+  void add(const std::vector<T>& list) {
+    text += '[';
+    if (list.empty()) ++blanks;
+    for (const T& item : list) add(item);
+    text += ']';
+  }
+
+  void add(const couplet::Header& header) {
+    const auto& [a, b, c, d, e, f, g, h, i, j, k] = header;
+    all(a, b, c, d, e, f, g, h, i, j, k);
+  }
+  void add(const couplet::Hadron& hadron) {
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n] = hadron;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n);
+  }
+  void add(const couplet::Daughter& daughter) {
+    const auto& [a, b] = daughter;
+    all(a, b);
+  }
+  void add(const couplet::Estimate& estimate) {
+    const auto& [a, b, c, d] = estimate;
+    all(a, b, c, d);
+  }
+  void add(const couplet::Option& option) {
+    const auto& [a, b, c] = option;
+    all(a, b, c);
+  }
+  void add(const couplet::Wave& wave) {
+    const auto& [a, b, c, d, e, f, g, h] = wave;
+    all(a, b, c, d, e, f, g, h);
+  }
+  void add(const couplet::Row& row) {
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m] = row;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m);
+  }
+  void add(const couplet::Parent& parent) {
+    const auto& [a, b, c, d, e, f, g] = parent;
+    all(a, b, c, d, e, f, g);
+  }
+  void add(const couplet::Tables& tables) {
+    const auto& [a, b, c, d] = tables;
+    all(a, b, c, d);
+  }
+
+ private:
+  void field(const std::string& shown, bool blank) {
+    text += shown + ';';
+    if (blank) ++blanks;
+  }
+};
+
+inline std::string dumped(const couplet::Tables& tables) {
+  Dump dump;
+  dump.add(tables);
+  return dump.text;
+}
+
+#endif
