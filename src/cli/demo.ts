@@ -20,7 +20,7 @@ export function runDemo({ out }: { out: string }): void {
   writeWhole(study, DEMO_STUDY);
   const fit = fitStudyFile(study);
   const [written] = writeTables(fit, study, out);
-  const { file, parents, rows, bytes } = written!;
+  const { file, parents, rows, bytes, couplings } = written!;
   const tables = decodeDecays(readInput(file), file);
   const shown = tables.parents.find(({ hadron }) => hadron?.name === SHOWN)!;
   const [best, ...others] = fit.minima as [StudyMinimum, ...StudyMinimum[]];
@@ -33,9 +33,9 @@ export function runDemo({ out }: { out: string }): void {
         .filter(({ chi2 }) => chi2 - best.chi2 < LISTED_DELTA_CHI2)
         .map((minimum) => otherMinimum(best, minimum)),
       describeParent(shown),
-      `\nWritten:\n  ${study}  the study, to be edited\n  ${file}  ${parents} decay tables, ${rows} rows, ${bytes} bytes of Protocol Buffers\n`,
+      `\nWritten:\n  ${study}  the study, to be edited\n  ${file}  ${parents} decay tables, ${rows} rows, ${bytes} bytes of Protocol Buffers\n  ${couplings.file}  the couplings of ${couplings.vertices} vertices\n`,
       ...CAUTIONS.map((caution) => `Caution: ${caution}\n`),
-      `\nTry next:\n  couplet show ${file}\n  couplet fit ${study}\n  edit the study, then: couplet tables ${study} -o ${out}\n  couplet factors 10 8 --into 8\n`,
+      `\nTry next:\n  couplet show ${file}\n  couplet fit ${study}\n  couplet couplings ${study}\n  edit the study, then: couplet tables ${study} -o ${out}\n  couplet factors 10 8 --into 8\n`,
       "(in this folder, `npx couplet` runs the command)\n",
     ].join(""),
   );

@@ -81,7 +81,7 @@ function describeIsospin(rows: readonly v1.Coupling.$Properties[]): string {
     row.isospinConstant == null ? "" : `~ g(${row.isospinConstant})`,
   ]);
   const title = `\nBy isospin (times <I1 m1; I2 m2 | I m> for a charge state), model ${modelTexts(rows)}\n`;
-  return title + textTable([head, ...cells], { indent: 2 });
+  return title + textTable(withoutEmptyColumns(head, cells), { indent: 2 });
 }
 
 function describeCharged(rows: readonly v1.Coupling.$Properties[]): string {
@@ -94,7 +94,13 @@ function describeCharged(rows: readonly v1.Coupling.$Properties[]): string {
     dAndFText(row, "matrixDAndF") || formText(row, "matrixCoefficient"),
     row.matrixValue == null ? "not defined" : estimateText(row.matrixValue, row.unit),
   ]);
-  return `\nBy charge state\n${textTable([head, ...cells], { indent: 2 })}`;
+  return `\nBy charge state\n${textTable(withoutEmptyColumns(head, cells), { indent: 2 })}`;
+}
+
+/** Head and rows, without the columns that no row fills. */
+function withoutEmptyColumns(head: readonly string[], rows: readonly (readonly string[])[]): string[][] {
+  const kept = head.map((_, column) => rows.some((row) => row[column] !== ""));
+  return [head, ...rows].map((row) => row.filter((_, column) => kept[column]));
 }
 
 function describeLagrangian(lagrangian: v1.IsospinLagrangian.$Properties): string {

@@ -1,4 +1,4 @@
-import { type Fit, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
+import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
 import { asGiven, significant, withError } from "./rounding.js";
 import { fitStudyFile } from "./run-study.js";
 import { textTable } from "./text-table.js";
@@ -30,6 +30,8 @@ export function fitJson(fit: Fit) {
         source: observable.source,
       })),
       verdicts: minimum.verdicts,
+      reactionSigns: minimum.reactionSigns,
+      equivalents: minimum.equivalents,
     })),
     notes: fit.model.notes,
   };
@@ -52,20 +54,43 @@ export function describeFit(fit: Fit): string {
 }
 
 function shortText({ parameters }: StudyMinimum): string {
-  return parameters.map(({ name, value }) => `${name} ${significant(value, 4)}`).join(", ");
+  return parameters
+    .filter(({ kind }) => MAIN_KINDS.includes(kind))
+    .map(({ name, value }) => `${name} ${significant(value, 4)}`)
+    .join(", ");
 }
+
+/** Kinds of parameters in the order they are printed: those a study is about, then the ones held by priors. */
+const MAIN_KINDS: readonly FittedParameter["kind"][] = ["coupling", "derived", "mixing angle"];
 
 /** Chi-square, parameters and verdicts of one minimum. */
 export function describeMinimum(minimum: StudyMinimum, title: string): string {
   const chance =
     minimum.probability === undefined ? "" : `, probability ${minimum.probability.toPrecision(3)}`;
   const head = `\n${title}: chi2 ${minimum.chi2.toFixed(2)} with ${minimum.ndf} degrees of freedom${chance}\n`;
-  const rows = minimum.parameters.map(({ name, value, error, unit }) => [
-    name,
-    withError(value, error),
-    unit === "1" ? "" : unit,
-  ]);
-  return head + textTable(rows, { indent: 2 }) + describeVerdicts(minimum);
+  const rank = ({ kind }: FittedParameter) =>
+    (MAIN_KINDS.indexOf(kind) + MAIN_KINDS.length + 1) % (MAIN_KINDS.length + 1);
+  const rows = [...minimum.parameters]
+    .sort((x, y) => rank(x) - rank(y))
+    .map(({ name, value, error, unit }) => [
+      name,
+      withError(value, error),
+      unit === "1" ? "" : unit,
+      inDegrees(value, error, unit),
+    ]);
+  const signs = Object.entries(minimum.reactionSigns).map(
+    ([reaction, sign]) => `  sign ${sign === 1 ? "+" : "-"} for ${reaction}\n`,
+  );
+  const equivalents =
+    minimum.equivalents === 0
+      ? ""
+      : `  ${minimum.equivalents} other sets of parameters predict exactly the same; they are not listed\n`;
+  return head + textTable(rows, { indent: 2 }) + signs.join("") + equivalents + describeVerdicts(minimum);
+}
+
+function inDegrees(value: number, error: number, unit: string): string {
+  const degrees = 180 / Math.PI;
+  return unit === "rad" ? `= ${withError(value * degrees, error * degrees)} deg` : "";
 }
 
 function describeVerdicts({ verdicts, parameters }: StudyMinimum): string {

@@ -6,15 +6,17 @@
  * @returns e.g. `-0.240 +- 0.033`; without an error (0 or not finite) four significant digits
  */
 export function withError(value: number, error: number): string {
-  if (!(error > 0) || !Number.isFinite(error)) return significant(value, 4);
+  // An error lost in the digits of a double is none.
+  if (!(error > 1e-12 * Math.abs(value)) || !Number.isFinite(error)) return significant(value, 4);
   const decimals = errorDecimals(error);
   return `${fixed(value, decimals)} +- ${fixed(error, decimals)}`;
 }
 
-/** A measurement with every digit its author gave, `20.4 +- 3.6` or `58 +4 -3`. */
+/** A measurement with the digits its author gave, `20.4 +- 3.6` or `58 +4 -3`; noise of unit conversion drops out. */
 export function asGiven(value: number, plus: number, minus: number): string {
-  if (plus === 0 && minus === 0) return String(value);
-  return plus === minus ? `${value} +- ${plus}` : `${value} +${plus} -${minus}`;
+  const text = (x: number) => String(Number(x.toPrecision(12)));
+  if (plus === 0 && minus === 0) return text(value);
+  return plus === minus ? `${text(value)} +- ${text(plus)}` : `${text(value)} +${text(plus)} -${text(minus)}`;
 }
 
 /** A number with a given count of significant digits, never in exponent form between 1e-4 and 1e7. */

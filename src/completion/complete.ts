@@ -62,7 +62,10 @@ type Settling = Observable & { readonly quantum: Extract<Quantum, { kind: "width
 function settlesRows(observable: Observable): observable is Settling {
   const { quantum, use, measured } = observable;
   if (use === "fit" || measured.limit !== undefined) return false;
-  return (quantum.kind === "width" || quantum.kind === "fraction") && quantum.of.every(({ waves }) => waves === undefined);
+  return (
+    (quantum.kind === "width" || quantum.kind === "fraction") &&
+    quantum.of.every(({ waves }) => waves === undefined)
+  );
 }
 
 /** The channels that measurements settle, and how each measured sum splits into charge states. */

@@ -34,7 +34,12 @@ export interface Predictions {
 export function predict(fit: Fit, minimumIndex: number): Predictions {
   const minimum = fit.minima[minimumIndex]!;
   const evaluation = new Evaluation(evaluator(fit.model), minimum.vector);
-  return { fit, minimum, evaluation, channels: fit.model.channels.map((_, index) => predictChannel(evaluation, index)) };
+  return {
+    fit,
+    minimum,
+    evaluation,
+    channels: fit.model.channels.map((_, index) => predictChannel(evaluation, index)),
+  };
 }
 
 function predictChannel(evaluation: Evaluation, index: number): Prediction {
@@ -49,7 +54,8 @@ function predictChannel(evaluation: Evaluation, index: number): Prediction {
     const sigma = model.study.breaking * isospinLength;
     const scale = channel.identicalFactor * evaluation.kinematicFactor(index, w);
     variance += scale * scale * (4 * amplitudes[w]! ** 2 * sigma ** 2 + 2 * sigma ** 4);
-    if (isospinLength > 0) relativeStrength = Math.max(relativeStrength, Math.abs(amplitudes[w]!) / isospinLength);
+    if (isospinLength > 0)
+      relativeStrength = Math.max(relativeStrength, Math.abs(amplitudes[w]!) / isospinLength);
   }
   return { widthMeV: value, gradient, breakingMeV: Math.sqrt(variance), amplitudes, relativeStrength };
 }

@@ -30,6 +30,8 @@ export interface Minimum {
 export interface MinimaOptions {
   /** Minima this far above the best are listed, the others counted. Default 9; Infinity lists all. */
   readonly deltaChi2?: number;
+  /** Whether to start beside every wall of each cell too; slower, and finds minima in cells that hold several. Default true. */
+  readonly walls?: boolean;
   /** Refuse when more starts than this could be needed. Default 20000. */
   readonly maximumStarts?: number;
   /** Stops between two fits, by throwing the signal's reason. */
@@ -70,7 +72,9 @@ export function findMinima(problem: MinimaProblem, options: MinimaOptions = {}):
   const deltaChi2 = options.deltaChi2 ?? 9;
   requirePositive("findMinima: deltaChi2", Math.min(deltaChi2, Number.MAX_VALUE));
   requireInteger("findMinima: maximumStarts", options.maximumStarts ?? 20_000, 1);
-  const { blocks, starts } = minimaStarts(problem, options.maximumStarts ?? 20_000);
+  const all = minimaStarts(problem, options.maximumStarts ?? 20_000);
+  const { blocks } = all;
+  const starts = options.walls === false ? all.starts.filter(({ kind }) => kind !== "wall") : all.starts;
   const gathering = new Gathering(problem, blocks, starts);
   for (const [done, start] of starts.entries()) {
     options.signal?.throwIfAborted();
@@ -125,6 +129,11 @@ const QUICK_FIT = { refine: false, initialRadius: 0.1 } as const;
 
 function quickFit(problem: MinimaProblem, start: Vector): FitResult {
   return levenbergMarquardt(problem, start, { ...QUICK_FIT, maximumIterations: 300 });
+}
+
+/** The minimum that a full fit reaches from one point, with all its digits; see its verdicts for whether it is one. */
+export function minimumNear(problem: MinimaProblem, start: Vector): Minimum {
+  return asMinimum(levenbergMarquardt(problem, start, { initialRadius: 0.1 }));
 }
 
 function asMinimum(fit: FitResult): Minimum {

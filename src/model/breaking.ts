@@ -21,7 +21,14 @@ export function withBreaking(
       const name = `breaking ${channel.isospinChannel}${channel.waves.length > 1 ? ` L=${wave.L}` : ""}`;
       let index = indices.get(name);
       if (index === undefined) {
-        index = parameters.push({ name, kind: "breaking", unit: "1", start: 0, prior: { value: 0, plus: 1, minus: 1 } }) - 1;
+        index =
+          parameters.push({
+            name,
+            kind: "breaking",
+            unit: "1",
+            start: 0,
+            prior: { value: 0, plus: 1, minus: 1 },
+          }) - 1;
         indices.set(name, index);
       }
       return { ...wave, breaking: index };

@@ -1,17 +1,24 @@
 import { FormMaker } from "../couplings/form.js";
 import { STRONG } from "../couplings/operator.js";
-import { rootToNumber } from "../exact/signed-root.js";
 import { InputError } from "../errors.js";
+import { rootToNumber } from "../exact/signed-root.js";
 import { clebschGordan } from "../su2/clebsch-gordan.js";
 import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
+import {
+  channelThresholdMeV,
+  type Daughter,
+  foldedFactor,
+  type TwoBodyChannel,
+} from "../widths/folded-width.js";
 import { identicalFactor } from "../widths/partial-width.js";
 import { widthModel } from "../widths/width-model.js";
 import { channelName } from "./channel-names.js";
+import { DaughterShapes } from "./daughter-shapes.js";
 import { logarithmicSlope, type MassParameters } from "./masses.js";
 import type { Channel, Component, Decay, Wave } from "./model.js";
 import { type Placed, placedIn } from "./placed.js";
 import type { MixedStates } from "./resolve-mixing.js";
-import { exchangeSign } from "./selection-rules.js";
+import { allowedByGParity, exchangeSign } from "./selection-rules.js";
 
 /** The three hadrons of one contribution to a channel, daughters in the order of the decay. */
 interface Vertex {
@@ -24,7 +31,10 @@ interface Vertex {
 /** A channel while its contributions are being collected. */
 interface Growing {
   readonly vertex: Vertex;
-  readonly waves: Map<string, { wave: Omit<Wave, "components">; masses: Decay["masses"]; components: Component[] }>;
+  readonly waves: Map<
+    string,
+    { wave: Omit<Wave, "components">; masses: Decay["masses"]; components: Component[] }
+  >;
 }
 
 /**
@@ -42,6 +52,7 @@ export function channelsOf(
   groups: readonly MixedStates[],
   masses: MassParameters,
 ): Channel[] {
+  const shapes = new DaughterShapes();
   const growing = new Map<string, Growing>();
   for (const [index, decay] of decays.entries()) {
     const maker = new FormMaker({ ...decay, operator: STRONG }, decay.reduced);
@@ -58,7 +69,7 @@ export function channelsOf(
       const norm = isPair ? Math.SQRT1_2 : 1;
       const orders = a === b ? 1 + sign : id === direct ? 1 : sign;
       if (orders === 0) continue;
-      addComponent(channel, decay, masses, {
+      addComponent(channel, decay, masses, shapes, {
         decay: index,
         weight: norm * orders,
         mixing: [parent, first, second].flatMap(({ mixing }) => (mixing === undefined ? [] : [mixing])),
@@ -75,6 +86,8 @@ function verticesOf(decay: Decay, groups: readonly MixedStates[]): Vertex[] {
     firsts.flatMap((first) =>
       seconds.flatMap((second) => {
         const coefficient = isospinCoefficient(parent, first, second);
+        const placedStates = [parent, first, second].map(({ state }) => state);
+        if (!allowedByGParity([decay.from, ...decay.to], placedStates)) return [];
         return coefficient === 0 ? [] : [{ parent, first, second, coefficient }];
       }),
     ),
@@ -92,13 +105,14 @@ function addComponent(
   channel: Growing,
   decay: Decay,
   massParameters: MassParameters,
+  shapes: DaughterShapes,
   component: Component,
 ): void {
   const { L, twoS, model, masses } = decay;
   const key = `${L}/${twoS}`;
   const known = channel.waves.get(key);
   if (known === undefined) {
-    const kinematics = kinematicsOf(channel.vertex, decay, massParameters);
+    const kinematics = kinematicsOf(channel.vertex, decay, massParameters, shapes);
     channel.waves.set(key, { wave: { L, twoS, model, ...kinematics }, masses, components: [component] });
     return;
   }
@@ -111,21 +125,29 @@ function addComponent(
   known.components.push(component);
 }
 
+/** K at nominal masses, averaged over the line shapes of unstable daughters unless the study wants them nominal. */
 function kinematicsOf(
   { parent, first, second }: Vertex,
   decay: Decay,
   massParameters: MassParameters,
-): Pick<Wave, "kinematicFactor" | "massSlopes"> {
+  shapes: DaughterShapes,
+): Pick<Wave, "kinematicFactor" | "massSlopes" | "folded"> {
   const mass = ({ hadron, averageMassMeV }: Placed) =>
     decay.masses === "charge" ? hadron.massMeV : averageMassMeV;
-  const model = widthModel(decay.model.id, decay.model.options);
-  const vertex = { L: decay.L, parent: decay.from, daughters: decay.to };
-  const factor = (massMeV: number) => model.kinematicFactorMeV(massMeV, mass(first), mass(second), vertex);
+  const daughter = (placed: Placed): Daughter =>
+    (decay.daughters === "folded" ? shapes.of(placed, decay.masses) : undefined) ?? mass(placed);
+  const channel: TwoBodyChannel = {
+    model: widthModel(decay.model.id, decay.model.options),
+    vertex: { L: decay.L, parent: decay.from, daughters: decay.to },
+    daughters: [daughter(first), daughter(second)],
+  };
+  const folded = channel.daughters.some((d) => typeof d !== "number");
+  const factor = (massMeV: number) => foldedFactor(channel, massMeV).value;
   const kinematicFactor = factor(mass(parent));
   const parameter = massParameters.get(parent.member);
-  if (parameter === undefined || kinematicFactor === 0) return { kinematicFactor, massSlopes: [] };
-  const slope = logarithmicSlope(factor, mass(parent), mass(first) + mass(second));
-  return { kinematicFactor, massSlopes: [{ parameter, slope }] };
+  if (parameter === undefined || kinematicFactor === 0) return { kinematicFactor, massSlopes: [], folded };
+  const slope = logarithmicSlope(factor, mass(parent), channelThresholdMeV(channel));
+  return { kinematicFactor, massSlopes: [{ parameter, slope }], folded };
 }
 
 function finishedChannel({ vertex, waves }: Growing): Channel {

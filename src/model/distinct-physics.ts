@@ -22,11 +22,20 @@ export function distinctPhysics(ready: Evaluator, minima: readonly Minimum[]): D
   const groups: { signature: number[][]; members: Minimum[] }[] = [];
   for (const minimum of minima) {
     const signature = signatureOf(ready, minimum.parameters);
-    const group = groups.find((other) => Math.abs(other.members[0]!.chi2 - minimum.chi2) < 1e-4 * (1 + minimum.chi2) && sameUpToSigns(other.signature, signature));
+    const group = groups.find(
+      (other) =>
+        Math.abs(other.members[0]!.chi2 - minimum.chi2) < 1e-4 * (1 + minimum.chi2) &&
+        sameUpToSigns(other.signature, signature),
+    );
     if (group === undefined) groups.push({ signature, members: [minimum] });
-    else if (!group.members.some((other) => samePoint(other.parameters, minimum.parameters))) group.members.push(minimum);
+    else if (!group.members.some((other) => samePoint(other.parameters, minimum.parameters)))
+      group.members.push(minimum);
   }
-  const size = (minimum: Minimum) => angles.reduce((sum, k) => sum + Math.abs(minimum.parameters[k]!) - (minimum.parameters[k]! > 0 ? 1e-3 : 0), 0);
+  const size = (minimum: Minimum) =>
+    angles.reduce(
+      (sum, k) => sum + Math.abs(minimum.parameters[k]!) - (minimum.parameters[k]! > 0 ? 1e-3 : 0),
+      0,
+    );
   return groups
     .map(({ members }) => {
       const [minimum] = [...members].sort((a, b) => size(a) - size(b));

@@ -3,6 +3,7 @@ import { STRONG } from "../couplings/operator.js";
 import { rootToNumber } from "../exact/signed-root.js";
 import { type MixingMatrix, mixingMatrix } from "./mixing-matrix.js";
 import type { Component, Decay, Model, Observable, PriorTarget, Total, Wave, WidthSum } from "./model.js";
+import { type SharedAmplitudes, sharedAmplitudes } from "./shared-amplitudes.js";
 
 /** A value with its derivatives with respect to all parameters of the model. */
 export interface Graded {
@@ -15,16 +16,15 @@ export interface Evaluator {
   readonly model: Model;
   /** By channel, wave, component: weight times form, as coefficients of the model's couplings. */
   readonly rows: readonly (readonly (readonly (readonly number[])[])[])[];
+  readonly shared: SharedAmplitudes;
 }
 
 /** The evaluator of a model. Here exact forms become numbers. */
 export function evaluator(model: Model): Evaluator {
-  return {
-    model,
-    rows: model.channels.map(({ waves }) =>
-      waves.map(({ components }) => components.map((component) => componentRow(model, component))),
-    ),
-  };
+  const rows = model.channels.map(({ waves }) =>
+    waves.map(({ components }) => components.map((component) => componentRow(model, component))),
+  );
+  return { model, rows, shared: sharedAmplitudes(model, rows) };
 }
 
 function componentRow(model: Model, { decay, weight, form }: Component): number[] {
@@ -37,11 +37,12 @@ function componentRow(model: Model, { decay, weight, form }: Component): number[
   return row;
 }
 
-/** A model at one parameter vector. Widths are computed when first asked for. */
+/** A model at one parameter vector. Amplitudes are computed when first asked for. */
 export class Evaluation {
   readonly #evaluator: Evaluator;
   readonly #matrices: readonly MixingMatrix[];
-  readonly #widths = new Map<string, Graded>();
+  /** By `SharedAmplitudes.representatives`. */
+  readonly #amplitudes: Graded[] = [];
   readonly model: Model;
 
   constructor(
@@ -73,16 +74,32 @@ export class Evaluation {
 
   /** Flavour amplitude of a wave of a channel, in the coupling's unit, breaking included. */
   amplitude(channel: number, wave: number): Graded {
+    const { index, factor } = this.#evaluator.shared.ofWave[channel]![wave]!;
+    const shared = this.#sharedAmplitude(index);
+    return factor === 1 ? shared : scaled(shared, factor);
+  }
+
+  #sharedAmplitude(index: number): Graded {
+    const known = this.#amplitudes[index];
+    if (known !== undefined) return known;
+    const { channel, wave } = this.#evaluator.shared.representatives[index]!;
+    const amplitude = this.#computedAmplitude(channel, wave);
+    this.#amplitudes[index] = amplitude;
+    return amplitude;
+  }
+
+  #computedAmplitude(channel: number, wave: number): Graded {
     const row = this.amplitudeRow(channel, wave);
     const gradient = this.#zero();
-    for (const [k, d] of row.entries()) gradient[k] = d;
+    for (let k = 0; k < row.length; k++) gradient[k] = row[k]!;
     let value = dot(row, this.parameters);
-    for (const [c, component] of this.#wave(channel, wave).components.entries()) {
+    const { components, breaking } = this.#wave(channel, wave);
+    for (const [c, component] of components.entries()) {
       if (component.mixing.length === 0) continue;
       const bare = dot(this.#evaluator.rows[channel]![wave]![c]!, this.parameters);
-      for (const { parameter, factor } of this.#mixingDerivatives(component)) gradient[parameter]! += factor * bare;
+      for (const { parameter, factor } of this.#mixingDerivatives(component))
+        gradient[parameter]! += factor * bare;
     }
-    const { breaking } = this.#wave(channel, wave);
     if (breaking !== undefined) {
       const strength = this.couplingStrength(channel, wave);
       const size = this.model.study.fit.theoryError * this.model.channels[channel]!.isospinCoefficient;
@@ -112,36 +129,49 @@ export class Evaluation {
   /** K of a wave at the present masses. */
   kinematicFactor(channel: number, wave: number): number {
     const { kinematicFactor, massSlopes } = this.#wave(channel, wave);
-    return kinematicFactor * Math.exp(massSlopes.reduce((sum, { parameter, slope }) => sum + slope * this.#shift(parameter), 0));
+    if (massSlopes.length === 0) return kinematicFactor;
+    let exponent = 0;
+    for (const { parameter, slope } of massSlopes) exponent += slope * this.#shift(parameter);
+    return kinematicFactor * Math.exp(exponent);
   }
 
   /** Partial width of a channel in MeV, or of some of its waves: identical factor times the sum of |A|^2 K. */
   width(channel: number, waves?: readonly number[]): Graded {
-    const key = `${channel}/${waves?.join() ?? ""}`;
-    const known = this.#widths.get(key);
-    if (known !== undefined) return known;
-    const { identicalFactor, waves: all } = this.model.channels[channel]!;
-    const gradient = this.#zero();
-    let value = 0;
-    for (const w of waves ?? all.keys()) {
-      const amplitude = this.amplitude(channel, w);
-      const scale = identicalFactor * this.kinematicFactor(channel, w);
-      const width = scale * amplitude.value ** 2;
-      value += width;
-      for (const [k, d] of amplitude.gradient.entries()) gradient[k]! += 2 * scale * amplitude.value * d;
-      for (const { parameter, slope } of all[w]!.massSlopes) gradient[parameter]! += width * slope;
-    }
-    const graded = { value, gradient };
-    this.#widths.set(key, graded);
-    return graded;
+    return this.widthSum([waves === undefined ? { channel, weight: 1 } : { channel, weight: 1, waves }]);
   }
 
   /** A weighted sum of partial widths in MeV. */
   widthSum(sum: WidthSum): Graded {
-    return sum.reduce<Graded>(
-      (total, { channel, weight, waves }) => combine(total, 1, this.width(channel, waves), weight),
-      { value: 0, gradient: this.#zero() },
-    );
+    const gradient = this.#zero();
+    let value = 0;
+    // Neighbours in a sum mostly share their amplitude: its square is multiplied with their phase space added up.
+    let amplitude: Graded | undefined;
+    let phaseSpace = 0;
+    const add = () => {
+      if (amplitude === undefined || phaseSpace === 0) return;
+      value += phaseSpace * amplitude.value ** 2;
+      const slope = 2 * phaseSpace * amplitude.value;
+      for (let k = 0; k < gradient.length; k++) gradient[k]! += slope * amplitude.gradient[k]!;
+    };
+    for (const { channel, weight, waves } of sum) {
+      const { identicalFactor, waves: all } = this.model.channels[channel]!;
+      for (let w = 0; w < all.length; w++) {
+        if (waves !== undefined && !waves.includes(w)) continue;
+        const { index, factor } = this.#evaluator.shared.ofWave[channel]![w]!;
+        const next = this.#sharedAmplitude(index);
+        if (next !== amplitude) {
+          add();
+          amplitude = next;
+          phaseSpace = 0;
+        }
+        const part = weight * identicalFactor * factor * factor * this.kinematicFactor(channel, w);
+        phaseSpace += part;
+        for (const { parameter, slope } of all[w]!.massSlopes)
+          gradient[parameter]! += part * next.value ** 2 * slope;
+      }
+    }
+    add();
+    return { value, gradient };
   }
 
   /** A total width in MeV. */
@@ -175,11 +205,11 @@ export class Evaluation {
       }
       case "amplitude": {
         const t = quotient(this.#isospinProduct(quantum.pair), this.total(quantum.total));
-        return combine(t, quantum.sign, t, 0);
+        return scaled(t, quantum.sign);
       }
       case "residue": {
         const product = this.#isospinProduct(quantum.pair);
-        return combine(product, quantum.signed || product.value >= 0 ? 0.5 : -0.5, product, 0);
+        return scaled(product, quantum.signed || product.value >= 0 ? 0.5 : -0.5);
       }
       case "axial": {
         const gradient = this.#zero();
@@ -187,7 +217,7 @@ export class Evaluation {
         return { value: dot(quantum.row, this.parameters), gradient };
       }
       case "parameter":
-        return this.#priorTarget(quantum.parameter);
+        return this.priorTarget(quantum.parameter);
     }
   }
 
@@ -202,19 +232,26 @@ export class Evaluation {
         const { identicalFactor, isospinCoefficient } = this.model.channels[c]!;
         return total + weight * identicalFactor * isospinCoefficient ** 2 * this.kinematicFactor(c, wave);
       }, 0);
-      return combine(amplitude, Math.sqrt(phaseSpace) / coefficient, amplitude, 0);
+      return scaled(amplitude, Math.sqrt(phaseSpace) / coefficient);
     });
     return times(a!, b!);
   }
 
-  #priorTarget(target: PriorTarget): Graded {
+  /** A parameter, or F, D or a ratio of them for a decay; infinite where the denominator vanishes. */
+  priorTarget(target: PriorTarget): Graded {
     if ("parameter" in target) return this.#parameter(target.parameter);
     const decay = this.model.decays[target.decay]!;
     const [s, a] = decay.couplingRows.map((row) => this.#linear(row)) as [Graded, Graded];
-    const d = combine(s, 1 / rootToNumber(symmetricCouplingOfD()), s, 0);
-    const f = combine(a, 1 / rootToNumber(antisymmetricCouplingOfF()), a, 0);
-    const sum = combine(d, 1, f, 1);
-    const ofName = { D: () => d, F: () => f, "F/D": () => quotient(f, d), alpha_F: () => quotient(f, sum), alpha_D: () => quotient(d, sum) };
+    const d = scaled(s, 1 / rootToNumber(symmetricCouplingOfD()));
+    const f = scaled(a, 1 / rootToNumber(antisymmetricCouplingOfF()));
+    const sum = { value: d.value + f.value, gradient: d.gradient.map((x, k) => x + f.gradient[k]!) };
+    const ofName = {
+      D: () => d,
+      F: () => f,
+      "F/D": () => quotient(f, d),
+      alpha_F: () => quotient(f, sum),
+      alpha_D: () => quotient(d, sum),
+    };
     return ofName[target.name]();
   }
 
@@ -239,7 +276,10 @@ export class Evaluation {
   }
 
   #mixingFactor({ mixing }: Component): number {
-    return mixing.reduce((product, { mixing: m, state, bare }) => product * this.#matrices[m]!.value[state]![bare]!, 1);
+    return mixing.reduce(
+      (product, { mixing: m, state, bare }) => product * this.#matrices[m]!.value[state]![bare]!,
+      1,
+    );
   }
 
   /** Derivatives of a component's mixing factor, by parameter; a parameter may come up more than once. */
@@ -249,7 +289,10 @@ export class Evaluation {
         (product, e, j) => (j === k ? product : product * this.#matrices[e.mixing]!.value[e.state]![e.bare]!),
         1,
       );
-      return this.#matrices[m]!.derivatives.map(({ parameter, value }) => ({ parameter, factor: others * value[state]![bare]! }));
+      return this.#matrices[m]!.derivatives.map(({ parameter, value }) => ({
+        parameter,
+        factor: others * value[state]![bare]!,
+      }));
     });
   }
 
@@ -263,12 +306,15 @@ export function decayHasFAndD(decay: Decay): boolean {
   return decay.reduced.length === 2 && hasFAndD({ ...decay, operator: STRONG });
 }
 
-function combine(a: Graded, x: number, b: Graded, y: number): Graded {
-  return { value: x * a.value + y * b.value, gradient: a.gradient.map((d, k) => x * d + y * b.gradient[k]!) };
+function scaled(a: Graded, factor: number): Graded {
+  return { value: factor * a.value, gradient: a.gradient.map((d) => factor * d) };
 }
 
 function times(a: Graded, b: Graded): Graded {
-  return { value: a.value * b.value, gradient: a.gradient.map((d, k) => d * b.value + a.value * b.gradient[k]!) };
+  return {
+    value: a.value * b.value,
+    gradient: a.gradient.map((d, k) => d * b.value + a.value * b.gradient[k]!),
+  };
 }
 
 function quotient(a: Graded, b: Graded): Graded {

@@ -1,7 +1,7 @@
 import { fAndD } from "../couplings/f-and-d.js";
 import { InputError } from "../errors.js";
 import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
-import { findMinima, type MinimaProblem, type Minimum } from "../fit/minima.js";
+import { findMinima, type MinimaProblem, type Minimum, minimumNear } from "../fit/minima.js";
 import { sumsOf } from "./breaking.js";
 import { distinctPhysics } from "./distinct-physics.js";
 import { decayHasFAndD, Evaluation, type Evaluator, evaluator } from "./evaluate.js";
@@ -16,8 +16,7 @@ export interface FittedParameter {
   /** Standard deviation from the covariance matrix, not scaled by chi2. */
   readonly error: number;
   readonly unit: string;
-  /** True for F, D and the like. */
-  readonly derived: boolean;
+  readonly kind: Parameter["kind"] | "derived";
 }
 
 /** A measurement against the fit. */
@@ -59,7 +58,7 @@ export const LISTED_DELTA_CHI2 = 9;
 export const MIRROR_DELTA_CHI2 = 4;
 
 /** Free mixing angles are searched from starts this far apart, over half a turn; the other half only changes signs. */
-const ANGLE_STEP = Math.PI / 12;
+const ANGLE_STEP = Math.PI / 6;
 
 /** Choices for a fit. */
 export interface FitModelOptions {
@@ -80,18 +79,38 @@ export function fitModel(model: Model, options: FitModelOptions = {}): Fit {
   const ready = evaluator(model);
   const fitted = fittedObservables(model);
   requireConstrained(ready, fitted);
-  const starts = nuisanceStarts(model);
-  const found: Minimum[] = [];
-  for (const [k, nuisance] of starts.entries()) {
-    const { onProgress, ...rest } = options;
-    const progress = (done: number, total: number) => onProgress?.(k * total + done, starts.length * total);
-    const problem = minimaProblem(ready, fitted, nuisance);
-    found.push(...findMinima(problem, { deltaChi2: Number.POSITIVE_INFINITY, ...rest, onProgress: progress }).minima);
-  }
+  const found = minimaOf(ready, fitted, options);
   const minima = distinctPhysics(ready, found).map(({ minimum, equivalents }) =>
     studyMinimum(ready, fitted, minimum, equivalents),
   );
   return { model, minima };
+}
+
+function minimaOf(ready: Evaluator, fitted: readonly Observable[], options: FitModelOptions): Minimum[] {
+  const { model } = ready;
+  const starts = nuisanceStarts(model);
+  const everything = { deltaChi2: Number.POSITIVE_INFINITY };
+  if (starts.length === 1)
+    return findMinima(minimaProblem(ready, fitted, starts[0]!), { ...everything, ...options }).minima;
+  // With free angles the search runs over many starts, so what is held tightly by priors rests until the end, and the
+  // starts beside walls are spared: a grid of angles comes into every cell from several sides.
+  const resting = model.parameters.map(
+    ({ kind }) => kind === "mass" || kind === "total width" || kind === "normalisation",
+  );
+  const found = starts.flatMap((nuisance, k) => {
+    const problem = withResting(minimaProblem(ready, fitted, nuisance), resting, model);
+    const onProgress = (done: number, total: number) =>
+      options.onProgress?.(k * total + done, starts.length * total);
+    return findMinima(problem, { ...everything, ...options, walls: false, onProgress }).minima;
+  });
+  const full = minimaProblem(ready, fitted, starts[0]!);
+  const complete = found.map((minimum) => ({
+    ...minimum,
+    parameters: awake(minimum.parameters, resting, model),
+  }));
+  return distinctPhysics(ready, complete)
+    .map(({ minimum }) => minimumNear(full, minimum.parameters))
+    .filter(({ verdicts }, k) => verdicts.converged || k === 0);
 }
 
 /** The observables of a model that enter the fit. */
@@ -105,7 +124,9 @@ function nuisanceStarts(model: Model): number[][] {
   return model.parameters.slice(model.couplingCount).reduce<number[][]>(
     (starts, { kind, start, prior }) => {
       const isFree = kind === "mixing angle" && prior === undefined;
-      const values = isFree ? Array.from({ length: count }, (_, k) => (k - count / 2 + 0.5) * ANGLE_STEP) : [start];
+      const values = isFree
+        ? Array.from({ length: count }, (_, k) => (k - count / 2 + 0.5) * ANGLE_STEP)
+        : [start];
       return starts.flatMap((rest) => values.map((value) => [...rest, value]));
     },
     [[]],
@@ -119,7 +140,9 @@ export function minimaProblem(
   nuisance: readonly number[],
 ): MinimaProblem {
   const { model } = ready;
-  const constrained = model.parameters.map((parameter, index) => ({ parameter, index })).filter(({ parameter }) => parameter.prior !== undefined);
+  const constrained = model.parameters
+    .map((parameter, index) => ({ parameter, index }))
+    .filter(({ parameter }) => parameter.prior !== undefined);
   const terms = (parameters: readonly number[]) => [
     ...comparisons(new Evaluation(ready, parameters), fitted),
     ...constrained.map(({ parameter, index }) => priorResidual(parameter, index, parameters)),
@@ -133,6 +156,26 @@ export function minimaProblem(
     bounds: model.parameters.map(boundsOf),
     residuals: (parameters) => terms(parameters).map((term) => term.residual),
     jacobian: (parameters) => terms(parameters).map((term) => [...term.gradient]),
+  };
+}
+
+/** The full parameter vector for one without the resting parameters, which stand at their starts. */
+function awake(parameters: readonly number[], resting: readonly boolean[], model: Model): number[] {
+  let next = 0;
+  return model.parameters.map(({ start }, k) => (resting[k] ? start : parameters[next++]!));
+}
+
+/** A problem in which some nuisance parameters stand still. */
+function withResting(problem: MinimaProblem, resting: readonly boolean[], model: Model): MinimaProblem {
+  const moving = <T>(values: readonly T[]): T[] => values.filter((_, k) => !resting[k]);
+  const { couplingCount } = problem;
+  return {
+    ...problem,
+    parameterNames: moving(problem.parameterNames),
+    nuisanceStarts: problem.nuisanceStarts.filter((_, k) => !resting[couplingCount + k]),
+    ...(problem.bounds === undefined ? {} : { bounds: moving(problem.bounds) }),
+    residuals: (parameters) => problem.residuals(awake(parameters, resting, model)),
+    jacobian: (parameters) => problem.jacobian!(awake(parameters, resting, model)).map(moving),
   };
 }
 
@@ -172,12 +215,12 @@ function studyMinimum(
   const { model } = ready;
   const evaluation = new Evaluation(ready, minimum.parameters);
   const direct = model.parameters.map(
-    ({ name, unit }, k): FittedParameter => ({
+    ({ name, unit, kind }, k): FittedParameter => ({
       name,
       value: minimum.parameters[k]!,
       error: Math.sqrt(Math.max(0, minimum.covariance[k]?.[k] ?? 0)),
       unit,
-      derived: false,
+      kind,
     }),
   );
   return {
@@ -204,14 +247,23 @@ function derivedParameters(model: Model, index: number, minimum: Minimum): Fitte
   if (!decayHasFAndD(decay)) return [];
   const value = (row: readonly number[]) => row.reduce((sum, c, k) => sum + c * minimum.parameters[k]!, 0);
   const covariance = (a: readonly number[], b: readonly number[]) =>
-    a.reduce((sum, x, i) => sum + b.reduce((inner, y, j) => inner + x * minimum.covariance[i]![j]! * y, 0), 0);
+    a.reduce(
+      (sum, x, i) => sum + b.reduce((inner, y, j) => inner + x * minimum.covariance[i]![j]! * y, 0),
+      0,
+    );
   const rows = decay.couplingRows;
   const block = rows.map((a) => rows.map((b) => covariance(a, b)));
   const { D, F, fOverD, alphaF, alphaD } = fAndD(value(rows[0]!), value(rows[1]!), block);
   const unit = model.parameters[rows[0]!.findIndex((c) => c !== 0)]!.unit;
   const prefix = decay.name === "" ? "" : `${decay.name}.`;
-  const named = { D: [D, unit], F: [F, unit], "F/D": [fOverD, "1"], alpha_F: [alphaF, "1"], alpha_D: [alphaD, "1"] } as const;
+  const named = {
+    D: [D, unit],
+    F: [F, unit],
+    "F/D": [fOverD, "1"],
+    alpha_F: [alphaF, "1"],
+    alpha_D: [alphaD, "1"],
+  } as const;
   return Object.entries(named).flatMap(([name, [estimate, ofUnit]]) =>
-    estimate === null ? [] : [{ name: `${prefix}${name}`, ...estimate, unit: ofUnit, derived: true }],
+    estimate === null ? [] : [{ name: `${prefix}${name}`, ...estimate, unit: ofUnit, kind: "derived" }],
   );
 }

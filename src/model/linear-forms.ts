@@ -46,13 +46,44 @@ export function signProblem(
   const amplitudeTargets: Target[] = [];
   for (const { quantum, measured } of fitted) {
     const squares = sumsOf(quantum).map(asSquare);
-    const total = quantum.kind === "width" ? 1 : quantum.kind === "fraction" && quantum.total.kind !== "sum" ? evaluation.total(quantum.total).value : 0;
+    const total =
+      quantum.kind === "width"
+        ? 1
+        : quantum.kind === "fraction" && quantum.total.kind !== "sum"
+          ? evaluation.total(quantum.total).value
+          : 0;
     const [square] = squares;
     if (square === undefined || total === 0) continue;
     const amplitude = Math.sqrt(Math.max(0, measured.value * total) / square.factor);
     const error = ((measured.plus + measured.minus) / 2) * (total / square.factor);
     // d(a^2) = 2 a da; near zero the error of the square itself limits the amplitude.
-    amplitudeTargets.push({ form: square.form, amplitude, sigma: error / Math.max(2 * amplitude, Math.sqrt(error)) });
+    amplitudeTargets.push({
+      form: square.form,
+      amplitude,
+      sigma: error / Math.max(2 * amplitude, Math.sqrt(error)),
+    });
   }
+  connect(forms, evaluation);
   return { forms, amplitudeTargets };
+}
+
+/**
+ * Adds forms of channels that no observable is about where they tie together couplings that would else stand apart:
+ * the relative sign of those couplings is free in the data, but not in the predictions.
+ */
+function connect(forms: number[][], evaluation: Evaluation): void {
+  const label = Array.from({ length: evaluation.model.couplingCount }, (_, k) => k);
+  const join = (form: readonly number[]): boolean => {
+    const labels = new Set(form.flatMap((c, k) => (c === 0 ? [] : [label[k]!])));
+    const least = Math.min(...labels);
+    for (const [k, old] of label.entries()) if (labels.has(old)) label[k] = least;
+    return labels.size > 1;
+  };
+  forms.forEach(join);
+  for (const [index, { waves }] of evaluation.model.channels.entries()) {
+    for (const w of waves.keys()) {
+      const row = evaluation.amplitudeRow(index, w);
+      if (join(row)) forms.push(row);
+    }
+  }
 }

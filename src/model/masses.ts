@@ -28,7 +28,13 @@ export function massParameters(
       const { plus, minus } = hadron.massErrorMeV;
       const value = hadron.massMeV;
       indices.set(member, parameters.length);
-      parameters.push({ name: `mass ${member}`, kind: "mass", unit: "MeV", start: value, prior: { value, plus, minus } });
+      parameters.push({
+        name: `mass ${member}`,
+        kind: "mass",
+        unit: "MeV",
+        start: value,
+        prior: { value, plus, minus },
+      });
     }
   }
   return indices;
@@ -42,7 +48,11 @@ function hasError({ massErrorMeV }: Hadron): boolean {
 const STEP = 1e-4;
 
 /** d ln K / dM at a mass above threshold, by central difference; `factor` is K against the parent's mass in MeV. */
-export function logarithmicSlope(factor: (massMeV: number) => number, massMeV: number, thresholdMeV: number): number {
+export function logarithmicSlope(
+  factor: (massMeV: number) => number,
+  massMeV: number,
+  thresholdMeV: number,
+): number {
   const step = STEP * (massMeV - thresholdMeV);
   return Math.log(factor(massMeV + step) / factor(massMeV - step)) / (2 * step);
 }

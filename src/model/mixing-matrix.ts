@@ -4,7 +4,10 @@ import type { Mixing } from "./model.js";
 export interface MixingMatrix {
   /** U(state, bare). */
   readonly value: readonly (readonly number[])[];
-  readonly derivatives: readonly { readonly parameter: number; readonly value: readonly (readonly number[])[] }[];
+  readonly derivatives: readonly {
+    readonly parameter: number;
+    readonly value: readonly (readonly number[])[];
+  }[];
 }
 
 /**
@@ -16,7 +19,8 @@ export interface MixingMatrix {
 export function mixingMatrix(mixing: Mixing, parameters: readonly number[]): MixingMatrix {
   const n = mixing.states.length;
   const angles = mixing.rotations.map(
-    ({ angle, sign, offset, parameter }) => sign * (parameter === undefined ? angle : parameters[parameter]!) + offset,
+    ({ angle, sign, offset, parameter }) =>
+      sign * (parameter === undefined ? angle : parameters[parameter]!) + offset,
   );
   const product = (derived: number): number[][] =>
     mixing.rotations.reduce(
@@ -26,7 +30,9 @@ export function mixingMatrix(mixing: Mixing, parameters: readonly number[]): Mix
   return {
     value: product(-1),
     derivatives: mixing.rotations.flatMap(({ parameter, sign }, k) =>
-      parameter === undefined ? [] : [{ parameter, value: product(k).map((row) => row.map((d) => sign * d)) }],
+      parameter === undefined
+        ? []
+        : [{ parameter, value: product(k).map((row) => row.map((d) => sign * d)) }],
     ),
   };
 }

@@ -27,6 +27,7 @@ export interface Decay {
   readonly twoS: number;
   readonly model: WidthModelChoice;
   readonly masses: "charge" | "average";
+  readonly daughters: "folded" | "nominal";
   readonly reduced: readonly Reduced[];
   /**
    * Each reduced coupling as a linear combination of the model's couplings, `reduced.length` rows of
@@ -89,6 +90,8 @@ export interface Wave {
   readonly components: readonly Component[];
   /** K of the width model at nominal masses: partial width = identicalFactor |A|^2 K. In MeV over the square of the coupling's unit. */
   readonly kinematicFactor: number;
+  /** Whether K is averaged over the line shape of an unstable daughter. */
+  readonly folded: boolean;
   /** d ln K / d(mass parameter), for masses that the fit moves; K = kinematicFactor exp(sum of slope times shift). */
   readonly massSlopes: readonly { readonly parameter: number; readonly slope: number }[];
   /** Parameter z of the breaking that enters the fit: A_I -> A_I + theoryError |g| z; absent without one. */
@@ -134,7 +137,13 @@ export type Quantum =
   | { readonly kind: "fraction"; readonly of: WidthSum; readonly total: Total }
   | { readonly kind: "ratio"; readonly of: WidthSum; readonly over: WidthSum }
   | { readonly kind: "product"; readonly of: WidthSum; readonly by: WidthSum; readonly total: Total }
-  | { readonly kind: "amplitude"; readonly pair: readonly [WidthSum, WidthSum]; readonly total: Total; readonly sign: 1 | -1; readonly reaction?: string }
+  | {
+      readonly kind: "amplitude";
+      readonly pair: readonly [WidthSum, WidthSum];
+      readonly total: Total;
+      readonly sign: 1 | -1;
+      readonly reaction?: string;
+    }
   | { readonly kind: "residue"; readonly pair: readonly [WidthSum, WidthSum]; readonly signed: boolean }
   | { readonly kind: "total"; readonly of: WidthSum }
   | { readonly kind: "axial"; readonly row: readonly number[] }

@@ -14,12 +14,19 @@ export interface Placed {
   /** Undefined for a pure state, which has weight 1. */
   readonly mixing?: MixingElement;
   readonly averageMassMeV: number;
+  /** Mean width of the charge states; null where one is not known. */
+  readonly averageWidthMeV: number | null;
 }
 
 /** Every hadron with a component in a multiplet. Mixed states take the places of the multiplet's own members. */
 export function placedIn(multiplet: Multiplet, groups: readonly MixedStates[]): Placed[] {
   const own = multiplet.members
-    .filter((member) => !groups.some(({ bare }) => bare.some((state) => state.multiplet.id === multiplet.id && samePlace(state, member))))
+    .filter(
+      (member) =>
+        !groups.some(({ bare }) =>
+          bare.some((state) => state.multiplet.id === multiplet.id && samePlace(state, member)),
+        ),
+    )
     .flatMap((member) => ofMember(multiplet, member));
   const mixed = groups.flatMap((group, mixing) =>
     group.bare.flatMap((state, bare) =>
@@ -38,11 +45,16 @@ function samePlace(a: { threeY: number; twoI: number }, b: { threeY: number; two
 function ofMember(multiplet: Multiplet, member: Member, mixing?: MixingElement): Placed[] {
   const { threeY, twoI } = member;
   const averageMassMeV = isospinAveragedMassMeV(member);
+  const widths = member.hadrons.map(({ widthMeV }) => widthMeV);
+  const averageWidthMeV = widths.some((width) => width === null)
+    ? null
+    : widths.reduce<number>((sum, width) => sum + width!, 0) / widths.length;
   return member.hadrons.map((hadron, k) => ({
     hadron,
     member: member.name,
     state: { irrep: multiplet.irrep, threeY, twoI, twoI3: twoI - 2 * k },
     averageMassMeV,
+    averageWidthMeV,
     ...(mixing === undefined ? {} : { mixing }),
   }));
 }

@@ -1,11 +1,18 @@
 import { InputError, type SourcePosition } from "../errors.js";
-import type { Study } from "../study/study.js";
+import { listProblems } from "../study/list-problems.js";
+import type { Study, StudyProblem } from "../study/study.js";
 
 /** Collects what is wrong with a study, so that the user sees all of it at once. */
 export class Problems {
-  private readonly texts: string[] = [];
+  private readonly noted: StudyProblem[];
 
-  constructor(private readonly study: Study) {}
+  /** @param earlier - what is known to be wrong with the study's form */
+  constructor(
+    private readonly study: Study,
+    earlier: readonly StudyProblem[] = [],
+  ) {
+    this.noted = [...earlier];
+  }
 
   /** Position of the value at a path of the study, e.g. `measurements/0/value`. */
   positionOf(path: string): SourcePosition {
@@ -18,8 +25,7 @@ export class Problems {
 
   /** Notes that the value at `path` is wrong. */
   add(path: string, text: string): void {
-    const { file, line, column } = this.positionOf(path);
-    this.texts.push(`${file}:${line}:${column}: ${path}: ${text}`);
+    this.noted.push({ path, position: this.positionOf(path), text });
   }
 
   /** The result of `attempt`, or undefined with the InputError noted at `path`. */
@@ -33,8 +39,13 @@ export class Problems {
     }
   }
 
+  /** Whether anything was noted at the value of `path` or within it; anywhere, without a path. */
+  has(path = ""): boolean {
+    return this.noted.some((problem) => path === "" || `${problem.path}/`.startsWith(`${path}/`));
+  }
+
   /** @throws InputError with everything noted, if anything was. */
   throwIfAny(): void {
-    if (this.texts.length > 0) throw new InputError(this.texts.join("\n"));
+    if (this.noted.length > 0) throw new InputError(listProblems(this.noted));
   }
 }

@@ -7,6 +7,7 @@ import { su3ClebschGordan } from "../su3/clebsch-gordan.js";
 import { type Irrep, sameIrrep } from "../su3/irrep.js";
 import { conjugateState, type State, states } from "../su3/state.js";
 import type { UntiedDecay } from "./resolve-decays.js";
+import { exchangeSign } from "./selection-rules.js";
 
 /** Sizes below this, relative to 1, are rounding: coefficients here are ratios of small roots. */
 const NULL = 1e-9;
@@ -38,7 +39,12 @@ export function quarkLineCouplings(decays: readonly UntiedDecay[]): QuarkLineCou
   const { pivots, rows } = rowReduced(nullSpace(equations, columns.length));
   if (pivots.length === 0) {
     const mend = "Every coupling vanishes; is a decay missing from the family?";
-    refuse("quarkLine", "decays that can obey the rule together", decays.map(({ name }) => name), mend);
+    refuse(
+      "quarkLine",
+      "decays that can obey the rule together",
+      decays.map(({ name }) => name),
+      mend,
+    );
   }
   const column = (decay: number, reduced: number) =>
     columns.findIndex((c) => c.decay === decay && c.reduced === reduced);
@@ -72,17 +78,11 @@ function disconnectedAmplitudes(
       for (const second of slots[2]!) {
         if (isConnected(parent, first, second)) continue;
         const row = columns.map(() => 0);
-        for (const [d, { from, to }] of decays.entries()) {
-          for (const r of parent.overlap(from.irrep)) {
-            for (const a of first.overlap(to[0].irrep)) {
-              for (const b of second.overlap(to[1].irrep)) {
-                if (a.state.threeY + b.state.threeY !== r.state.threeY) continue;
-                if (a.state.twoI3 + b.state.twoI3 !== r.state.twoI3) continue;
-                for (const { reduced, c } of makers[d]!.chargeForm(r.state, [a.state, b.state]).terms) {
-                  const k = columns.findIndex((column) => column.decay === d && column.reduced === reduced);
-                  row[k]! += r.weight * a.weight * b.weight * rootToNumber(c);
-                }
-              }
+        for (const [d, decay] of decays.entries()) {
+          for (const [a, b, weight] of orders(decay, first, second)) {
+            for (const { reduced, value } of amplitude(makers[d]!, decay, parent, a, b)) {
+              row[columns.findIndex((column) => column.decay === d && column.reduced === reduced)]! +=
+                weight * value;
             }
           }
         }
@@ -91,6 +91,41 @@ function disconnectedAmplitudes(
     }
   }
   return equations;
+}
+
+/**
+ * The ways two states can be the daughters of a decay, with weights: two mesons in both orders, as one normalised state
+ * where they come from one multiplet.
+ */
+function orders(decay: UntiedDecay, first: Lines, second: Lines): [Lines, Lines, number][] {
+  const [a, b] = decay.to;
+  if (a.baryonNumber !== 0) return [[first, second, 1]];
+  const norm = a.id === b.id ? Math.SQRT1_2 : 1;
+  return [
+    [first, second, norm],
+    [second, first, norm * exchangeSign(decay)],
+  ];
+}
+
+/** The amplitude between states of the quark basis, by reduced coupling of one decay. */
+function amplitude(
+  maker: FormMaker,
+  { from, to }: UntiedDecay,
+  parent: Lines,
+  first: Lines,
+  second: Lines,
+): { reduced: number; value: number }[] {
+  return parent.overlap(from.irrep).flatMap((r) =>
+    first.overlap(to[0].irrep).flatMap((a) =>
+      second.overlap(to[1].irrep).flatMap((b) => {
+        if (a.state.threeY + b.state.threeY !== r.state.threeY) return [];
+        if (a.state.twoI3 + b.state.twoI3 !== r.state.twoI3) return [];
+        const weight = r.weight * a.weight * b.weight;
+        const { terms } = maker.chargeForm(r.state, [a.state, b.state]);
+        return terms.map(({ reduced, c }) => ({ reduced, value: weight * rootToNumber(c) }));
+      }),
+    ),
+  );
 }
 
 function isConnected(parent: Lines, first: Lines, second: Lines): boolean {
@@ -139,11 +174,15 @@ function baryonLines(multiplets: readonly { readonly irrep: Irrep }[]): Lines[] 
 
 /** A basis of the null space of the equations, as rows. */
 function nullSpace(equations: readonly (readonly number[])[], count: number): number[][] {
-  const identity = Array.from({ length: count }, (_, k) => Array.from({ length: count }, (_, j) => (j === k ? 1 : 0)));
+  const identity = Array.from({ length: count }, (_, k) =>
+    Array.from({ length: count }, (_, j) => (j === k ? 1 : 0)),
+  );
   if (equations.length === 0) return identity;
   // Rows of zeros make the matrix at least square, so that all right vectors come out.
   const padded = [...equations, ...identity.map((row) => row.map(() => 0))];
-  const { diagonal, rightSingularVectors } = new SingularValueDecomposition(new Matrix(padded.map((row) => [...row])));
+  const { diagonal, rightSingularVectors } = new SingularValueDecomposition(
+    new Matrix(padded.map((row) => [...row])),
+  );
   const largest = Math.max(...diagonal, 1);
   return diagonal.flatMap((value, k) => (value < NULL * largest ? [rightSingularVectors.getColumn(k)] : []));
 }
@@ -154,7 +193,9 @@ function rowReduced(basis: readonly (readonly number[])[]): { pivots: number[]; 
   const pivots: number[] = [];
   for (let column = 0; column < (rows[0]?.length ?? 0) && pivots.length < rows.length; column++) {
     const at = pivots.length;
-    const best = rows.slice(at).reduce((top, row, k) => (Math.abs(row[column]!) > Math.abs(rows[top]![column]!) ? at + k : top), at);
+    const best = rows
+      .slice(at)
+      .reduce((top, row, k) => (Math.abs(row[column]!) > Math.abs(rows[top]![column]!) ? at + k : top), at);
     if (Math.abs(rows[best]![column]!) < NULL) continue;
     [rows[at], rows[best]] = [rows[best]!, rows[at]!];
     rows[at] = rows[at]!.map((value) => value / rows[at]![column]!);

@@ -46,7 +46,11 @@ export function reactionSigns(evaluation: Evaluation, fitted: readonly Observabl
 }
 
 /** The residual of a parameter's prior. */
-export function priorResidual(parameter: Parameter, index: number, parameters: readonly number[]): GradedResidual {
+export function priorResidual(
+  parameter: Parameter,
+  index: number,
+  parameters: readonly number[],
+): GradedResidual {
   const gradient = parameters.map((_, k) => (k === index ? 1 : 0));
   return pull({ value: parameters[index]!, gradient }, parameter.prior!);
 }
@@ -63,7 +67,10 @@ function observableResidual(predicted: Graded, { measured, signOnly }: Observabl
   if (!signOnly) return pull(predicted, measured);
   const wrong = -measured.value * predicted.value;
   if (wrong <= 0) return { residual: 0, gradient: predicted.gradient.map(() => 0) };
-  return { residual: wrong / WRONG_SIGN, gradient: predicted.gradient.map((d) => (-measured.value * d) / WRONG_SIGN) };
+  return {
+    residual: wrong / WRONG_SIGN,
+    gradient: predicted.gradient.map((d) => (-measured.value * d) / WRONG_SIGN),
+  };
 }
 
 /**

@@ -21,8 +21,8 @@ export function resolveDecays(
   problems: Problems,
 ): { decays: Decay[]; couplings: Parameter[] } {
   const names = new Set<string>();
-  const untied = study.decays.map((written, k) => {
-    const path = `decays/${k}`;
+  const untied = study.decays.map((written) => {
+    const { path } = written;
     if (names.has(written.name)) {
       problems.add(
         path,
@@ -33,25 +33,35 @@ export function resolveDecays(
     return resolveDecay(written, path, own, problems);
   });
   const resolved = untied.filter((decay) => decay !== undefined);
-  if (resolved.length < untied.length) return { decays: [], couplings: [] };
+  if (resolved.length < untied.length || problems.has("decays")) return { decays: [], couplings: [] };
   return tie(study, resolved, problems);
 }
 
 /** Expresses every reduced coupling in the ones that are fitted: itself, or those the quark-line rule leaves. */
-function tie(study: Study, untied: readonly UntiedDecay[], problems: Problems): { decays: Decay[]; couplings: Parameter[] } {
+function tie(
+  study: Study,
+  untied: readonly UntiedDecay[],
+  problems: Problems,
+): { decays: Decay[]; couplings: Parameter[] } {
   const couplings: Parameter[] = [];
   const rows: (readonly number[])[][] = untied.map(() => []);
   const families = study.quarkLine.map((names, k) => {
     const members = names.map((name) => untied.findIndex((decay) => decay.name === name));
     for (const [j, index] of members.entries()) {
-      if (index < 0) problems.add(`quarkLine/${k}/${j}`, `expected the name of a decay of this study, got ${JSON.stringify(names[j])}.`);
+      if (index < 0)
+        problems.add(
+          `quarkLine/${k}/${j}`,
+          `expected the name of a decay of this study, got ${JSON.stringify(names[j])}.`,
+        );
     }
     return members.filter((index) => index >= 0);
   });
   const parameterOf = (decay: UntiedDecay, name: string): number =>
     couplings.push({ name, kind: "coupling", unit: unitOf(decay), start: 1 }) - 1;
   for (const [k, family] of families.entries()) {
-    const tied = problems.attempt(`quarkLine/${k}`, () => quarkLineCouplings(family.map((index) => untied[index]!)));
+    const tied = problems.attempt(`quarkLine/${k}`, () =>
+      quarkLineCouplings(family.map((index) => untied[index]!)),
+    );
     if (tied === undefined) continue;
     const columns = tied.free.map(({ decay, reduced }) => {
       const owner = untied[family[decay]!]!;
@@ -66,7 +76,10 @@ function tie(study: Study, untied: readonly UntiedDecay[], problems: Problems): 
     rows[index] = decay.reduced.map(({ name }) => sparse([[parameterOf(decay, name), 1]]));
   }
   const filled = (row: readonly number[]) => Array.from({ length: couplings.length }, (_, k) => row[k] ?? 0);
-  return { decays: untied.map((decay, index) => ({ ...decay, couplingRows: rows[index]!.map(filled) })), couplings };
+  return {
+    decays: untied.map((decay, index) => ({ ...decay, couplingRows: rows[index]!.map(filled) })),
+    couplings,
+  };
 }
 
 function sparse(entries: readonly (readonly [number, number])[]): number[] {
@@ -92,16 +105,27 @@ function resolveDecay(
   const model = problems.attempt(`${path}/model`, () =>
     widthModel(written.model.id, plainOptions(written.model.options)),
   );
-  if (from === undefined || first === undefined || second === undefined || model === undefined) return undefined;
+  if (from === undefined || first === undefined || second === undefined || model === undefined)
+    return undefined;
   return problems.attempt(path, () => {
     requireBaryonFirst(from, first, second);
     const twoS = waveSpin(written, from, first, second);
     const reduced = couplingsOf(written, from, first, second, twoS);
     const { id, options } = model;
-    const { name, L, masses } = written;
+    const { name, L, masses, daughters } = written;
     // Asked for here, so that a model without a formula for this vertex is refused at its decay.
     model.amplitudeUnit({ L, parent: from, daughters: [first, second] });
-    return { name, from, to: [first, second] as const, L, twoS, model: { id, options }, masses, reduced };
+    return {
+      name,
+      from,
+      to: [first, second] as const,
+      L,
+      twoS,
+      model: { id, options },
+      masses,
+      daughters,
+      reduced,
+    };
   });
 }
 
@@ -113,7 +137,10 @@ function plainOptions(options: Readonly<Record<string, number | Quantity>>): Rec
 }
 
 function requireBaryonFirst(from: Multiplet, first: Multiplet, second: Multiplet): void {
-  for (const [key, word] of [["baryonNumber", "baryon number"], ["charm", "charm"]] as const) {
+  for (const [key, word] of [
+    ["baryonNumber", "baryon number"],
+    ["charm", "charm"],
+  ] as const) {
     const sum = first[key] + second[key];
     if (sum !== from[key]) refuse("to", `two multiplets of ${word} ${from[key]} together`, sum);
   }
@@ -156,7 +183,12 @@ function couplingsOf(
   }
   const reduced = chargeConjugationEven(scheme, exchanged, [from, first, second]);
   if (reduced.length === 0) {
-    refuse("from", "a decay that C parity allows", `${from.id} to ${first.id} ${second.id}`, "Check the C parities.");
+    refuse(
+      "from",
+      "a decay that C parity allows",
+      `${from.id} to ${first.id} ${second.id}`,
+      "Check the C parities.",
+    );
   }
   return reduced;
 }

@@ -16,31 +16,38 @@ export interface Context extends Known {
 /** Ties every measurement to the channels it is about; what cannot be tied is noted. */
 export function resolveMeasurements(context: Context, problems: Problems): Observable[] {
   return context.study.measurements
-    .map((measurement, k) => resolveMeasurement(measurement, `measurements/${k}`, context, problems))
+    .map((measurement) => resolveMeasurement(measurement, context, problems))
     .filter((observable) => observable !== undefined);
 }
 
 function resolveMeasurement(
   measurement: StudyMeasurement,
-  path: string,
   context: Context,
   problems: Problems,
 ): Observable | undefined {
-  const { kind, channels, signOnly, source, use } = measurement;
+  const { path, kind, channels, signOnly, source, use } = measurement;
   const measured = withLimit(measurement.value);
-  if (use !== "table" && !signOnly && measured.plus === 0) {
-    problems.add(
-      `${path}/value`,
-      "expected an error, since the value enters the fit. Write `value +- error`, or give it `use: table`.",
-    );
-    return undefined;
-  }
+  if (!requireError(measurement, problems)) return undefined;
   const quantum = quantumOf(measurement, path, context, problems);
   if (quantum === undefined) return undefined;
   const common = { measured, signOnly, source, use, position: problems.positionOf(path) };
-  const observable = { ...common, label: `${kind} ${channels.join(kind === "ratio" ? " / " : ", ")}`, quantum };
+  const observable = {
+    ...common,
+    label: `${kind} ${channels.join(kind === "ratio" ? " / " : ", ")}`,
+    quantum,
+  };
   const normalisation = normalisationOf(measurement, path, context, problems);
   return normalisation === undefined ? observable : { ...observable, normalisation };
+}
+
+/** A value that enters the fit needs an error; notes where it has none. */
+export function requireError({ path, value, signOnly, use }: StudyMeasurement, problems: Problems): boolean {
+  if (use === "table" || signOnly || value.plus > 0) return true;
+  problems.add(
+    `${path}/value`,
+    "expected an error, since the value enters the fit. Write `value +- error`, or give it `use: table`.",
+  );
+  return false;
 }
 
 /** An upper limit as a half-Gaussian at 0. */
@@ -74,7 +81,10 @@ function quantumOf(
   if (other === undefined) return undefined;
   if (kind === "ratio") return { kind, of, over: other };
   if (!sameParents(of, other, context)) {
-    problems.add(`${path}/${kind}`, `expected two channels of the same parent, got ${JSON.stringify(channels)}.`);
+    problems.add(
+      `${path}/${kind}`,
+      `expected two channels of the same parent, got ${JSON.stringify(channels)}.`,
+    );
     return undefined;
   }
   const total = totalWidthOf(of, fitted, context);
@@ -83,7 +93,13 @@ function quantumOf(
   for (const [k, sum] of pair.entries()) if (!oneWave(sum, paths[k]!, context, problems)) return undefined;
   if (kind === "residue") return { kind, pair, signed: measurement.phase !== undefined };
   const sign = measurement.sign === "free" ? 1 : measurement.sign;
-  return { kind, pair, total, sign, ...(measurement.sign === "free" ? { reaction: reactionOf(pair, context) } : {}) };
+  return {
+    kind,
+    pair,
+    total,
+    sign,
+    ...(measurement.sign === "free" ? { reaction: reactionOf(pair, context) } : {}),
+  };
 }
 
 function padded(row: readonly number[], length: number): number[] {
@@ -103,7 +119,10 @@ function oneWave(sum: WidthSum, path: string, { channels }: Known, problems: Pro
   const isospin = new Set(sum.map(({ channel }) => channels[channel]!.isospinChannel));
   const waves = sum.map(({ channel, waves }) => waves?.length ?? channels[channel]!.waves.length);
   if (isospin.size === 1 && waves.every((count) => count === 1)) return true;
-  problems.add(path, "expected a single isospin channel in a single wave. Add the wave, such as `L=0`, or name the isospin multiplets.");
+  problems.add(
+    path,
+    "expected a single isospin channel in a single wave. Add the wave, such as `L=0`, or name the isospin multiplets.",
+  );
   return false;
 }
 
@@ -133,7 +152,9 @@ function totalSum(name: string, path: string, context: Context, problems: Proble
 }
 
 function sumOfParents(parents: readonly Parent[]): WidthSum {
-  return parents.flatMap(({ channels }) => channels.map((channel) => ({ channel, weight: 1 / parents.length })));
+  return parents.flatMap(({ channels }) =>
+    channels.map((channel) => ({ channel, weight: 1 / parents.length })),
+  );
 }
 
 /**
@@ -179,7 +200,10 @@ function normalisationOf(
   const error = study.normalisations[normalisation];
   if (error === undefined) {
     const known = Object.keys(study.normalisations).join(", ");
-    problems.add(`${path}/normalisation`, `expected a name among \`normalisations\` (${known || "there are none"}), got ${JSON.stringify(normalisation)}.`);
+    problems.add(
+      `${path}/normalisation`,
+      `expected a name among \`normalisations\` (${known || "there are none"}), got ${JSON.stringify(normalisation)}.`,
+    );
     return undefined;
   }
   const parameter = parameterIndex(parameters, {

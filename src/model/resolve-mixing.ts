@@ -1,4 +1,9 @@
-import { assembleMultiplet, isospinAveragedMassMeV, type Member, type Multiplet } from "../hadrons/multiplet.js";
+import {
+  assembleMultiplet,
+  isospinAveragedMassMeV,
+  type Member,
+  type Multiplet,
+} from "../hadrons/multiplet.js";
 import { placeOf } from "../hadrons/place.js";
 import { refuse } from "../require.js";
 import type { Quantity, StudyAngle, StudyMember, StudyMixing } from "../study/study.js";
@@ -31,8 +36,8 @@ export function resolveMixing(
   problems: Problems,
 ): { groups: MixedStates[]; angles: Parameter[] } {
   const angles: Parameter[] = [];
-  const groups = written.map((group, k) => {
-    const path = `mixing/${k}`;
+  const groups = written.map((group) => {
+    const { path } = group;
     const bare = group.bare.map((text, j) => bareState(text, `${path}/bare/${j}`, own, problems));
     const known = bare.filter((state) => state !== undefined);
     if (known.length < bare.length) return undefined;
@@ -49,7 +54,10 @@ function bareState(
 ): BareState | undefined {
   const [id, place, ...rest] = text.split("/");
   if (id === undefined || place === undefined || rest.length > 0) {
-    problems.add(path, `expected \`multiplet/place\` such as \`pseudoscalar-octet/eta\`, got ${JSON.stringify(text)}.`);
+    problems.add(
+      path,
+      `expected \`multiplet/place\` such as \`pseudoscalar-octet/eta\`, got ${JSON.stringify(text)}.`,
+    );
     return undefined;
   }
   const multiplet = resolveMultiplet(id, path, own, problems)?.multiplet;
@@ -64,14 +72,20 @@ function mixedStates(
   angles: Parameter[],
 ): MixedStates {
   const n = bare.length;
-  if (group.states.length !== n) refuse("states", `${n} physical states, as many as bare ones`, group.states.length);
+  if (group.states.length !== n)
+    refuse("states", `${n} physical states, as many as bare ones`, group.states.length);
   requireAlike(bare);
   const members = group.states.map((state) => physicalMember(state, bare[0]!));
   const pairs = planes(n);
   if (group.angles.length !== pairs.length) {
-    refuse("angles", `${pairs.length} angles for ${n} states, in the order ${pairs.map(([i, j]) => `(${i + 1},${j + 1})`).join(", ")}`, group.angles.length);
+    refuse(
+      "angles",
+      `${pairs.length} angles for ${n} states, in the order ${pairs.map(([i, j]) => `(${i + 1},${j + 1})`).join(", ")}`,
+      group.angles.length,
+    );
   }
-  if (group.convention !== "rotation" && n !== 2) refuse("convention", "rotation, for more than two states", group.convention);
+  if (group.convention !== "rotation" && n !== 2)
+    refuse("convention", "rotation, for more than two states", group.convention);
   const name = group.states.map((state) => state.name).join(", ");
   const rotations = pairs.map(([first, second], k): Rotation => {
     const angle = angleOf(group.angles[k]!, bare, members);
@@ -87,9 +101,14 @@ function mixedStates(
     });
     return { ...plane, parameter };
   });
-  const summed = group.states.flatMap(({ width }, k) => (width === "sum" ? members[k]!.hadrons.map((h) => h.name) : []));
+  const summed = group.states.flatMap(({ width }, k) =>
+    width === "sum" ? members[k]!.hadrons.map((h) => h.name) : [],
+  );
   const mixing: Mixing = { states: group.states.map((state) => state.name), bare: group.bare, rotations };
-  const start = mixingMatrix({ ...mixing, rotations: rotations.map(({ parameter: _, ...fixed }) => fixed) }, []);
+  const start = mixingMatrix(
+    { ...mixing, rotations: rotations.map(({ parameter: _, ...fixed }) => fixed) },
+    [],
+  );
   const mixed = members.map((member, k) => withContent(member, bare, start.value[k]!));
   return { mixing, bare, members: mixed, summed: new Set(summed) };
 }
@@ -118,10 +137,18 @@ function requireAlike(bare: readonly BareState[]): void {
   for (const state of bare) {
     for (const key of ["twoJ", "parity", "baryonNumber", "charm"] as const) {
       if (state.multiplet[key] === first!.multiplet[key]) continue;
-      refuse(`${state.multiplet.id}: ${key}`, `${first!.multiplet[key]}, that of ${first!.multiplet.id}, since only like states mix`, state.multiplet[key]);
+      refuse(
+        `${state.multiplet.id}: ${key}`,
+        `${first!.multiplet[key]}, that of ${first!.multiplet.id}, since only like states mix`,
+        state.multiplet[key],
+      );
     }
     if (state.threeY !== first!.threeY || state.twoI !== first!.twoI) {
-      refuse(`${state.multiplet.id}: 3Y and 2I`, `${first!.threeY} and ${first!.twoI}, since only like states mix`, [state.threeY, state.twoI]);
+      refuse(
+        `${state.multiplet.id}: 3Y and 2I`,
+        `${first!.threeY} and ${first!.twoI}, since only like states mix`,
+        [state.threeY, state.twoI],
+      );
     }
   }
   const places = bare.map(({ multiplet }) => multiplet.id);
@@ -157,7 +184,9 @@ function angleOf(angle: StudyAngle, bare: readonly BareState[], members: readonl
     return { start: massFormulaAngle(angle === "quadratic masses" ? 2 : 1, bare, members), fixed: true };
   }
   const { value, plus, minus }: Quantity = angle;
-  return plus > 0 ? { start: value, fixed: false, prior: { value, plus, minus } } : { start: value, fixed: true };
+  return plus > 0
+    ? { start: value, fixed: false, prior: { value, plus, minus } }
+    : { start: value, fixed: true };
 }
 
 /**
@@ -170,7 +199,8 @@ function massFormulaAngle(power: 1 | 2, bare: readonly BareState[], members: rea
   const octet = bare[0]!.multiplet;
   const mass = (threeY: number, twoI: number): number => {
     const member = octet.members.find((m) => m.threeY === threeY && m.twoI === twoI);
-    if (member === undefined) refuse("angle", `a kaon and an isovector in ${octet.id} for the mass formula`, "none");
+    if (member === undefined)
+      refuse("angle", `a kaon and an isovector in ${octet.id} for the mass formula`, "none");
     return isospinAveragedMassMeV(member);
   };
   const [kaon, isovector] = [mass(3, 1), mass(0, 2)];

@@ -1,7 +1,12 @@
 import { findParticle } from "../hadrons/catalogue.js";
 import { catalogueMultiplet, catalogueMultipletIds } from "../hadrons/catalogue-multiplet.js";
 import { chargeStates } from "../hadrons/charge-states.js";
-import { assembleMultiplet, type MemberParticles, type Multiplet, type MultipletQuantumNumbers } from "../hadrons/multiplet.js";
+import {
+  assembleMultiplet,
+  type MemberParticles,
+  type Multiplet,
+  type MultipletQuantumNumbers,
+} from "../hadrons/multiplet.js";
 import { nearestNames } from "../hadrons/nearest-names.js";
 import type { Particle } from "../hadrons/particle.js";
 import { placeOf } from "../hadrons/place.js";
@@ -26,6 +31,8 @@ export function resolveMultiplet(
 ): StudyBoundMultiplet | undefined {
   const found = own.get(id);
   if (found !== undefined) return found;
+  // One that has problems of its own would only make its decays and mixing fail as well.
+  if (problems.has(`multiplets/${id}`)) return undefined;
   const known = catalogueMultipletIds();
   if (known.includes(id)) return { multiplet: catalogueMultiplet(id), summed: new Set() };
   const [nearest] = nearestNames(id, [...own.keys(), ...known], 1);

@@ -13,18 +13,31 @@ export function resolvePriors(
   problems: Problems,
 ): Observable[] {
   const targets = targetsOf(decays, parameters);
-  return study.priors.flatMap(({ parameter, value, source }, k): Observable[] => {
+  return study.priors.flatMap(({ path, parameter, value, source }): Observable[] => {
     const target = targets.get(parameter);
     if (target === undefined) {
-      problems.add(`priors/${k}/parameter`, `expected one of ${[...targets.keys()].join(", ")}, got ${JSON.stringify(parameter)}.`);
+      problems.add(
+        `${path}/parameter`,
+        `expected one of ${[...targets.keys()].join(", ")}, got ${JSON.stringify(parameter)}.`,
+      );
       return [];
     }
     if (value.plus === 0) {
-      problems.add(`priors/${k}/value`, "expected an error. Write `value +- error`.");
+      problems.add(`${path}/value`, "expected an error. Write `value +- error`.");
       return [];
     }
-    const position = problems.positionOf(`priors/${k}`);
-    return [{ label: `prior ${parameter}`, quantum: { kind: "parameter", parameter: target }, measured: value, signOnly: false, source, use: "fit", position }];
+    const position = problems.positionOf(path);
+    return [
+      {
+        label: `prior ${parameter}`,
+        quantum: { kind: "parameter", parameter: target },
+        measured: value,
+        signOnly: false,
+        source,
+        use: "fit",
+        position,
+      },
+    ];
   });
 }
 
@@ -35,7 +48,8 @@ function targetsOf(decays: readonly Decay[], parameters: readonly Parameter[]): 
   }
   for (const [decay, resolved] of decays.entries()) {
     if (!decayHasFAndD(resolved)) continue;
-    for (const name of RATIOS) targets.set(resolved.name === "" ? name : `${resolved.name}.${name}`, { decay, name });
+    for (const name of RATIOS)
+      targets.set(resolved.name === "" ? name : `${resolved.name}.${name}`, { decay, name });
   }
   return targets;
 }

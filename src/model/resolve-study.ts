@@ -1,9 +1,11 @@
+import { InternalError } from "../errors.js";
 import { catalogueEdition } from "../hadrons/catalogue.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import type { Multiplet } from "../hadrons/multiplet.js";
-import type { Study } from "../study/study.js";
+import type { Study, StudyProblem } from "../study/study.js";
 import { withBreaking } from "./breaking.js";
 import { channelsOf } from "./channels.js";
+import { checkMeasurements } from "./check-measurements.js";
 import { massParameters } from "./masses.js";
 import { mixingMatrix } from "./mixing-matrix.js";
 import type { Channel, Decay, Model, Parameter, Parent, TotalWidth } from "./model.js";
@@ -19,27 +21,29 @@ import type { NamedMember } from "./width-sums.js";
 /**
  * A study with hadrons, exact forms, parameters and observables looked up.
  *
+ * @param earlier - what is known to be wrong already, to be reported with the rest
  * @throws InputError with every problem of the study, each with its line and column
  */
-export function resolveStudy(study: Study): Model {
-  const problems = new Problems(study);
+export function resolveStudy(study: Study, earlier: readonly StudyProblem[] = []): Model {
+  const problems = new Problems(study, earlier);
   const own = new Map<string, StudyBoundMultiplet>();
   for (const [id, written] of Object.entries(study.multiplets)) {
     const multiplet = studyMultiplet(id, written, problems);
     if (multiplet !== undefined) own.set(id, multiplet);
   }
-  // A missing multiplet would only make its decays and mixing fail as well.
-  problems.throwIfAny();
   const { decays, couplings } = resolveDecays(study, own, problems);
   const { groups, angles } = resolveMixing(study.mixing, own, couplings.length, problems);
-  problems.throwIfAny();
+  if (problems.has()) refuseWithMeasurements(study, problems);
   const parameters: Parameter[] = [...couplings, ...angles];
   const masses = massParameters(study, decays, groups, own, parameters);
   const plain = problems.attempt("decays", () => channelsOf(decays, groups, masses)) ?? [];
   const parents = parentsOf(decays, groups, plain, own, problems);
-  problems.throwIfAny();
+  if (problems.has()) refuseWithMeasurements(study, problems);
   const context = { study, decays, channels: plain, parents, members: membersOf(decays, groups), parameters };
-  const observables = [...resolveMeasurements(context, problems), ...resolvePriors(study, decays, parameters, problems)];
+  const observables = [
+    ...resolveMeasurements(context, problems),
+    ...resolvePriors(study, decays, parameters, problems),
+  ];
   problems.throwIfAny();
   const channels = withBreaking(study, plain, observables, parameters);
   return {
@@ -54,6 +58,13 @@ export function resolveStudy(study: Study): Model {
     notes: notesOf(decays, groups),
     editions: [`hadrons: ${catalogueEdition().edition}, ${catalogueEdition().source}`],
   };
+}
+
+/** Refuses a study whose decays have problems, together with the problems its measurements have by themselves. */
+function refuseWithMeasurements(study: Study, problems: Problems): never {
+  checkMeasurements(study, problems);
+  problems.throwIfAny();
+  throw new InternalError("resolveStudy: a study was refused without a problem. This is a bug in Couplet.");
 }
 
 function parentsOf(
@@ -93,7 +104,8 @@ function totalOf(hadron: Hadron, summed: ReadonlySet<string>): TotalWidth | unde
 /** Everything that is placed in a multiplet of the decays, each multiplet once. */
 function placedInDecays(decays: readonly Decay[], groups: readonly MixedStates[]): Placed[] {
   const multiplets = new Map<string, Multiplet>();
-  for (const { from, to } of decays) for (const multiplet of [from, ...to]) multiplets.set(multiplet.id, multiplet);
+  for (const { from, to } of decays)
+    for (const multiplet of [from, ...to]) multiplets.set(multiplet.id, multiplet);
   return [...multiplets.values()].flatMap((multiplet) => placedIn(multiplet, groups));
 }
 
@@ -111,9 +123,14 @@ function notesOf(decays: readonly Decay[], groups: readonly MixedStates[]): stri
   for (const { mixing, bare } of groups) {
     for (const { multiplet } of bare) {
       if (used.has(multiplet.id)) continue;
-      notes.push(`${mixing.states.join(", ")} have a component in ${multiplet.id}, for which no decay is declared; it counts as 0.`);
+      notes.push(
+        `${mixing.states.join(", ")} have a component in ${multiplet.id}, for which no decay is declared; it counts as 0.`,
+      );
     }
-    const weights = mixingMatrix({ ...mixing, rotations: mixing.rotations.map(({ parameter: _, ...fixed }) => fixed) }, []).value;
+    const weights = mixingMatrix(
+      { ...mixing, rotations: mixing.rotations.map(({ parameter: _, ...fixed }) => fixed) },
+      [],
+    ).value;
     const fixed = mixing.rotations.every(({ parameter }) => parameter === undefined);
     for (const [k, name] of mixing.states.entries()) {
       const terms = weights[k]!.map((w, r) => `${w.toFixed(4)} ${mixing.bare[r]}`).join(" + ");

@@ -44,8 +44,26 @@ export function chargeConjugationEven(
 /** C parity of the neutral members of a meson multiplet; null where none of them has one. */
 export function cParityOf(multiplet: Multiplet): 1 | -1 | null {
   if (multiplet.baryonNumber !== 0) return null;
-  const neutral = multiplet.members.flatMap(({ hadrons }) => hadrons).filter(({ antiparticle }) => antiparticle === null);
+  const neutral = multiplet.members
+    .flatMap(({ hadrons }) => hadrons)
+    .filter(({ antiparticle }) => antiparticle === null);
   return neutral.find(({ cParity }) => cParity !== null)?.cParity ?? null;
+}
+
+/**
+ * Whether G parity lets a channel of mesons happen: G = C (-1)^I of each, for states without strangeness; true where it is
+ * not defined.
+ *
+ * Source: T.D. Lee and C.N. Yang, Nuovo Cimento 3 (1956) 749. Provenance: memory.
+ * @param multiplets - parent's, then daughters'; `states` in the same order
+ */
+export function allowedByGParity(multiplets: readonly Multiplet[], states: readonly State[]): boolean {
+  const parities = multiplets.map((multiplet, k) => {
+    const { threeY, twoI } = states[k]!;
+    const c = multiplet.charm === 0 && threeY === 0 ? cParityOf(multiplet) : null;
+    return c === null ? null : twoI % 4 === 0 ? c : -c;
+  });
+  return parities.some((g) => g === null) || parities[0] === parities[1]! * parities[2]!;
 }
 
 /** The conjugate state, with phases such that a state with Y = I = 0 is its own image. */
@@ -78,7 +96,10 @@ function withSymmetry(
     channels.every(({ initial, a, b }) => {
       const image = imageOf(initial, a, b);
       const mirrored = coefficient(index, image.initial, image.finals);
-      return equalRoots(coefficient(index, initial, [a, b]), image.sign === 1 ? mirrored : negateRoot(mirrored));
+      return equalRoots(
+        coefficient(index, initial, [a, b]),
+        image.sign === 1 ? mirrored : negateRoot(mirrored),
+      );
     }),
   );
 }

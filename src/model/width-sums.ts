@@ -1,7 +1,7 @@
 import { canonicalName } from "../hadrons/catalogue.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import { nearestNames } from "../hadrons/nearest-names.js";
-import { parseChannel } from "./channel-names.js";
+import { parseChannel, type WrittenChannel } from "./channel-names.js";
 import type { Channel, Parent, WidthSum } from "./model.js";
 import type { Problems } from "./problems.js";
 
@@ -22,12 +22,14 @@ export interface Known {
  * The sum of widths a written channel means. Names of isospin multiplets stand for all their charge states: daughters
  * are summed over, and the parents that can decay so are averaged. What cannot be found is noted at `path`.
  */
-export function widthSumOf(text: string, path: string, known: Known, problems: Problems): WidthSum | undefined {
-  const written = parseChannel(text);
-  if (written === undefined) {
-    problems.add(path, `expected a channel such as \`N(1675) -> N pi\`, got ${JSON.stringify(text)}.`);
-    return undefined;
-  }
+export function widthSumOf(
+  text: string,
+  path: string,
+  known: Known,
+  problems: Problems,
+): WidthSum | undefined {
+  const written = writtenChannel(text, path, problems);
+  if (written === undefined) return undefined;
   const names = [written.parent, ...written.daughters];
   const sets = names.map((name) => hadronsNamed(name, path, known.members, problems));
   if (sets.some((set) => set.size === 0)) return undefined;
@@ -54,14 +56,31 @@ export function widthSumOf(text: string, path: string, known: Known, problems: P
   return ofWave;
 }
 
-function impossible(text: string, parent: string, parents: ReadonlySet<string>, channels: readonly Channel[]): string {
+/** The names in a written channel; noted at `path` if the text is not one. */
+export function writtenChannel(text: string, path: string, problems: Problems): WrittenChannel | undefined {
+  const written = parseChannel(text);
+  if (written === undefined)
+    problems.add(path, `expected a channel such as \`N(1675) -> N pi\`, got ${JSON.stringify(text)}.`);
+  return written;
+}
+
+function impossible(
+  text: string,
+  parent: string,
+  parents: ReadonlySet<string>,
+  channels: readonly Channel[],
+): string {
   const there = [...new Set(channels.filter((c) => parents.has(c.parent.name)).map((c) => c.isospinChannel))];
   return there.length === 0
     ? `expected a parent that decays in this study, got ${JSON.stringify(parent)}.`
     : `expected a channel of this study that conserves charge, isospin and strangeness, got ${JSON.stringify(text)}. There are: ${there.join("; ")}.`;
 }
 
-function matches([a, b]: readonly [Hadron, Hadron], first: ReadonlySet<string>, second: ReadonlySet<string>): boolean {
+function matches(
+  [a, b]: readonly [Hadron, Hadron],
+  first: ReadonlySet<string>,
+  second: ReadonlySet<string>,
+): boolean {
   return (first.has(a.name) && second.has(b.name)) || (first.has(b.name) && second.has(a.name));
 }
 
@@ -80,13 +99,24 @@ export function hadronsNamed(
       if (wholeMember || hadron === name || hadron === canonical) found.add(hadron);
     }
   }
-  if (found.size === 0) {
-    const known = [...new Set(members.flatMap((member) => [member.name, ...member.hadrons]))];
-    const near = nearestNames(name, known).join(", ");
-    problems.add(
+  if (found.size === 0)
+    addUnknownHadron(
+      name,
       path,
-      `expected a hadron of this study, got ${JSON.stringify(name)}.${near === "" ? "" : ` Did you mean ${near}?`}`,
+      members.flatMap((m) => [m.name, ...m.hadrons]),
+      problems,
     );
-  }
   return found;
+}
+
+/** Notes at `path` that a name is none of the known ones, with the nearest of them. */
+export function addUnknownHadron(
+  name: string,
+  path: string,
+  known: readonly string[],
+  problems: Problems,
+): void {
+  const near = nearestNames(name, [...new Set(known)]).join(", ");
+  const mend = near === "" ? "" : ` Did you mean ${near}?`;
+  problems.add(path, `expected a hadron of this study, got ${JSON.stringify(name)}.${mend}`);
 }

@@ -1,43 +1,58 @@
 import { readFileSync } from "node:fs";
 import { InputError } from "../errors.js";
+import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
-import { groundStateTable } from "./ground-state-table.js";
-import { Served, type ServedTable } from "./served.js";
+import { checkSeal } from "../tables/sealed-bytes.js";
+import { groundStateTables } from "./ground-state-tables.js";
+import { Served, type ServedCouplings, type ServedDecays } from "./served.js";
 
 /** Where a table that no file holds comes from. */
-export const BUILT_IN = "built in";
+const BUILT_IN = "built in";
 
 /**
  * The tables in files, each checked whole; without files, the ground-state tables made now from the study in the code.
  *
- * @throws InputError for a file that cannot be read or is not a decay table, or one given twice; TableError for a damaged one
+ * @throws InputError for a file that cannot be read or is no decay or coupling table, or one given twice; TableError
+ * for a damaged one
  */
 export function loadTables(files: readonly string[]): Served {
-  const tables = files.length === 0 ? [tableOf(groundStateTable(), BUILT_IN)] : files.map(readTable);
-  for (const [k, { sha256, file }] of tables.entries()) {
-    const twin = tables.slice(0, k).find((other) => Buffer.compare(other.sha256, sha256) === 0);
-    if (twin !== undefined) {
+  const sources =
+    files.length === 0
+      ? groundStateTables().map((bytes) => ({ file: BUILT_IN, bytes }))
+      : files.map((file) => ({ file, bytes: read(file) }));
+  const decays: ServedDecays[] = [];
+  const couplings: ServedCouplings[] = [];
+  const seen = new Map<string, string>();
+  for (const { file, bytes } of sources) {
+    const kind = checkSeal(bytes, file);
+    if (kind === "couplet.v1.DecayTables") decays.push(opened(file, decodeDecays(bytes, file)));
+    else if (kind === "couplet.v1.CouplingTables") couplings.push(opened(file, decodeCouplings(bytes, file)));
+    else {
       throw new InputError(
-        `${file}: expected tables that differ, got the same content as ${twin.file}. Give it once.`,
+        `${file}: expected a decay or coupling table, got ${kind}. Factors need no file: the sidecar computes them.`,
       );
     }
+    const digest = Buffer.from(bytes.subarray(-32)).toString("hex");
+    const twin = seen.get(digest);
+    if (twin !== undefined)
+      throw new InputError(
+        `${file}: expected tables that differ, got the same content as ${twin}. Give it once.`,
+      );
+    seen.set(digest, file);
   }
-  return new Served(tables);
+  return new Served(decays, couplings);
 }
 
-function readTable(file: string): ServedTable {
-  let bytes: Uint8Array;
+function opened<Message extends { sha256: Uint8Array | null }>(file: string, message: Message) {
+  return { file, sha256: message.sha256!, message };
+}
+
+function read(file: string): Uint8Array {
   try {
-    bytes = readFileSync(file);
+    return readFileSync(file);
   } catch (cause) {
     throw new InputError(`${file}: could not be read: ${(cause as Error).message}. Check the path.`, {
       cause,
     });
   }
-  return tableOf(bytes, file);
-}
-
-function tableOf(bytes: Uint8Array, file: string): ServedTable {
-  const message = decodeDecays(bytes, file);
-  return { file, sha256: message.sha256!, message };
 }

@@ -8,17 +8,23 @@ import type { ParentEvaluator } from "./parent-evaluator.js";
 import v1 = couplet.v1;
 
 /** A table being served. */
-export interface ServedTable {
+export interface ServedTable<Message> {
   /** Where it came from: a path, or `built in`. */
   readonly file: string;
   /** 32 bytes. */
   readonly sha256: Uint8Array;
-  readonly message: v1.DecayTables;
+  readonly message: Message;
 }
+
+/** A decay table being served. */
+export type ServedDecays = ServedTable<v1.DecayTables>;
+
+/** A coupling table being served. */
+export type ServedCouplings = ServedTable<v1.CouplingTables>;
 
 /** A parent being served, with all that its calls need made ready. */
 export interface ServedParent {
-  readonly table: ServedTable;
+  readonly table: ServedDecays;
   readonly name: string;
   readonly message: v1.Parent;
   readonly daughters: readonly v1.Hadron.$Properties[];
@@ -34,8 +40,11 @@ export class Served {
   readonly #byName = new Map<string, ServedParent[]>();
   readonly #byNumber = new Map<number, ServedParent[]>();
 
-  constructor(readonly tables: readonly ServedTable[]) {
-    for (const parent of tables.flatMap(parentsOf)) {
+  constructor(
+    readonly decays: readonly ServedDecays[],
+    readonly couplings: readonly ServedCouplings[],
+  ) {
+    for (const parent of decays.flatMap(parentsOf)) {
       append(this.#byName, parent.name, parent);
       const number = parent.message.hadron.mcNumber;
       if (number != null) append(this.#byNumber, number, parent);
@@ -57,6 +66,18 @@ export class Served {
     throw this.#refusal(key, digest, found);
   }
 
+  /**
+   * The coupling tables a request may mean: the one of a digest, or for an empty digest all of them.
+   *
+   * @throws TableError for a digest that is not served
+   */
+  couplingTables(digest: Uint8Array): readonly ServedCouplings[] {
+    if (digest.length === 0) return this.couplings;
+    const pinned = this.couplings.filter(({ sha256 }) => sameBytes(sha256, digest));
+    if (pinned.length === 0) throw notServed("table_sha256", digest, this.couplings);
+    return pinned;
+  }
+
   #found(key: v1.ParentKey.$Properties | null | undefined): readonly ServedParent[] {
     if (key?.name != null) return this.#byName.get(key.name) ?? [];
     if (key?.mcNumber != null) return this.#byNumber.get(key.mcNumber) ?? [];
@@ -68,11 +89,8 @@ export class Served {
     digest: Uint8Array,
     found: readonly ServedParent[],
   ): Error {
-    const served = this.tables.map((table) => `${hex(table.sha256)} (${table.file})`).join(", ");
-    if (digest.length > 0 && !this.tables.some((table) => sameBytes(table.sha256, digest))) {
-      return new TableError(
-        `parent.table_sha256: expected the digest of a served table, got ${hex(digest)}. Served: ${served}. Tables may have been replaced; list them again.`,
-      );
+    if (digest.length > 0 && !this.decays.some((table) => sameBytes(table.sha256, digest))) {
+      return notServed("parent.table_sha256", digest, this.decays);
     }
     if (key?.name == null && key?.mcNumber == null) {
       return new InputError(
@@ -82,13 +100,23 @@ export class Served {
     const label = key.name != null ? JSON.stringify(key.name) : String(key.mcNumber);
     if (found.length > 1 && digest.length === 0) {
       return new InputError(
-        `parent: expected a parent of one table, got ${label}, which ${found.length} tables have. Set table_sha256 to one of: ${served}.`,
+        `parent: expected a parent of one table, got ${label}, which ${found.length} tables have. Set table_sha256 to one of: ${listed(found.map(({ table }) => table))}.`,
       );
     }
     const near = nearestNames(key.name ?? "", [...this.#byName.keys()]);
     const mend = near.length > 0 ? `Nearest: ${near.join(", ")}.` : "List the tables for their parents.";
     return new InputError(`parent: expected a parent of the tables served, got ${label}. ${mend}`);
   }
+}
+
+function notServed(where: string, digest: Uint8Array, tables: readonly ServedTable<unknown>[]): TableError {
+  return new TableError(
+    `${where}: expected the digest of a served table, got ${hex(digest)}. Served: ${listed(tables)}. Tables may have been replaced; list them again.`,
+  );
+}
+
+function listed(tables: readonly ServedTable<unknown>[]): string {
+  return tables.map((table) => `${hex(table.sha256)} (${table.file})`).join(", ") || "none";
 }
 
 /** Bytes in hexadecimal. */
@@ -106,7 +134,7 @@ function append<K>(map: Map<K, ServedParent[]>, key: K, parent: ServedParent): v
   else list.push(parent);
 }
 
-function parentsOf(table: ServedTable): ServedParent[] {
+function parentsOf(table: ServedDecays): ServedParent[] {
   const { parents, externals } = table.message;
   const hadrons = new Map(
     [...externals, ...parents.map(({ hadron }) => hadron)].map((hadron) => [hadron.name ?? "", hadron]),

@@ -126,6 +126,10 @@ class ReplaceableTables {
   }
 
   replace(): boolean {
+    if (this.files.length === 0) {
+      this.log.info("no files to read again: the tables are built in");
+      return true;
+    }
     try {
       this.snapshot = { ...this.snapshot, served: loadTables(this.files), refusedReplacement: "" };
       this.log.info({ tables: describe(this.snapshot.served) }, "tables replaced");
@@ -142,11 +146,11 @@ class ReplaceableTables {
   }
 }
 
-function describe(served: Served): { file: string; sha256: string; parents: number }[] {
-  return served.tables.map(({ file, sha256, message }) => ({
+function describe({ decays, couplings }: Served): { file: string; kind: string; sha256: string }[] {
+  return [...decays, ...couplings].map(({ file, sha256, message }) => ({
     file,
+    kind: message.kind,
     sha256: hex(sha256),
-    parents: message.parents.length,
   }));
 }
 

@@ -39,13 +39,16 @@ export interface QuantityProblem {
 export function parseQuantity(text: string, unit: Quantity["unit"]): Quantity | QuantityProblem {
   const groups = VALUE.exec(text)?.groups ?? RANGE.exec(text)?.groups ?? LIMIT.exec(text)?.groups;
   if (groups === undefined) return { problem: `expected ${quantityForm(unit)}, got ${JSON.stringify(text)}` };
+  const tooLarge = { problem: `expected a number that fits a double, got ${JSON.stringify(text)}` };
+  const { unit: _, ...numbers } = groups;
+  if (Object.values(numbers).some((digits) => digits !== undefined && !Number.isFinite(Number(digits)))) {
+    return tooLarge;
+  }
   const factor = unitFactor(groups["unit"]?.trim() ?? "", unit);
   if (typeof factor !== "number") return { problem: `${factor.problem} in ${JSON.stringify(text)}` };
   const number = (digits: string | undefined): number => scaled(digits ?? "0", factor);
   const quantity = quantityOf(groups, unit, number);
-  if (![quantity.value, quantity.plus, quantity.minus].every(Number.isFinite)) {
-    return { problem: `expected a number that fits a double, got ${JSON.stringify(text)}` };
-  }
+  if (![quantity.value, quantity.plus, quantity.minus].every(Number.isFinite)) return tooLarge;
   const { confidence = 0.5 } = quantity.limit ?? {};
   if (!(confidence > 0 && confidence < 1)) {
     return { problem: `expected a confidence between 0 and 100 %, got ${JSON.stringify(text)}` };

@@ -1,11 +1,16 @@
-import { type Document, isNode, LineCounter, parseDocument } from "yaml";
-import type { z } from "zod";
 import { InputError, type SourcePosition } from "../errors.js";
+import { type FormProblem, formProblems } from "./form-problems.js";
+import { listProblems } from "./list-problems.js";
 import { type StudyDocument, studySchema } from "./schema.js";
-import type { Study, StudyMeasurement, StudyMember, StudyMultiplet } from "./study.js";
+import type { Study, StudyMeasurement, StudyMember, StudyMultiplet, StudyProblem } from "./study.js";
+import { readSyntax, type StudySyntax } from "./syntax.js";
 
-/** Largest study file read, in bytes. A study is written by hand; anything larger is another file. */
-export const MAX_STUDY_BYTES = 1_000_000;
+/** A study file that may have faults of form: what is sound in it, and what is not. */
+export interface StudyDraft {
+  /** The entries without faults; undefined where too little is left. */
+  readonly study: Study | undefined;
+  readonly problems: readonly StudyProblem[];
+}
 
 /**
  * A study read from the bytes of a YAML file and checked for form. Looks nothing up.
@@ -15,171 +20,102 @@ export const MAX_STUDY_BYTES = 1_000_000;
  * @throws InputError listing every problem with line and column
  */
 export function readStudy(bytes: Uint8Array, file: string): Study {
-  const text = decode(bytes, file);
-  const lines = new LineCounter();
-  const document = parseDocument(text, { lineCounter: lines, prettyErrors: false });
-  const problems = [...document.errors, ...document.warnings];
-  if (problems.length > 0) {
-    const listed = problems.map((problem) => {
-      const { line, col } = lines.linePos(problem.pos[0]);
-      return `${file}:${line}:${col}: not valid YAML: ${problem.message}`;
-    });
-    throw new InputError(listed.join("\n"));
-  }
-  const plain = toPlain(document, file);
+  const { study, problems } = draftStudy(bytes, file);
+  if (study === undefined || problems.length > 0) throw new InputError(listProblems(problems));
+  return study;
+}
+
+/**
+ * A study file checked for form, entry by entry, so that the sound ones can be checked further.
+ *
+ * @throws InputError if the file is no YAML text
+ */
+export function draftStudy(bytes: Uint8Array, file: string): StudyDraft {
+  const syntax = readSyntax(bytes, file);
+  const { plain } = syntax;
   const parsed = studySchema.safeParse(plain);
-  if (!parsed.success) throw new InputError(describeIssues(parsed.error.issues, document, lines, file));
-  return toStudy(parsed.data, text, file, positionsOf(plain, document, lines, file));
+  if (parsed.success) {
+    return { study: toStudy(parsed.data, everyEntry(plain), syntax, file), problems: syntax.problems };
+  }
+  const problems = formProblems(parsed.error.issues, syntax);
+  const { data, kept } = withoutFaults(plain, problems);
+  const rest = studySchema.safeParse(data);
+  return {
+    study: rest.success ? toStudy(rest.data, kept, syntax, file) : undefined,
+    problems: [...syntax.problems, ...problems],
+  };
 }
 
-function decode(bytes: Uint8Array, file: string): string {
-  if (bytes.length > MAX_STUDY_BYTES) {
-    throw new InputError(
-      `${file}: expected a study of at most ${MAX_STUDY_BYTES} bytes, got ${bytes.length}. Is this the right file?`,
-    );
-  }
-  let text: string;
-  try {
-    text = new TextDecoder("utf-8", { fatal: true }).decode(bytes);
-  } catch (cause) {
-    throw new InputError(
-      `${file}: expected a YAML text in UTF-8, got bytes that are not. Is this the right file?`,
-      { cause },
-    );
-  }
-  if (text.trim() === "") throw new InputError(`${file}: expected a study, got an empty file.`);
-  if (text.includes("\0"))
-    throw new InputError(`${file}: expected a YAML text, got a binary file. Is this the right file?`);
-  return text;
+/** The lists of a study whose entries are checked one by one. */
+const LISTS = ["decays", "mixing", "quarkLine", "measurements", "priors"] as const;
+type List = (typeof LISTS)[number];
+
+/** For each list, which entry of the file stands at each index of what is left. */
+type Kept = Readonly<Record<List, readonly number[]>>;
+
+function everyEntry(plain: unknown): Kept {
+  return withoutFaults(plain, []).kept;
 }
 
-function toPlain(document: Document.Parsed, file: string): unknown {
-  try {
-    return document.toJS({ maxAliasCount: 100 });
-  } catch (cause) {
-    throw new InputError(
-      `${file}: ${(cause as Error).message}. A study needs no YAML aliases; write the values out.`,
-      { cause },
-    );
+/** The data without the entries and keys that have faults. */
+function withoutFaults(plain: unknown, problems: readonly FormProblem[]): { data: unknown; kept: Kept } {
+  const data: Record<string, unknown> = typeof plain === "object" && plain !== null ? { ...plain } : {};
+  const kept = Object.fromEntries(LISTS.map((list) => [list, [] as number[]])) as Record<List, number[]>;
+  const faulty = (list: string, key: PropertyKey) =>
+    problems.some(({ keys }) => keys[0] === list && String(keys[1]) === String(key));
+  for (const list of LISTS) {
+    const entries = data[list];
+    if (!Array.isArray(entries)) continue;
+    kept[list] = [...entries.keys()].filter((index) => !faulty(list, index));
+    data[list] = kept[list].map((index) => entries[index]);
   }
+  for (const name of ["multiplets", "normalisations"]) {
+    const entries = data[name];
+    if (typeof entries !== "object" || entries === null) continue;
+    data[name] = Object.fromEntries(Object.entries(entries).filter(([key]) => !faulty(name, key)));
+  }
+  const known = Object.keys(studySchema.shape);
+  for (const key of Object.keys(data)) if (!known.includes(key)) delete data[key];
+  // A title and options do not matter to what else may be wrong.
+  for (const { keys } of problems) {
+    if (keys[0] === "title") data["title"] = "?";
+    if (keys[0] === "fit" || keys[0] === "tables") delete data[keys[0]];
+  }
+  return { data, kept };
 }
 
-/** Position of the value at `path`, or of the nearest enclosing value that exists. */
-function positionAt(
-  path: readonly PropertyKey[],
-  document: Document.Parsed,
-  lines: LineCounter,
-  file: string,
-): SourcePosition {
-  for (let length = path.length; length >= 0; length--) {
-    const node = length === 0 ? document.contents : document.getIn(path.slice(0, length), true);
-    if (isNode(node) && node.range) {
-      const { line, col } = lines.linePos(node.range[0]);
-      return { file, line, column: col };
+/** Names of hadrons that a study's own multiplets and mixed states have, as written, even where they have faults. */
+function hadronNamesOf(plain: unknown): string[] {
+  const names: string[] = [];
+  const visit = (value: unknown): void => {
+    if (typeof value !== "object" || value === null) return;
+    for (const [key, item] of Object.entries(value)) {
+      if (key === "name" && typeof item === "string") names.push(item);
+      if (key === "chargeStates") names.push(...Object.keys(item ?? {}));
+      visit(item);
     }
-  }
-  return { file, line: 1, column: 1 };
+  };
+  const { multiplets, mixing } = plain as Record<string, unknown>;
+  visit([multiplets, mixing]);
+  return names;
 }
 
-function positionsOf(
-  plain: unknown,
-  document: Document.Parsed,
-  lines: LineCounter,
-  file: string,
-): Map<string, SourcePosition> {
+/** Positions of every value of the file, by path such as `measurements/0/value`. */
+function positionsOf(syntax: StudySyntax): Map<string, SourcePosition> {
   const positions = new Map<string, SourcePosition>();
   const visit = (value: unknown, path: readonly (string | number)[]): void => {
-    positions.set(path.join("/"), positionAt(path, document, lines, file));
+    positions.set(path.join("/"), syntax.positionOf(path));
     if (Array.isArray(value)) for (const [index, item] of value.entries()) visit(item, [...path, index]);
     else if (typeof value === "object" && value !== null) {
       for (const [key, item] of Object.entries(value)) visit(item, [...path, key]);
     }
   };
-  visit(plain, []);
+  visit(syntax.plain, []);
   return positions;
 }
 
-type Issue = z.core.$ZodIssue;
-
-/** One line per problem: where, what was expected, what came. */
-function describeIssues(
-  issues: readonly Issue[],
-  document: Document.Parsed,
-  lines: LineCounter,
-  file: string,
-): string {
-  const flat = issues.flatMap((issue) => unfoldUnion(issue, document));
-  return flat
-    .map((issue) => {
-      const { line, column } = positionAt(issue.path, document, lines, file);
-      const where = issue.path.length === 0 ? "study" : issue.path.join("/");
-      return `${file}:${line}:${column}: ${where}: ${issueText(issue, document)}.`;
-    })
-    .join("\n");
-}
-
-/** The alternative of a union that the value resembles most: the one with the fewest problems, keys unknown to it last. */
-function unfoldUnion(issue: Issue, document: Document.Parsed): Issue[] {
-  if (issue.code !== "invalid_union" || issue.errors.length === 0) return [issue];
-  const wrongness = (branch: readonly Issue[]) =>
-    branch.reduce(
-      (sum, inner) =>
-        sum +
-        (inner.code === "unrecognized_keys" ? 10 * inner.keys.length : inner.path.length === 0 ? 100 : 1),
-      0,
-    );
-  const best = [...issue.errors].sort((a, b) => wrongness(a) - wrongness(b))[0]!;
-  if (wrongness(best) >= 100) return [issue];
-  return best.flatMap((inner) =>
-    unfoldUnion({ ...inner, path: [...issue.path, ...inner.path] } as Issue, document),
-  );
-}
-
-function issueText(issue: Issue, document: Document.Parsed): string {
-  const node = document.getIn(issue.path, true);
-  const value: unknown = isNode(node) ? node.toJS(document) : node;
-  const got =
-    value === undefined ? "nothing" : typeof value === "number" ? String(value) : JSON.stringify(value);
-  switch (issue.code) {
-    case "custom":
-      return issue.message;
-    case "unrecognized_keys":
-      return `unknown ${issue.keys.map((key) => `\`${key}\``).join(", ")}; check the spelling against the README`;
-    case "invalid_value":
-      return `expected ${issue.values.map((v) => JSON.stringify(v)).join(" or ")}, got ${got}`;
-    case "too_small":
-      return `expected at least ${String(issue.minimum)}${issue.origin === "array" ? " entries" : ""}, got ${got}`;
-    case "too_big":
-      return `expected at most ${String(issue.maximum)}${issue.origin === "array" ? " entries" : ""}, got ${got}`;
-    case "invalid_type":
-      return `expected ${article(issue.expected)}, got ${got}`;
-    case "invalid_union":
-      return `${issue.message}, got ${got}`;
-    default:
-      return issue.message;
-  }
-}
-
-const TYPE_WORDS: Readonly<Record<string, string>> = {
-  string: "a text",
-  number: "a number",
-  int: "a whole number",
-  object: "a mapping (`key: value` lines)",
-  record: "a mapping (`key: value` lines)",
-  array: "a list",
-  tuple: "a list of two",
-};
-
-function article(type: string): string {
-  return TYPE_WORDS[type] ?? type;
-}
-
-function toStudy(
-  document: StudyDocument,
-  text: string,
-  file: string,
-  positions: Map<string, SourcePosition>,
-): Study {
+function toStudy(document: StudyDocument, kept: Kept, syntax: StudySyntax, file: string): Study {
+  const pathOf = (list: List, index: number) => `${list}/${kept[list][index]}`;
   const multiplets = Object.entries(document.multiplets).map(([id, multiplet]): [string, StudyMultiplet] => [
     id,
     {
@@ -191,25 +127,34 @@ function toStudy(
   ]);
   return {
     file,
-    text,
+    text: syntax.text,
     title: document.title,
     multiplets: Object.fromEntries(multiplets),
-    mixing: document.mixing.map(({ bare, states, angle, angles, convention }) => ({
+    mixing: document.mixing.map(({ bare, states, angle, angles, convention }, k) => ({
+      path: pathOf("mixing", k),
       bare,
       states: states.map(withChargeStates),
       angles: angles ?? (angle === undefined ? [] : [angle]),
       convention,
     })),
-    decays: document.decays.map(({ S, ...decay }) => ({ ...decay, twoS: S, name: decay.name ?? "" })),
+    decays: document.decays.map(({ S, ...decay }, k) => ({
+      ...decay,
+      path: pathOf("decays", k),
+      twoS: S,
+      name: decay.name ?? "",
+    })),
     quarkLine: document.quarkLine,
-    measurements: document.measurements.map(toMeasurement),
+    measurements: document.measurements.map((written, k) =>
+      toMeasurement(written, pathOf("measurements", k)),
+    ),
     normalisations: Object.fromEntries(
       Object.entries(document.normalisations).map(([name, q]) => [name, q.value]),
     ),
-    priors: document.priors,
+    priors: document.priors.map((prior, k) => ({ ...prior, path: pathOf("priors", k) })),
     fit: document.fit,
     breaking: document.tables.breaking,
-    positions,
+    hadronNames: hadronNamesOf(syntax.plain),
+    positions: positionsOf(syntax),
   };
 }
 
@@ -219,12 +164,13 @@ function withChargeStates<T extends { chargeStates?: StudyMember["chargeStates"]
 
 const KINDS = ["width", "fraction", "ratio", "product", "amplitude", "residue", "total", "axial"] as const;
 
-function toMeasurement(written: StudyDocument["measurements"][number]): StudyMeasurement {
+function toMeasurement(written: StudyDocument["measurements"][number], path: string): StudyMeasurement {
   const kind = KINDS.find((name) => name in written)!;
   const channels = (written as Partial<Record<string, string | readonly string[]>>)[kind]!;
   const { value, source, use } = written;
   const sign = "sign" in written ? written.sign : 1;
   return {
+    path,
     kind,
     channels: typeof channels === "string" ? [channels] : channels,
     value:

@@ -8,6 +8,17 @@ const DESCRIPTIONS = {
   1: "A pure number, e.g. `0.40 +- 0.05`, `0.40 +0.05 -0.04` or `40 +- 5 %`",
 };
 
+/** A mapping with these keys and no others; a key it does not know is refused with those it knows. */
+function mapping<T extends z.core.$ZodLooseShape>(shape: T) {
+  return z.strictObject(shape, {
+    error: (issue) => {
+      if (issue.code !== "unrecognized_keys") return undefined;
+      const unknown = issue.keys.map((key: string) => `\`${key}\``).join(", ");
+      return `expected keys among ${Object.keys(shape).join(", ")}, got ${unknown}`;
+    },
+  });
+}
+
 /** A quantity in `unit`; `check` says what else it must be, in words, or undefined. */
 function quantity(unit: Quantity["unit"], check: (q: Quantity) => string | undefined = () => undefined) {
   return z
@@ -64,7 +75,7 @@ const chargeState = z
   .strictObject({ mass: mass.optional(), width: width.optional(), mcNumber: z.int().optional() })
   .describe("What one charge state has of its own");
 
-const member = z.strictObject({
+const member = mapping({
   name: z.string().min(1).describe("Name of the isospin multiplet, e.g. `Lambda(1830)`"),
   place: z
     .string()
@@ -78,14 +89,14 @@ const member = z.strictObject({
   chargeStates: z.record(z.string(), chargeState).optional(),
 });
 
-const multiplet = z.strictObject({
+const multiplet = mapping({
   irrep: z
     .union([z.string(), z.int()], { error: "expected an irrep such as 8, 10bar or `2,1`" })
     .transform(String)
     .describe("e.g. 8, 10, 10bar, 27 or `2,1`"),
   spinParity,
   baryonNumber: z.int().optional().describe("Default: 1 for half-integer spin, 0 for integer spin"),
-  members: z.array(member).min(1),
+  members: z.array(member).default([]),
 });
 
 const option = z
@@ -111,7 +122,7 @@ const model = z
   )
   .describe("Width model by name, or its name as `id` with options");
 
-const decay = z.strictObject({
+const decay = mapping({
   name: z
     .string()
     .min(1)
@@ -128,6 +139,10 @@ const decay = z.strictObject({
     .enum(["charge", "average"])
     .default("charge")
     .describe("Masses of each charge state, or isospin averages"),
+  daughters: z
+    .enum(["folded", "nominal"])
+    .default("folded")
+    .describe("Unstable daughters averaged over their line shapes, or at their nominal masses"),
 });
 
 const angle = z
@@ -136,7 +151,7 @@ const angle = z
   })
   .describe("A mixing angle: fitted, from the masses of a meson octet and its singlet, or given");
 
-const mixing = z.strictObject({
+const mixing = mapping({
   bare: z
     .array(z.string())
     .min(2)
@@ -168,17 +183,17 @@ const pair = z.tuple([z.string(), z.string()]);
 
 const measurement = z.union(
   [
-    z.strictObject({ width: z.string(), value: quantity("MeV", nonNegative), normalisation, source, use }),
-    z.strictObject({ fraction: z.string(), value: quantity("1", fraction), normalisation, source, use }),
-    z.strictObject({ ratio: pair, value: quantity("1", nonNegative), normalisation, source, use: onlyFit }),
-    z.strictObject({
+    mapping({ width: z.string(), value: quantity("MeV", nonNegative), normalisation, source, use }),
+    mapping({ fraction: z.string(), value: quantity("1", fraction), normalisation, source, use }),
+    mapping({ ratio: pair, value: quantity("1", nonNegative), normalisation, source, use: onlyFit }),
+    mapping({
       product: pair.describe("Two channels of one parent; the value is the product of their fractions"),
       value: quantity("1", fraction),
       normalisation,
       source,
       use: onlyFit,
     }),
-    z.strictObject({
+    mapping({
       amplitude: pair.describe("Entrance and exit channel of one parent; the value is sqrt(G_i G_f)/G_total"),
       value: z.union([z.enum(["+", "-"]), quantity("1", signedFraction)], {
         error: "expected a signed number such as `-0.25 +- 0.03`, or `+` or `-` alone",
@@ -190,20 +205,20 @@ const measurement = z.union(
       source,
       use: onlyFit,
     }),
-    z.strictObject({
+    mapping({
       residue: pair.describe("Entrance and exit channel of one parent; the value is the residue's modulus"),
       value: quantity("MeV", nonNegative),
       phase: quantity("rad").optional(),
       source,
       use: onlyFit,
     }),
-    z.strictObject({
+    mapping({
       total: z.string().describe("A parent; the value is the sum of its channels in this study"),
       value: quantity("MeV", nonNegative),
       source,
       use: onlyFit,
     }),
-    z.strictObject({
+    mapping({
       axial: z.string().describe("A semileptonic transition such as `n -> p`; the value is g1/f1"),
       value: quantity("1"),
       source,
@@ -221,7 +236,7 @@ const relativeError = quantity("1", (q) =>
 );
 
 /** The form of a study file; from this one description come the checks and their messages. */
-export const studySchema = z.strictObject({
+export const studySchema = mapping({
   couplet: z.literal(1).describe("Version of the study format"),
   title: z.string().min(1),
   multiplets: z.record(z.string(), multiplet).default({}),
@@ -237,9 +252,7 @@ export const studySchema = z.strictObject({
     .default({})
     .describe("Relative errors that several measurements share, by name"),
   priors: z
-    .array(
-      z.strictObject({ parameter: z.string(), value: z.union([quantity("1"), quantity("rad")]), source }),
-    )
+    .array(mapping({ parameter: z.string(), value: z.union([quantity("1"), quantity("rad")]), source }))
     .default([])
     .describe("What is known beforehand of a coupling, an angle, F, D, F/D, alpha_F or alpha_D"),
   fit: z
@@ -249,7 +262,7 @@ export const studySchema = z.strictObject({
       masses: z.enum(["fixed", "vary"]).default("vary"),
     })
     .prefault({}),
-  tables: z.strictObject({ breaking: z.number().min(0).max(1).default(0.2) }).prefault({}),
+  tables: mapping({ breaking: z.number().min(0).max(1).default(0.2) }).prefault({}),
 });
 
 /** A study that passed the form check, still in the file's own layout. */

@@ -49,6 +49,8 @@ export interface StudyMultiplet {
 
 /** A decay between multiplets, all of whose channels share the reduced couplings. */
 export interface StudyDecay {
+  /** Path in the file, for messages: its list and place in it. */
+  readonly path: string;
   /** Prefix of the couplings' names; empty where the study has one decay. */
   readonly name: string;
   readonly from: string;
@@ -59,6 +61,8 @@ export interface StudyDecay {
   readonly twoS?: number | undefined;
   readonly model: { readonly id: string; readonly options: Readonly<Record<string, number | Quantity>> };
   readonly masses: "charge" | "average";
+  /** Whether unstable daughters are averaged over their line shapes, or stand at their nominal masses. */
+  readonly daughters: "folded" | "nominal";
 }
 
 /**
@@ -66,6 +70,8 @@ export interface StudyDecay {
  * plane rotations, one angle for each pair of states in the order (1,2), (1,3), ..., (2,3), ...
  */
 export interface StudyMixing {
+  /** Path in the file, for messages: its list and place in it. */
+  readonly path: string;
   /** Places of the bare states, `multiplet/place`, e.g. `pseudoscalar-octet/eta`. */
   readonly bare: readonly string[];
   /** As many states; `place` is absent. */
@@ -91,6 +97,8 @@ export type MeasuredKind =
 
 /** One measurement. `channels` has one entry, or two for a ratio, a product, an amplitude or a residue. */
 export interface StudyMeasurement {
+  /** Path in the file, for messages: its list and place in it. */
+  readonly path: string;
   readonly kind: MeasuredKind;
   /** As written, e.g. `N(1675) -> N pi`; for a total width the parent's name. */
   readonly channels: readonly string[];
@@ -110,9 +118,20 @@ export interface StudyMeasurement {
 
 /** What is known of a parameter, or of F, D and their ratios, before the fit. */
 export interface StudyPrior {
+  /** Path in the file, for messages: its list and place in it. */
+  readonly path: string;
   readonly parameter: string;
   readonly value: Quantity;
   readonly source: string;
+}
+
+/** Something wrong in a study file, with where it stands. */
+export interface StudyProblem {
+  /** Path of the value, such as `measurements/0/value`; empty for faults of syntax. */
+  readonly path: string;
+  readonly position: SourcePosition;
+  /** What was expected, what came, and how to mend it. */
+  readonly text: string;
 }
 
 /** A study as written: checked for form, units resolved, nothing looked up. */
@@ -133,6 +152,8 @@ export interface Study {
   readonly fit: StudyFitOptions;
   /** Breaking of the symmetry in amplitude, relative to a decay's coupling strength; for predictions' errors. */
   readonly breaking: number;
+  /** Names of its own hadrons as written, even in entries that have faults. */
+  readonly hadronNames: readonly string[];
   /** Position of every value, by path such as `measurements/0/value`. */
   readonly positions: ReadonlyMap<string, SourcePosition>;
 }

@@ -7,8 +7,13 @@ import type * as protobuf from "protobufjs";
  * @param message - a message of the generated module, or a plain object of its shape
  */
 export function canonicalJson(type: string, message: object): unknown {
+  return canonicalJsonOf(type)(message);
+}
+
+/** `canonicalJson` for many messages of one type: the schema is read once. */
+export function canonicalJsonOf(type: string): (message: object) => unknown {
   const { Root } = require("protobufjs") as typeof protobuf;
   const { toJson } = require("protobufjs/ext/protojson") as typeof import("protobufjs/ext/protojson");
-  const root = Root.fromJSON(require("../gen/schema.json") as protobuf.INamespace);
-  return toJson(root.lookupType(type), message as protobuf.Message);
+  const messageType = Root.fromJSON(require("../gen/schema.json") as protobuf.INamespace).lookupType(type);
+  return (message) => toJson(messageType, message as protobuf.Message);
 }

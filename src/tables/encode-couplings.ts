@@ -5,6 +5,7 @@ import type {
   DecayConstants,
   ReducedValue,
 } from "../completion/coupling-table.js";
+import type { Estimate } from "../completion/tables.js";
 import type { FAndDForm } from "../couplings/f-and-d.js";
 import { ISOSPIN_LAGRANGIAN, ISOSPIN_MULTIPLETS } from "../couplings/isospin-lagrangian.js";
 import { MATRIX_CONVENTION, MatrixConvention, OCTET_LAGRANGIAN } from "../couplings/matrix-convention.js";
@@ -87,7 +88,7 @@ function reducedMessage(
     ...lastStep(coupling),
     twoL: 2 * L,
     twoS,
-    value: estimateMessage(value),
+    value: fittedMessage(value),
     unit,
   };
 }
@@ -188,7 +189,12 @@ function lagrangianMessage(
       name,
       vertex,
       dAndF: dAndFMessage(dAndF),
-      value: estimateMessage(value),
+      value: fittedMessage(value),
     })),
   };
+}
+
+/** A fitted number; breaking belongs to vertices, not to it. */
+function fittedMessage(value: Estimate): v1.Estimate.$Properties {
+  return { ...estimateMessage(value), breaking: null };
 }

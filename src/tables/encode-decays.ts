@@ -80,7 +80,13 @@ function minimumMessage(minimum: StudyMinimum): v1.Minimum.$Properties {
     chi2: minimum.chi2,
     ndf: minimum.ndf,
     probability: minimum.probability ?? null,
-    parameters: minimum.parameters.map((parameter: FittedParameter) => ({ ...parameter })),
+    parameters: minimum.parameters.map(({ name, value, error, unit, kind }: FittedParameter) => ({
+      name,
+      value,
+      error,
+      unit,
+      kind,
+    })),
     pulls: minimum.pulls.map(({ observable, fitted, pull }) => ({
       quantity: observable.label,
       measured: observable.measured.value,

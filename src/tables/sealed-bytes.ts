@@ -21,7 +21,17 @@ const SEAL_LENGTH = SEAL_HEAD.length + 32;
  * @param body - the encoded message without its `sha256` field
  */
 export function sealBytes(body: Uint8Array): Uint8Array {
-  return Buffer.concat([body, SEAL_HEAD, createHash("sha256").update(body).digest()]);
+  return Buffer.concat([...sealedPieces([body])]);
+}
+
+/** The same piece by piece, for a table too large to hold: the digest is computed on the way. */
+export function* sealedPieces(body: Iterable<Uint8Array>): Generator<Uint8Array> {
+  const hash = createHash("sha256");
+  for (const piece of body) {
+    hash.update(piece);
+    yield piece;
+  }
+  yield Buffer.concat([SEAL_HEAD, hash.digest()]);
 }
 
 /**

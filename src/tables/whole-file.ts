@@ -1,7 +1,17 @@
-import { mkdirSync, rmdirSync, statSync } from "node:fs";
-import { dirname } from "node:path";
+import {
+  closeSync,
+  fsyncSync,
+  mkdirSync,
+  openSync,
+  renameSync,
+  rmdirSync,
+  rmSync,
+  statSync,
+  writeSync,
+} from "node:fs";
+import { basename, dirname, join } from "node:path";
 import writeFileAtomic from "write-file-atomic";
-import { InputError } from "../errors.js";
+import { CoupletError, InputError } from "../errors.js";
 
 /** What to do about the operating system's reasons, by their codes. */
 const MENDS: Readonly<Record<string, string>> = {
@@ -22,17 +32,67 @@ const MENDS: Readonly<Record<string, string>> = {
  * @throws InputError if the place cannot be written, with the reason of the operating system
  */
 export function writeWhole(path: string, bytes: Uint8Array | string): void {
+  inItsPlace(path, () => writeFileAtomic.sync(path, Buffer.from(bytes as Uint8Array), { fsync: true }));
+}
+
+/**
+ * The same for a file too large to hold, from its pieces; returns its length. Whatever ends the pieces early, an error of
+ * theirs included, leaves nothing.
+ *
+ * @param temporary - told the name of the file beside before it is made, and `undefined` once it is gone: a process that
+ * is about to be stopped can remove it
+ * @throws InputError as `writeWhole`
+ */
+export function writeWholePieces(
+  path: string,
+  pieces: Iterable<Uint8Array>,
+  temporary: (name: string | undefined) => void = () => {},
+): number {
+  return inItsPlace(path, () => {
+    const beside = join(dirname(path), `.${basename(path)}.${process.pid}`);
+    temporary(beside);
+    try {
+      const length = writePieces(beside, pieces);
+      renameSync(beside, path);
+      return length;
+    } catch (error) {
+      attempt(() => rmSync(beside, { force: true }));
+      throw error;
+    } finally {
+      temporary(undefined);
+    }
+  });
+}
+
+function writePieces(path: string, pieces: Iterable<Uint8Array>): number {
+  const file = openSync(path, "w", 0o666);
+  let length = 0;
+  try {
+    for (const piece of pieces) {
+      for (let done = 0; done < piece.length; ) done += writeSync(file, piece, done);
+      length += piece.length;
+    }
+    fsyncSync(file);
+  } finally {
+    closeSync(file);
+  }
+  return length;
+}
+
+/** Runs a write that puts a file at `path`, makes its folder before, and says in our words what went wrong. */
+function inItsPlace<T>(path: string, write: () => T): T {
   if (path === "") throw new InputError("expected the name of a file to write, got an empty name.");
   const made: string[] = [];
   try {
     makeFolder(dirname(path), made);
     requireFilePlace(path);
-    writeFileAtomic.sync(path, Buffer.from(bytes as Uint8Array), { fsync: true });
+    return write();
   } catch (cause) {
     // Deepest first; a folder that someone else has filled meanwhile stays.
     for (const folder of made.reverse()) attempt(() => rmdirSync(folder));
-    if (cause instanceof InputError) throw cause;
-    const { code = "", message } = cause as NodeJS.ErrnoException;
+    const { code, message } = cause as NodeJS.ErrnoException;
+    // Only the operating system's errors carry such a code; ours, and bugs, pass as they are.
+    if (cause instanceof CoupletError || code === undefined) throw cause;
     const mend = MENDS[code] ?? "Choose another folder";
     throw new InputError(
       `${path}: could not be written: ${reasonOf(message)}. ${mend}. Nothing was changed.`,

@@ -1,4 +1,5 @@
 import { refuse } from "../require.js";
+import { floatNotAbove } from "./float-rounding.js";
 import { integrateOverLineShape, type LineShape } from "./line-shape.js";
 import { lastNotAbove } from "./mass-grid.js";
 
@@ -70,10 +71,11 @@ export function drawGrid(shape: LineShape): DrawGrid {
       { relativeError: 1e-8 },
     ).value / whole;
   const pointAfter = (start: Point, w: number): Point => {
-    const x = Math.fround(w - low);
+    const x = floatNotAbove(w - low);
     return { x, F: start.F + chance(start.x, x) };
   };
   const edges = [low, ...shape.running.thresholdsMeV.filter((w) => w > low && w < high), high];
+  const middleMass = (a: Point, b: Point) => massAt((angle(low + a.x) + angle(low + b.x)) / 2);
   const points: Point[] = [];
   let start: Point = { x: 0, F: 0 };
   for (const [k, edge] of edges.slice(1).entries()) {
@@ -81,7 +83,6 @@ export function drawGrid(shape: LineShape): DrawGrid {
     const step = (angle(edge) - from) / FIRST_BINS;
     for (let bin = 1; bin <= FIRST_BINS; bin++) {
       const end = pointAfter(start, bin === FIRST_BINS ? edge : massAt(from + bin * step));
-      const middleMass = (a: Point, b: Point) => massAt((angle(low + a.x) + angle(low + b.x)) / 2);
       addStraightBins(points, start, end, (a, b) => pointAfter(a, middleMass(a, b)));
       start = points.at(-1) ?? start;
     }

@@ -38,7 +38,7 @@ export function lowestMassMeV(daughter: Daughter): number {
  *
  * <K>(M) = integral dw rho(w)/N K(M, w, m2) from the daughter's threshold to M - m2, and the double integral for two.
  * It takes the place of K in Gamma = s |A|^2 K and holds no coupling: one value serves a whole fit. It is positive also
- * where the decay is closed at nominal masses, and smaller than the nominal K far above threshold if the window is cut.
+ * where the decay is closed at nominal masses.
  * Two resonances in one final state interfere; adding folded widths leaves that out.
  * Source: the width of a sequential decay integrated over the invariant mass of the unstable daughter; derived, compared
  * with an independent program in the tests.

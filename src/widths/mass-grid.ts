@@ -1,4 +1,5 @@
 import { refuse, requirePositive } from "../require.js";
+import { floatNotBelow } from "./float-rounding.js";
 import type { RunningWidth } from "./running-width.js";
 
 /**
@@ -70,13 +71,14 @@ export function massGrid(width: RunningWidth, topMeV: number, options: MassGridO
     const value = width.widthMeV(thresholdMeV + x);
     if (value > 0 && Number.isFinite(value)) return Math.log(value);
     const mend = "Leave out channels without a coupling.";
-    refuse(`massGrid: width in MeV, ${x} MeV above threshold`, "a number > 0", value, mend);
+    refuse(`massGrid: width in MeV, ${x.toPrecision(4)} MeV above threshold`, "a number > 0", value, mend);
   };
   const point = (distance: number): Point => {
     const x = Math.fround(distance);
+    const y = Math.fround(logWidth(x));
     const step = Math.min(STEP, (PART_OF_RISE * (width.sharpestMeV ?? Number.POSITIVE_INFINITY)) / x);
     const slope = (logWidth(x * Math.exp(step)) - logWidth(x * Math.exp(-step))) / (2 * step);
-    return { x, t: Math.log(x), y: Math.fround(logWidth(x)), s: Math.fround(slope) };
+    return { x, t: Math.log(x), y, s: Math.fround(slope) };
   };
   const tolerance = SAFETY * relativeError;
   const follows = (a: Point, b: Point): boolean =>
@@ -117,7 +119,7 @@ function addBins(
   if (end.t - start.t < SHORTEST) {
     const mend = "Make one grid for each partial width.";
     refuse(
-      `massGrid: width, ${end.x} MeV above threshold`,
+      `massGrid: width, ${end.x.toPrecision(4)} MeV above threshold`,
       "a smooth function of the mass",
       "a corner",
       mend,
@@ -135,12 +137,6 @@ function cubic(left: Point, right: Point, t: number): number {
   const a = h * left.s;
   const b = h * right.s;
   return left.y + u * (a + u * (3 * D - 2 * a - b + u * (a + b - 2 * D)));
-}
-
-/** Smallest 32-bit float that is not below a positive number. */
-function floatNotBelow(value: number): number {
-  const nearest = Math.fround(value);
-  return nearest >= value ? nearest : Math.fround(value * (1 + 2 ** -23));
 }
 
 /**

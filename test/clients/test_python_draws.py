@@ -1,4 +1,4 @@
-"""Statistical test of the draws of couplet_decays.py from a fresh table.
+"""Statistical test of the draws of couplet_decays.py from a fresh table, and of what it refuses.
 
 For each parent the counts of N draws are compared with the fractions by Pearson's chi-square (rows expecting under 10
 draws are put together). The whole test fails if any parent's probability is below FALSE_ALARM / (number of parents), so
@@ -7,10 +7,10 @@ The test also proves that it can fail: draws compared with shifted fractions mus
 """
 
 import collections
+import hashlib
 import math
 import random
 import sys
-import tempfile
 
 import couplet_decays
 
@@ -84,24 +84,88 @@ def main(path):
 
 
 def damage_checks(path):
-    """A table with one byte changed, a cut one and a foreign file are each refused with the right exception."""
+    """Every changed byte and every truncation of the file, and what else is wrong, is refused with the right words."""
     data = open(path, "rb").read()
-    flipped = bytearray(data)
-    flipped[len(data) // 2] ^= 1
+    head = 2 + len(couplet_decays.KIND)
+
+    def refusal(content):
+        try:
+            couplet_decays.tables_from_bytes(bytes(content), "f.pb")
+        except (couplet_decays.Damaged, couplet_decays.NotOurs) as error:
+            return type(error), str(error)
+        return None, ""
+
+    def expected(at):
+        return couplet_decays.NotOurs if at < head else couplet_decays.Damaged
+
+    changed = bytearray(data)
+    wrong = 0
+    for at in range(len(data)):
+        changed[at] ^= 1 << (at % 8)
+        wrong += refusal(changed)[0] is not expected(at)
+        changed[at] = data[at]
+    yield wrong == 0, f"a change of any of the {len(data)} bytes is refused"
+    wrong = sum(refusal(data[:length])[0] is not expected(length) for length in range(len(data)))
+    yield wrong == 0, "every truncation is refused"
+
+    foreign = "f.pb: expected decay tables written by Couplet, got something else (5 bytes). "
+    foreign += "Give a .decays.pb file that `couplet tables` wrote."
+    yield refusal(b"hello") == (couplet_decays.NotOurs, foreign), "a foreign file is refused in words"
+    cut = "f.pb: the file is damaged: its digest does not match its content (100 bytes). "
+    cut += "Nothing was read; get a fresh copy or write the table again."
+    yield refusal(data[:100]) == (couplet_decays.Damaged, cut), "a cut file is refused in words"
+    for ok, what in content_checks(data, refusal):
+        yield ok, what
+
+
+def content_checks(data, refusal):
+    """Tables with a right digest and a wrong content."""
+
+    def sealed(body):
+        return body + couplet_decays.SEAL_HEAD + hashlib.sha256(body).digest()
+
+    def remade(change):
+        tables = couplet_decays.decays_pb2.DecayTables.FromString(data)
+        tables.ClearField("sha256")
+        change(tables)
+        return sealed(tables.SerializeToString())
+
+    def newer(tables):
+        tables.header.schema_minor = couplet_decays.SCHEMA_MINOR + 1
+
+    def other_convention(tables):
+        tables.header.convention = "left-handed"
+
+    def a_part_more(tables):
+        tables.parents[0].rows[0].parts_per_billion += 1
+
+    known, new = couplet_decays.SCHEMA_MINOR, couplet_decays.SCHEMA_MINOR + 1
+    name = couplet_decays.tables_from_bytes(data, "f.pb").parents[0].hadron.name
+    written_otherwise = " The file was written by something else; write it again."
     cases = [
-        (bytes(flipped), couplet_decays.Damaged, "a changed byte is refused"),
-        (data[: len(data) // 2], couplet_decays.Damaged, "a cut file is refused"),
-        (b"hello", couplet_decays.NotOurs, "a foreign file is refused"),
+        (
+            remade(newer),
+            f"expected schema version 1.{known} or older, got 1.{new}. Read it with a newer reader.",
+            "a newer schema",
+        ),
+        (
+            remade(other_convention),
+            'expected phase convention deswart-v1, got "left-handed". Read it with a newer reader.',
+            "an unknown convention",
+        ),
+        (
+            remade(a_part_more),
+            f"{name}: expected rows that add up to 1000000000 parts, got 1000000001." + written_otherwise,
+            "a wrong sum",
+        ),
+        (
+            sealed(data[: -couplet_decays.SEAL_LENGTH] + b"\x12\x7f"),
+            "expected a message couplet.v1.DecayTables, got bytes that are none." + written_otherwise,
+            "a length beyond the end",
+        ),
     ]
-    for content, expected, what in cases:
-        with tempfile.NamedTemporaryFile() as file:
-            file.write(content)
-            file.flush()
-            try:
-                couplet_decays.read_tables(file.name)
-                yield False, what
-            except (couplet_decays.Damaged, couplet_decays.NotOurs) as error:
-                yield type(error) is expected, what
+    for content, message, what in cases:
+        yield refusal(content) == (couplet_decays.Damaged, "f.pb: " + message), f"{what} is refused in words"
 
 
 if __name__ == "__main__":

@@ -4,6 +4,8 @@ Needs Debian's python3-protobuf and the classes that protoc makes from the .prot
 
     protoc -I proto --python_out=OUT proto/couplet/v1/exact.proto proto/couplet/v1/decays.proto
     PYTHONPATH=OUT /usr/bin/python3 couplet_decays.py FILE --parent 'N(1675)+' --draws 5
+
+Widths at other masses than the nominal one are in couplet_widths.py, beside this file.
 """
 
 import argparse
@@ -14,15 +16,20 @@ import itertools
 import random
 import sys
 
+from google.protobuf.message import DecodeError
+
 from couplet.v1 import decays_pb2
+from couplet_widths import Damaged, ParentWidths
+
+__all__ = ["Damaged", "Decayer", "NotOurs", "ParentWidths", "parent_named", "read_tables", "tables_from_bytes"]
 
 KIND = b"couplet.v1.DecayTables"
 # Field 1000 with a length of 32: the digest is the last field of the file.
 SEAL_HEAD = b"\xc2\x3e\x20"
 SEAL_LENGTH = len(SEAL_HEAD) + 32
-# The newest schema this reader knows, and the conventions it can pass on.
+# The newest schema this reader knows, and the convention it can pass on.
 SCHEMA_MINOR = 0
-CONVENTIONS = {"deswart-v1"}
+CONVENTION = "deswart-v1"
 WHOLE = 10**9
 
 
@@ -30,30 +37,54 @@ class NotOurs(Exception):
     """The file is not a decay table of Couplet at all."""
 
 
-class Damaged(Exception):
-    """The file is one of ours, and damaged or too new for this reader."""
-
-
 def read_tables(path):
-    """The DecayTables message in a file, after checking digest, version, convention and sums."""
+    """The DecayTables message in a file; raises NotOurs or Damaged, and OSError if the file cannot be read."""
     with open(path, "rb") as file:
-        data = file.read()
+        return tables_from_bytes(file.read(), path)
+
+
+def tables_from_bytes(data, name):
+    """The DecayTables message in a file's bytes, after checking digest, version, convention and sums.
+
+    name: the file's, for messages.
+    """
     head = bytes([0x0A, len(KIND)]) + KIND
     if not data.startswith(head):
-        raise NotOurs(f"{path}: expected decay tables written by Couplet, got something else ({len(data)} bytes)")
+        raise NotOurs(
+            f"{name}: expected decay tables written by Couplet, got something else ({len(data)} bytes). "
+            "Give a .decays.pb file that `couplet tables` wrote."
+        )
     # The digest is of the bytes as read; encoding the message again could give other bytes.
     body, seal = data[:-SEAL_LENGTH], data[-SEAL_LENGTH:]
     if seal != SEAL_HEAD + hashlib.sha256(body).digest():
-        raise Damaged(f"{path}: the file is damaged: its digest does not match its content; get a fresh copy")
-    tables = decays_pb2.DecayTables.FromString(data)
-    if tables.header.schema_minor > SCHEMA_MINOR:
-        raise Damaged(f"{path}: schema 1.{tables.header.schema_minor} is newer than this reader (1.{SCHEMA_MINOR})")
-    if tables.header.convention not in CONVENTIONS:
-        raise Damaged(f"{path}: unknown phase convention {tables.header.convention!r}")
+        raise Damaged(
+            f"{name}: the file is damaged: its digest does not match its content ({len(data)} bytes). "
+            "Nothing was read; get a fresh copy or write the table again."
+        )
+    written_otherwise = "The file was written by something else; write it again."
+    try:
+        tables = decays_pb2.DecayTables.FromString(data)
+    except DecodeError:
+        tables = None
+    if tables is None or tables.kind.encode() != KIND:
+        raise Damaged(f"{name}: expected a message {KIND.decode()}, got bytes that are none. {written_otherwise}")
+    header = tables.header
+    minor = f"1.{header.schema_minor}" if header.HasField("schema_minor") else "none"
+    if minor == "none" or header.schema_minor > SCHEMA_MINOR:
+        raise Damaged(
+            f"{name}: expected schema version 1.{SCHEMA_MINOR} or older, got {minor}. Read it with a newer reader."
+        )
+    if header.convention != CONVENTION:
+        raise Damaged(
+            f'{name}: expected phase convention {CONVENTION}, got "{header.convention}". Read it with a newer reader.'
+        )
     for parent in tables.parents:
         total = sum(row.parts_per_billion for row in parent.rows)
         if total != WHOLE:
-            raise Damaged(f"{path}: {parent.hadron.name}: rows add up to {total} parts, not {WHOLE}")
+            raise Damaged(
+                f"{name}: {parent.hadron.name}: expected rows that add up to {WHOLE} parts, got {total}. "
+                + written_otherwise
+            )
     return tables
 
 
@@ -74,7 +105,7 @@ def parent_named(tables, name):
     for parent in tables.parents:
         if parent.hadron.name == name:
             return parent
-    raise NotOurs(f"no parent {name!r} in this table; there are: " + ", ".join(p.hadron.name for p in tables.parents))
+    raise NotOurs(f'no parent "{name}" in this table; there are: ' + ", ".join(p.hadron.name for p in tables.parents))
 
 
 def main(arguments=None):
@@ -82,26 +113,42 @@ def main(arguments=None):
     parser.add_argument("file")
     parser.add_argument("--parent", help="only this hadron; all of them without it")
     parser.add_argument("--draws", type=int, default=1000, help="decays to draw for each parent (default 1000)")
+    parser.add_argument("--mass", type=float, help="also print widths and fractions at this mass of the parent, in MeV")
     parser.add_argument("--seed", type=int, default=1, help="seed of the random numbers (default 1)")
     options = parser.parse_args(arguments)
     try:
         tables = read_tables(options.file)
         parents = [parent_named(tables, options.parent)] if options.parent else tables.parents
-    except (OSError, NotOurs) as error:
+        rng = random.Random(options.seed)
+        for parent in parents:
+            show_draws(parent, options.draws, rng)
+            if options.mass is not None:
+                show_widths(tables, parent, options.mass)
+    except (OSError, NotOurs, ValueError) as error:
         print(error, file=sys.stderr)
         return 2
     except Damaged as error:
         print(error, file=sys.stderr)
         return 3
-    rng = random.Random(options.seed)
-    for parent in parents:
-        decayer = Decayer(parent)
-        counts = collections.Counter(decayer.draw(rng).id for _ in range(options.draws))
-        print(f"{parent.hadron.name}: {options.draws} decays")
-        for row in parent.rows:
-            if row.parts_per_billion:
-                print(f"  {counts[row.id]:>8}  {row.id}  (expected {options.draws * row.parts_per_billion / WHOLE:.1f})")
     return 0
+
+
+def show_draws(parent, draws, rng):
+    """Prints how often each row is drawn."""
+    decayer = Decayer(parent)
+    counts = collections.Counter(decayer.draw(rng).id for _ in range(draws))
+    print(f"{parent.hadron.name}: {draws} decays")
+    for row in parent.rows:
+        if row.parts_per_billion:
+            print(f"  {counts[row.id]:>8}  {row.id}  (expected {draws * row.parts_per_billion / WHOLE:.1f})")
+
+
+def show_widths(tables, parent, mass):
+    """Prints widths and fractions at a mass."""
+    at = ParentWidths(tables, parent)
+    print(f"{parent.hadron.name} at {mass:g} MeV: total width {at.total(mass):.5g} MeV")
+    for row, width, fraction in zip(parent.rows, at.widths(mass), at.fractions(mass)):
+        print(f"  {width:>8.4g} MeV  {fraction:.4f}  {row.id}")
 
 
 if __name__ == "__main__":

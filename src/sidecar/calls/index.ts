@@ -1,3 +1,4 @@
+import { getCouplings } from "./couplings.js";
 import { drawChannels, drawChannelsStream } from "./draws.js";
 import { getIsoscalarFactors } from "./factors.js";
 import type { Method } from "./method.js";
@@ -8,6 +9,7 @@ import { evaluateWidths, evaluateWidthsBatch, evaluateWidthsStream } from "./wid
 export const METHODS: readonly Method[] = [
   listTables,
   getDecayTable,
+  getCouplings,
   getIsoscalarFactors,
   evaluateWidths,
   evaluateWidthsBatch,

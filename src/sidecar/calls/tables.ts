@@ -1,7 +1,8 @@
 import { couplet } from "../../gen/couplet.js";
 import { CAUTIONS } from "../../tables/cautions.js";
 import { producerName } from "../../version.js";
-import type { ServedTable } from "../served.js";
+import { familiesOf } from "../families.js";
+import type { ServedCouplings, ServedDecays } from "../served.js";
 import { type Method, method, type Snapshot } from "./method.js";
 
 import v1 = couplet.v1;
@@ -16,7 +17,7 @@ export const listTables: Method = method(
     message: {
       producer: producerName(),
       cautions: [...CAUTIONS],
-      tables: served.tables.map(tableMessage),
+      tables: [...served.decays.map(decaysMessage), ...served.couplings.map(couplingsMessage)],
       limits: { ...limits },
       refusedReplacement,
     },
@@ -42,15 +43,21 @@ export const getDecayTable: Method = method(
   },
 );
 
-function tableMessage({ file, sha256, message }: ServedTable): v1.ServedTable.$Properties {
+function decaysMessage(table: ServedDecays): v1.ServedTable.$Properties {
   return {
-    file,
-    sha256,
-    header: { ...message.header, studyText: "" },
-    parents: message.parents.map(({ hadron, rows }) => ({
+    ...listed(table),
+    parents: table.message.parents.map(({ hadron, rows }) => ({
       name: hadron.name,
       mcNumber: hadron.mcNumber,
       rows: rows.length,
     })),
   };
+}
+
+function couplingsMessage(table: ServedCouplings): v1.ServedTable.$Properties {
+  return { ...listed(table), families: familiesOf(table.message) };
+}
+
+function listed({ file, sha256, message }: ServedDecays | ServedCouplings): v1.ServedTable.$Properties {
+  return { file, sha256, kind: message.kind, header: { ...message.header, studyText: "" } };
 }

@@ -1,0 +1,179 @@
+import { InputError, TableError } from "../errors.js";
+import { couplet } from "../gen/couplet.js";
+import { refuse, requirePositive } from "../require.js";
+import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
+import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
+import type { Kinematics, Vertex } from "../widths/width-model-definition.js";
+
+import v1 = couplet.v1;
+
+/** Partial widths of one parent's rows against its mass. */
+export interface RowsEvaluator {
+  /** Number of rows, in the order of the decay table. */
+  readonly rowCount: number;
+  /**
+   * Writes the partial width of every row into `widths` from `offset` on, and returns their sum, in MeV.
+   *
+   * Each is >= 0 and finite; 0 at and below the row's threshold.
+   * @throws InputError for a mass that is not a finite number > 0, or so large that a width overflows
+   */
+  widthsInto(massMeV: number, widths: number[], offset: number): number;
+}
+
+type HadronsByName = ReadonlyMap<string, v1.Hadron.$Properties>;
+
+/** The hadrons of a decay table by name: its parents and its externals. */
+export function tableHadrons(tables: v1.DecayTables): HadronsByName {
+  const hadrons = [...tables.externals, ...tables.parents.map(({ hadron }) => hadron)];
+  return new Map(hadrons.map((hadron) => [hadron.name, hadron]));
+}
+
+/**
+ * The evaluator of a parent's rows at any mass, prepared once.
+ *
+ * The partial width of a row at mass m is the sum over its waves of (re^2 + im^2) K(m)/K(m0), with m0 the nominal mass
+ * and K the wave's width model at the masses of the table's hadrons; where K(m0) = 0, so that re = im = 0, it is
+ * identicalFactor flavourAmplitude^2 K(m). So at m0 it is the row's width, measured or predicted, and a measured row
+ * takes its shape from the model. A row without waves, such as a remainder, is constant above its threshold. The
+ * readers in C++ and Python compute the same.
+ * @throws TableError for a model, an option or a vertex this version does not know, or a hadron that is missing
+ */
+export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByName): RowsEvaluator {
+  const rows = (parent.rows ?? []).map((row) => rowWidth(parent, row, hadrons));
+  return {
+    rowCount: rows.length,
+    widthsInto(massMeV, widths, offset) {
+      requirePositive("mass of the parent", massMeV, "Give the mass in MeV.");
+      let total = 0;
+      for (let k = 0; k < rows.length; k++) {
+        const width = rows[k]!(massMeV);
+        widths[offset + k] = width;
+        total += width;
+      }
+      if (!Number.isFinite(total)) refuse("mass of the parent", "one at which widths are finite", massMeV);
+      return total;
+    },
+  };
+}
+
+/** Fractions of all rows at a mass; they add up to 1, or are all 0 where every row is closed. */
+export function fractionsAt(evaluator: RowsEvaluator, massMeV: number): number[] {
+  const widths = new Array<number>(evaluator.rowCount).fill(0);
+  const total = evaluator.widthsInto(massMeV, widths, 0);
+  return total > 0 ? widths.map((width) => width / total) : widths;
+}
+
+/** Partial width in MeV of one row against the parent's mass in MeV. */
+type RowWidth = (massMeV: number) => number;
+
+/** K in MeV over the square of the amplitude's unit, above threshold. */
+type Factor = (kinematics: Kinematics) => number;
+
+function rowWidth(parent: v1.Parent.$Properties, row: v1.Row.$Properties, hadrons: HadronsByName): RowWidth {
+  const waves = row.waves ?? [];
+  if (waves.length === 0) return constantWidth(row);
+  const nominalMeV = parent.hadron?.mass ?? Number.NaN;
+  const [first, second, more] = (row.daughters ?? []).map((daughter) => daughterOf(row, daughter, hadrons));
+  if (first === undefined || second === undefined || more !== undefined || !(nominalMeV > 0)) {
+    throw new TableError(
+      `${row.id}: expected two daughters and a parent's mass > 0 of a row with waves, got others`,
+    );
+  }
+  const spins = [parent.hadron!, first, second];
+  const [firstMeV, secondMeV] = [first.mass!, second.mass!];
+  const momentumMeV = breakupMomentumMeV(nominalMeV, firstMeV, secondMeV);
+  const nominal = { parentMeV: nominalMeV, firstMeV, secondMeV, momentumMeV };
+  const scaled = waves.map((wave) => {
+    const factor = factorOf(row, wave, spins);
+    return { factor, scale: scaleOf(row, wave, momentumMeV > 0 ? factor(nominal) : 0) };
+  });
+  return (massMeV) => {
+    const momentum = breakupMomentumMeV(massMeV, firstMeV, secondMeV);
+    if (momentum === 0) return 0;
+    const kinematics = { parentMeV: massMeV, firstMeV, secondMeV, momentumMeV: momentum };
+    let width = 0;
+    for (const { factor, scale } of scaled) width += scale * factor(kinematics);
+    return width;
+  };
+}
+
+function constantWidth(row: v1.Row.$Properties): RowWidth {
+  const width = row.width?.value ?? Number.NaN;
+  const threshold = row.threshold ?? Number.NaN;
+  if (!Number.isFinite(width) || !Number.isFinite(threshold)) {
+    throw new TableError(`${row.id}: expected a row without waves to have a width and a threshold, got none`);
+  }
+  return (massMeV) => (massMeV > threshold ? width : 0);
+}
+
+function daughterOf(
+  row: v1.Row.$Properties,
+  { name }: v1.Daughter.$Properties,
+  hadrons: HadronsByName,
+): v1.Hadron.$Properties {
+  const hadron = hadrons.get(name ?? "");
+  if (hadron?.mass != null && hadron.mass >= 0 && Number.isFinite(hadron.mass)) return hadron;
+  throw new TableError(`${row.id}: expected ${name} among the hadrons of the table with its mass, got none`);
+}
+
+/** What K is multiplied with to give the width in MeV. */
+function scaleOf(row: v1.Row.$Properties, wave: v1.Wave.$Properties, nominalFactor: number): number {
+  const amplitude = wave.flavourAmplitude ?? Number.NaN;
+  const scale =
+    nominalFactor > 0
+      ? ((wave.re ?? Number.NaN) ** 2 + (wave.im ?? Number.NaN) ** 2) / nominalFactor
+      : (row.identicalFactor ?? Number.NaN) * amplitude ** 2;
+  if (Number.isFinite(scale) && Number.isFinite(nominalFactor)) return scale;
+  throw new TableError(`${row.id}: expected finite amplitudes, got others`);
+}
+
+/** K of a wave, with model, options and vertex checked here and not at every mass. */
+function factorOf(
+  row: v1.Row.$Properties,
+  wave: v1.Wave.$Properties,
+  spins: readonly v1.Hadron.$Properties[],
+): Factor {
+  const definition = widthModelDefinitions().find(({ id }) => id === wave.model);
+  if (definition === undefined) {
+    const known = widthModelDefinitions().map(({ id }) => id);
+    refuseWave(row, `a width model among ${known.join(", ")}`, JSON.stringify(wave.model));
+  }
+  const wanted = definition.options.map(({ name, unit }) => `${name} in ${unit}`);
+  const given = (wave.options ?? []).map(({ name, unit }) => `${name} in ${unit}`);
+  if (wanted.length !== given.length || !wanted.every((option) => given.includes(option))) {
+    const expected = `width model ${definition.id} with the options [${wanted.join(", ")}]`;
+    refuseWave(row, expected, `[${given.join(", ")}]`);
+  }
+  const vertex = vertexOf(wave, spins);
+  try {
+    const options = (wave.options ?? []).map(({ name, value }) => [name, value ?? Number.NaN]);
+    const model = widthModel(definition.id, Object.fromEntries(options));
+    // Asking for the unit checks the vertex.
+    model.amplitudeUnit(vertex);
+    return (kinematics) => definition.factorMeV(kinematics, vertex, model.options);
+  } catch (cause) {
+    if (cause instanceof InputError) throw new TableError(`${row.id}: ${cause.message}`, { cause });
+    throw cause;
+  }
+}
+
+function vertexOf(
+  wave: v1.Wave.$Properties,
+  [parent, first, second]: readonly v1.Hadron.$Properties[],
+): Vertex {
+  const spinParity = (hadron: v1.Hadron.$Properties | undefined) =>
+    hadron?.twoJ == null
+      ? undefined
+      : { twoJ: hadron.twoJ, parity: hadron.parity === -1 ? (-1 as const) : (1 as const) };
+  const [of, a, b] = [spinParity(parent), spinParity(first), spinParity(second)];
+  const L = (wave.twoL ?? Number.NaN) / 2;
+  return of === undefined || a === undefined || b === undefined
+    ? { L }
+    : { L, parent: of, daughters: [a, b] };
+}
+
+function refuseWave(row: v1.Row.$Properties, expected: string, got: string): never {
+  throw new TableError(
+    `${row.id}: expected ${expected}, got ${got}. Read the table with a newer version of Couplet.`,
+  );
+}
