@@ -10,7 +10,6 @@ const { root } = parse(
 );
 const EchoRequest = root.lookupType("EchoRequest");
 const EchoResponse = root.lookupType("EchoResponse");
-const payload = Buffer.alloc(payloadBytes(Number(process.argv[2])), 1);
 
 /** Bytes of payload that make a message of a size: the rest is its tag and its length. */
 export function payloadBytes(messageBytes: number): number {
@@ -30,6 +29,7 @@ function method(path: string, streaming: boolean) {
 }
 
 if (require.main === module) {
+  const payload = Buffer.alloc(payloadBytes(Number(process.argv[2])), 1);
   const server = new Server();
   server.addService(
     { Echo: method("/echo.Echo/Echo", false), EchoStream: method("/echo.Echo/EchoStream", true) },

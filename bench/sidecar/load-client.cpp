@@ -9,6 +9,7 @@
 #include <grpcpp/support/sync_stream.h>
 
 #include <algorithm>
+#include <atomic>
 #include <chrono>
 #include <cstdio>
 #include <deque>
@@ -38,8 +39,10 @@ int main(int argc, char** argv) {
   const auto end = start + std::chrono::duration_cast<Clock::duration>(std::chrono::duration<double>(seconds));
   std::vector<double> latencies;
   std::mutex mutex;
+  std::atomic<long> answers{0};
   auto note = [&](std::vector<double>& own, Clock::time_point began) {
     const auto now = Clock::now();
+    answers++;
     if (began >= start && now <= end) own.push_back(std::chrono::duration<double, std::milli>(now - began).count());
     return now < end;
   };
@@ -83,5 +86,5 @@ int main(int argc, char** argv) {
   }
   std::sort(latencies.begin(), latencies.end());
   auto at = [&](double q) { return latencies.empty() ? 0 : latencies[std::min(latencies.size() - 1, size_t(q * latencies.size()))]; };
-  std::printf("{\"perSecond\": %.1f, \"p50Ms\": %.4f, \"p99Ms\": %.4f}\n", latencies.size() / seconds, at(0.5), at(0.99));
+  std::printf("{\"perSecond\": %.1f, \"p50Ms\": %.4f, \"p99Ms\": %.4f, \"answers\": %ld}\n", latencies.size() / seconds, at(0.5), at(0.99), answers.load());
 }

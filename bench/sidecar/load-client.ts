@@ -13,11 +13,13 @@ const client = new Client(address!, credentials.createInsecure());
 const WARM_UP_SECONDS = 1;
 
 const latencies: number[] = [];
+let answers = 0;
 const start = performance.now() + 1000 * WARM_UP_SECONDS;
 const end = start + 1000 * seconds;
 
 function note(began: number): boolean {
   const now = performance.now();
+  answers++;
   if (began >= start && now <= end) latencies.push(now - began);
   return now < end;
 }
@@ -53,7 +55,7 @@ function finish(): void {
   latencies.sort((a, b) => a - b);
   const at = (q: number) => latencies[Math.min(latencies.length - 1, Math.floor(q * latencies.length))] ?? 0;
   process.stdout.write(
-    `${JSON.stringify({ perSecond: latencies.length / seconds, p50Ms: at(0.5), p99Ms: at(0.99) })}\n`,
+    `${JSON.stringify({ perSecond: latencies.length / seconds, p50Ms: at(0.5), p99Ms: at(0.99), answers })}\n`,
   );
   client.close();
 }

@@ -9,6 +9,7 @@ import { type ChildProcess, execFileSync, spawn } from "node:child_process";
 import { readFileSync } from "node:fs";
 import { join } from "node:path";
 import { parseArgs } from "node:util";
+import { SidecarClient } from "../../src/clients/typescript/couplet-sidecar.js";
 import { couplet } from "../../src/gen/couplet.js";
 import { payloadBytes } from "./echo-server.js";
 
@@ -32,6 +33,10 @@ interface Load {
   readonly perSecond: number;
   readonly p50Ms: number;
   readonly p99Ms: number;
+  /** Of the warm-up too. */
+  readonly answers: number;
+  /** Processor time of the server for one answer. */
+  readonly serverMicroseconds: number;
 }
 
 interface Case {
@@ -84,16 +89,19 @@ function cases(rowCount: number): Case[] {
   ]);
 }
 
-function load(one: Case, port: number, path: string, request: Uint8Array): Load {
+function load(one: Case, server: { port: number; pid: number }, path: string, request: Uint8Array): Load {
   const hex = Buffer.from(request).toString("hex");
-  const args = [`127.0.0.1:${port}`, path, one.mode, String(one.concurrency), String(SECONDS), hex];
+  const args = [`127.0.0.1:${server.port}`, path, one.mode, String(one.concurrency), String(SECONDS), hex];
+  const before = processorSeconds(server.pid);
   const text =
     one.client === "cpp"
       ? execFileSync(values.cpp!, args, { encoding: "utf8" })
       : execFileSync(process.execPath, [tsNode(), "-T", join(__dirname, "load-client.ts"), ...args], {
           encoding: "utf8",
         });
-  return JSON.parse(text) as Load;
+  const result = JSON.parse(text) as Load;
+  const used = processorSeconds(server.pid) - before;
+  return { ...result, serverMicroseconds: (1e6 * used) / result.answers };
 }
 
 function tsNode(): string {
@@ -124,6 +132,12 @@ function echo(replyBytes: number): ChildProcess {
   return spawn(process.execPath, [tsNode(), "-T", join(__dirname, "echo-server.ts"), String(replyBytes)]);
 }
 
+/** User and system time of a process, in the clock's hundredths of a second. */
+function processorSeconds(pid: number): number {
+  const fields = readFileSync(`/proc/${pid}/stat`, "utf8").split(") ")[1]!.split(" ");
+  return (Number(fields[11]) + Number(fields[12])) / 100;
+}
+
 function residentMiB(pid: number): number {
   const line = /^VmRSS:\s+(\d+) kB/m.exec(readFileSync(`/proc/${pid}/status`, "utf8"));
   return Number(line?.[1]) / 1024;
@@ -135,7 +149,7 @@ function spread(values: readonly number[]): string {
   return `${f(sorted[Math.floor(sorted.length / 2)])} (${f(sorted[0])} to ${f(sorted.at(-1))})`;
 }
 
-async function compare(one: Case, port: number): Promise<void> {
+async function compare(one: Case, server: { port: number; pid: number }): Promise<void> {
   const rival = echo(one.responseBytes);
   const rivalPort = await started(rival, /^(\d+)$/m);
   const payload = new Uint8Array(payloadBytes(one.request.length)).fill(1);
@@ -145,16 +159,19 @@ async function compare(one: Case, port: number): Promise<void> {
   ]);
   const rivalPath = one.mode === "stream" ? "/echo.Echo/EchoStream" : "/echo.Echo/Echo";
   const rounds = Array.from({ length: ROUNDS }, () => ({
-    echo: load(one, rivalPort, rivalPath, rivalRequest),
-    ours: load(one, port, `${SERVICE}/${one.method}`, one.request),
+    echo: load(one, { port: rivalPort, pid: rival.pid! }, rivalPath, rivalRequest),
+    ours: load(one, server, `${SERVICE}/${one.method}`, one.request),
   }));
   rival.kill();
   const ratio = spread(rounds.map(({ ours, echo }) => ours.perSecond / echo.perSecond));
   const tail = spread(rounds.map(({ ours, echo }) => ours.p99Ms / echo.p99Ms));
+  const cost = spread(rounds.map(({ ours, echo }) => echo.serverMicroseconds / ours.serverMicroseconds));
+  const time = spread(rounds.map(({ ours }) => ours.serverMicroseconds));
   const rate = spread(rounds.map(({ ours }) => ours.perSecond));
   process.stdout.write(
     `${one.name} (${one.request.length} -> ${one.responseBytes} bytes)\n` +
       `  rate ${ratio} of the echo's, at least ${one.atLeast} wanted; ${rate} a second\n` +
+      `  answers per second of the server's processor time ${cost} of the echo's; ${time} microseconds each\n` +
       `  p99 ${tail} times the echo's, at most 2 wanted\n`,
   );
 }
@@ -165,7 +182,6 @@ function varintHead(length: number): number[] {
 }
 
 async function memory(port: number, pid: number, rowCount: number): Promise<void> {
-  const { SidecarClient } = await import("../../src/clients/typescript/couplet-sidecar.js");
   const client = new SidecarClient(`127.0.0.1:${port}`);
   const stream = client.widthsStream();
   const request = { parent: PARENT, masses: masses(100) };
@@ -188,14 +204,13 @@ async function memory(port: number, pid: number, rowCount: number): Promise<void
 async function main(): Promise<void> {
   const child = sidecar();
   const port = await started(child, /127\.0\.0\.1:(\d+)/);
-  const { SidecarClient } = await import("../../src/clients/typescript/couplet-sidecar.js");
   const client = new SidecarClient(`127.0.0.1:${port}`);
   const rowCount = (await client.decayTable(PARENT.name)).parent.rows.length;
   client.close();
   process.stdout.write(
     `Node ${process.version}; ${ROUNDS} rounds of ${SECONDS} s; ${PARENT.name} with ${rowCount} rows\n`,
   );
-  for (const one of cases(rowCount)) await compare(one, port);
+  for (const one of cases(rowCount)) await compare(one, { port, pid: child.pid! });
   await memory(port, child.pid!, rowCount);
   child.kill("SIGTERM");
 }

@@ -1,43 +1,87 @@
+import { once } from "node:events";
 import { formatRoot } from "../exact/signed-root.js";
+import { refuse } from "../require.js";
 import { type Irrep, irrepDimension, irrepName, isospinMultiplets, parseIrrep } from "../su3/irrep.js";
 import type { IsoscalarTable } from "../su3/isoscalar-factors.js";
 import { isoscalarTable } from "../su3/isoscalar-factors.js";
-import { canonicalJson } from "../tables/canonical-json.js";
 import {
-  encodeFactors,
-  factorsMessage,
+  encodedPieces,
+  factorPieces,
   type StateCoefficient,
   stateCoefficients,
 } from "../tables/encode-factors.js";
-import { writeWhole } from "../tables/whole-file.js";
+import { jsonPieces } from "../tables/json-pieces.js";
+import { sealedPieces } from "../tables/sealed-bytes.js";
+import { writeWholePieces } from "../tables/whole-file.js";
 import { copyName, fractionText, placeName, placeText } from "./labels.js";
+import { announceUnfinished } from "./own-thread.js";
+import { type Progress, type ProgressBar, progressBar } from "./progress.js";
 import { textTable } from "./text-table.js";
 
-/** `couplet factors`: isoscalar factors of a product, for people, as JSON or into a file. */
-export function runFactors(
+/** What `couplet factors` was asked for. */
+export interface FactorsOptions {
+  readonly into?: string;
+  readonly states?: true;
+  readonly json?: true;
+  readonly out?: string;
+}
+
+/** `couplet factors`: isoscalar factors of a product, for people, as JSON or into a file; never held as text. */
+export async function runFactors(
   leftText: string,
   rightText: string,
-  options: { into?: string; states?: true; json?: true; out?: string },
-): void {
+  options: FactorsOptions,
+): Promise<void> {
+  const { json, out } = options;
+  const states = options.states === true;
+  if (out === "") refuse("couplet factors: --out", "the name of a file", out);
+  const bar = progressBar("factors", out !== undefined && !json);
+  try {
+    const table = requestedTable(leftText, rightText, options, bar.report);
+    if (out !== undefined) {
+      const pieces = sealedPieces(counted(encodedPieces(table, { states }), table, bar));
+      const length = writeWholePieces(out, pieces, announceUnfinished);
+      bar.end();
+      if (!json) process.stdout.write(`wrote ${out} (${length} bytes)\n`);
+    }
+    if (json) {
+      await print(counted(jsonPieces("couplet.v1.FactorTable", factorPieces(table, { states })), table, bar));
+    } else if (out === undefined) {
+      bar.end();
+      await print(states ? describeStates(table) : describeFactors(table));
+    }
+  } finally {
+    bar.end();
+  }
+}
+
+function requestedTable(
+  leftText: string,
+  rightText: string,
+  { into }: FactorsOptions,
+  progress: Progress,
+): IsoscalarTable {
   const [left, right] = [parseIrrep(leftText), parseIrrep(rightText)];
-  const table = isoscalarTable(
-    left,
-    right,
-    options.into === undefined ? {} : { into: parseIrrep(options.into) },
-  );
-  const withStates = options.states === true;
-  if (options.out !== undefined) {
-    const bytes = encodeFactors(table, { states: withStates });
-    writeWhole(options.out, bytes);
-    if (!options.json) process.stdout.write(`wrote ${options.out} (${bytes.length} bytes)\n`);
+  return isoscalarTable(left, right, {
+    ...(into === undefined ? {} : { into: parseIrrep(into) }),
+    progress: (done, total) => progress(done, 2 * total),
+  });
+}
+
+/** Pieces of a table, on the second half of the bar as they pass. */
+function* counted<T>(pieces: Iterable<T>, table: IsoscalarTable, { report }: ProgressBar): Generator<T> {
+  const total = Math.ceil(table.count / 2000) + 1;
+  let done = 0;
+  for (const piece of pieces) {
+    yield piece;
+    done++;
+    report(total + Math.min(done, total), 2 * total);
   }
-  if (options.json) {
-    process.stdout.write(
-      `${JSON.stringify(canonicalJson("couplet.v1.FactorTable", factorsMessage(table, { states: withStates })), null, 2)}\n`,
-    );
-  } else if (options.out === undefined) {
-    process.stdout.write(withStates ? describeStates(table) : describeFactors(table));
-  }
+}
+
+/** Writes text piece by piece, as fast as the reader takes it. */
+async function print(pieces: Iterable<string>): Promise<void> {
+  for (const piece of pieces) if (!process.stdout.write(piece)) await once(process.stdout, "drain");
 }
 
 function heading(table: IsoscalarTable): string {
@@ -48,8 +92,10 @@ function heading(table: IsoscalarTable): string {
   return `${product} = ${series.join(" + ")}\nconvention ${table.convention}; copies by ${table.multiplicityRule}; first factor first\n`;
 }
 
-function describeFactors(table: IsoscalarTable): string {
-  const blocks = copies(table).map(({ irrep, copy, multiplicity }) => {
+/** The heading, then one copy after another. */
+function* describeFactors(table: IsoscalarTable): Generator<string> {
+  yield heading(table);
+  for (const { irrep, copy, multiplicity } of copies(table)) {
     const title = `${copyName(irrep, copy, multiplicity)}  (dimension ${irrepDimension(irrep)}, p,q = ${irrep.p},${irrep.q})`;
     const rows = isospinMultiplets(irrep).flatMap((place) => {
       const channels = table.channels(place);
@@ -63,12 +109,11 @@ function describeFactors(table: IsoscalarTable): string {
         ["", "", ...values],
       ];
     });
-    return `\n${title}\n${textTable(rows, { indent: 2 })}`;
-  });
-  return heading(table) + blocks.join("");
+    yield `\n${title}\n${textTable(rows, { indent: 2 })}`;
+  }
 }
 
-function describeStates(table: IsoscalarTable): string {
+function* describeStates(table: IsoscalarTable): Generator<string> {
   const rows = [...stateCoefficients(table)].map((c: StateCoefficient) => {
     const { multiplicity } = table.series.find(
       ({ irrep }) => irrep.p === c.product.irrep.p && irrep.q === c.product.irrep.q,
@@ -83,7 +128,8 @@ function describeStates(table: IsoscalarTable): string {
       formatRoot(c.value),
     ];
   });
-  return `${heading(table)}states are |Y, I, I3>\n\n${textTable([["irrep", "product", "first", "second", "coefficient"], ...rows], { indent: 2 })}`;
+  yield `${heading(table)}states are |Y, I, I3>\n\n`;
+  yield textTable([["irrep", "product", "first", "second", "coefficient"], ...rows], { indent: 2 });
 }
 
 function copies(table: IsoscalarTable): { irrep: Irrep; copy: number; multiplicity: number }[] {

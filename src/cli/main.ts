@@ -3,6 +3,7 @@ import { isMainThread } from "node:worker_threads";
 import { Command, CommanderError } from "commander";
 import { CoupletError } from "../errors.js";
 import { packageVersion } from "../version.js";
+import type { FactorsOptions } from "./factors.js";
 import { needsOwnThread, runInOwnThread } from "./own-thread.js";
 import type { ProductOptions } from "./product.js";
 import type { ServeOptions } from "./serve.js";
@@ -28,6 +29,14 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
     .option("-o, --out <folder>", "where to write", "couplet-demo")
     .action(async (options: { out: string }) => (await import("./demo.js")).runDemo(options));
   root
+    .command("new")
+    .description("write a commented starter study, and a JSON Schema for editors beside it")
+    .argument("<name>", "its name; NAME.yaml and NAME.schema.json must not exist yet")
+    .option("--schema", "only the JSON Schema, in place of an older one")
+    .action(async (name: string, options: { schema?: true }) =>
+      (await import("./new.js")).runNew(name, options),
+    );
+  root
     .command("product")
     .description("decompose a product of any number of irreps")
     .argument("<irreps...>", "two or more irreps, coupled from left to right")
@@ -47,12 +56,8 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
     .option("--states", "full coefficients between states instead")
     .option("--json", "canonical JSON of couplet.v1.FactorTable")
     .option("--out <file>", "write a Protocol Buffers file instead of printing")
-    .action(
-      async (
-        left: string,
-        right: string,
-        options: { into?: string; states?: true; json?: true; out?: string },
-      ) => (await import("./factors.js")).runFactors(left, right, options),
+    .action(async (left: string, right: string, options: FactorsOptions) =>
+      (await import("./factors.js")).runFactors(left, right, options),
     );
   root
     .command("fit")

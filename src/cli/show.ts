@@ -69,7 +69,7 @@ function describeHeader(
 }
 
 const ORIGIN_WORDS = ["?", "measured", "predicted", "remainder"];
-const FLAG_WORDS = ["?", "isospin split", "undecayable", "near threshold", "small amplitude"];
+const FLAG_WORDS = ["?", "isospin split", "undecayable", "near threshold", "small amplitude", "folded"];
 
 /** One parent's table in words: fractions in percent with errors from data and, behind `br.`, from breaking. */
 export function describeParent(parent: v1.Parent): string {
@@ -83,9 +83,11 @@ export function describeParent(parent: v1.Parent): string {
     const percent = (x: number | null | undefined) => 100 * (x ?? 0);
     const statistical = (percent(fraction?.plus) + percent(fraction?.minus)) / 2;
     const closed = row.kinematics === v1.Kinematics.KINEMATICS_CLOSED;
+    const integrated = row.integratedFraction;
     return [
       row.id,
       closed ? "closed" : withError(percent(fraction?.value), statistical),
+      integrated === undefined || integrated === null ? "" : significant(percent(integrated), 3),
       closed || !fraction?.breaking ? "" : `br. ${significant(percent(fraction.breaking), 2)}`,
       significant(row.width?.value ?? 0, 4),
       String(row.partsPerBillion),
@@ -93,10 +95,10 @@ export function describeParent(parent: v1.Parent): string {
       (row.flags ?? []).map((flag) => FLAG_WORDS[flag]).join(", "),
     ];
   });
-  const titles = ["channel", "percent", "", "MeV", "parts per 10^9", "origin", ""];
+  const titles = ["channel", "percent", "over line shape", "", "MeV", "parts per 10^9", "origin", ""];
   return (
     head +
-    textTable([titles, ...rows], { indent: 2, right: [1, 3, 4] }) +
+    textTable([titles, ...rows], { indent: 2, right: [1, 2, 4, 5] }) +
     (parent.warnings ?? []).map((w) => `  WARNING: ${w}\n`).join("")
   );
 }

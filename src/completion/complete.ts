@@ -1,17 +1,13 @@
 import { InputError } from "../errors.js";
-import type { Hadron } from "../hadrons/hadron.js";
+import { DaughterShapes } from "../model/daughter-shapes.js";
 import type { Fit } from "../model/fit-model.js";
-import type { Channel, Model, Observable, Parent, Quantum } from "../model/model.js";
-import { partsPerBillion } from "./parts-per-billion.js";
+import type { Channel, Model, Observable, Quantum } from "../model/model.js";
+import { drawGrid } from "../widths/draw-mass.js";
+import type { LineShape } from "../widths/line-shape.js";
+import { parentTable } from "./parent-table.js";
 import { type Predictions, predict } from "./predictions.js";
-import type { Comparison, Flag, ParentTable, Row, RowWave, Tables } from "./tables.js";
-import { type Completed, completeParent, type Entry } from "./total-width.js";
-
-/** Below this momentum, in MeV, phase space rules the width; common practice, as is one width above threshold. */
-const NEAR_THRESHOLD_MOMENTUM_MEV = 100;
-
-/** Below this part of the coupling strength, breaking may dominate an amplitude. */
-const SMALL_AMPLITUDE = 0.2;
+import type { External, MassShape, ParentTable, Tables } from "./tables.js";
+import { completeParent, type Entry } from "./total-width.js";
 
 /**
  * Complete decay tables of all members and charge states: what is measured stays, the rest is predicted, what is left
@@ -24,6 +20,7 @@ export function complete(fit: Fit, minimum: number): Tables {
   const { model } = fit;
   const predictions = predict(fit, minimum);
   const measured = measuredWidths(model, predictions);
+  const shapes = new DaughterShapes();
   const problems: string[] = [];
   const parents: ParentTable[] = [];
   for (const parent of model.parents) {
@@ -36,10 +33,10 @@ export function complete(fit: Fit, minimum: number): Tables {
       model,
     );
     if ("conflict" in completed) problems.push(`${model.study.file}: ${completed.conflict}`);
-    else parents.push(parentTable(model, predictions, parent, entries, completed));
+    else parents.push(parentTable(predictions, parent, entries, completed, shapes));
   }
   if (problems.length > 0) throw new InputError(problems.join("\n"));
-  return { fit, minimum, parents, externals: externalDaughters(model) };
+  return { fit, minimum, parents, externals: externalDaughters(model, shapes) };
 }
 
 interface MeasuredShare {
@@ -133,139 +130,21 @@ function entryOf(model: Model, predictions: Predictions, index: number, measured
   };
 }
 
-function parentTable(
-  model: Model,
-  predictions: Predictions,
-  parent: Parent,
-  entries: readonly Entry[],
-  completed: Completed,
-): ParentTable {
-  const fractions = completed.estimates.map(({ fraction }) => fraction.value);
-  const remainder = completed.remainder;
-  const all = remainder === undefined ? fractions : [...fractions, remainder.fraction.value];
-  const parts = partsPerBillion(all, residueRow(entries, fractions, remainder !== undefined));
-  const rows = parent.channels.map((index, k): Row => {
-    const channel = model.channels[index]!;
-    const { fraction, widthMeV } = completed.estimates[k]!;
-    const entry = entries[k]!;
-    const comparison =
-      entry.kind === "predicted"
-        ? undefined
-        : comparisonOf(predictions, completed.observables[entry.observable]!);
-    return {
-      id: channel.id,
-      daughters: channel.daughters,
-      partsPerBillion: parts[k]!,
-      fraction,
-      widthMeV,
-      origin: entry.kind === "predicted" ? "predicted" : "measured",
-      flags: flagsOf(channel, entry, predictions.channels[index]!.relativeStrength),
-      sources: entry.kind === "predicted" ? [] : [completed.observables[entry.observable]!.source],
-      ...(comparison === undefined ? {} : { measurement: comparison }),
-      open: channel.momentumMeV > 0,
-      thresholdMeV: channel.thresholdMeV,
-      momentumMeV: channel.momentumMeV,
-      identicalFactor: channel.identicalFactor,
-      waves: wavesOf(channel, predictions.channels[index]!, widthMeV.value),
-    };
-  });
-  if (remainder !== undefined) rows.push(remainderRow(parent, parts.at(-1)!, remainder));
-  return {
-    parent,
-    totalWidthMeV: completed.totalMeV,
-    totalWidthErrorMeV: completed.totalErrorMeV,
-    rows,
-    warnings: warningsOf(parent, completed),
-  };
-}
-
-/** Where the residue of rounding goes: the remainder, else the largest predicted row, else the largest row. */
-function residueRow(entries: readonly Entry[], fractions: readonly number[], hasRemainder: boolean): number {
-  if (hasRemainder) return fractions.length;
-  const largest = (wanted: (entry: Entry) => boolean) =>
-    fractions.reduce(
-      (best, f, k) => (wanted(entries[k]!) && (best < 0 || f > fractions[best]!) ? k : best),
-      -1,
-    );
-  const predicted = largest((entry) => entry.kind === "predicted");
-  return predicted >= 0 && fractions[predicted]! > 0 ? predicted : largest(() => true);
-}
-
-function comparisonOf(predictions: Predictions, observable: Observable): Comparison {
-  const { value, plus, minus, unit } = observable.measured;
-  const pull = predictions.minimum.pulls.find((candidate) => candidate.observable === observable);
-  return {
-    quantity: observable.label,
-    value,
-    plus,
-    minus,
-    unit,
-    ...(pull === undefined ? {} : { fitted: pull.fitted, pull: pull.pull }),
-  };
-}
-
-function flagsOf(channel: Channel, entry: Entry, relativeStrength: number): Flag[] {
-  const flags: Flag[] = [];
-  if (entry.kind !== "predicted" && entry.split) flags.push("isospin-split");
-  const distance = Math.abs(channel.parent.massMeV - channel.thresholdMeV);
-  const slow = channel.momentumMeV > 0 && channel.momentumMeV < NEAR_THRESHOLD_MOMENTUM_MEV;
-  if (slow || distance < (channel.parent.widthMeV ?? 0)) flags.push("near-threshold");
-  if (relativeStrength < SMALL_AMPLITUDE) flags.push("small-amplitude");
-  return flags;
-}
-
-/** Amplitudes whose squares add up to the row's width: the fit's, scaled to a measured width where there is one. */
-function wavesOf(
-  channel: Channel,
-  { amplitudes, widthMeV }: { amplitudes: readonly number[]; widthMeV: number },
-  rowWidthMeV: number,
-): RowWave[] {
-  return channel.waves.map((wave, w): RowWave => {
-    const { L, twoS } = wave;
-    const fitted = amplitudes[w]! * Math.sqrt(channel.identicalFactor * wave.kinematicFactor);
-    const scaled =
-      widthMeV > 0
-        ? fitted * Math.sqrt(rowWidthMeV / widthMeV)
-        : Math.sqrt(rowWidthMeV / channel.waves.length);
-    return { L, twoS, re: scaled, im: 0, model: wave.model, flavourAmplitude: amplitudes[w]! };
-  });
-}
-
-function remainderRow(
-  parent: Parent,
-  parts: number,
-  { fraction, widthMeV }: NonNullable<Completed["remainder"]>,
-): Row {
-  return {
-    id: `${parent.hadron.name} -> (remainder)`,
-    daughters: [],
-    partsPerBillion: parts,
-    fraction,
-    widthMeV,
-    origin: "remainder",
-    flags: ["undecayable"],
-    sources: [],
-    open: true,
-    thresholdMeV: 0,
-    momentumMeV: 0,
-    identicalFactor: 1,
-    waves: [],
-  };
-}
-
-function warningsOf(parent: Parent, { remainder }: Completed): string[] {
-  if (remainder === undefined || remainder.fraction.value <= 0.5) return [];
-  const percent = (100 * remainder.fraction.value).toFixed(1);
-  return [
-    `${parent.hadron.name}: ${percent} % of the width has no channel in this study; do not rely on the fractions as a set.`,
-  ];
-}
-
-function externalDaughters(model: Model): Hadron[] {
+function externalDaughters(model: Model, shapes: DaughterShapes): External[] {
   const parents = new Set(model.parents.map(({ hadron }) => hadron.name));
-  const byName = new Map<string, Hadron>();
-  for (const { daughters } of model.channels) {
-    for (const hadron of daughters) if (!parents.has(hadron.name)) byName.set(hadron.name, hadron);
+  const byName = new Map<string, External>();
+  const legs = model.channels.flatMap(({ waves }) =>
+    waves.flatMap(({ kinematics }) => kinematics.legs.slice(1)),
+  );
+  for (const placed of legs) {
+    const { hadron } = placed;
+    if (parents.has(hadron.name) || byName.has(hadron.name)) continue;
+    const shape = shapes.of(placed, "charge");
+    byName.set(hadron.name, shape === undefined ? { hadron } : { hadron, lineShape: massShape(shape) });
   }
   return [...byName.values()];
+}
+
+function massShape(shape: LineShape): MassShape {
+  return { windowMeV: shape.windowMeV, normalisation: shape.normalisation, draw: drawGrid(shape) };
 }

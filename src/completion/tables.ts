@@ -1,6 +1,8 @@
 import type { Hadron } from "../hadrons/hadron.js";
 import type { Fit } from "../model/fit-model.js";
 import type { Parent, WidthModelChoice } from "../model/model.js";
+import type { DrawGrid } from "../widths/draw-mass.js";
+import type { MassGrid } from "../widths/mass-grid.js";
 
 /** A value whose errors are kept apart; all are standard deviations in the value's unit. */
 export interface Estimate {
@@ -15,7 +17,7 @@ export interface Estimate {
 export type Origin = "measured" | "predicted" | "remainder";
 
 /** What a user of a row must know. */
-export type Flag = "isospin-split" | "undecayable" | "near-threshold" | "small-amplitude";
+export type Flag = "isospin-split" | "folded" | "undecayable" | "near-threshold" | "small-amplitude";
 
 /** A measurement beside the fit's value of the same quantity. */
 export interface Comparison {
@@ -47,16 +49,29 @@ export interface Row {
   readonly daughters: readonly Hadron[];
   readonly partsPerBillion: number;
   readonly fraction: Estimate;
+  /** Fraction integrated over the parent's line shape; absent for a parent that has none. */
+  readonly integratedFraction?: number;
   readonly widthMeV: Estimate;
   readonly origin: Origin;
   readonly flags: readonly Flag[];
   readonly sources: readonly string[];
   readonly measurement?: Comparison;
-  readonly open: boolean;
+  /** Open at nominal masses; open only through the width of a daughter; or closed. */
+  readonly kinematics: "open" | "folded" | "closed";
   readonly thresholdMeV: number;
   readonly momentumMeV: number;
   readonly identicalFactor: number;
   readonly waves: readonly RowWave[];
+  /** Partial width against mass; absent for a remainder, or where it vanishes. */
+  readonly grid?: MassGrid;
+}
+
+/** Distribution of a hadron's mass. */
+export interface MassShape {
+  readonly windowMeV: readonly [number, number];
+  /** N, by which the density is divided. */
+  readonly normalisation: number;
+  readonly draw: DrawGrid;
 }
 
 /** The decay table of one charge state. */
@@ -65,7 +80,15 @@ export interface ParentTable {
   readonly totalWidthMeV: number;
   readonly totalWidthErrorMeV: number;
   readonly rows: readonly Row[];
+  /** Absent for a parent that is narrow or has no open row: it has its nominal mass. */
+  readonly lineShape?: MassShape;
   readonly warnings: readonly string[];
+}
+
+/** A daughter that the tables do not decay; unstable ones with the line shape they were averaged over. */
+export interface External {
+  readonly hadron: Hadron;
+  readonly lineShape?: MassShape;
 }
 
 /** Decay tables of all members and charge states of a study, for one minimum of its fit. */
@@ -75,5 +98,5 @@ export interface Tables {
   readonly minimum: number;
   readonly parents: readonly ParentTable[];
   /** Daughters that are no parents of these tables. */
-  readonly externals: readonly Hadron[];
+  readonly externals: readonly External[];
 }

@@ -67,6 +67,9 @@ class Search {
   private iterations = 0;
   private evaluations = 0;
   private ending: "iteration limit" | "no descent" | undefined;
+  /** Decomposition and verdict at the present point, until it moves. */
+  private linear: LinearModel | undefined;
+  private judged: FitResult | undefined;
   /** Length of the last Newton step over that of the parameters, both scaled. */
   private newtonLength = Number.POSITIVE_INFINITY;
 
@@ -142,8 +145,10 @@ class Search {
    */
   refine(): void {
     if (this.ending !== "iteration limit" && !this.problem.jacobian) this.undampedSteps("two-point");
-    const jacobian = this.jacobianAt(this.point, "extrapolated");
-    if (jacobian.every((row) => row.every(Number.isFinite))) this.jacobian = jacobian;
+    if (!this.problem.jacobian) {
+      const jacobian = this.jacobianAt(this.point, "extrapolated");
+      if (jacobian.every((row) => row.every(Number.isFinite))) this.stand(this.point, jacobian);
+    }
     if (this.ending === "iteration limit") return;
     this.undampedSteps("extrapolated");
   }
@@ -160,6 +165,7 @@ class Search {
    */
   private newtonSteps(): boolean {
     if (this.options.allowedPart) return false;
+    this.judged = undefined;
     for (let round = 0; round < NEWTON_STEPS; round++) {
       const held = this.heldAtBound();
       const curvature = curvatureAt(this.problem, this.point.parameters, held, this.typicalSizes);
@@ -188,8 +194,7 @@ class Search {
       // Chi-square may only rise by what rounding can explain.
       if (!(trial.chi2 <= this.point.chi2 * (1 + 1e-9)) || !this.moveTo(trial, scheme)) return;
       if (offset(this.model(), this.point) >= 0.9 * before.offset) {
-        this.point = before.point;
-        this.jacobian = before.jacobian;
+        this.stand(before.point, before.jacobian);
         return;
       }
     }
@@ -197,6 +202,11 @@ class Search {
 
   /** The result at the point reached, judged with the scales of that point. */
   result(): FitResult {
+    this.judged ??= this.judge();
+    return this.judged;
+  }
+
+  private judge(): FitResult {
     const estimate = fitEstimate(
       this.jacobian,
       this.point.residuals,
@@ -262,8 +272,7 @@ class Search {
   private moveTo(point: Point, scheme: DifferenceScheme): boolean {
     const jacobian = this.jacobianAt(point, scheme);
     if (!jacobian.every((row) => row.every(Number.isFinite))) return false;
-    this.point = point;
-    this.jacobian = jacobian;
+    this.stand(point, jacobian);
     this.newtonLength = Number.POSITIVE_INFINITY;
     columnNorms(jacobian, this.scales.length).forEach((norm, j) => {
       this.scales[j] = Math.max(this.scales[j]!, norm);
@@ -271,7 +280,19 @@ class Search {
     return true;
   }
 
+  private stand(point: Point, jacobian: number[][]): void {
+    this.point = point;
+    this.jacobian = jacobian;
+    this.linear = undefined;
+    this.judged = undefined;
+  }
+
   private model(): LinearModel {
+    this.linear ??= this.decomposed();
+    return this.linear;
+  }
+
+  private decomposed(): LinearModel {
     const held = this.heldAtBound();
     const columns = this.scales.map((_, j) => j).filter((j) => !held.includes(j));
     return linearModel(

@@ -1,4 +1,4 @@
-import { Matrix, SingularValueDecomposition } from "ml-matrix";
+import { singularValues } from "./singular-values.js";
 
 /**
  * The least-squares problem linearised at a point: residuals r + J step, decomposed as J D^-1 = U S V^T.
@@ -11,7 +11,7 @@ export interface LinearModel {
   readonly columns: readonly number[];
   /** D, one scale per entry of `columns`. */
   readonly scales: readonly number[];
-  /** S, descending, without those below 1e-15 of the largest. */
+  /** S, descending, without those below `relativeRank` of the largest. */
   readonly singularValues: readonly number[];
   /** U^T r, one entry per singular value kept. */
   readonly projections: readonly number[];
@@ -33,28 +33,28 @@ export function linearModel(
   scales: readonly number[],
   relativeRank = 1e-15,
 ): LinearModel {
-  if (columns.length === 0) {
-    return { columns, scales, singularValues: [], projections: [], rightVectors: [], nullVectors: [] };
+  const rows = residuals.length;
+  const scaled = new Float64Array(rows * columns.length);
+  for (let i = 0; i < rows; i++) {
+    const row = jacobian[i]!;
+    for (let k = 0; k < columns.length; k++) scaled[k * rows + i] = row[columns[k]!]! / scales[k]!;
   }
-  // Rows of zeros complete a matrix with fewer rows than columns, so that V is square and shows the null space.
-  const rows = Math.max(residuals.length, columns.length);
-  const scaled = new Matrix(rows, columns.length);
-  for (let i = 0; i < residuals.length; i++) {
-    for (let k = 0; k < columns.length; k++) scaled.set(i, k, jacobian[i]![columns[k]!]! / scales[k]!);
-  }
-  const svd = new SingularValueDecomposition(scaled);
-  const all = svd.diagonal;
-  const kept = all.map((_, k) => k).filter((k) => all[k]! > relativeRank * all[0]! && all[k]! > 0);
-  const lost = all.map((_, k) => k).filter((k) => !kept.includes(k));
-  const u = svd.leftSingularVectors;
-  const v = svd.rightSingularVectors;
+  const { values, scaledLeft, right } = singularValues(scaled, rows);
+  const isKept = (value: number) => value > relativeRank * values[0]! && value > 0;
+  const rank = values.filter(isKept).length;
+  const projection = (k: number) => {
+    const vector = scaledLeft[k]!;
+    let sum = 0;
+    for (let i = 0; i < rows; i++) sum += residuals[i]! * vector[i]!;
+    return sum / values[k]!;
+  };
   return {
     columns,
     scales,
-    singularValues: kept.map((k) => all[k]!),
-    projections: kept.map((k) => residuals.reduce((sum, r, i) => sum + r * u.get(i, k), 0)),
-    rightVectors: columns.map((_, c) => kept.map((k) => v.get(c, k))),
-    nullVectors: lost.map((k) => columns.map((_, c) => v.get(c, k))),
+    singularValues: values.slice(0, rank),
+    projections: values.slice(0, rank).map((_, k) => projection(k)),
+    rightVectors: columns.map((_, row) => right.slice(0, rank).map((vector) => vector[row]!)),
+    nullVectors: right.slice(rank).map((vector) => [...vector]),
   };
 }
 

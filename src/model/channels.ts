@@ -4,16 +4,12 @@ import { InputError } from "../errors.js";
 import { rootToNumber } from "../exact/signed-root.js";
 import { clebschGordan } from "../su2/clebsch-gordan.js";
 import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
-import {
-  channelThresholdMeV,
-  type Daughter,
-  foldedFactor,
-  type TwoBodyChannel,
-} from "../widths/folded-width.js";
+import { channelThresholdMeV, foldedFactor } from "../widths/folded-width.js";
 import { identicalFactor } from "../widths/partial-width.js";
-import { widthModel } from "../widths/width-model.js";
+import type { SpinParity } from "../widths/width-model-definition.js";
 import { channelName } from "./channel-names.js";
 import { DaughterShapes } from "./daughter-shapes.js";
+import { isFolded, massOf, twoBodyChannel, type WaveKinematics } from "./kinematics.js";
 import { logarithmicSlope, type MassParameters } from "./masses.js";
 import type { Channel, Component, Decay, Wave } from "./model.js";
 import { type Placed, placedIn } from "./placed.js";
@@ -112,8 +108,8 @@ function addComponent(
   const key = `${L}/${twoS}`;
   const known = channel.waves.get(key);
   if (known === undefined) {
-    const kinematics = kinematicsOf(channel.vertex, decay, massParameters, shapes);
-    channel.waves.set(key, { wave: { L, twoS, model, ...kinematics }, masses, components: [component] });
+    const factors = factorsOf(channel.vertex, decay, massParameters, shapes);
+    channel.waves.set(key, { wave: { L, twoS, model, ...factors }, masses, components: [component] });
     return;
   }
   if (known.masses !== masses || JSON.stringify(known.wave.model) !== JSON.stringify(model)) {
@@ -126,34 +122,37 @@ function addComponent(
 }
 
 /** K at nominal masses, averaged over the line shapes of unstable daughters unless the study wants them nominal. */
-function kinematicsOf(
+function factorsOf(
   { parent, first, second }: Vertex,
   decay: Decay,
   massParameters: MassParameters,
   shapes: DaughterShapes,
-): Pick<Wave, "kinematicFactor" | "massSlopes" | "folded"> {
-  const mass = ({ hadron, averageMassMeV }: Placed) =>
-    decay.masses === "charge" ? hadron.massMeV : averageMassMeV;
-  const daughter = (placed: Placed): Daughter =>
-    (decay.daughters === "folded" ? shapes.of(placed, decay.masses) : undefined) ?? mass(placed);
-  const channel: TwoBodyChannel = {
-    model: widthModel(decay.model.id, decay.model.options),
-    vertex: { L: decay.L, parent: decay.from, daughters: decay.to },
-    daughters: [daughter(first), daughter(second)],
+): Pick<Wave, "kinematics" | "kinematicFactor" | "massSlopes" | "folded"> {
+  const { L, model, masses, daughters, from, to } = decay;
+  const spin = ({ twoJ, parity }: SpinParity) => ({ twoJ, parity });
+  const kinematics: WaveKinematics = {
+    L,
+    model,
+    masses,
+    daughters,
+    legs: [parent, first, second],
+    spins: [spin(from), spin(to[0]), spin(to[1])],
   };
-  const folded = channel.daughters.some((d) => typeof d !== "number");
+  const channel = twoBodyChannel(kinematics, shapes);
+  const parentMeV = massOf(parent, masses);
   const factor = (massMeV: number) => foldedFactor(channel, massMeV).value;
-  const kinematicFactor = factor(mass(parent));
+  const kinematicFactor = factor(parentMeV);
   const parameter = massParameters.get(parent.member);
-  if (parameter === undefined || kinematicFactor === 0) return { kinematicFactor, massSlopes: [], folded };
-  const slope = logarithmicSlope(factor, mass(parent), channelThresholdMeV(channel));
-  return { kinematicFactor, massSlopes: [{ parameter, slope }], folded };
+  const fixed = { kinematics, kinematicFactor, massSlopes: [], folded: isFolded(channel) };
+  if (parameter === undefined || kinematicFactor === 0) return fixed;
+  const slope = logarithmicSlope(factor, parentMeV, channelThresholdMeV(channel));
+  return { ...fixed, massSlopes: [{ parameter, slope }] };
 }
 
 function finishedChannel({ vertex, waves }: Growing): Channel {
   const { parent, first, second, coefficient } = vertex;
   const average = [...waves.values()].every(({ masses }) => masses === "average");
-  const mass = ({ hadron, averageMassMeV }: Placed) => (average ? averageMassMeV : hadron.massMeV);
+  const mass = (placed: Placed) => massOf(placed, average ? "average" : "charge");
   return {
     id: channelName(parent.hadron.name, [first.hadron.name, second.hadron.name]),
     parent: parent.hadron,

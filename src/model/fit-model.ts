@@ -7,7 +7,7 @@ import { distinctPhysics } from "./distinct-physics.js";
 import { decayHasFAndD, Evaluation, type Evaluator, evaluator } from "./evaluate.js";
 import { signProblem } from "./linear-forms.js";
 import type { Model, Observable, Parameter } from "./model.js";
-import { comparisons, priorResidual, reactionSigns } from "./residuals.js";
+import { comparisons, type GradedResidual, priorResidual, reactionSigns } from "./residuals.js";
 
 /** A parameter after the fit, or a number computed from fitted ones. */
 export interface FittedParameter {
@@ -143,10 +143,17 @@ export function minimaProblem(
   const constrained = model.parameters
     .map((parameter, index) => ({ parameter, index }))
     .filter(({ parameter }) => parameter.prior !== undefined);
-  const terms = (parameters: readonly number[]) => [
+  const computed = (parameters: readonly number[]): readonly GradedResidual[] => [
     ...comparisons(new Evaluation(ready, parameters), fitted),
     ...constrained.map(({ parameter, index }) => priorResidual(parameter, index, parameters)),
   ];
+  // A fit asks for residuals and for their derivatives at one point after the other: both come from one evaluation.
+  let last: { at: readonly number[]; terms: readonly GradedResidual[] } | undefined;
+  const terms = (parameters: readonly number[]): readonly GradedResidual[] => {
+    if (last === undefined || !last.at.every((value, k) => value === parameters[k]))
+      last = { at: [...parameters], terms: computed(parameters) };
+    return last.terms;
+  };
   const start = [...new Array<number>(model.couplingCount).fill(0), ...nuisance];
   return {
     parameterNames: model.parameters.map((parameter) => parameter.name),

@@ -4,6 +4,7 @@ import type { SourcePosition } from "../errors.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import type { Multiplet } from "../hadrons/multiplet.js";
 import type { Quantity, Study } from "../study/study.js";
+import type { WaveKinematics } from "./kinematics.js";
 
 /**
  * A number the fit may vary. Couplings come first; every other kind is a nuisance parameter held by its prior, or a
@@ -88,6 +89,7 @@ export interface Wave {
   readonly twoS: number;
   readonly model: WidthModelChoice;
   readonly components: readonly Component[];
+  readonly kinematics: WaveKinematics;
   /** K of the width model at nominal masses: partial width = identicalFactor |A|^2 K. In MeV over the square of the coupling's unit. */
   readonly kinematicFactor: number;
   /** Whether K is averaged over the line shape of an unstable daughter. */

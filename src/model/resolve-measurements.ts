@@ -63,7 +63,7 @@ function quantumOf(
   context: Context,
   problems: Problems,
 ): Quantum | undefined {
-  const { kind, channels, use } = measurement;
+  const { kind, channels, value, use } = measurement;
   const fitted = use !== "table";
   if (kind === "axial") {
     const row = problems.attempt(`${path}/axial`, () => axialRow(channels[0]!, context.decays));
@@ -76,6 +76,9 @@ function quantumOf(
   const paths = channels.length === 2 ? [`${path}/${kind}/0`, `${path}/${kind}/1`] : [`${path}/${kind}`];
   const [of, other] = channels.map((text, k) => widthSumOf(text, paths[k]!, context, problems));
   if (of === undefined) return undefined;
+  const sums = other === undefined ? [of] : [of, other];
+  if (!sums.every((sum, k) => value.value === 0 || requireOpen(sum, paths[k]!, context, problems)))
+    return undefined;
   if (kind === "width") return { kind, of };
   if (kind === "fraction") return { kind, of, total: totalWidthOf(of, fitted, context) };
   if (other === undefined) return undefined;
@@ -100,6 +103,20 @@ function quantumOf(
     sign,
     ...(measurement.sign === "free" ? { reaction: reactionOf(pair, context) } : {}),
   };
+}
+
+/** A measured value other than 0 needs a channel that is open; notes at `path` one that is closed in every charge state. */
+function requireOpen(sum: WidthSum, path: string, { channels }: Known, problems: Problems): boolean {
+  const named = sum.map(({ channel }) => channels[channel]!);
+  if (named.some(({ waves }) => waves.some(({ kinematicFactor }) => kinematicFactor > 0))) return true;
+  const { id, thresholdMeV, parent } = named.reduce((a, b) =>
+    a.parent.massMeV - a.thresholdMeV > b.parent.massMeV - b.thresholdMeV ? a : b,
+  );
+  problems.add(
+    path,
+    `expected a channel that is open, got ${id} with its threshold at ${thresholdMeV.toFixed(1)} MeV above the parent's ${parent.massMeV} MeV. Check the masses, or take the measurement out.`,
+  );
+  return false;
 }
 
 function padded(row: readonly number[], length: number): number[] {

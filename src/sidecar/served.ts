@@ -1,9 +1,7 @@
 import { InputError, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { nearestNames } from "../hadrons/nearest-names.js";
-import { requireIdentity } from "../require.js";
-import { closedFormEvaluator } from "./closed-form-evaluator.js";
-import type { ParentEvaluator } from "./parent-evaluator.js";
+import { type RowsEvaluator, rowsEvaluator, tableHadrons } from "../tables/evaluate-rows.js";
 
 import v1 = couplet.v1;
 
@@ -28,7 +26,12 @@ export interface ServedParent {
   readonly name: string;
   readonly message: v1.Parent;
   readonly daughters: readonly v1.Hadron.$Properties[];
-  readonly evaluator: ParentEvaluator;
+  /**
+   * Widths of the rows at any mass, made ready at the first call.
+   *
+   * @throws TableError if the table has a row that this version cannot evaluate; the other calls serve it all the same
+   */
+  readonly evaluator: () => RowsEvaluator;
   /** Sums of parts per 10^9 up to and with each row. */
   readonly cumulativeParts: Float64Array;
 }
@@ -135,21 +138,20 @@ function append<K>(map: Map<K, ServedParent[]>, key: K, parent: ServedParent): v
 }
 
 function parentsOf(table: ServedDecays): ServedParent[] {
-  const { parents, externals } = table.message;
-  const hadrons = new Map(
-    [...externals, ...parents.map(({ hadron }) => hadron)].map((hadron) => [hadron.name ?? "", hadron]),
-  );
-  return parents.map((message) => {
-    const evaluator = closedFormEvaluator(message, hadrons);
-    requireIdentity("served parent", evaluator.rowCount === message.rows.length, () => "rows do not match");
+  const hadrons = tableHadrons(table.message);
+  return table.message.parents.map((message) => {
     const names = new Set(message.rows.flatMap((row) => (row.daughters ?? []).map(({ name }) => name ?? "")));
+    let evaluator: RowsEvaluator | undefined;
     let sum = 0;
     return {
       table,
       name: message.hadron.name ?? "",
       message,
       daughters: [...names].flatMap((name) => hadrons.get(name) ?? []),
-      evaluator,
+      evaluator: () => {
+        evaluator ??= rowsEvaluator(message, hadrons);
+        return evaluator;
+      },
       cumulativeParts: Float64Array.from(message.rows, (row) => {
         sum += row.partsPerBillion ?? 0;
         return sum;

@@ -72,7 +72,11 @@ const spin = z
   .transform((text) => (String(text).endsWith("/2") ? Number.parseInt(String(text), 10) : 2 * Number(text)));
 
 const chargeState = z
-  .strictObject({ mass: mass.optional(), width: width.optional(), mcNumber: z.int().optional() })
+  .strictObject({
+    mass: mass.optional(),
+    width: width.optional(),
+    mcNumber: z.int().optional().describe("Monte Carlo number, where the catalogue has none or another"),
+  })
   .describe("What one charge state has of its own");
 
 const member = mapping({
@@ -86,7 +90,10 @@ const member = mapping({
     .union([z.literal("sum"), width], { error: "expected a total width > 0 with its unit, or `sum`" })
     .optional()
     .describe("Total width, or `sum` for the sum of the rows. Default: of the catalogue, by name"),
-  chargeStates: z.record(z.string(), chargeState).optional(),
+  chargeStates: z
+    .record(z.string(), chargeState)
+    .optional()
+    .describe("What single charge states have of their own, by name, e.g. `N(1675)+`"),
 });
 
 const multiplet = mapping({
@@ -96,7 +103,7 @@ const multiplet = mapping({
     .describe("e.g. 8, 10, 10bar, 27 or `2,1`"),
   spinParity,
   baryonNumber: z.int().optional().describe("Default: 1 for half-integer spin, 0 for integer spin"),
-  members: z.array(member).default([]),
+  members: z.array(member).default([]).describe("Isospin multiplets; those not listed are not in the table"),
 });
 
 const option = z
@@ -114,7 +121,7 @@ const model = z
     [
       z.string().transform((id) => ({ id, options: {} as Record<string, number | Quantity> })),
       z
-        .object({ id: z.string() })
+        .object({ id: z.string().describe("Name of the width model") })
         .catchall(option)
         .transform(({ id, ...options }) => ({ id, options })),
     ],
@@ -179,13 +186,22 @@ const signedFraction = (q: Quantity) =>
   Math.abs(q.value) <= 1 ? undefined : "expected a number from -1 to 1";
 const onlyFit = z.literal("fit").default("fit").describe("Such a value settles no row by itself");
 const normalisation = z.string().optional().describe("Name of a common normalisation");
-const pair = z.tuple([z.string(), z.string()]);
+const channel = z
+  .string()
+  .describe("A channel such as `N(1675) -> N pi`; isospin multiplets stand for all their charge states");
+const pair = z.tuple([channel, channel]);
 
 const measurement = z.union(
   [
-    mapping({ width: z.string(), value: quantity("MeV", nonNegative), normalisation, source, use }),
-    mapping({ fraction: z.string(), value: quantity("1", fraction), normalisation, source, use }),
-    mapping({ ratio: pair, value: quantity("1", nonNegative), normalisation, source, use: onlyFit }),
+    mapping({ width: channel, value: quantity("MeV", nonNegative), normalisation, source, use }),
+    mapping({ fraction: channel, value: quantity("1", fraction), normalisation, source, use }),
+    mapping({
+      ratio: pair.describe("Two channels; the value is the first width over the second"),
+      value: quantity("1", nonNegative),
+      normalisation,
+      source,
+      use: onlyFit,
+    }),
     mapping({
       product: pair.describe("Two channels of one parent; the value is the product of their fractions"),
       value: quantity("1", fraction),
@@ -238,31 +254,67 @@ const relativeError = quantity("1", (q) =>
 /** The form of a study file; from this one description come the checks and their messages. */
 export const studySchema = mapping({
   couplet: z.literal(1).describe("Version of the study format"),
-  title: z.string().min(1),
-  multiplets: z.record(z.string(), multiplet).default({}),
-  mixing: z.array(mixing).default([]),
-  decays: z.array(decay).min(1),
+  title: z.string().min(1).describe("What the study is about: it goes into the table"),
+  multiplets: z
+    .record(z.string(), multiplet)
+    .default({})
+    .describe("Multiplets that the catalogue has not, by an id of your choice"),
+  mixing: z.array(mixing).default([]).describe("Physical states that are superpositions of bare ones"),
+  decays: z
+    .array(decay)
+    .min(1)
+    .describe("Decays between multiplets; all channels of one share its couplings"),
   quarkLine: z
     .array(z.array(z.string()).min(1))
     .default([])
     .describe("Families of decays, by name, whose couplings the quark-line rule ties together"),
-  measurements: z.array(measurement).min(1),
+  measurements: z
+    .array(measurement)
+    .min(1)
+    .describe("What has been measured: it fixes the couplings and stays as it is in the table"),
   normalisations: z
     .record(z.string(), relativeError)
     .default({})
     .describe("Relative errors that several measurements share, by name"),
   priors: z
-    .array(mapping({ parameter: z.string(), value: z.union([quantity("1"), quantity("rad")]), source }))
+    .array(
+      mapping({
+        parameter: z.string().describe("Its name, as `couplet fit` prints it"),
+        value: z.union([quantity("1"), quantity("rad")]),
+        source,
+      }),
+    )
     .default([])
     .describe("What is known beforehand of a coupling, an angle, F, D, F/D, alpha_F or alpha_D"),
   fit: z
     .strictObject({
-      mirrors: z.enum(["refuse", "best", "each"]).default("refuse"),
-      theoryError: z.number().min(0).max(1).default(0),
-      masses: z.enum(["fixed", "vary"]).default("vary"),
+      mirrors: z
+        .enum(["refuse", "best", "each"])
+        .default("refuse")
+        .describe("Where the data allow several solutions: refuse, take the best, or write one file each"),
+      theoryError: z
+        .number()
+        .min(0)
+        .max(1)
+        .default(0)
+        .describe("Breaking of the symmetry in amplitude that enters the fit; 0 leaves it out"),
+      masses: z
+        .enum(["fixed", "vary"])
+        .default("vary")
+        .describe("Whether the parents' masses move within their errors"),
     })
-    .prefault({}),
-  tables: mapping({ breaking: z.number().min(0).max(1).default(0.2) }).prefault({}),
+    .prefault({})
+    .describe("How the fit is made"),
+  tables: mapping({
+    breaking: z
+      .number()
+      .min(0)
+      .max(1)
+      .default(0.2)
+      .describe("Breaking of the symmetry in amplitude, for the errors of predicted rows"),
+  })
+    .prefault({})
+    .describe("How the tables are made"),
 });
 
 /** A study that passed the form check, still in the file's own layout. */

@@ -1,6 +1,6 @@
 import { TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
-import { MULTIPLICITY_RULE } from "../su3/engine/copies.js";
+import { MULTIPLICITY_RULE } from "../su3/isoscalar-factors.js";
 import { requireKnownHeader } from "./check-header.js";
 import { FACTORS_SCHEMA_MINOR } from "./encode-factors.js";
 import { openSealed } from "./sealed-bytes.js";

@@ -2,6 +2,7 @@ import type {
   Comparison,
   Estimate,
   Flag,
+  MassShape,
   Origin,
   ParentTable,
   Row,
@@ -12,9 +13,9 @@ import { couplet } from "../gen/couplet.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
 import type { Model, WidthModelChoice } from "../model/model.js";
-import { MULTIPLICITY_RULE } from "../su3/engine/copies.js";
-import { CONVENTION } from "../su3/isoscalar-factors.js";
+import { CONVENTION, MULTIPLICITY_RULE } from "../su3/isoscalar-factors.js";
 import { producerName } from "../version.js";
+import type { MassGrid } from "../widths/mass-grid.js";
 import { widthModelDefinitions } from "../widths/width-model.js";
 import { CAUTIONS } from "./cautions.js";
 import { sealBytes } from "./sealed-bytes.js";
@@ -39,7 +40,7 @@ export function decaysMessage(tables: Tables): v1.DecayTables.$Properties {
     header: headerMessage(model),
     fit: fitMessage(tables.fit, tables.minimum),
     parents: tables.parents.map(parentMessage),
-    externals: tables.externals.map(hadronMessage),
+    externals: tables.externals.map(({ hadron, lineShape }) => hadronMessage(hadron, lineShape)),
   };
 }
 
@@ -103,7 +104,7 @@ function minimumMessage(minimum: StudyMinimum): v1.Minimum.$Properties {
 function parentMessage(table: ParentTable): v1.Parent.$Properties {
   const { hadron, multiplet, total } = table.parent;
   return {
-    hadron: hadronMessage(hadron),
+    hadron: hadronMessage(hadron, table.lineShape),
     multiplet,
     totalWidth: table.totalWidthMeV,
     totalWidthError: table.totalWidthErrorMeV,
@@ -114,7 +115,7 @@ function parentMessage(table: ParentTable): v1.Parent.$Properties {
   };
 }
 
-function hadronMessage(hadron: Hadron): v1.Hadron.$Properties {
+function hadronMessage(hadron: Hadron, lineShape: MassShape | undefined): v1.Hadron.$Properties {
   const mean = (error: { plus: number; minus: number } | null) =>
     error === null ? null : (error.plus + error.minus) / 2;
   return {
@@ -137,6 +138,22 @@ function hadronMessage(hadron: Hadron): v1.Hadron.$Properties {
       weight,
     })),
     notes: [...hadron.notes],
+    ...(lineShape === undefined ? {} : { lineShape: lineShapeMessage(lineShape) }),
+  };
+}
+
+function lineShapeMessage({ windowMeV, normalisation, draw }: MassShape): v1.LineShape.$Properties {
+  const [low, high] = windowMeV;
+  const { distancesMeV, cumulative, power } = draw;
+  return { low, high, normalisation, distances: [...distancesMeV], cumulative: [...cumulative], power };
+}
+
+function gridMessage({ thresholdMeV, distancesMeV, logWidths, slopes }: MassGrid): v1.MassGrid.$Properties {
+  return {
+    threshold: thresholdMeV,
+    distances: [...distancesMeV],
+    logWidths: [...logWidths],
+    slopes: [...slopes],
   };
 }
 
@@ -146,9 +163,16 @@ const ORIGINS: Readonly<Record<Origin, v1.Origin>> = {
   remainder: v1.Origin.ORIGIN_REMAINDER,
 };
 
+const KINEMATICS: Readonly<Record<Row["kinematics"], v1.Kinematics>> = {
+  open: v1.Kinematics.KINEMATICS_OPEN,
+  folded: v1.Kinematics.KINEMATICS_FOLDED,
+  closed: v1.Kinematics.KINEMATICS_CLOSED,
+};
+
 const FLAGS: Readonly<Record<Flag, v1.Flag>> = {
   "isospin-split": v1.Flag.FLAG_ISOSPIN_SPLIT,
   undecayable: v1.Flag.FLAG_UNDECAYABLE,
+  folded: v1.Flag.FLAG_FOLDED,
   "near-threshold": v1.Flag.FLAG_NEAR_THRESHOLD,
   "small-amplitude": v1.Flag.FLAG_SMALL_AMPLITUDE,
 };
@@ -164,11 +188,13 @@ function rowMessage(row: Row): v1.Row.$Properties {
     flags: row.flags.map((flag) => FLAGS[flag]),
     sources: [...row.sources],
     ...(row.measurement === undefined ? {} : { measurement: comparisonMessage(row.measurement) }),
-    kinematics: row.open ? v1.Kinematics.KINEMATICS_OPEN : v1.Kinematics.KINEMATICS_CLOSED,
+    kinematics: KINEMATICS[row.kinematics],
     threshold: row.thresholdMeV,
     momentum: row.momentumMeV,
     identicalFactor: row.identicalFactor,
     waves: row.waves.map(waveMessage),
+    integratedFraction: row.integratedFraction ?? null,
+    ...(row.grid === undefined ? {} : { grid: gridMessage(row.grid) }),
   };
 }
 

@@ -36,7 +36,8 @@ export function tableHadrons(tables: v1.DecayTables): HadronsByName {
  * identicalFactor flavourAmplitude^2 K(m). So at m0 it is the row's width, measured or predicted, and a measured row
  * takes its shape from the model. A row without waves, such as a remainder, is constant above its threshold. The
  * readers in C++ and Python compute the same.
- * @throws TableError for a model, an option or a vertex this version does not know, or a hadron that is missing
+ * @throws TableError for a model, an option or a vertex this version does not know, a hadron that is missing, or a row
+ * that has a width at m0 only through the widths of its daughters
  */
 export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByName): RowsEvaluator {
   const rows = (parent.rows ?? []).map((row) => rowWidth(parent, row, hadrons));
@@ -118,11 +119,13 @@ function daughterOf(
 
 /** What K is multiplied with to give the width in MeV. */
 function scaleOf(row: v1.Row.$Properties, wave: v1.Wave.$Properties, nominalFactor: number): number {
+  const width = (wave.re ?? Number.NaN) ** 2 + (wave.im ?? Number.NaN) ** 2;
+  if (nominalFactor === 0 && width > 0) {
+    refuseWave(row, "a width of 0 where the nominal masses forbid the decay", `${width} MeV`);
+  }
   const amplitude = wave.flavourAmplitude ?? Number.NaN;
   const scale =
-    nominalFactor > 0
-      ? ((wave.re ?? Number.NaN) ** 2 + (wave.im ?? Number.NaN) ** 2) / nominalFactor
-      : (row.identicalFactor ?? Number.NaN) * amplitude ** 2;
+    nominalFactor > 0 ? width / nominalFactor : (row.identicalFactor ?? Number.NaN) * amplitude ** 2;
   if (Number.isFinite(scale) && Number.isFinite(nominalFactor)) return scale;
   throw new TableError(`${row.id}: expected finite amplitudes, got others`);
 }

@@ -9,6 +9,7 @@
 // row's width exactly, measured or predicted; a measured row keeps its measured value and takes its shape from the
 // model. For a predicted row both lines are the same number. Below the sum of the daughters' masses it is 0.
 // A row without waves, such as a remainder, has a constant width above its threshold: nothing is known of its shape.
+// A row that is closed at the nominal masses and has a width all the same (through the widths of its daughters) is refused.
 #ifndef COUPLET_WIDTHS_HPP
 #define COUPLET_WIDTHS_HPP
 
@@ -46,7 +47,7 @@ struct TwoBody {
   double parent, first, second, momentum;
 };
 
-// K of one wave of one row; sources of the closed forms: README of Couplet, "Width models".
+// K of one wave of one row; the closed forms and their sources are the ones of src/widths/ in Couplet.
 using WidthModel = std::function<double(const TwoBody&)>;
 
 // What a model may know of a decay besides its masses: twice the spins of parent and daughters.
@@ -57,8 +58,8 @@ struct Vertex {
 
 inline double power(double base, unsigned exponent) { return std::pow(base, static_cast<double>(exponent)); }
 
-[[noreturn]] inline void refuse_wave(const Vertex& vertex, const std::string& expected, const std::string& got) {
-  throw Damaged(vertex.row + ": expected " + expected + ", got " + got + ". Read the table with a newer reader.");
+[[noreturn]] inline void refuse_wave(const std::string& row, const std::string& expected, const std::string& got) {
+  throw Damaged(row + ": expected " + expected + ", got " + got + ". Read the table with a newer reader.");
 }
 
 // The values of a model's options in the order asked for; refuses others, missing ones and other units, since a model
@@ -76,7 +77,7 @@ inline std::vector<double> option_values(const Wave& wave, const Vertex& vertex,
     }
   }
   if (values.size() != wanted.size() || wave.options.size() != wanted.size()) {
-    refuse_wave(vertex, "width model " + wave.model + " with the options [" + expected + "]", "[" + got + "]");
+    refuse_wave(vertex.row, "width model " + wave.model + " with the options [" + expected + "]", "[" + got + "]");
   }
   return values;
 }
@@ -122,7 +123,7 @@ inline WidthModel effective_baryon(unsigned l, double scale, const Vertex& verte
   const unsigned n = vertex.parent.value_or(0) / 2;
   const bool spins = vertex.parent.value_or(0) % 2 == 1 && vertex.first == 1u && vertex.second == 0u;
   if (!spins || (l != n && l != n + 1)) {
-    refuse_wave(vertex, "spin n + 1/2 into 1/2 and 0 with L = n or n + 1 for width model d", "another vertex");
+    refuse_wave(vertex.row, "spin n + 1/2 into 1/2 and 0 with L = n or n + 1 for width model d", "another vertex");
   }
   double prefactor = 1 / (4 * PI);
   for (unsigned k = 1; k <= n; ++k) prefactor *= k / (2.0 * k + 1);
@@ -164,13 +165,13 @@ inline WidthModel effective_meson(unsigned l, const Vertex& vertex) {
   }
   // Spinless to two vectors or photons, antisymmetric tensor.
   if (is(0, 2, 2, 1)) return [=](const TwoBody& of) { return cube(of.momentum) / (4 * PI); };
-  refuse_wave(vertex, "spins and L that width model e has a coupling for", "others");
+  refuse_wave(vertex.row, "spins and L that width model e has a coupling for", "others");
 }
 
 // K of a wave; refuses models, options and vertices this reader does not know.
 inline WidthModel width_model(const Wave& wave, const Vertex& vertex) {
   if (wave.two_l % 2 != 0 || wave.two_l > 2 * LARGEST_L) {
-    refuse_wave(vertex, "an even 2L up to " + std::to_string(2 * LARGEST_L), std::to_string(wave.two_l));
+    refuse_wave(vertex.row, "an even 2L up to " + std::to_string(2 * LARGEST_L), std::to_string(wave.two_l));
   }
   const unsigned l = wave.two_l / 2;
   if (wave.model == "a") {
@@ -187,7 +188,7 @@ inline WidthModel width_model(const Wave& wave, const Vertex& vertex) {
   }
   if (wave.model == "d") return effective_baryon(l, option_values(wave, vertex, {{"scaleMeV", "MeV"}})[0], vertex);
   if (wave.model == "e") return option_values(wave, vertex, {}), effective_meson(l, vertex);
-  refuse_wave(vertex, "a width model among a, b, c, d, e", '"' + wave.model + '"');
+  refuse_wave(vertex.row, "a width model among a, b, c, d, e", '"' + wave.model + '"');
 }
 
 // One row made ready for many masses.
@@ -236,9 +237,15 @@ inline ReadyRow ready_row(const Tables& tables, const Parent& parent, const Row&
   for (const Wave& wave : row.waves) {
     WidthModel k = width_model(wave, {row.id, parent.hadron.two_j, first.two_j, second.two_j});
     const double open = momentum > 0 ? k({nominal, first.mass, second.mass, momentum}) : 0;
-    const double scale = open > 0 ? (wave.re * wave.re + wave.im * wave.im) / open
-                                  : row.identical_factor * wave.flavour_amplitude * wave.flavour_amplitude;
-    if (!std::isfinite(scale)) throw Damaged(row.id + ": expected finite amplitudes, got others");
+    const double width = wave.re * wave.re + wave.im * wave.im;
+    if (open == 0 && width > 0) {
+      char got[32];
+      std::snprintf(got, sizeof got, "%g MeV", width);
+      refuse_wave(row.id, "a width of 0 where the nominal masses forbid the decay", got);
+    }
+    const double scale =
+        open > 0 ? width / open : row.identical_factor * wave.flavour_amplitude * wave.flavour_amplitude;
+    if (!std::isfinite(scale) || !std::isfinite(open)) throw Damaged(row.id + ": expected finite amplitudes, got others");
     ready.waves.emplace_back(scale, std::move(k));
   }
   return ready;

@@ -8,7 +8,8 @@ The partial width of a row at the parent's mass m is the sum over its waves of
 with K the closed form of the wave's width model at the masses of the daughters in the table. So at m0 it is the row's
 width, measured or predicted; a measured row keeps its measured value and takes its shape from the model. For a
 predicted row both lines are the same number. Below the sum of the daughters' masses it is 0. A row without waves, such
-as a remainder, has a constant width above its threshold: nothing is known of its shape. All masses are in MeV.
+as a remainder, has a constant width above its threshold: nothing is known of its shape. A row that is closed at the
+nominal masses and has a width all the same (through the widths of its daughters) is refused. All masses are in MeV.
 """
 
 import math
@@ -127,26 +128,26 @@ def effective_meson(l, spins):
     return couplings.get((spins[0], max(spins[1:]), min(spins[1:]), l))
 
 
+def refuse(row_id, expected, got):
+    raise Damaged(f"{row_id}: expected {expected}, got {got}. Read the table with a newer reader.")
+
+
 def width_model(wave, row_id, spins):
     """K of a wave; raises Damaged for models, options and vertices this reader does not know.
 
     spins: twice the spins of parent, first and second daughter, None where they are not known.
     """
-
-    def refuse(expected, got):
-        raise Damaged(f"{row_id}: expected {expected}, got {got}. Read the table with a newer reader.")
-
     if wave.two_l % 2 or wave.two_l > 2 * LARGEST_L:
-        refuse(f"an even 2L up to {2 * LARGEST_L}", wave.two_l)
+        refuse(row_id, f"an even 2L up to {2 * LARGEST_L}", wave.two_l)
     l = wave.two_l // 2
     if wave.model not in OPTIONS:
-        refuse("a width model among " + ", ".join(OPTIONS), f'"{wave.model}"')
+        refuse(row_id, "a width model among " + ", ".join(OPTIONS), f'"{wave.model}"')
     wanted = OPTIONS[wave.model]
     given = {(option.name, option.unit): option.value for option in wave.options if math.isfinite(option.value)}
     if set(given) != set(wanted) or len(wave.options) != len(wanted):
         listed = lambda pairs: "[" + ", ".join(f"{name} in {unit}" for name, unit in pairs) + "]"
         got = listed((option.name, option.unit) for option in wave.options)
-        refuse(f"width model {wave.model} with the options {listed(wanted)}", got)
+        refuse(row_id, f"width model {wave.model} with the options {listed(wanted)}", got)
     values = [given[pair] for pair in wanted]
     if wave.model == "a":
         return power_law(l, *values)
@@ -156,8 +157,9 @@ def width_model(wave, row_id, spins):
         return barrier_model(l, *values)
     if wave.model == "d":
         k = effective_baryon(l, *values, spins)
-        return k or refuse("spin n + 1/2 into 1/2 and 0 with L = n or n + 1 for width model d", "another vertex")
-    return effective_meson(l, spins) or refuse("spins and L that width model e has a coupling for", "others")
+        vertex = "spin n + 1/2 into 1/2 and 0 with L = n or n + 1 for width model d"
+        return k or refuse(row_id, vertex, "another vertex")
+    return effective_meson(l, spins) or refuse(row_id, "spins and L that width model e has a coupling for", "others")
 
 
 class ParentWidths:
@@ -216,8 +218,11 @@ def _ready_row(hadrons, parent, row):
         k = width_model(wave, row.id, spins)
         try:
             at_nominal = k(nominal, m1, m2, q0) if q0 > 0 else 0.0
+            width = wave.re**2 + wave.im**2
+            if at_nominal == 0 and width > 0:
+                refuse(row.id, "a width of 0 where the nominal masses forbid the decay", f"{width:g} MeV")
             if at_nominal > 0:
-                scale = (wave.re**2 + wave.im**2) / at_nominal
+                scale = width / at_nominal
             else:
                 scale = row.identical_factor * wave.flavour_amplitude**2
         except ArithmeticError:

@@ -65,7 +65,8 @@ function drawnAtNominalMass(
   return Array.from({ length: count }, () => firstAbove(cumulativeParts, uniformInt(random, 0, WHOLE - 1)));
 }
 
-function drawnAt({ evaluator }: ServedParent, masses: readonly number[], random: RandomGenerator): number[] {
+function drawnAt(parent: ServedParent, masses: readonly number[], random: RandomGenerator): number[] {
+  const evaluator = parent.evaluator();
   const widths = new Array<number>(evaluator.rowCount).fill(0);
   return masses.map((massMeV, k) => {
     requireMass(massMeV, k, (index) => `masses[${index}]`);

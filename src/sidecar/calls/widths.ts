@@ -54,10 +54,11 @@ function batchOfWidths(
 }
 
 function widthsAt(
-  { evaluator }: ServedParent,
+  parent: ServedParent,
   masses: readonly number[],
   where: (index: number) => string,
 ): { totalWidths: number[]; widths: number[]; fractions: number[] } {
+  const evaluator = parent.evaluator();
   const { rowCount } = evaluator;
   const widths = new Array<number>(masses.length * rowCount).fill(0);
   const fractions = new Array<number>(widths.length).fill(0);

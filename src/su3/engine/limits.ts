@@ -23,17 +23,17 @@ export function requireFeasibleChannels(left: Irrep, right: Irrep): void {
 }
 
 /**
- * Refuses a table with too many factors.
+ * The number of factors of a table, zeros included; refuses one with too many.
  *
  * @throws LimitError above 20 million factors
  */
-export function requireFeasibleTable(product: ProductBlocks, series: readonly SeriesEntry[]): void {
+export function requireFeasibleTable(product: ProductBlocks, series: readonly SeriesEntry[]): number {
   let count = 0;
   for (const { irrep, multiplicity } of series) {
     for (const { threeY, twoI } of isospinMultiplets(irrep))
       count += multiplicity * product.at(threeY, twoI)!.size;
   }
-  if (count <= LARGEST_TABLE) return;
+  if (count <= LARGEST_TABLE) return count;
   const name = `${irrepName(product.left.irrep)} x ${irrepName(product.right.irrep)}`;
   throw new LimitError(
     `isoscalarTable: expected at most ${LARGEST_TABLE} factors, got ${count} in ${name}. ` +

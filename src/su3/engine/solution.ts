@@ -13,27 +13,44 @@ import { normalisationCheck } from "./normalisation.js";
 export interface Solution {
   readonly product: ProductBlocks;
   readonly copies: readonly LoweredCopy[];
+  /** The number of factors, zeros included. */
+  readonly count: number;
 }
+
+/** Told how many factors are solved, and of how many. */
+export type SolveProgress = (done: number, total: number) => void;
 
 /**
  * Solves left ⊗ right for the irreps of `series`, all or some of those in the product.
  *
- * @throws LimitError above one million channels or 20 million factors; InternalError if a leading space has the wrong size, a multiplet is not normalised, or a step below the
- * lowest multiplet does not vanish
+ * @param progress - told after each copy
+ * @throws LimitError above one million channels or 20 million factors; InternalError if a leading space has the wrong
+ * size, a multiplet is not normalised, or a step below the lowest multiplet does not vanish
  */
-export function solveProduct(left: Irrep, right: Irrep, series: readonly SeriesEntry[]): Solution {
+export function solveProduct(
+  left: Irrep,
+  right: Irrep,
+  series: readonly SeriesEntry[],
+  progress: SolveProgress = () => {},
+): Solution {
   requireFeasibleChannels(left, right);
   const product = productBlocks(left, right);
-  requireFeasibleTable(product, series);
+  const count = requireFeasibleTable(product, series);
   const links = productLinks(product);
   const checkNormalisation = normalisationCheck(product.table);
+  let done = 0;
   const copies = series.flatMap(({ irrep, multiplicity }) => {
     const layout = irrepLayout(product, irrep);
     const leading = leadingCopies(product, leadingMultiplet(product, irrep, multiplicity));
-    return leading.map((copy, index) => loweredCopy(product, links, layout, copy, index + 1));
+    return leading.map((first, index) => {
+      const copy = loweredCopy(product, links, layout, first, index + 1);
+      checkNormalisation(copy);
+      done += layout.blocks.reduce((sum, { size }) => sum + size, 0);
+      progress(done, count);
+      return copy;
+    });
   });
-  for (const copy of copies) checkNormalisation(copy);
-  return { product, copies };
+  return { product, copies, count };
 }
 
 /**

@@ -383,6 +383,13 @@ void width_refusals(Checks& check, const couplet::v1::DecayTables& small) {
   refuses(wrong, ": expected " + good.parents[0].rows[0].daughters[0].name +
                      " among the hadrons of the table with its mass, got none",
           "a daughter without a mass is refused");
+  wrong = good;
+  wrong.parents[0].hadron.mass = 1;
+  wrong.parents[0].rows[0].waves[0].re = 2;
+  wrong.parents[0].rows[0].waves[0].im = 0;
+  refuses(wrong, ": expected a width of 0 where the nominal masses forbid the decay, got 4 MeV. Read the table with a "
+                 "newer reader.",
+          "a width that the nominal masses forbid is refused");
   const ParentWidths at(good, good.parents[0]);
   const std::string positive = "mass: expected a finite number > 0 in MeV";
   check.refused<std::invalid_argument>([&] { at.width(0, 0); }, positive, "a mass of 0 is refused");

@@ -1,0 +1,93 @@
+import type { DaughterShapes } from "../model/daughter-shapes.js";
+import { isFolded, twoBodyChannel } from "../model/kinematics.js";
+import type { Channel } from "../model/model.js";
+import { type DrawGrid, drawGrid } from "../widths/draw-mass.js";
+import { channelThresholdMeV, foldedWidth } from "../widths/folded-width.js";
+import { gridWidth, type MassGrid, massGrid } from "../widths/mass-grid.js";
+import { parentLineShape } from "../widths/parent-line-shape.js";
+import { powerWidth, type RunningWidth, totalWidth } from "../widths/running-width.js";
+
+/** A parent's line shape and what follows from it for its rows. */
+export interface RunningRows {
+  readonly windowMeV: readonly [number, number];
+  /** N, by which the density of the mass is divided. */
+  readonly normalisation: number;
+  readonly draw: DrawGrid;
+  /** Fraction of each row integrated over the line shape, the remainder's last where there is one; they add up to 1. */
+  readonly integratedFractions: readonly number[];
+  /** Partial width of each row against mass; undefined for rows without one. */
+  readonly grids: readonly (MassGrid | undefined)[];
+}
+
+/** A row as far as its running goes: its channel, and the strength of each wave, s |A|^2, that gives its width. */
+export interface RunningRow {
+  readonly channel: Channel;
+  readonly strengths: readonly number[];
+}
+
+/** A parent narrower than this part of its distance from threshold, or than a keV, has its nominal mass. */
+const NARROW = 1e-4;
+const NARROW_MEV = 1e-3;
+
+/** Upper end of the mass window, in nominal widths above the mass; see `parentLineShape`. */
+const WINDOW_WIDTHS = 3;
+
+/**
+ * The line shape of a parent from its rows: every row runs as its width model says (unstable daughters folded), a
+ * remainder stays constant above the lowest threshold.
+ *
+ * @param totalMeV - total width at the nominal mass; rows and remainder add up to it
+ * @returns undefined for a parent that is narrow, or has no open row
+ */
+export function runningRows(
+  massMeV: number,
+  totalMeV: number,
+  rows: readonly RunningRow[],
+  remainderMeV: number,
+  shapes: DaughterShapes,
+): RunningRows | undefined {
+  if (!(totalMeV > NARROW_MEV)) return undefined;
+  const topMeV = massMeV + WINDOW_WIDTHS * totalMeV;
+  const widths = rows.map((row) => rowWidth(row, topMeV, shapes));
+  const open = widths.flatMap((width) =>
+    width === undefined || width.running.widthMeV(massMeV) === 0 ? [] : [width.running],
+  );
+  if (open.length === 0) return undefined;
+  const thresholdMeV = Math.min(...widths.flatMap((width) => width?.running.thresholdsMeV ?? []));
+  if (totalMeV < NARROW * (massMeV - thresholdMeV)) return undefined;
+  const remainder = remainderMeV > 0 ? [powerWidth(remainderMeV, massMeV, thresholdMeV, 0)] : [];
+  const present = widths.filter((width) => width !== undefined);
+  const line = parentLineShape(massMeV, [...present.map(({ running }) => running), ...remainder], {
+    windowWidths: WINDOW_WIDTHS,
+    relativeError: 1e-8,
+  });
+  let next = 0;
+  const fractions = widths.map((width) => (width === undefined ? 0 : line.integratedFractions[next++]!));
+  return {
+    windowMeV: line.shape.windowMeV,
+    normalisation: line.shape.normalisation,
+    draw: drawGrid(line.shape),
+    integratedFractions: remainder.length > 0 ? [...fractions, line.integratedFractions.at(-1)!] : fractions,
+    grids: widths.map((width) => width?.grid),
+  };
+}
+
+/** A row's width against mass and its grid; undefined where it vanishes or opens above the window. */
+function rowWidth(
+  { channel, strengths }: RunningRow,
+  topMeV: number,
+  shapes: DaughterShapes,
+): { running: RunningWidth; grid: MassGrid } | undefined {
+  const waves = channel.waves.flatMap((wave, w) =>
+    strengths[w]! > 0 ? [{ channel: twoBodyChannel(wave.kinematics, shapes), strength: strengths[w]! }] : [],
+  );
+  if (waves.length === 0 || channelThresholdMeV(waves[0]!.channel) >= topMeV - 1) return undefined;
+  const parts = waves.map(({ channel: two, strength }) =>
+    foldedWidth(two, strength, { relativeError: 1e-8 }),
+  );
+  // One channel has one threshold, whatever its waves.
+  const running = { ...totalWidth(parts), thresholdsMeV: [parts[0]!.thresholdsMeV[0]!] };
+  const grid = massGrid(running, topMeV);
+  // A folded width is an integral at every mass; its grid serves instead.
+  return { running: waves.some(({ channel: two }) => isFolded(two)) ? gridWidth(grid) : running, grid };
+}

@@ -1,0 +1,194 @@
+/**
+ * Couplet as a library: exact SU(3) flavour algebra, and the chain from a study to complete decay tables.
+ *
+ * Every stage of the chain is one call that takes the value of the stage before it:
+ *
+ *     const fit = fitModel(resolveStudy(readStudy(bytes, "study.yaml")));
+ *     const file = encodeDecays(complete(fit, 0));
+ *
+ * Values are plain and read-only. Errors are of four classes: `InputError` for what the caller can mend, `TableError` for
+ * a damaged or newer table, `LimitError` for too large a request, `InternalError` for a bug of ours.
+ *
+ * @packageDocumentation
+ */
+
+// The chain, right to left: tables, completion, fit, model, study.
+export { complete } from "./completion/complete.js";
+export type {
+  Coupling,
+  CouplingComponent,
+  CouplingTable,
+  CouplingTerm,
+  DecayConstants,
+  ReducedValue,
+} from "./completion/coupling-table.js";
+export { minimaToTabulate } from "./completion/mirrors.js";
+export type {
+  Comparison,
+  Estimate,
+  Flag,
+  Origin,
+  ParentTable,
+  Row,
+  RowWave,
+  Tables,
+} from "./completion/tables.js";
+export { couplingTable } from "./completion/tabulate-couplings.js";
+// F and D from reduced couplings and back.
+export {
+  antisymmetricCouplingOfF,
+  type Estimate as FAndDEstimate,
+  type FAndD,
+  type FAndDForm,
+  fAndD,
+  fAndDForm,
+  hasFAndD,
+  symmetricCouplingOfD,
+} from "./couplings/f-and-d.js";
+export {
+  CoupletError,
+  InputError,
+  InternalError,
+  LimitError,
+  type SourcePosition,
+  TableError,
+} from "./errors.js";
+// Exact numbers: rationals and their signed square roots.
+export {
+  addRational,
+  compareRationals,
+  divideRational,
+  equalRationals,
+  formatRational,
+  multiplyRational,
+  negateRational,
+  parseRational,
+  type Rational,
+  rational,
+  rationalToNumber,
+  subtractRational,
+} from "./exact/rational.js";
+export {
+  divideRoots,
+  equalRoots,
+  formatRoot,
+  multiplyRoots,
+  negateRoot,
+  parseRoot,
+  rootOfSignedSquare,
+  rootToNumber,
+  rootToRational,
+  type SignedRoot,
+  signedRoot,
+  signedSquare,
+} from "./exact/signed-root.js";
+export type { couplet } from "./gen/couplet.js";
+// Hadrons: the catalogue, and multiplets of one's own.
+export {
+  type CatalogueEdition,
+  canonicalName,
+  catalogueEdition,
+  catalogueParticle,
+  catalogueParticles,
+  findParticle,
+} from "./hadrons/catalogue.js";
+export { catalogueMultiplet, catalogueMultipletIds } from "./hadrons/catalogue-multiplet.js";
+export type { ContentTerm, Hadron, Leg } from "./hadrons/hadron.js";
+export type { Member, Multiplet, MultipletQuantumNumbers } from "./hadrons/multiplet.js";
+export type { AsymmetricError, Particle } from "./hadrons/particle.js";
+export {
+  type Fit,
+  type FitModelOptions,
+  type FittedParameter,
+  fitModel,
+  LISTED_DELTA_CHI2,
+  MIRROR_DELTA_CHI2,
+  type Pull,
+  type StudyMinimum,
+} from "./model/fit-model.js";
+export type {
+  Channel as DecayChannel,
+  Decay,
+  Model,
+  Observable,
+  Parameter,
+  Parent,
+  TotalWidth,
+  Wave as DecayWave,
+  WidthModelChoice,
+} from "./model/model.js";
+export { resolveStudy } from "./model/resolve-study.js";
+export { studyJsonSchema } from "./study/json-schema.js";
+export { listProblems } from "./study/list-problems.js";
+export { draftStudy, readStudy, type StudyDraft } from "./study/read-study.js";
+export type {
+  MeasuredKind,
+  Quantity,
+  Study,
+  StudyAngle,
+  StudyChargeState,
+  StudyDecay,
+  StudyFitOptions,
+  StudyMeasurement,
+  StudyMember,
+  StudyMixing,
+  StudyMultiplet,
+  StudyPrior,
+  StudyProblem,
+} from "./study/study.js";
+// SU(2) and SU(3): irreps, products, Clebsch-Gordan coefficients and isoscalar factors in convention `deswart-v1`.
+export { clebschGordan } from "./su2/clebsch-gordan.js";
+export { su3ClebschGordan } from "./su3/clebsch-gordan.js";
+export {
+  casimir,
+  conjugate,
+  type Irrep,
+  type IsospinMultiplet,
+  irrepDimension,
+  irrepName,
+  isospinMultiplets,
+  parseIrrep,
+  sameIrrep,
+  triality,
+} from "./su3/irrep.js";
+export {
+  type Channel as IsoscalarChannel,
+  CONVENTION,
+  type IsoscalarFactor,
+  type IsoscalarTable,
+  isoscalarFactor,
+  isoscalarTable,
+  MULTIPLICITY_RULE,
+} from "./su3/isoscalar-factors.js";
+export {
+  type CouplingPath,
+  type CouplingStep,
+  couplingPaths,
+  decomposeProduct,
+  irrepMultiplicities,
+  type SeriesEntry,
+} from "./su3/product.js";
+export { conjugateState, type State, sameState, states, threeCharge } from "./su3/state.js";
+// Tables as sealed Protocol Buffers files, and what must go with them.
+export { canonicalJson } from "./tables/canonical-json.js";
+export { CAUTIONS } from "./tables/cautions.js";
+export { decodeCouplings } from "./tables/decode-couplings.js";
+export { decodeDecays } from "./tables/decode-decays.js";
+export { decodeFactors } from "./tables/decode-factors.js";
+export { encodeCouplings } from "./tables/encode-couplings.js";
+export { encodeDecays } from "./tables/encode-decays.js";
+export { encodeFactors } from "./tables/encode-factors.js";
+export { checkSeal, digestOf, type TableKind } from "./tables/sealed-bytes.js";
+export { packageVersion } from "./version.js";
+// Width models and two-body kinematics, in MeV.
+export { allowedWaves, type Wave as AllowedWave } from "./widths/allowed-waves.js";
+export { breakupMomentumMeV } from "./widths/breakup-momentum.js";
+export { partialWidthMeV, type TwoBodyDecay } from "./widths/partial-width.js";
+export { type WidthModel, widthModel, widthModelDefinitions } from "./widths/width-model.js";
+export type {
+  SpinParity,
+  Vertex,
+  WidthModelDefinition,
+  WidthModelOption,
+  WidthModelOptions,
+} from "./widths/width-model-definition.js";
