@@ -1,5 +1,7 @@
 import type { DaughterShapes } from "../model/daughter-shapes.js";
+import type { WaveKinematics } from "../model/kinematics.js";
 import type { Channel, Observable, Parent } from "../model/model.js";
+import { widthModel } from "../widths/width-model.js";
 import { partsPerBillion } from "./parts-per-billion.js";
 import type { Predictions } from "./predictions.js";
 import { runningRows } from "./running-rows.js";
@@ -26,7 +28,7 @@ export function parentTable(
   const all = remainder === undefined ? fractions : [...fractions, remainder.fraction.value];
   const parts = partsPerBillion(all, residueRow(entries, fractions, remainder !== undefined));
   const waves = parent.channels.map((index, k) =>
-    wavesOf(model.channels[index]!, predictions.channels[index]!, completed.estimates[k]!.widthMeV.value),
+    wavesOf(predictions, index, completed.estimates[k]!.widthMeV.value),
   );
   const running = runningRows(
     parent.hadron.massMeV,
@@ -60,6 +62,7 @@ export function parentTable(
       identicalFactor: channel.identicalFactor,
       waves: waves[k]!,
       ...(grid === undefined ? {} : { grid }),
+      isospin: { channel: channel.isospinChannel, coefficient: channel.isospinCoefficient },
     };
   });
   if (remainder !== undefined) {
@@ -94,7 +97,7 @@ function provenanceOf(
   return {
     origin: "measured",
     sources: [observable.source],
-    measurement: comparisonOf(predictions, observable),
+    measurement: { ...comparisonOf(predictions, observable), share: entry.share },
   };
 }
 
@@ -126,7 +129,7 @@ function residueRow(entries: readonly Entry[], fractions: readonly number[], has
   return predicted >= 0 && fractions[predicted]! > 0 ? predicted : largest(() => true);
 }
 
-function comparisonOf(predictions: Predictions, observable: Observable): Comparison {
+function comparisonOf(predictions: Predictions, observable: Observable): Omit<Comparison, "share"> {
   const { value, plus, minus, unit } = observable.measured;
   const pull = predictions.minimum.pulls.find((candidate) => candidate.observable === observable);
   return {
@@ -151,19 +154,31 @@ function flagsOf(channel: Channel, entry: Entry, relativeStrength: number): Flag
 }
 
 /** Amplitudes whose squares add up to the row's width: the fit's at nominal masses, scaled to it. */
-function wavesOf(
-  channel: Channel,
-  { amplitudes }: { amplitudes: readonly number[] },
-  rowWidthMeV: number,
-): RowWave[] {
+function wavesOf({ fit, evaluation, channels }: Predictions, index: number, rowWidthMeV: number): RowWave[] {
+  const channel = fit.model.channels[index]!;
+  const { amplitudes } = channels[index]!;
   const fitted = channel.waves.map(
     ({ kinematicFactor }, w) => amplitudes[w]! * Math.sqrt(channel.identicalFactor * kinematicFactor),
   );
   const length = Math.hypot(...fitted);
-  return channel.waves.map(({ L, twoS, model }, w): RowWave => {
+  return channel.waves.map(({ L, twoS, model, kinematics }, w): RowWave => {
     const part = length > 0 ? fitted[w]! / length : Math.sqrt(1 / channel.waves.length);
-    return { L, twoS, re: part * Math.sqrt(rowWidthMeV), im: 0, model, flavourAmplitude: amplitudes[w]! };
+    return {
+      L,
+      twoS,
+      re: part * Math.sqrt(rowWidthMeV),
+      im: 0,
+      model,
+      flavourAmplitude: amplitudes[w]!,
+      unit: amplitudeUnit(kinematics),
+      kinematicFactor: evaluation.kinematicFactor(index, w),
+    };
   });
+}
+
+function amplitudeUnit({ L, model, spins }: WaveKinematics): string {
+  const [parent, ...daughters] = spins;
+  return widthModel(model.id, model.options).amplitudeUnit({ L, parent, daughters });
 }
 
 function remainderRow(

@@ -47,7 +47,8 @@ export function runningRows(
   shapes: DaughterShapes,
 ): RunningRows | undefined {
   if (!(totalMeV > NARROW_MEV)) return undefined;
-  const topMeV = massMeV + WINDOW_WIDTHS * totalMeV;
+  // Grids follow their widths to 1e-4, and the window is made from their sum: a little more than the window.
+  const topMeV = massMeV + WINDOW_WIDTHS * totalMeV * 1.001;
   const widths = rows.map((row) => rowWidth(row, topMeV, shapes));
   const open = widths.flatMap((width) =>
     width === undefined || width.running.widthMeV(massMeV) === 0 ? [] : [width.running],

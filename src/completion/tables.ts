@@ -29,6 +29,8 @@ export interface Comparison {
   /** Undefined where the measurement did not enter the fit. */
   readonly fitted?: number;
   readonly pull?: number;
+  /** Part of the value that is the row's. */
+  readonly share: number;
 }
 
 /** One partial wave of a row; the squares of all amplitudes add up to the row's partial width. */
@@ -41,6 +43,9 @@ export interface RowWave {
   readonly model: WidthModelChoice;
   /** Of the fit, in the coupling's unit. */
   readonly flavourAmplitude: number;
+  readonly unit: string;
+  /** K at the nominal mass as the fit has it, in MeV over the square of the unit. */
+  readonly kinematicFactor: number;
 }
 
 /** One decay channel of one parent. */
@@ -64,6 +69,8 @@ export interface Row {
   readonly waves: readonly RowWave[];
   /** Partial width against mass; absent for a remainder, or where it vanishes. */
   readonly grid?: MassGrid;
+  /** Channel of whole isospin multiplets, and the SU(2) coefficient; absent outside the symmetry. */
+  readonly isospin?: { readonly channel: string; readonly coefficient: number };
 }
 
 /** Distribution of a hadron's mass. */

@@ -355,5 +355,7 @@ function offset(model: LinearModel, point: Point): number {
 }
 
 function columnNorms(jacobian: readonly (readonly number[])[], columns: number): number[] {
-  return Array.from({ length: columns }, (_, j) => Math.hypot(...jacobian.map((row) => row[j]!)));
+  const squared = new Array<number>(columns).fill(0);
+  for (const row of jacobian) for (let j = 0; j < columns; j++) squared[j]! += row[j]! * row[j]!;
+  return squared.map(Math.sqrt);
 }

@@ -46,7 +46,7 @@ export function singularValues(matrix: Float64Array, rows: number): SingularValu
   }
   const order = Array.from(squares.keys()).sort((a, b) => squares[b]! - squares[a]!);
   return {
-    values: order.map((k) => Math.sqrt(squares[k]!)),
+    values: order.map((k) => Math.sqrt(Math.max(0, squares[k]!))),
     scaledLeft: order.map((k) => matrix.subarray(k * rows, (k + 1) * rows)),
     right: order.map((k) => right.subarray(k * count, (k + 1) * count)),
   };

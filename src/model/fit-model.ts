@@ -3,7 +3,7 @@ import { InputError } from "../errors.js";
 import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
 import { findMinima, type MinimaProblem, type Minimum, minimumNear } from "../fit/minima.js";
 import { sumsOf } from "./breaking.js";
-import { distinctPhysics } from "./distinct-physics.js";
+import { type DistinctMinimum, distinctPhysics } from "./distinct-physics.js";
 import { decayHasFAndD, Evaluation, type Evaluator, evaluator } from "./evaluate.js";
 import { signProblem } from "./linear-forms.js";
 import type { Model, Observable, Parameter } from "./model.js";
@@ -79,19 +79,24 @@ export function fitModel(model: Model, options: FitModelOptions = {}): Fit {
   const ready = evaluator(model);
   const fitted = fittedObservables(model);
   requireConstrained(ready, fitted);
-  const found = minimaOf(ready, fitted, options);
-  const minima = distinctPhysics(ready, found).map(({ minimum, equivalents }) =>
+  const minima = distinctMinima(ready, fitted, options).map(({ minimum, equivalents }) =>
     studyMinimum(ready, fitted, minimum, equivalents),
   );
   return { model, minima };
 }
 
-function minimaOf(ready: Evaluator, fitted: readonly Observable[], options: FitModelOptions): Minimum[] {
+function distinctMinima(
+  ready: Evaluator,
+  fitted: readonly Observable[],
+  options: FitModelOptions,
+): DistinctMinimum[] {
   const { model } = ready;
   const starts = nuisanceStarts(model);
   const everything = { deltaChi2: Number.POSITIVE_INFINITY };
-  if (starts.length === 1)
-    return findMinima(minimaProblem(ready, fitted, starts[0]!), { ...everything, ...options }).minima;
+  if (starts.length === 1) {
+    const { minima } = findMinima(minimaProblem(ready, fitted, starts[0]!), { ...everything, ...options });
+    return distinctPhysics(ready, minima);
+  }
   // With free angles the search runs over many starts, so what is held tightly by priors rests until the end, and the
   // starts beside walls are spared: a grid of angles comes into every cell from several sides.
   const resting = model.parameters.map(
@@ -109,8 +114,9 @@ function minimaOf(ready: Evaluator, fitted: readonly Observable[], options: FitM
     parameters: awake(minimum.parameters, resting, model),
   }));
   return distinctPhysics(ready, complete)
-    .map(({ minimum }) => minimumNear(full, minimum.parameters))
-    .filter(({ verdicts }, k) => verdicts.converged || k === 0);
+    .map(({ minimum, equivalents }) => ({ minimum: minimumNear(full, minimum.parameters), equivalents }))
+    .filter(({ minimum }, k) => minimum.verdicts.converged || k === 0)
+    .sort((a, b) => a.minimum.chi2 - b.minimum.chi2);
 }
 
 /** The observables of a model that enter the fit. */

@@ -195,6 +195,9 @@ function rowMessage(row: Row): v1.Row.$Properties {
     waves: row.waves.map(waveMessage),
     integratedFraction: row.integratedFraction ?? null,
     ...(row.grid === undefined ? {} : { grid: gridMessage(row.grid) }),
+    ...(row.isospin === undefined
+      ? {}
+      : { isospinChannel: row.isospin.channel, isospinCoefficient: row.isospin.coefficient }),
   };
 }
 
@@ -207,16 +210,14 @@ export function estimateMessage({ value, plus, minus, breaking }: Estimate): v1.
   return { value, plus, minus, breaking };
 }
 
-function waveMessage({ L, twoS, re, im, flavourAmplitude, model }: RowWave): v1.Wave.$Properties {
+function waveMessage({ L, twoS, model, ...numbers }: RowWave): v1.Wave.$Properties {
   return {
     twoL: 2 * L,
     twoS,
-    re,
-    im,
+    ...numbers,
     phase: v1.Phase.PHASE_KNOWN,
     model: model.id,
     options: optionMessages(model),
-    flavourAmplitude,
   };
 }
 

@@ -2,6 +2,7 @@ import { InputError, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { refuse, requirePositive } from "../require.js";
 import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
+import { gridWidthMeV } from "../widths/mass-grid.js";
 import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
 import type { Kinematics, Vertex } from "../widths/width-model-definition.js";
 
@@ -17,7 +18,7 @@ export interface RowsEvaluator {
    * Each is >= 0 and finite; 0 at and below the row's threshold.
    * @throws InputError for a mass that is not a finite number > 0, or so large that a width overflows
    */
-  widthsInto(massMeV: number, widths: number[], offset: number): number;
+  widthsInto(massMeV: number, widths: number[] | Float64Array, offset: number): number;
 }
 
 type HadronsByName = ReadonlyMap<string, v1.Hadron.$Properties>;
@@ -34,13 +35,15 @@ export function tableHadrons(tables: v1.DecayTables): HadronsByName {
  * The partial width of a row at mass m is the sum over its waves of (re^2 + im^2) K(m)/K(m0), with m0 the nominal mass
  * and K the wave's width model at the masses of the table's hadrons; where K(m0) = 0, so that re = im = 0, it is
  * identicalFactor flavourAmplitude^2 K(m). So at m0 it is the row's width, measured or predicted, and a measured row
- * takes its shape from the model. A row without waves, such as a remainder, is constant above its threshold. The
- * readers in C++ and Python compute the same.
- * @throws TableError for a model, an option or a vertex this version does not know, a hadron that is missing, or a row
- * that has a width at m0 only through the widths of its daughters
+ * takes its shape from the model. A row flagged as folded, or with a width at m0 where K(m0) = 0, follows its grid. A
+ * row without waves is constant above its threshold; a remainder, above the lowest one of the parent. The readers in C++
+ * and Python compute the same.
+ * @throws TableError for a model, an option or a vertex this version does not know, or a hadron or grid that is missing
  */
 export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByName): RowsEvaluator {
-  const rows = (parent.rows ?? []).map((row) => rowWidth(parent, row, hadrons));
+  const all = parent.rows ?? [];
+  const lowestMeV = Math.min(...all.filter((row) => row.daughters?.length).map(lowestMassMeV));
+  const rows = all.map((row) => rowWidth(parent, row, hadrons, lowestMeV));
   return {
     rowCount: rows.length,
     widthsInto(massMeV, widths, offset) {
@@ -70,9 +73,15 @@ type RowWidth = (massMeV: number) => number;
 /** K in MeV over the square of the amplitude's unit, above threshold. */
 type Factor = (kinematics: Kinematics) => number;
 
-function rowWidth(parent: v1.Parent.$Properties, row: v1.Row.$Properties, hadrons: HadronsByName): RowWidth {
+function rowWidth(
+  parent: v1.Parent.$Properties,
+  row: v1.Row.$Properties,
+  hadrons: HadronsByName,
+  lowestMeV: number,
+): RowWidth {
+  if (takesGrid(row)) return gridOf(row);
   const waves = row.waves ?? [];
-  if (waves.length === 0) return constantWidth(row);
+  if (waves.length === 0) return constantWidth(row, lowestMeV);
   const nominalMeV = parent.hadron?.mass ?? Number.NaN;
   const [first, second, more] = (row.daughters ?? []).map((daughter) => daughterOf(row, daughter, hadrons));
   if (first === undefined || second === undefined || more !== undefined || !(nominalMeV > 0)) {
@@ -84,10 +93,15 @@ function rowWidth(parent: v1.Parent.$Properties, row: v1.Row.$Properties, hadron
   const [firstMeV, secondMeV] = [first.mass!, second.mass!];
   const momentumMeV = breakupMomentumMeV(nominalMeV, firstMeV, secondMeV);
   const nominal = { parentMeV: nominalMeV, firstMeV, secondMeV, momentumMeV };
-  const scaled = waves.map((wave) => {
+  const ready = waves.map((wave) => {
     const factor = factorOf(row, wave, spins);
-    return { factor, scale: scaleOf(row, wave, momentumMeV > 0 ? factor(nominal) : 0) };
+    return { wave, factor, atNominal: momentumMeV > 0 ? factor(nominal) : 0 };
   });
+  if (ready.some(({ wave, atNominal }) => atNominal === 0 && waveWidth(wave) > 0)) return gridOf(row);
+  const scaled = ready.map(({ wave, factor, atNominal }) => ({
+    factor,
+    scale: scaleOf(row, wave, atNominal),
+  }));
   return (massMeV) => {
     const momentum = breakupMomentumMeV(massMeV, firstMeV, secondMeV);
     if (momentum === 0) return 0;
@@ -98,12 +112,42 @@ function rowWidth(parent: v1.Parent.$Properties, row: v1.Row.$Properties, hadron
   };
 }
 
-function constantWidth(row: v1.Row.$Properties): RowWidth {
+/** True for a row whose width has no closed form. */
+function takesGrid(row: v1.Row.$Properties): boolean {
+  return row.grid != null && (row.flags ?? []).includes(v1.Flag.FLAG_FOLDED);
+}
+
+/** Mass of the parent where a row with daughters opens. */
+function lowestMassMeV(row: v1.Row.$Properties): number {
+  return (takesGrid(row) ? row.grid!.threshold : row.threshold) ?? Number.NaN;
+}
+
+function gridOf(row: v1.Row.$Properties): RowWidth {
+  if (row.grid == null) {
+    refuseWave(row, "a grid, since the nominal masses forbid the decay", "a width without one");
+  }
+  const { threshold, distances, logWidths, slopes } = row.grid;
+  const grid = {
+    thresholdMeV: threshold ?? Number.NaN,
+    distancesMeV: distances ?? [],
+    logWidths: logWidths ?? [],
+    slopes: slopes ?? [],
+  };
+  const x = grid.distancesMeV;
+  const sizes = x.length >= 2 && grid.logWidths.length === x.length && grid.slopes.length === x.length;
+  const ascending = x.every((distance, k) => distance > (k === 0 ? 0 : x[k - 1]!));
+  if (sizes && ascending && Number.isFinite(threshold)) return (massMeV) => gridWidthMeV(grid, massMeV);
+  throw new TableError(`${row.id}: expected a grid of two points or more in ascending order, got another`);
+}
+
+function constantWidth(row: v1.Row.$Properties, lowestMeV: number): RowWidth {
   const width = row.width?.value ?? Number.NaN;
-  const threshold = row.threshold ?? Number.NaN;
-  if (!Number.isFinite(width) || !Number.isFinite(threshold)) {
+  const own = row.threshold ?? Number.NaN;
+  if (!Number.isFinite(width) || !Number.isFinite(own)) {
     throw new TableError(`${row.id}: expected a row without waves to have a width and a threshold, got none`);
   }
+  // A remainder alone has no other row that could open or close it.
+  const threshold = (row.daughters ?? []).length > 0 || !Number.isFinite(lowestMeV) ? own : lowestMeV;
   return (massMeV) => (massMeV > threshold ? width : 0);
 }
 
@@ -117,16 +161,17 @@ function daughterOf(
   throw new TableError(`${row.id}: expected ${name} among the hadrons of the table with its mass, got none`);
 }
 
+/** Part of a row's width at the nominal mass that a wave has, in MeV. */
+function waveWidth({ re, im }: v1.Wave.$Properties): number {
+  return (re ?? Number.NaN) ** 2 + (im ?? Number.NaN) ** 2;
+}
+
 /** What K is multiplied with to give the width in MeV. */
-function scaleOf(row: v1.Row.$Properties, wave: v1.Wave.$Properties, nominalFactor: number): number {
-  const width = (wave.re ?? Number.NaN) ** 2 + (wave.im ?? Number.NaN) ** 2;
-  if (nominalFactor === 0 && width > 0) {
-    refuseWave(row, "a width of 0 where the nominal masses forbid the decay", `${width} MeV`);
-  }
+function scaleOf(row: v1.Row.$Properties, wave: v1.Wave.$Properties, atNominal: number): number {
   const amplitude = wave.flavourAmplitude ?? Number.NaN;
   const scale =
-    nominalFactor > 0 ? width / nominalFactor : (row.identicalFactor ?? Number.NaN) * amplitude ** 2;
-  if (Number.isFinite(scale) && Number.isFinite(nominalFactor)) return scale;
+    atNominal > 0 ? waveWidth(wave) / atNominal : (row.identicalFactor ?? Number.NaN) * amplitude ** 2;
+  if (Number.isFinite(scale) && Number.isFinite(atNominal)) return scale;
   throw new TableError(`${row.id}: expected finite amplitudes, got others`);
 }
 

@@ -1,3 +1,4 @@
+import { integerPower } from "./integer-power.js";
 import type { WidthModelDefinition } from "./width-model-definition.js";
 
 /**
@@ -45,6 +46,8 @@ export const powerLawModel: WidthModelDefinition = {
   factorMeV({ parentMeV, momentumMeV }, { L }, options) {
     const reference = options["referenceMomentumMeV"]!;
     const massRatio = options["referenceMassMeV"]! / parentMeV;
-    return reference * (momentumMeV / reference) ** (2 * L + 1) * massRatio ** options["n"]!;
+    return (
+      reference * integerPower(momentumMeV / reference, 2 * L + 1) * integerPower(massRatio, options["n"]!)
+    );
   },
 };

@@ -118,6 +118,19 @@ def every_model():
             row(meson, [light[first], heavy[second]], "e", l)
         if two_j == 2:
             row(meson, [photon, light[0]], "e", 1)
+    # Rows with a grid: folded ones, and one without an amplitude in closed form.
+    for number, (flag, is_open) in enumerate([(True, True), (True, False), (False, False)]):
+        made = tables.parents[1].rows.add(id=f"grid {number}", identical_factor=1, parts_per_billion=0, threshold=1200)
+        for daughter in (light if is_open else heavy)[1], light[0]:
+            made.daughters.add(name=daughter)
+        if flag:
+            made.flags.append(decays_pb2.FLAG_FOLDED)
+        wave = made.waves.add(two_l=2, two_s=1, model="d", flavour_amplitude=1, re=2, im=0)
+        wave.options.add(name="scaleMeV", value=139.57, unit="MeV")
+        made.grid.threshold = 1100.125
+        made.grid.distances.extend([0.001, 0.1, 3, 400, 1000, 50000])
+        made.grid.log_widths.extend([-20, -10, -4, 3, 3.5, 4])
+        made.grid.slopes.extend([3, 2.75, 1.5, 0.9, 0.25, 0])
     # Two waves of one row, and a row without waves.
     two_waves = tables.parents[0].rows[0]
     two_waves.waves.add().CopyFrom(tables.parents[0].rows[1].waves[0])

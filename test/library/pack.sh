@@ -48,6 +48,6 @@ npx --no-install couplet fit short.yaml >/dev/null
 # The types, as strict users of both module systems see them, with no other type package installed than the library's own.
 for module in node16 node20; do
   "$here/node_modules/.bin/tsc" --noEmit --strict --exactOptionalPropertyTypes --skipLibCheck false --target es2022 \
-    --module "$module" --types '' use-types.ts
+    --module "$module" use-types.ts
 done
 echo "the packed library installs and works: $(wc -l <"$work/files") files"

@@ -63,11 +63,53 @@ test("a row follows its width model off the nominal mass, a measured one scaled 
   expect(widths[closed]).toBeGreaterThan(0.01);
 });
 
-test("rows with waves are zero below threshold; a remainder keeps its width", () => {
+test("rows are zero below threshold; a remainder keeps its width above the lowest threshold of its parent", () => {
   const parent = parentNamed("Sigma(1731)+");
-  expect(widthsAt(demo, parent, 1000)).toEqual(
-    parent.rows.map((row) => (row.waves.length === 0 ? row.width.value : 0)),
+  const lowest = Math.min(...parent.rows.flatMap((row) => (row.waves.length > 0 ? [row.threshold!] : [])));
+  const remainder = parent.rows.at(-1)!;
+  expect([lowest, remainder.daughters]).toEqual([1255.25339, []]);
+  expect(widthsAt(demo, parent, lowest - 0.01)).toEqual(parent.rows.map(() => 0));
+  const above = widthsAt(demo, parent, lowest + 0.01);
+  expect(above.pop()).toBe(remainder.width.value);
+  expect(above.filter((width) => width > 0)).toHaveLength(1);
+});
+
+test("a folded row follows its grid, to the grid's end", () => {
+  const parent = couplet.v1.Parent.decode(couplet.v1.Parent.encode(parentNamed("Sigma(1731)+")).finish());
+  const row = parent.rows[0]!;
+  // ln width = 2 ln x: the width is the square of the distance.
+  const points = [1, 4, 100].map((x) => Math.fround(x));
+  row.grid = couplet.v1.MassGrid.create({
+    threshold: 1400,
+    distances: points,
+    logWidths: points.map((x) => 2 * Math.log(x)),
+    slopes: points.map(() => 2),
+  });
+  const closedForm = rowsEvaluator(parent, hadrons);
+  row.flags.push(couplet.v1.Flag.FLAG_FOLDED);
+  const folded = rowsEvaluator(parent, hadrons);
+  const widths = [0];
+  for (const [massMeV, wanted] of [
+    [1399, 0],
+    [1400.5, 0.25],
+    [1402, 4],
+    [1450, 2500],
+    [1500, 10_000],
+  ] as const) {
+    folded.widthsInto(massMeV, widths, 0);
+    expect(relative(widths[0]!, wanted)).toBeLessThan(1e-12);
+  }
+  expect(() => folded.widthsInto(1501, widths, 0)).toThrow(
+    expect.objectContaining({
+      message: "gridWidthMeV: massMeV: expected a mass up to 1500, got 1501. The grid ends there.",
+    }),
   );
+  closedForm.widthsInto(1731, widths, 0);
+  expect(relative(widths[0]!, row.width.value!)).toBeLessThan(1e-12);
+  row.flags = [];
+  row.daughters[1]!.name = "Xi0";
+  rowsEvaluator(parent, hadrons).widthsInto(1402, widths, 0);
+  expect(relative(widths[0]!, 4)).toBeLessThan(1e-12);
 });
 
 test("fractions at a mass are parts of the sum of widths; all are zero where every row is closed", () => {
@@ -125,12 +167,26 @@ const REFUSED: readonly [string, Change, string][] = [
     "expected two daughters and a parent's mass > 0 of a row with waves, got others",
   ],
   [
-    "a width that the nominal masses forbid",
+    "a width that the nominal masses forbid, without a grid,",
     (row, wave) => {
       row.daughters[1]!.name = "Xi0";
+      row.grid = undefined as never;
       wave.re = 2;
     },
-    "expected a width of 0 where the nominal masses forbid the decay, got 4 MeV. Read the table with a newer version of Couplet.",
+    "expected a grid, since the nominal masses forbid the decay, got a width without one. Read the table with a newer version of Couplet.",
+  ],
+  [
+    "a grid in the wrong order",
+    (row) => {
+      row.flags = [couplet.v1.Flag.FLAG_FOLDED];
+      const [distances, logWidths, slopes] = [
+        [2, 1],
+        [0, 0],
+        [1, 1],
+      ];
+      row.grid = couplet.v1.MassGrid.create({ threshold: 1400, distances, logWidths, slopes } as never);
+    },
+    "expected a grid of two points or more in ascending order, got another",
   ],
   [
     "an amplitude that is no number",

@@ -93,6 +93,22 @@ inline Wave wave(const v1::Wave& m) {
   return w;
 }
 
+inline MassGrid grid(const v1::MassGrid& m) {
+  return {number(m.has_threshold(), m.threshold()), list<float>(m.distances()), list<float>(m.log_widths()),
+          list<float>(m.slopes())};
+}
+
+inline LineShape line_shape(const v1::LineShape& m) {
+  LineShape s;
+  s.low = number(m.has_low(), m.low());
+  s.high = number(m.has_high(), m.high());
+  s.normalisation = number(m.has_normalisation(), m.normalisation());
+  s.distances = list<float>(m.distances());
+  s.cumulative = list<float>(m.cumulative());
+  s.power = number(m.has_power(), m.power());
+  return s;
+}
+
 inline Row row(const v1::Row& m) {
   Row r;
   r.id = m.id();
@@ -108,6 +124,8 @@ inline Row row(const v1::Row& m) {
   r.momentum = number(m.has_momentum(), m.momentum());
   r.identical_factor = number(m.has_identical_factor(), m.identical_factor());
   r.waves = list<Wave>(m.waves(), wave);
+  r.integrated_fraction = maybe(m.has_integrated_fraction(), m.integrated_fraction());
+  if (m.has_grid()) r.grid = grid(m.grid());
   return r;
 }
 
@@ -120,6 +138,7 @@ inline Parent parent(const v1::Parent& m) {
   p.total_origin = static_cast<TotalOrigin>(m.total_origin());
   p.rows = list<Row>(m.rows(), row);
   p.warnings = list<std::string>(m.warnings());
+  if (m.has_line_shape()) p.line_shape = line_shape(m.line_shape());
   return p;
 }
 

@@ -78,10 +78,23 @@ class Wire {
       values.push_back(static_cast<Enum>(static_cast<std::int32_t>(varint())));
     }
   }
+  // So does a list of numbers.
+  void get(std::vector<float>& values) {
+    if (type_ == Type::bytes) {
+      Wire packed(block());
+      while (!packed.bytes_.empty()) values.push_back(packed.fixed32());
+    } else if (is(Type::fixed32)) {
+      values.push_back(fixed32());
+    }
+  }
   // A message given twice is merged, as the format has it: `read` only writes the fields it meets.
   template <class Message, std::enable_if_t<std::is_class_v<Message>, bool> = true>
   void get(Message& message) {
     if (is(Type::bytes)) read(message, Wire(block()));
+  }
+  template <class Message, std::enable_if_t<std::is_class_v<Message>, bool> = true>
+  void get(std::optional<Message>& message) {
+    if (is(Type::bytes)) read(message ? *message : message.emplace(), Wire(block()));
   }
   template <class Message, std::enable_if_t<std::is_class_v<Message>, bool> = true>
   void get(std::vector<Message>& messages) {
@@ -119,12 +132,17 @@ class Wire {
 
   std::string_view block() { return take(varint()); }
 
-  double fixed64() {
-    const std::string_view bytes = take(8);
-    std::uint64_t bits = 0;
-    for (int i = 7; i >= 0; --i) bits = bits << 8 | static_cast<unsigned char>(bytes[static_cast<std::size_t>(i)]);
-    double value;
-    static_assert(sizeof value == sizeof bits && std::numeric_limits<double>::is_iec559, "IEEE 754 doubles are needed");
+  double fixed64() { return fixed<double, std::uint64_t>(); }
+  float fixed32() { return fixed<float, std::uint32_t>(); }
+
+  // A number of the format, lowest byte first.
+  template <class Number, class Bits>
+  Number fixed() {
+    static_assert(sizeof(Number) == sizeof(Bits) && std::numeric_limits<Number>::is_iec559, "IEEE 754 is needed");
+    const std::string_view bytes = take(sizeof(Bits));
+    Bits bits = 0;
+    for (std::size_t i = bytes.size(); i-- > 0;) bits = bits << 8 | static_cast<unsigned char>(bytes[i]);
+    Number value;
     std::memcpy(&value, &bits, sizeof value);
     return value;
   }
@@ -251,6 +269,32 @@ inline void read(Wave& w, Wire wire) {
   }
 }
 
+inline void read(MassGrid& g, Wire wire) {
+  while (wire.next()) {
+    switch (wire.number()) {
+      case 1: wire.get(g.threshold); break;
+      case 2: wire.get(g.distances); break;
+      case 3: wire.get(g.log_widths); break;
+      case 4: wire.get(g.slopes); break;
+      default: wire.skip();
+    }
+  }
+}
+
+inline void read(LineShape& s, Wire wire) {
+  while (wire.next()) {
+    switch (wire.number()) {
+      case 1: wire.get(s.low); break;
+      case 2: wire.get(s.high); break;
+      case 3: wire.get(s.normalisation); break;
+      case 4: wire.get(s.distances); break;
+      case 5: wire.get(s.cumulative); break;
+      case 6: wire.get(s.power); break;
+      default: wire.skip();
+    }
+  }
+}
+
 inline void read(Row& r, Wire wire) {
   while (wire.next()) {
     switch (wire.number()) {
@@ -267,6 +311,8 @@ inline void read(Row& r, Wire wire) {
       case 12: wire.get(r.momentum); break;
       case 13: wire.get(r.identical_factor); break;
       case 14: wire.get(r.waves); break;
+      case 15: wire.get(r.integrated_fraction); break;
+      case 16: wire.get(r.grid); break;
       default: wire.skip();
     }
   }
@@ -282,6 +328,7 @@ inline void read(Parent& p, Wire wire) {
       case 5: wire.get(p.total_origin); break;
       case 6: wire.get(p.rows); break;
       case 7: wire.get(p.warnings); break;
+      case 8: wire.get(p.line_shape); break;
       default: wire.skip();
     }
   }

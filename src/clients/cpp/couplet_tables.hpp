@@ -11,6 +11,7 @@
 
 #include <algorithm>
 #include <cerrno>
+#include <cmath>
 #include <cstddef>
 #include <cstdint>
 #include <cstdio>
@@ -50,9 +51,16 @@ inline constexpr double MISSING = std::numeric_limits<double>::quiet_NaN();
 // Numbers as in the schema; a number of a newer schema is kept as it is.
 enum class Origin { unspecified = 0, measured = 1, predicted = 2, remainder = 3 };
 enum class TotalOrigin { unspecified = 0, measured = 1, sum = 2 };
-enum class Kinematics { unspecified = 0, open = 1, closed = 2 };
+enum class Kinematics { unspecified = 0, open = 1, closed = 2, folded = 3 };
 enum class Phase { unspecified = 0, known = 1, assumed = 2 };
-enum class Flag { unspecified = 0, isospin_split = 1, undecayable = 2, near_threshold = 3, small_amplitude = 4 };
+enum class Flag {
+  unspecified = 0,
+  isospin_split = 1,
+  undecayable = 2,
+  near_threshold = 3,
+  small_amplitude = 4,
+  folded = 5
+};
 
 struct Header {
   std::optional<std::uint32_t> schema_minor;
@@ -97,6 +105,12 @@ struct Wave {
   double flavour_amplitude = MISSING;
 };
 
+// Partial width against mass, for rows whose width has no closed form; ParentWidths evaluates it.
+struct MassGrid {
+  double threshold = MISSING;
+  std::vector<float> distances, log_widths, slopes;
+};
+
 struct Row {
   std::string id;
   std::vector<Daughter> daughters;
@@ -108,6 +122,15 @@ struct Row {
   Kinematics kinematics = Kinematics::unspecified;
   double threshold = MISSING, momentum = MISSING, identical_factor = MISSING;
   std::vector<Wave> waves;
+  std::optional<double> integrated_fraction;
+  std::optional<MassGrid> grid;
+};
+
+// Distribution of a hadron's mass; draw_mass draws from it.
+struct LineShape {
+  double low = MISSING, high = MISSING, normalisation = MISSING;
+  std::vector<float> distances, cumulative;
+  double power = MISSING;
 };
 
 struct Parent {
@@ -117,6 +140,8 @@ struct Parent {
   TotalOrigin total_origin = TotalOrigin::unspecified;
   std::vector<Row> rows;
   std::vector<std::string> warnings;
+  // Absent for a narrow parent: it has its nominal mass.
+  std::optional<LineShape> line_shape;
 };
 
 struct Tables {
@@ -195,6 +220,22 @@ class Decayer {
   const std::vector<Row>* rows_;
   std::vector<std::uint32_t> cumulative_;
 };
+
+// A mass from a line shape, in MeV. Throws Damaged for a shape without points.
+template <class Generator>
+double draw_mass(const LineShape& shape, Generator& rng) {
+  const std::vector<float>&x = shape.distances, &chance = shape.cumulative;
+  if (x.size() < 2 || x.size() != chance.size() || !(shape.power > 0)) {
+    throw Damaged("line shape: expected distances and chances of two points or more, got others");
+  }
+  // Uniform in [0, 1), in steps of 2^-53.
+  const std::uint64_t high = detail::draw_below(rng, 1u << 26), low = detail::draw_below(rng, 1u << 27);
+  const double u = static_cast<double>(high << 27 | low) * 0x1p-53;
+  if (u < chance[0]) return shape.low + x[0] * std::pow(u / chance[0], 1 / shape.power);
+  const auto above = static_cast<std::size_t>(std::upper_bound(chance.begin() + 1, chance.end() - 1, u) - chance.begin());
+  const double x0 = x[above - 1], x1 = x[above], f0 = chance[above - 1], f1 = chance[above];
+  return shape.low + x0 * std::pow(x1 / x0, std::log(u / f0) / std::log(f1 / f0));
+}
 
 namespace detail {
 

@@ -8,8 +8,10 @@
 // with K the closed form of the wave's width model at the masses of the daughters in the table. So at m0 it is the
 // row's width exactly, measured or predicted; a measured row keeps its measured value and takes its shape from the
 // model. For a predicted row both lines are the same number. Below the sum of the daughters' masses it is 0.
-// A row without waves, such as a remainder, has a constant width above its threshold: nothing is known of its shape.
-// A row that is closed at the nominal masses and has a width all the same (through the widths of its daughters) is refused.
+//
+// A row that is averaged over the line shapes of its daughters (flag `folded`), or has a width at m0 where K(m0) = 0, is
+// evaluated from its grid, by the rule that the schema states and to its accuracy of 1e-4. A row without waves has a
+// constant width, since nothing is known of its shape: above its threshold, or for a remainder above the parent's lowest.
 #ifndef COUPLET_WIDTHS_HPP
 #define COUPLET_WIDTHS_HPP
 
@@ -191,15 +193,42 @@ inline WidthModel width_model(const Wave& wave, const Vertex& vertex) {
   refuse_wave(vertex.row, "a width model among a, b, c, d, e", '"' + wave.model + '"');
 }
 
-// One row made ready for many masses.
+// Width of a grid at a mass, in MeV: C. Hermite's cubic in ln width against ln distance, the threshold law below it.
+inline double grid_width(const MassGrid& grid, double mass) {
+  const std::vector<float>&distances = grid.distances, &y = grid.log_widths, &s = grid.slopes;
+  const double x = mass - grid.threshold;
+  if (x <= 0) return 0;
+  if (!(x <= distances.back())) throw std::invalid_argument("mass: expected one up to the end of a row's grid, got more");
+  const double t = std::log(x);
+  if (x < distances[0]) return std::exp(y[0] + s[0] * (t - std::log(double{distances[0]})));
+  const auto above = std::upper_bound(distances.begin() + 1, distances.end() - 1, x) - distances.begin();
+  const auto k = static_cast<std::size_t>(above) - 1;
+  const double t_k = std::log(double{distances[k]}), h = std::log(double{distances[k + 1]}) - t_k, u = (t - t_k) / h;
+  const double d = double{y[k + 1]} - y[k], a = h * s[k], b = h * s[k + 1];
+  return std::exp(y[k] + u * (a + u * (3 * d - 2 * a - b + u * (a + b - 2 * d))));
+}
+
+// The grid itself, if it can be evaluated.
+inline const MassGrid& checked(const MassGrid& grid, const std::string& row) {
+  const std::vector<float>& x = grid.distances;
+  const bool sizes = x.size() >= 2 && grid.log_widths.size() == x.size() && grid.slopes.size() == x.size();
+  const auto descends = [](float a, float b) { return !(a < b); };
+  const bool ascending = std::adjacent_find(x.begin(), x.end(), descends) == x.end();
+  if (sizes && ascending && x[0] > 0 && std::isfinite(grid.threshold)) return grid;
+  throw Damaged(row + ": expected a grid of two points or more in ascending order, got another");
+}
+
+// One row made ready for many masses: closed form, grid, or a constant above a threshold.
 struct ReadyRow {
-  // Constant width above a threshold, for a row without waves.
-  double constant = 0, threshold = 0;
+  double threshold = 0;
+  double constant = 0;
   double first = 0, second = 0;
   // The sum of scale times K is the partial width.
   std::vector<std::pair<double, WidthModel>> waves;
+  std::optional<MassGrid> grid;
 
   double width(double mass) const {
+    if (grid) return grid_width(*grid, mass);
     if (waves.empty()) return mass > threshold ? constant : 0;
     const double momentum = breakup_momentum(mass, first, second);
     if (momentum == 0) return 0;
@@ -219,9 +248,13 @@ inline const Hadron& daughter_of(const Tables& tables, const Row& row, const Dau
 
 inline ReadyRow ready_row(const Tables& tables, const Parent& parent, const Row& row) {
   ReadyRow ready;
+  ready.threshold = row.threshold;
+  if (row.grid && std::count(row.flags.begin(), row.flags.end(), Flag::folded) > 0) {
+    ready.grid = checked(*row.grid, row.id);
+    return ready;
+  }
   if (row.waves.empty()) {
     ready.constant = row.width.value;
-    ready.threshold = row.threshold;
     if (std::isfinite(ready.constant) && std::isfinite(ready.threshold)) return ready;
     throw Damaged(row.id + ": expected a row without waves to have a width and a threshold, got none");
   }
@@ -239,14 +272,28 @@ inline ReadyRow ready_row(const Tables& tables, const Parent& parent, const Row&
     const double open = momentum > 0 ? k({nominal, first.mass, second.mass, momentum}) : 0;
     const double width = wave.re * wave.re + wave.im * wave.im;
     if (open == 0 && width > 0) {
-      char got[32];
-      std::snprintf(got, sizeof got, "%g MeV", width);
-      refuse_wave(row.id, "a width of 0 where the nominal masses forbid the decay", got);
+      if (!row.grid) refuse_wave(row.id, "a grid, since the nominal masses forbid the decay", "a width without one");
+      ready.grid = checked(*row.grid, row.id);
+      return ready;
     }
     const double scale =
         open > 0 ? width / open : row.identical_factor * wave.flavour_amplitude * wave.flavour_amplitude;
     if (!std::isfinite(scale) || !std::isfinite(open)) throw Damaged(row.id + ": expected finite amplitudes, got others");
     ready.waves.emplace_back(scale, std::move(k));
+  }
+  return ready;
+}
+
+// All rows; a remainder is constant above the lowest threshold of the rows that have daughters, if there are any.
+inline std::vector<ReadyRow> ready_rows(const Tables& tables, const Parent& parent) {
+  std::vector<ReadyRow> ready;
+  double lowest = std::numeric_limits<double>::infinity();
+  for (const Row& row : parent.rows) {
+    const ReadyRow& last = ready.emplace_back(ready_row(tables, parent, row));
+    if (!row.daughters.empty()) lowest = std::min(lowest, last.grid ? last.grid->threshold : last.threshold);
+  }
+  for (std::size_t k = 0; k < ready.size(); ++k) {
+    if (parent.rows[k].daughters.empty() && std::isfinite(lowest)) ready[k].threshold = lowest;
   }
   return ready;
 }
@@ -258,12 +305,10 @@ inline ReadyRow ready_row(const Tables& tables, const Parent& parent, const Row&
 // Throws Damaged for a width model, an option or a vertex this reader does not know.
 class ParentWidths {
  public:
-  ParentWidths(const Tables& tables, const Parent& parent) {
-    for (const Row& row : parent.rows) rows_.push_back(detail::ready_row(tables, parent, row));
-  }
+  ParentWidths(const Tables& tables, const Parent& parent) : rows_(detail::ready_rows(tables, parent)) {}
 
   // Partial width of a row, by its place in parent.rows, in MeV; mass in MeV. Throws std::invalid_argument for a mass
-  // that is not a finite number > 0 or so large that a width overflows, std::out_of_range for a row there is not.
+  // that is not a finite number > 0, past the end of a grid, or so large that a width overflows, std::out_of_range for a row there is not.
   double width(std::size_t row, double mass) const {
     if (!std::isfinite(mass) || !(mass > 0)) throw std::invalid_argument("mass: expected a finite number > 0 in MeV");
     const double width = rows_.at(row).width(mass);

@@ -13,6 +13,7 @@ import bisect
 import collections
 import hashlib
 import itertools
+import math
 import random
 import sys
 
@@ -21,7 +22,16 @@ from google.protobuf.message import DecodeError
 from couplet.v1 import decays_pb2
 from couplet_widths import Damaged, ParentWidths
 
-__all__ = ["Damaged", "Decayer", "NotOurs", "ParentWidths", "parent_named", "read_tables", "tables_from_bytes"]
+__all__ = [
+    "Damaged",
+    "Decayer",
+    "NotOurs",
+    "ParentWidths",
+    "draw_mass",
+    "parent_named",
+    "read_tables",
+    "tables_from_bytes",
+]
 
 KIND = b"couplet.v1.DecayTables"
 # Field 1000 with a length of 32: the digest is the last field of the file.
@@ -98,6 +108,18 @@ class Decayer:
     def draw(self, rng):
         """A row, drawn with a random.Random; a row without daughters is the remainder."""
         return self.rows[bisect.bisect_right(self._cumulative, rng.randrange(WHOLE))]
+
+
+def draw_mass(shape, rng):
+    """A mass in MeV from a parent's line_shape, drawn with a random.Random; a parent without one has its nominal mass."""
+    x, chance = shape.distances, shape.cumulative
+    if not (len(x) >= 2 and len(x) == len(chance) and shape.power > 0):
+        raise Damaged("line shape: expected distances and chances of two points or more, got others")
+    u = rng.random()
+    if u < chance[0]:
+        return shape.low + x[0] * (u / chance[0]) ** (1 / shape.power)
+    k = bisect.bisect_right(chance, u, 1, len(x) - 1) - 1
+    return shape.low + x[k] * (x[k + 1] / x[k]) ** (math.log(u / chance[k]) / math.log(chance[k + 1] / chance[k]))
 
 
 def parent_named(tables, name):

@@ -53,23 +53,30 @@ function batchOfWidths(
   };
 }
 
+/** What the encoder takes for a repeated double; arrays of this kind alone keep it fast. */
+type Doubles = Float64Array & number[];
+
+function doubles(length: number): Doubles {
+  return new Float64Array(length) as Doubles;
+}
+
 function widthsAt(
   parent: ServedParent,
   masses: readonly number[],
   where: (index: number) => string,
-): { totalWidths: number[]; widths: number[]; fractions: number[] } {
+): { totalWidths: Doubles; widths: Doubles; fractions: Doubles } {
   const evaluator = parent.evaluator();
   const { rowCount } = evaluator;
-  const widths = new Array<number>(masses.length * rowCount).fill(0);
-  const fractions = new Array<number>(widths.length).fill(0);
-  const totalWidths = masses.map((massMeV, k) => {
+  const totalWidths = doubles(masses.length);
+  const widths = doubles(masses.length * rowCount);
+  const fractions = doubles(widths.length);
+  for (const [k, massMeV] of masses.entries()) {
     requireMass(massMeV, k, where);
     const start = k * rowCount;
     const total = evaluator.widthsInto(massMeV, widths, start);
-    if (total > 0) {
-      for (let row = start; row < start + rowCount; row++) fractions[row] = widths[row]! / total;
-    }
-    return total;
-  });
+    totalWidths[k] = total;
+    if (total === 0) continue;
+    for (let row = start; row < start + rowCount; row++) fractions[row] = widths[row]! / total;
+  }
   return { totalWidths, widths, fractions };
 }

@@ -28,6 +28,7 @@ class Dump {
     std::snprintf(hex, sizeof hex, "%a", x);
     field(hex, std::isnan(x) || x == 0);
   }
+  void add(float x) { add(double{x}); }
   void add(std::uint32_t n) { field(std::to_string(n), n == 0); }
   void add(std::int32_t n) { field(std::to_string(n), n == 0); }
   template <class Enum, std::enable_if_t<std::is_enum_v<Enum>, bool> = true>
@@ -74,13 +75,21 @@ class Dump {
     const auto& [a, b, c, d, e, f, g, h] = wave;
     all(a, b, c, d, e, f, g, h);
   }
+  void add(const couplet::MassGrid& grid) {
+    const auto& [a, b, c, d] = grid;
+    all(a, b, c, d);
+  }
+  void add(const couplet::LineShape& shape) {
+    const auto& [a, b, c, d, e, f] = shape;
+    all(a, b, c, d, e, f);
+  }
   void add(const couplet::Row& row) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m] = row;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o] = row;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o);
   }
   void add(const couplet::Parent& parent) {
-    const auto& [a, b, c, d, e, f, g] = parent;
-    all(a, b, c, d, e, f, g);
+    const auto& [a, b, c, d, e, f, g, h] = parent;
+    all(a, b, c, d, e, f, g, h);
   }
   void add(const couplet::Tables& tables) {
     const auto& [a, b, c, d] = tables;

@@ -73,6 +73,11 @@ inline void set_every_field(google::protobuf::Message& message, int& count) {
       case FieldDescriptor::CPPTYPE_DOUBLE:
         many ? reflection->AddDouble(&message, f, n + 0.1) : reflection->SetDouble(&message, f, n + 0.1);
         break;
+      case FieldDescriptor::CPPTYPE_FLOAT: {
+        const float value = static_cast<float>(n) + 0.5f;
+        many ? reflection->AddFloat(&message, f, value) : reflection->SetFloat(&message, f, value);
+        break;
+      }
       case FieldDescriptor::CPPTYPE_BOOL:
         many ? reflection->AddBool(&message, f, true) : reflection->SetBool(&message, f, true);
         break;
