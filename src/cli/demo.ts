@@ -6,7 +6,7 @@ import { writeWhole } from "../tables/whole-file.js";
 import { DEMO_STUDY } from "./demo-study.js";
 import { describePulls } from "./fit.js";
 import { readInput } from "./read-input.js";
-import { withError } from "./rounding.js";
+import { withError } from "../tables/rounding.js";
 import { fitStudyFile } from "./run-study.js";
 import { describeParent } from "./show.js";
 import { writeTables } from "./tables.js";

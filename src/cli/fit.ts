@@ -1,5 +1,5 @@
 import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
-import { asGiven, significant, withError } from "./rounding.js";
+import { asGiven, significant, withError } from "../tables/rounding.js";
 import { fitStudyFile } from "./run-study.js";
 import { textTable } from "./text-table.js";
 

@@ -8,7 +8,7 @@ import { decodeFactors } from "../tables/decode-factors.js";
 import { checkSeal, digestOf, type TableKind } from "../tables/sealed-bytes.js";
 import { describeCouplings } from "./describe-couplings.js";
 import { readInput } from "./read-input.js";
-import { significant, withError } from "./rounding.js";
+import { significant, withError } from "../tables/rounding.js";
 import { textTable } from "./text-table.js";
 
 import v1 = couplet.v1;

@@ -20,6 +20,16 @@ export function chiSquareProbability(chi2: number, ndf: number): number {
 }
 
 /**
+ * Scale factor S = sqrt(chi2 / ndf) by which errors would have to grow for chi2 to equal its expectation; never below 1.
+ *
+ * Source: Particle Data Group, Review of Particle Physics, introduction, "Constrained fits". Provenance: memory.
+ * @returns undefined with no degrees of freedom
+ */
+export function scaleFactor(chi2: number, ndf: number): number | undefined {
+  return ndf > 0 ? Math.max(1, Math.sqrt(chi2 / ndf)) : undefined;
+}
+
+/**
  * Number of standard deviations on both sides of 0 that hold a given part of a Gaussian, e.g. 1.6449 for 0.9.
  *
  * The square root of the chi-square quantile with one degree of freedom, found by bisection on the tail.

@@ -1,6 +1,8 @@
 import { refuse, requirePositive } from "../require.js";
 import { gaussianDeviations } from "./chi-square.js";
 
+export { asymmetricSigma } from "./asymmetric-sigma.js";
+
 /** The average of several measurements of one quantity, and how well they agree. */
 export interface ScaledAverage {
   /** Weighted mean, weights 1/sigma^2. */
@@ -42,21 +44,6 @@ export function scaledAverage(values: readonly number[], sigmas: readonly number
     rows.reduce((sum, i) => sum + ((values[i]! - mean) / sigmas[i]!) ** 2, 0);
   const scale = used.length > 1 ? Math.max(1, Math.sqrt(chi2Of(used) / (used.length - 1))) : 1;
   return { mean, sigma, chi2: chi2Of(values.map((_, i) => i)), scale, used };
-}
-
-/**
- * Error of a measurement x +above -below as seen from a predicted value: `below` from x - below downwards, `above` from
- * x + above upwards, linear between them.
- *
- * Source: Particle Data Group, Review of Particle Physics, introduction, "Treatment of errors". Provenance: memory.
- * @param below - > 0; @param above - > 0
- * @throws InputError if an error is not positive
- */
-export function asymmetricSigma(value: number, below: number, above: number, predicted: number): number {
-  requirePositive("asymmetricSigma: below", below);
-  requirePositive("asymmetricSigma: above", above);
-  const part = (predicted - (value - below)) / (below + above);
-  return below + (above - below) * Math.min(Math.max(part, 0), 1);
 }
 
 /**

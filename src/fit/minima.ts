@@ -2,7 +2,12 @@ import { requireInteger, requirePositive } from "../require.js";
 import { chiSquareProbability } from "./chi-square.js";
 import { type CouplingBlock, flipBlock, standsInReportedSign } from "./coupling-blocks.js";
 import { curvatureAt, unscaledStep } from "./curvature.js";
-import { type FitResult, type FitVerdicts, levenbergMarquardt } from "./levenberg-marquardt.js";
+import {
+  type FitResult,
+  type FitVerdicts,
+  type LeastSquaresProblem,
+  levenbergMarquardt,
+} from "./levenberg-marquardt.js";
 import type { MinimaProblem } from "./minima-problem.js";
 import { type MinimaStart, minimaStarts } from "./minima-starts.js";
 import { sameValley } from "./valley.js";
@@ -132,7 +137,7 @@ function quickFit(problem: MinimaProblem, start: Vector): FitResult {
 }
 
 /** The minimum that a full fit reaches from one point, with all its digits; see its verdicts for whether it is one. */
-export function minimumNear(problem: MinimaProblem, start: Vector): Minimum {
+export function minimumNear(problem: LeastSquaresProblem, start: Vector): Minimum {
   return asMinimum(levenbergMarquardt(problem, start, { initialRadius: 0.1 }));
 }
 

@@ -42,7 +42,7 @@ const STIFFNESS = 0.1;
 const STIFF = 1e-4;
 const MAXIMUM_FITS = 40;
 /** Relative agreement of sqrt(delta chi-square); the slope then mends what is left, to its square. */
-const CLOSE = 1e-3;
+const CLOSE = 3e-4;
 /** Beyond so many times the expected width of the interval an end counts as open. */
 const FAR = 1e4;
 
@@ -156,18 +156,31 @@ class Profile {
 
   /** The end below (-1) or above (1) the value at the minimum. */
   end(side: 1 | -1): ProfileEnd {
-    const { axes, gradient, hessian, variation } = this.shape;
+    const { gradient, hessian, variation } = this.shape;
     const u = maximumOnSphere(
       gradient.map((value) => side * value),
       hessian.map((row) => row.map((value) => side * value)),
       this.height,
     );
-    const start = axes.reduce<Vector>((at, axis, k) => moved(at, axis, u[k]!), this.minimum.parameters);
+    const start = this.startAlong(side, u);
     if (side < 0 && this.least !== undefined && this.reachesLeast())
       return { value: this.least, kind: "least" };
     const expected = dot(gradient, u) + dot(u, hessian.map((row) => dot(row, u))) / 2;
     const first = Math.max(side * expected, 0.1 * variation);
     return this.crossing(side, start, first);
+  }
+
+  /** The point at u, or nearer to the minimum where the function there is not on the side it should be. */
+  private startAlong(side: 1 | -1, u: Vector): Vector {
+    const { parameters } = this.minimum;
+    for (let part = 1; part > 0.01; part /= 2) {
+      const start = this.shape.axes.reduce<Vector>(
+        (at, axis, k) => moved(at, axis, part * u[k]!),
+        parameters,
+      );
+      if (side * (this.f(start).value - this.value) > 0) return start;
+    }
+    return parameters;
   }
 
   /** Whether the function has its least possible value somewhere in the region. */
@@ -190,7 +203,7 @@ class Profile {
       const pull = softness * softness * this.height * slope;
       const point = this.pointNear(from, this.value + side * (distance + pull), softness);
       const reached = side * (point.value - this.value);
-      if (!Number.isFinite(point.height) || !(side * point.slope > 0)) break;
+      if (!Number.isFinite(point.slope) || side * point.slope <= 0) break;
       from = point.parameters;
       slope = side * point.slope;
       const missing = (this.height - point.height) / slope;

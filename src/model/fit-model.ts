@@ -3,11 +3,12 @@ import { InputError } from "../errors.js";
 import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
 import { findMinima, type MinimaProblem, type Minimum, minimumNear } from "../fit/minima.js";
 import { sumsOf } from "./breaking.js";
+import { chiSquareProblem } from "./chi-square-problem.js";
 import { type DistinctMinimum, distinctPhysics } from "./distinct-physics.js";
 import { decayHasFAndD, Evaluation, type Evaluator, evaluator } from "./evaluate.js";
 import { signProblem } from "./linear-forms.js";
 import type { Model, Observable, Parameter } from "./model.js";
-import { comparisons, type GradedResidual, priorResidual, reactionSigns } from "./residuals.js";
+import { comparisons, reactionSigns } from "./residuals.js";
 
 /** A parameter after the fit, or a number computed from fitted ones. */
 export interface FittedParameter {
@@ -146,29 +147,13 @@ export function minimaProblem(
   nuisance: readonly number[],
 ): MinimaProblem {
   const { model } = ready;
-  const constrained = model.parameters
-    .map((parameter, index) => ({ parameter, index }))
-    .filter(({ parameter }) => parameter.prior !== undefined);
-  const computed = (parameters: readonly number[]): readonly GradedResidual[] => [
-    ...comparisons(new Evaluation(ready, parameters), fitted),
-    ...constrained.map(({ parameter, index }) => priorResidual(parameter, index, parameters)),
-  ];
-  // A fit asks for residuals and for their derivatives at one point after the other: both come from one evaluation.
-  let last: { at: readonly number[]; terms: readonly GradedResidual[] } | undefined;
-  const terms = (parameters: readonly number[]): readonly GradedResidual[] => {
-    if (last === undefined || !last.at.every((value, k) => value === parameters[k]))
-      last = { at: [...parameters], terms: computed(parameters) };
-    return last.terms;
-  };
   const start = [...new Array<number>(model.couplingCount).fill(0), ...nuisance];
   return {
     parameterNames: model.parameters.map((parameter) => parameter.name),
     couplingCount: model.couplingCount,
     ...signProblem(new Evaluation(ready, start), fitted),
     nuisanceStarts: nuisance,
-    bounds: model.parameters.map(boundsOf),
-    residuals: (parameters) => terms(parameters).map((term) => term.residual),
-    jacobian: (parameters) => terms(parameters).map((term) => [...term.gradient]),
+    ...chiSquareProblem(ready, fitted),
   };
 }
 
@@ -190,11 +175,6 @@ function withResting(problem: MinimaProblem, resting: readonly boolean[], model:
     residuals: (parameters) => problem.residuals(awake(parameters, resting, model)),
     jacobian: (parameters) => problem.jacobian!(awake(parameters, resting, model)).map(moving),
   };
-}
-
-function boundsOf({ kind, start }: Parameter): { lower: number; upper: number } {
-  const isPositive = kind === "total width" || kind === "mass";
-  return { lower: isPositive ? 1e-3 * start : Number.NEGATIVE_INFINITY, upper: Number.POSITIVE_INFINITY };
 }
 
 /** Every coupling must enter some observable that is fitted, else the data say nothing about it. */

@@ -171,6 +171,37 @@ export interface Observable {
   readonly position: SourcePosition;
 }
 
+/** A measured value that stands in a table, whatever it is of. */
+export type TableValue = Pick<Observable, "label" | "measured" | "source" | "position">;
+
+/** What settles a mode: a part of a measured value, or a share of what the other rows leave. */
+export type ModeOrigin =
+  | {
+      readonly kind: "width" | "fraction";
+      /** Index into `Model.modeValues`. */
+      readonly value: number;
+      /** Part of the measured value that is this mode's. */
+      readonly share: number;
+      readonly split: boolean;
+    }
+  | { readonly kind: "remainder"; readonly weight: number; readonly source: string };
+
+/** A final state outside the symmetry: a row whose width grows as a power of the distance from threshold. */
+export interface Mode {
+  /** e.g. `N(1520)+ -> p gamma`. */
+  readonly id: string;
+  /** Hadrons, photons and leptons. */
+  readonly daughters: readonly Hadron[];
+  readonly thresholdMeV: number;
+  readonly power: number;
+  readonly weak: boolean;
+  /** Phase of the amplitude in radians; null where it is not known. */
+  readonly phaseRad: number | null;
+  readonly origin: ModeOrigin;
+  /** Path in the study, for messages. */
+  readonly path: string;
+}
+
 /** The width that the fractions of a parent refer to. */
 export interface TotalWidth {
   readonly kind: "measured" | "sum";
@@ -180,13 +211,15 @@ export interface TotalWidth {
   readonly minusMeV: number;
 }
 
-/** A parent of the table: one charge state of a member of a decaying multiplet. */
+/** A parent of the table: one charge state of a member of a decaying multiplet, or a hadron that has modes only. */
 export interface Parent {
   readonly hadron: Hadron;
+  /** Empty for a hadron that is in none. */
   readonly multiplet: string;
   readonly total: TotalWidth;
   /** Indices into `Model.channels`. */
   readonly channels: readonly number[];
+  readonly modes: readonly Mode[];
 }
 
 /** A study with everything looked up and every coefficient exact: plain data. */
@@ -199,6 +232,8 @@ export interface Model {
   readonly parents: readonly Parent[];
   readonly channels: readonly Channel[];
   readonly observables: readonly Observable[];
+  /** Measured values of modes; they are not fitted. */
+  readonly modeValues: readonly TableValue[];
   /** Approximations made, e.g. mixing that is ignored. */
   readonly notes: readonly string[];
   /** Editions of the data used. */

@@ -1,4 +1,4 @@
-import { asymmetricSigma } from "../fit/measurement-errors.js";
+import { asymmetricSigma } from "../fit/asymmetric-sigma.js";
 import type { Evaluation, Graded } from "./evaluate.js";
 import type { Observable, Parameter } from "./model.js";
 
@@ -15,7 +15,7 @@ export interface Comparison extends GradedResidual {
 }
 
 /** Amplitude that counts as one standard deviation when only the sign is known and comes out wrong. */
-const WRONG_SIGN = 0.01;
+export const WRONG_SIGN = 0.01;
 
 /**
  * Every fitted observable against its measurement.

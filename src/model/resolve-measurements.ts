@@ -25,7 +25,7 @@ function resolveMeasurement(
   context: Context,
   problems: Problems,
 ): Observable | undefined {
-  const { path, kind, channels, signOnly, source, use } = measurement;
+  const { path, signOnly, source, use } = measurement;
   const measured = withLimit(measurement.value);
   if (!requireError(measurement, problems)) return undefined;
   const quantum = quantumOf(measurement, path, context, problems);
@@ -33,11 +33,16 @@ function resolveMeasurement(
   const common = { measured, signOnly, source, use, position: problems.positionOf(path) };
   const observable = {
     ...common,
-    label: `${kind} ${channels.join(kind === "ratio" ? " / " : ", ")}`,
+    label: measurementLabel(measurement),
     quantum,
   };
   const normalisation = normalisationOf(measurement, path, context, problems);
   return normalisation === undefined ? observable : { ...observable, normalisation };
+}
+
+/** What a measurement is of, as every table prints it, e.g. `width N(1675) -> N pi`. */
+export function measurementLabel({ kind, channels }: StudyMeasurement): string {
+  return `${kind} ${channels.join(kind === "ratio" ? " / " : ", ")}`;
 }
 
 /** A value that enters the fit needs an error; notes where it has none. */

@@ -6,7 +6,7 @@ import {
 } from "../hadrons/multiplet.js";
 import { placeOf } from "../hadrons/place.js";
 import { refuse } from "../require.js";
-import type { Quantity, StudyAngle, StudyMember, StudyMixing } from "../study/study.js";
+import type { Quantity, StudyAngle, StudyMixing, StudyState } from "../study/study.js";
 import { mixingMatrix } from "./mixing-matrix.js";
 import type { Mixing, Parameter, Rotation } from "./model.js";
 import type { Problems } from "./problems.js";
@@ -156,7 +156,7 @@ function requireAlike(bare: readonly BareState[]): void {
 }
 
 /** A physical isospin multiplet, with the quantum numbers of its first bare state. */
-function physicalMember(state: Omit<StudyMember, "place">, bare: BareState): Member {
+function physicalMember(state: StudyState, bare: BareState): Member {
   const { multiplet, threeY, twoI } = bare;
   const particles = memberParticles({ threeY, twoI }, multiplet, state);
   const [member] = assembleMultiplet(multiplet.id, multiplet, [particles]).members;

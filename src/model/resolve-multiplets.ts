@@ -1,6 +1,7 @@
 import { findParticle } from "../hadrons/catalogue.js";
 import { catalogueMultiplet, catalogueMultipletIds } from "../hadrons/catalogue-multiplet.js";
 import { chargeStates } from "../hadrons/charge-states.js";
+import { gellMannOkuboMassMeV, type KnownMass, RELATION_ERROR_MEV } from "../hadrons/mass-relation.js";
 import {
   assembleMultiplet,
   type MemberParticles,
@@ -8,10 +9,10 @@ import {
   type MultipletQuantumNumbers,
 } from "../hadrons/multiplet.js";
 import { nearestNames } from "../hadrons/nearest-names.js";
-import type { Particle } from "../hadrons/particle.js";
+import { antiparticleName, type Particle } from "../hadrons/particle.js";
 import { placeOf } from "../hadrons/place.js";
 import { refuse } from "../require.js";
-import type { StudyChargeState, StudyMember, StudyMultiplet } from "../study/study.js";
+import type { StudyChargeState, StudyMember, StudyMultiplet, StudyState } from "../study/study.js";
 import { type IsospinMultiplet, parseIrrep } from "../su3/irrep.js";
 import type { Problems } from "./problems.js";
 
@@ -52,15 +53,32 @@ export function studyMultiplet(
   const path = `multiplets/${id}`;
   const irrep = problems.attempt(`${path}/irrep`, () => parseIrrep(written.irrep));
   if (irrep === undefined) return undefined;
+  const quantum = { irrep, ...quantumNumbers(written) };
+  const known: KnownMass[] = [];
+  const resolve = (member: StudyMember, k: number): MemberParticles | undefined =>
+    problems.attempt(`${path}/members/${k}`, () => {
+      const place = placeOf(irrep, member.place);
+      if (member.mass === "relation") return filledMember(place, quantum, member, known);
+      const { mass, ...rest } = member;
+      const particles = memberParticles(place, quantum, { ...rest, mass });
+      known.push({ ...place, massMeV: meanMassMeV(particles) });
+      return particles;
+    });
+  // Members to be filled come last, since they need the masses of the others; the order of the study stays.
+  const measured = written.members.map((member, k) =>
+    member.mass === "relation" ? undefined : resolve(member, k),
+  );
   const members = written.members.map((member, k) =>
-    problems.attempt(`${path}/members/${k}`, () =>
-      memberParticles(placeOf(irrep, member.place), { irrep, ...quantumNumbers(written) }, member),
-    ),
+    member.mass === "relation" ? resolve(member, k) : measured[k],
   );
   const usable = members.filter((member) => member !== undefined);
   if (usable.length < members.length) return undefined;
   const multiplet = problems.attempt(path, () =>
-    assembleMultiplet(id, { irrep, ...quantumNumbers(written) }, usable),
+    assembleMultiplet(
+      id,
+      quantum,
+      usable.map((member) => withCParity(member, written.cParity)),
+    ),
   );
   if (multiplet === undefined) return undefined;
   const summed = written.members
@@ -68,6 +86,33 @@ export function studyMultiplet(
     .flatMap((member) => multiplet.members.find(({ name }) => name === member.name)!.hadrons)
     .map((hadron) => hadron.name);
   return { multiplet, summed: new Set(summed) };
+}
+
+/** A meson multiplet's C parity is that of every member that is its own antiparticle. */
+function withCParity(member: MemberParticles, cParity: StudyMultiplet["cParity"]): MemberParticles {
+  if (cParity === null) return member;
+  const particles = member.particles.map((particle) =>
+    antiparticleName(particle) === null ? { ...particle, cParity } : particle,
+  );
+  return { ...member, particles };
+}
+
+function meanMassMeV({ particles }: MemberParticles): number {
+  return particles.reduce((sum, { massMeV }) => sum + massMeV, 0) / particles.length;
+}
+
+/** A member whose mass comes from the Gell-Mann-Okubo relation; its hadrons say so. */
+function filledMember(
+  place: IsospinMultiplet,
+  quantum: MultipletQuantumNumbers,
+  { name, mass: _, ...rest }: StudyMember,
+  known: readonly KnownMass[],
+): MemberParticles {
+  const value = gellMannOkuboMassMeV(known, place, quantum.baryonNumber === 0 ? 2 : 1);
+  const mass = { value, plus: RELATION_ERROR_MEV, minus: RELATION_ERROR_MEV, unit: "MeV" } as const;
+  const particles = memberParticles(place, quantum, { name, ...rest, mass });
+  const note = `The mass of ${name}, ${value.toFixed(1)} +- ${RELATION_ERROR_MEV} MeV, is filled by the relation of Gell-Mann and Okubo from unmixed members.`;
+  return { ...particles, notes: [note] };
 }
 
 function quantumNumbers({ twoJ, parity, baryonNumber }: StudyMultiplet) {
@@ -82,7 +127,7 @@ function quantumNumbers({ twoJ, parity, baryonNumber }: StudyMultiplet) {
 export function memberParticles(
   place: IsospinMultiplet,
   quantum: MultipletQuantumNumbers,
-  member: Omit<StudyMember, "place">,
+  member: StudyState,
 ): MemberParticles {
   const { mass, width } = member;
   const states = chargeStates(member.name, place, quantum, {
@@ -100,7 +145,7 @@ export function memberParticles(
 }
 
 /** A charge state's values: its own in the study, else the member's, else the catalogue's. */
-function particleOf(state: Particle, member: Omit<StudyMember, "place">, own: StudyChargeState): Particle {
+function particleOf(state: Particle, member: StudyState, own: StudyChargeState): Particle {
   const known = findParticle(state.name);
   const fromCatalogue = member.mass === undefined && own.mass === undefined;
   if (fromCatalogue && known === undefined) {

@@ -11,16 +11,18 @@ export interface FormProblem extends StudyProblem {
 
 /** The issues of a form check in words, each with where it is, what was expected and what came. */
 export function formProblems(issues: readonly Issue[], syntax: StudySyntax): FormProblem[] {
-  return issues.flatMap(unfoldUnion).map((issue) => {
-    const keys = issue.path;
-    const [unknown] = issue.code === "unrecognized_keys" ? issue.keys : [];
-    return {
-      keys,
-      path: keys.length === 0 ? "study" : keys.join("/"),
-      position: unknown === undefined ? syntax.positionOf(keys) : syntax.positionOfKey(keys, unknown),
-      text: `${issueText(issue, valueAt(syntax.plain, keys))}.`,
-    };
-  });
+  return issues
+    .flatMap((issue) => unfoldUnion(issue, syntax.plain))
+    .map((issue) => {
+      const keys = issue.path;
+      const [unknown] = issue.code === "unrecognized_keys" ? issue.keys : [];
+      return {
+        keys,
+        path: keys.length === 0 ? "study" : keys.join("/"),
+        position: unknown === undefined ? syntax.positionOf(keys) : syntax.positionOfKey(keys, unknown),
+        text: `${issueText(issue, valueAt(syntax.plain, keys))}.`,
+      };
+    });
 }
 
 function valueAt(plain: unknown, keys: readonly PropertyKey[]): unknown {
@@ -30,19 +32,30 @@ function valueAt(plain: unknown, keys: readonly PropertyKey[]): unknown {
   );
 }
 
-/** The alternative of a union that the value resembles most: the one with the fewest problems, keys unknown to it last. */
-function unfoldUnion(issue: Issue): Issue[] {
+/**
+ * The alternative of a union that the value resembles most: the one with the fewest problems, keys unknown to it last. The
+ * union's own words stand where no alternative comes near.
+ */
+function unfoldUnion(issue: Issue, plain: unknown): Issue[] {
   if (issue.code !== "invalid_union" || issue.errors.length === 0) return [issue];
-  const wrongness = (branch: readonly Issue[]) =>
-    branch.reduce(
-      (sum, inner) =>
-        sum +
-        (inner.code === "unrecognized_keys" ? 10 * inner.keys.length : inner.path.length === 0 ? 100 : 1),
-      0,
-    );
-  const best = [...issue.errors].sort((a, b) => wrongness(a) - wrongness(b))[0]!;
-  if (wrongness(best) >= 100) return [issue];
-  return best.flatMap((inner) => unfoldUnion({ ...inner, path: [...issue.path, ...inner.path] } as Issue));
+  const value = valueAt(plain, issue.path);
+  const best = [...issue.errors].sort((a, b) => wrongness(a, value) - wrongness(b, value))[0]!;
+  if (wrongness(best, value) >= FAR) return [issue];
+  return best.flatMap((inner) =>
+    unfoldUnion({ ...inner, path: [...issue.path, ...inner.path] } as Issue, plain),
+  );
+}
+
+const FAR = 100;
+
+function wrongness(branch: readonly Issue[], value: unknown): number {
+  const weights = branch.map((issue): number => {
+    if (issue.code === "unrecognized_keys") return 10 * issue.keys.length;
+    if (issue.path.length > 0) return 1;
+    // A number with a fault is best told what the fault is.
+    return issue.code === "custom" && /^\s*[-+.<\d]/.test(String(value)) ? 1 : FAR;
+  });
+  return weights.reduce((sum, weight) => sum + weight, 0);
 }
 
 function issueText(issue: Issue, value: unknown): string {

@@ -2,7 +2,14 @@ import { InputError, type SourcePosition } from "../errors.js";
 import { type FormProblem, formProblems } from "./form-problems.js";
 import { listProblems } from "./list-problems.js";
 import { type StudyDocument, studySchema } from "./schema.js";
-import type { Study, StudyMeasurement, StudyMember, StudyMultiplet, StudyProblem } from "./study.js";
+import type {
+  Study,
+  StudyMeasurement,
+  StudyMember,
+  StudyMode,
+  StudyMultiplet,
+  StudyProblem,
+} from "./study.js";
 import { readSyntax, type StudySyntax } from "./syntax.js";
 
 /** A study file that may have faults of form: what is sound in it, and what is not. */
@@ -47,7 +54,7 @@ export function draftStudy(bytes: Uint8Array, file: string): StudyDraft {
 }
 
 /** The lists of a study whose entries are checked one by one. */
-const LISTS = ["decays", "mixing", "quarkLine", "measurements", "priors"] as const;
+const LISTS = ["decays", "mixing", "quarkLine", "measurements", "modes", "particles", "priors"] as const;
 type List = (typeof LISTS)[number];
 
 /** For each list, which entry of the file stands at each index of what is left. */
@@ -147,15 +154,36 @@ function toStudy(document: StudyDocument, kept: Kept, syntax: StudySyntax, file:
     measurements: document.measurements.map((written, k) =>
       toMeasurement(written, pathOf("measurements", k)),
     ),
+    modes: document.modes.map((written, k) => toMode(written, pathOf("modes", k))),
+    particles: document.particles.map(({ spinParity, ...particle }, k) => ({
+      ...particle,
+      ...spinParity,
+      path: pathOf("particles", k),
+    })),
     normalisations: Object.fromEntries(
       Object.entries(document.normalisations).map(([name, q]) => [name, q.value]),
     ),
     priors: document.priors.map((prior, k) => ({ ...prior, path: pathOf("priors", k) })),
     fit: document.fit,
-    breaking: document.tables.breaking,
+    ...tableOptions(document.tables),
     hadronNames: hadronNamesOf(syntax.plain),
     positions: positionsOf(syntax),
   };
+}
+
+function tableOptions({ breaking, ...tables }: StudyDocument["tables"]): Pick<Study, "breaking" | "tables"> {
+  return { breaking, tables };
+}
+
+function toMode(written: StudyDocument["modes"][number], path: string): StudyMode {
+  const { mode, power, threshold, weak, phase, source } = written;
+  const value: StudyMode["value"] =
+    "remainder" in written
+      ? { kind: "remainder", weight: written.remainder }
+      : "width" in written
+        ? { kind: "width", measured: written.width }
+        : { kind: "fraction", measured: written.fraction };
+  return { path, mode, value, power, threshold, weak, phase, source };
 }
 
 function withChargeStates<T extends { chargeStates?: StudyMember["chargeStates"] | undefined }>(member: T) {

@@ -68,16 +68,16 @@ const spinParity = z
   .describe("Spin and parity, e.g. `5/2-`; of mesons also the C parity of their neutral members, e.g. `1--`");
 
 const spin = z
-  .union([z.string().regex(/^\d+(\/2)?$/), z.int().min(0)], { error: "expected a spin such as 1 or 3/2" })
+  .union([z.string().regex(/^\d+(\/2)?$/, { error: "expected a spin such as 1 or 3/2" }), z.int().min(0)], {
+    error: "expected a spin such as 1 or 3/2",
+  })
   .transform((text) => (String(text).endsWith("/2") ? Number.parseInt(String(text), 10) : 2 * Number(text)));
 
-const chargeState = z
-  .strictObject({
-    mass: mass.optional(),
-    width: width.optional(),
-    mcNumber: z.int().optional().describe("Monte Carlo number, where the catalogue has none or another"),
-  })
-  .describe("What one charge state has of its own");
+const chargeState = mapping({
+  mass: mass.optional(),
+  width: width.optional(),
+  mcNumber: z.int().optional().describe("Monte Carlo number, where the catalogue has none or another"),
+}).describe("What one charge state has of its own");
 
 const member = mapping({
   name: z.string().min(1).describe("Name of the isospin multiplet, e.g. `Lambda(1830)`"),
@@ -85,7 +85,12 @@ const member = mapping({
     .string()
     .min(1)
     .describe("Place in the irrep: N, Lambda, Sigma, Xi, Delta, Omega, pi, K, Kbar, eta, or `Y=0 I=1`"),
-  mass: mass.optional().describe("Default: of the catalogue, by name"),
+  mass: z
+    .union([z.literal("relation"), mass], {
+      error: "expected a mass > 0 with its unit, or `relation` for the Gell-Mann-Okubo relation",
+    })
+    .optional()
+    .describe("Mass, or `relation` to fill it from the other members. Default: of the catalogue, by name"),
   width: z
     .union([z.literal("sum"), width], { error: "expected a total width > 0 with its unit, or `sum`" })
     .optional()
@@ -164,7 +169,7 @@ const mixing = mapping({
     .min(2)
     .describe("Bare states as `multiplet/place`, e.g. `pseudoscalar-octet/eta`"),
   states: z
-    .array(member.omit({ place: true }))
+    .array(member.omit({ place: true, mass: true }).extend({ mass: mass.optional() }))
     .min(2)
     .describe("Physical states, as many as bare ones"),
   angle: angle.optional().describe("The angle of two states"),
@@ -211,9 +216,11 @@ const measurement = z.union(
     }),
     mapping({
       amplitude: pair.describe("Entrance and exit channel of one parent; the value is sqrt(G_i G_f)/G_total"),
-      value: z.union([z.enum(["+", "-"]), quantity("1", signedFraction)], {
-        error: "expected a signed number such as `-0.25 +- 0.03`, or `+` or `-` alone",
-      }),
+      value: z
+        .union([z.enum(["+", "-"]), quantity("1", signedFraction)], {
+          error: "expected a signed number such as `-0.25 +- 0.03`, or `+` or `-` alone",
+        })
+        .describe("The amplitude at resonance with its sign, or the sign alone"),
       sign: z
         .union([z.enum(["+", "-", "free"]), z.literal(1), z.literal(-1)])
         .default("free")
@@ -251,6 +258,62 @@ const relativeError = quantity("1", (q) =>
   q.value > 0 && q.value < 1 ? undefined : "expected a relative error > 0 and < 1",
 );
 
+const mode = z
+  .string()
+  .describe(
+    "A final state such as `N(1520)+ -> p gamma`, or with `+ c.c.` at its end that and its charge conjugate",
+  );
+const modeForm = {
+  power: z
+    .number()
+    .min(0)
+    .max(20)
+    .optional()
+    .describe(
+      "The width grows as the distance from threshold to this power. Default: (3n - 5)/2 for n daughters, 3 with one photon",
+    ),
+  threshold: mass.optional().describe("Default: the sum of the daughters' masses"),
+  weak: z.boolean().default(false).describe("Whether strangeness and charm may change"),
+  phase: quantity("rad").optional().describe("Phase of a weak amplitude, where neutral kaons interfere"),
+  source,
+};
+const measuredValue = (unit: "MeV" | "1", check: (q: Quantity) => string | undefined) =>
+  quantity(unit, (q) =>
+    q.limit === undefined ? check(q) : "expected a value, since an upper limit settles no row",
+  );
+
+const modeEntry = z.union(
+  [
+    mapping({ mode, fraction: measuredValue("1", fraction), ...modeForm }),
+    mapping({ mode, width: measuredValue("MeV", nonNegative), ...modeForm }),
+    mapping({
+      mode,
+      remainder: z
+        .number()
+        .positive()
+        .describe("Share of what the other rows leave of the total width, relative to other such modes"),
+      ...modeForm,
+    }),
+  ],
+  { error: "expected a mode: `mode` with one of `fraction`, `width` or `remainder`, and `source`" },
+);
+
+const particle = mapping({
+  name: z
+    .string()
+    .min(1)
+    .regex(/^\S+$/)
+    .describe("Its name with its charge, such as `a1(1260)+`; its antiparticle comes with it"),
+  mass: quantity("MeV", nonNegative),
+  width: width.optional().describe("Absent for a stable particle"),
+  charge: z.int(),
+  spinParity,
+  baryonNumber: z.int().default(0),
+  strangeness: z.int().default(0).describe("+1 for K+"),
+  charm: z.int().default(0),
+  mcNumber: z.int().optional().describe("Monte Carlo number"),
+});
+
 /** The form of a study file; from this one description come the checks and their messages. */
 export const studySchema = mapping({
   couplet: z.literal(1).describe("Version of the study format"),
@@ -272,6 +335,14 @@ export const studySchema = mapping({
     .array(measurement)
     .min(1)
     .describe("What has been measured: it fixes the couplings and stays as it is in the table"),
+  modes: z
+    .array(modeEntry)
+    .default([])
+    .describe("Measured decays outside the symmetry: three-body, radiative, weak; and what a remainder is"),
+  particles: z
+    .array(particle)
+    .default([])
+    .describe("Daughters of modes that neither the catalogue nor a multiplet has"),
   normalisations: z
     .record(z.string(), relativeError)
     .default({})
@@ -280,29 +351,28 @@ export const studySchema = mapping({
     .array(
       mapping({
         parameter: z.string().describe("Its name, as `couplet fit` prints it"),
-        value: z.union([quantity("1"), quantity("rad")]),
+        value: z.union([quantity("1"), quantity("rad")]).describe("What it is known to be, with an error"),
         source,
       }),
     )
     .default([])
     .describe("What is known beforehand of a coupling, an angle, F, D, F/D, alpha_F or alpha_D"),
-  fit: z
-    .strictObject({
-      mirrors: z
-        .enum(["refuse", "best", "each"])
-        .default("refuse")
-        .describe("Where the data allow several solutions: refuse, take the best, or write one file each"),
-      theoryError: z
-        .number()
-        .min(0)
-        .max(1)
-        .default(0)
-        .describe("Breaking of the symmetry in amplitude that enters the fit; 0 leaves it out"),
-      masses: z
-        .enum(["fixed", "vary"])
-        .default("vary")
-        .describe("Whether the parents' masses move within their errors"),
-    })
+  fit: mapping({
+    mirrors: z
+      .enum(["refuse", "best", "each"])
+      .default("refuse")
+      .describe("Where the data allow several solutions: refuse, take the best, or write one file each"),
+    theoryError: z
+      .number()
+      .min(0)
+      .max(1)
+      .default(0)
+      .describe("Breaking of the symmetry in amplitude that enters the fit; 0 leaves it out"),
+    masses: z
+      .enum(["fixed", "vary"])
+      .default("vary")
+      .describe("Whether the parents' masses move within their errors"),
+  })
     .prefault({})
     .describe("How the fit is made"),
   tables: mapping({
@@ -312,6 +382,22 @@ export const studySchema = mapping({
       .max(1)
       .default(0.2)
       .describe("Breaking of the symmetry in amplitude, for the errors of predicted rows"),
+    conflicts: z
+      .enum(["refuse", "constrained"])
+      .default("refuse")
+      .describe("Fractions that add up to more than 1: refuse, or move them within 2 sigma and flag the rows"),
+    neutralKaons: z
+      .enum(["flavour", "short-long"])
+      .default("flavour")
+      .describe("Neutral kaons as K0 and K0bar, or as K_S0 and K_L0"),
+    antiparticles: z
+      .enum(["implied", "rows"])
+      .default("implied")
+      .describe("Antiparticles of parents by charge conjugation in the reader, or with rows of their own"),
+    daughters: z
+      .enum(["external", "decayed"])
+      .default("external")
+      .describe("Short-lived ground states among the daughters: left to the reader, or decayed as measured"),
   })
     .prefault({})
     .describe("How the tables are made"),

@@ -21,8 +21,8 @@ export interface StudyMember {
   readonly name: string;
   /** Place in the irrep: a trade name such as `Lambda`, or `Y=0 I=1`. */
   readonly place: string;
-  /** Absent: the catalogue's, by the names of the charge states. */
-  readonly mass?: Quantity | undefined;
+  /** Absent: the catalogue's, by the names of the charge states; `relation`: filled from the other members. */
+  readonly mass?: Quantity | "relation" | undefined;
   /** Total width; `sum` takes the sum of the member's rows. Absent: the catalogue's. */
   readonly width?: Quantity | "sum" | undefined;
   /** What single charge states have of their own, by name. */
@@ -65,6 +65,9 @@ export interface StudyDecay {
   readonly daughters: "folded" | "nominal";
 }
 
+/** A member that stands at no place by itself. */
+export type StudyState = Omit<StudyMember, "place" | "mass"> & { readonly mass?: Quantity | undefined };
+
 /**
  * Physical states that mix: state k is the sum over r of U(k, r) times the bare state r, U orthogonal and built from
  * plane rotations, one angle for each pair of states in the order (1,2), (1,3), ..., (2,3), ...
@@ -75,7 +78,7 @@ export interface StudyMixing {
   /** Places of the bare states, `multiplet/place`, e.g. `pseudoscalar-octet/eta`. */
   readonly bare: readonly string[];
   /** As many states; `place` is absent. */
-  readonly states: readonly Omit<StudyMember, "place">[];
+  readonly states: readonly StudyState[];
   readonly angles: readonly StudyAngle[];
   /** How the angle of two states is meant; see the README. */
   readonly convention: "rotation" | "meson" | "quark";
@@ -125,6 +128,52 @@ export interface StudyPrior {
   readonly source: string;
 }
 
+/** A decay outside the symmetry: measured, or one that takes a part of the remainder. */
+export interface StudyMode {
+  /** Path in the file, for messages: its list and place in it. */
+  readonly path: string;
+  /** As written, e.g. `N(1520)+ -> p gamma`. */
+  readonly mode: string;
+  readonly value:
+    | { readonly kind: "width" | "fraction"; readonly measured: Quantity }
+    | { readonly kind: "remainder"; readonly weight: number };
+  /** Power of the distance from threshold; undefined where it follows from the daughters. */
+  readonly power?: number | undefined;
+  /** In MeV; undefined where it is the sum of the daughters' masses. */
+  readonly threshold?: Quantity | undefined;
+  readonly weak: boolean;
+  readonly phase?: Quantity | undefined;
+  readonly source: string;
+}
+
+/** A particle that a study adds to the catalogue, as a daughter of modes. */
+export interface StudyParticle {
+  /** Path in the file, for messages: its list and place in it. */
+  readonly path: string;
+  readonly name: string;
+  readonly mass: Quantity;
+  readonly width?: Quantity | undefined;
+  readonly charge: number;
+  readonly twoJ: number;
+  readonly parity: 1 | -1;
+  readonly cParity: 1 | -1 | null;
+  readonly baryonNumber: number;
+  readonly strangeness: number;
+  readonly charm: number;
+  readonly mcNumber?: number | undefined;
+}
+
+/** Policies of the tables, each by its name. */
+export interface StudyTableOptions {
+  /** What to do about fractions that add up to more than 1. */
+  readonly conflicts: "refuse" | "constrained";
+  readonly neutralKaons: "flavour" | "short-long";
+  /** Whether antiparticles of parents have rows of their own. */
+  readonly antiparticles: "implied" | "rows";
+  /** Whether short-lived ground states among the daughters are decayed as measured. */
+  readonly daughters: "external" | "decayed";
+}
+
 /** Something wrong in a study file, with where it stands. */
 export interface StudyProblem {
   /** Path of the value, such as `measurements/0/value`; empty for faults of syntax. */
@@ -146,10 +195,13 @@ export interface Study {
   /** Families of decays tied by the quark-line rule, by the decays' names. */
   readonly quarkLine: readonly (readonly string[])[];
   readonly measurements: readonly StudyMeasurement[];
+  readonly modes: readonly StudyMode[];
+  readonly particles: readonly StudyParticle[];
   /** Relative standard deviations of common normalisations, by name. */
   readonly normalisations: Readonly<Record<string, number>>;
   readonly priors: readonly StudyPrior[];
   readonly fit: StudyFitOptions;
+  readonly tables: StudyTableOptions;
   /** Breaking of the symmetry in amplitude, relative to a decay's coupling strength; for predictions' errors. */
   readonly breaking: number;
   /** Names of its own hadrons as written, even in entries that have faults. */

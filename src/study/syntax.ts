@@ -32,7 +32,6 @@ export function readSyntax(bytes: Uint8Array, file: string): StudySyntax {
   const text = decode(bytes, file);
   const lines = new LineCounter();
   const document = parseDocument(text, { lineCounter: lines, prettyErrors: false });
-  if (document.contents === null && document.errors.length === 0) throw emptyFile(file);
   const at = (offset: number): SourcePosition => {
     const { line, col } = lines.linePos(offset);
     return { file, line, column: col };
@@ -49,6 +48,8 @@ export function readSyntax(bytes: Uint8Array, file: string): StudySyntax {
   });
   if (faults.some(({ code }) => code !== "DUPLICATE_KEY")) throw new InputError(listProblems(problems));
   keepNumbersThatOverflow(document);
+  const plain = toPlain(document, at);
+  if (plain === null) throw emptyFile(file);
   const positionOf = (path: readonly PropertyKey[]): SourcePosition => {
     for (let length = path.length; length > 0; length--) {
       const node = document.getIn(path.slice(0, length), true);
@@ -58,7 +59,7 @@ export function readSyntax(bytes: Uint8Array, file: string): StudySyntax {
   };
   return {
     text,
-    plain: toPlain(document, at),
+    plain,
     problems,
     positionOf,
     positionOfKey(path, key) {

@@ -93,7 +93,7 @@ def every_model():
 
     def row(of, daughters, model, l):
         for number, chosen in enumerate(options[model]):
-            made = of.rows.add(id=f"{model} {number} L{l} {daughters}", identical_factor=0.5, parts_per_billion=0)
+            made = of.rows.add(id=f"{model} {number} L{l} {daughters}", identical_factor=0.5, parts_per_billion=0, threshold=900)
             for daughter in daughters:
                 made.daughters.add(name=daughter)
             # Closed rows have no amplitude at the nominal mass, only the fit's.

@@ -6,6 +6,7 @@ that a correct reader fails it with a chance of at most FALSE_ALARM; the seed is
 The test also proves that it can fail: draws compared with shifted fractions must be refused.
 """
 
+import bisect
 import collections
 import hashlib
 import math
@@ -76,11 +77,31 @@ def main(path):
     ok = powerful > 0
     print(f"{'ok' if ok else 'FAILED'}  shifted fractions are refused for {powerful} parents")
     passed, failed = passed + ok, failed + (not ok)
+    for ok, what in mass_checks(tables, rng):
+        print(f"{'ok' if ok else 'FAILED'}  {what}")
+        passed, failed = passed + ok, failed + (not ok)
     for ok, what in damage_checks(path):
         print(f"{'ok' if ok else 'FAILED'}  {what}")
         passed, failed = passed + ok, failed + (not ok)
     print(f"python draws: {passed} passed, {failed} failed (false-alarm rate {FALSE_ALARM:g}, seed {SEED})")
     return 1 if failed else 0
+
+
+def mass_checks(tables, rng):
+    """Masses drawn from line shapes, counted between the points of the shape."""
+    shapes = [parent.hadron.line_shape for parent in tables.parents if parent.hadron.HasField("line_shape")]
+    follow = powerful = 0
+    for shape in shapes:
+        points = list(shape.distances)[:-1]
+        chances = dict(enumerate(b - a for a, b in zip([0, *shape.cumulative], shape.cumulative)))
+        masses = [couplet_decays.draw_mass(shape, rng) for _ in range(DRAWS // 4)]
+        inside = all(shape.low <= mass <= shape.high * (1 + 1e-7) for mass in masses)
+        counts = collections.Counter(bisect.bisect_left(points, mass - shape.low) for mass in masses)
+        follow += inside and probability(counts, chances, len(masses)) >= FALSE_ALARM / len(shapes)
+        moved = {k: chances[(k + 1) % len(chances)] for k in chances}
+        powerful += probability(counts, moved, len(masses)) < FALSE_ALARM / len(shapes)
+    yield follow == len(shapes) > 0, f"masses drawn for {len(shapes)} parents follow their line shapes"
+    yield powerful == len(shapes), "line shapes moved by a point are refused"
 
 
 def damage_checks(path):

@@ -52,6 +52,17 @@ inline Header header(const v1::Header& m) {
   return h;
 }
 
+inline LineShape line_shape(const v1::LineShape& m) {
+  LineShape s;
+  s.low = number(m.has_low(), m.low());
+  s.high = number(m.has_high(), m.high());
+  s.normalisation = number(m.has_normalisation(), m.normalisation());
+  s.distances = list<float>(m.distances());
+  s.cumulative = list<float>(m.cumulative());
+  s.power = number(m.has_power(), m.power());
+  return s;
+}
+
 inline Hadron hadron(const v1::Hadron& m) {
   Hadron h;
   h.name = m.name();
@@ -68,6 +79,7 @@ inline Hadron hadron(const v1::Hadron& m) {
   h.charm = maybe(m.has_charm(), m.charm());
   h.antiparticle = maybe(m.has_antiparticle(), m.antiparticle());
   h.notes = list<std::string>(m.notes());
+  if (m.has_line_shape()) h.line_shape = line_shape(m.line_shape());
   return h;
 }
 
@@ -90,23 +102,14 @@ inline Wave wave(const v1::Wave& m) {
   w.model = m.model();
   w.options = list<Option>(m.options(), option);
   w.flavour_amplitude = number(m.has_flavour_amplitude(), m.flavour_amplitude());
+  w.kinematic_factor = number(m.has_kinematic_factor(), m.kinematic_factor());
+  w.unit = m.unit();
   return w;
 }
 
 inline MassGrid grid(const v1::MassGrid& m) {
   return {number(m.has_threshold(), m.threshold()), list<float>(m.distances()), list<float>(m.log_widths()),
           list<float>(m.slopes())};
-}
-
-inline LineShape line_shape(const v1::LineShape& m) {
-  LineShape s;
-  s.low = number(m.has_low(), m.low());
-  s.high = number(m.has_high(), m.high());
-  s.normalisation = number(m.has_normalisation(), m.normalisation());
-  s.distances = list<float>(m.distances());
-  s.cumulative = list<float>(m.cumulative());
-  s.power = number(m.has_power(), m.power());
-  return s;
 }
 
 inline Row row(const v1::Row& m) {
@@ -126,6 +129,8 @@ inline Row row(const v1::Row& m) {
   r.waves = list<Wave>(m.waves(), wave);
   r.integrated_fraction = maybe(m.has_integrated_fraction(), m.integrated_fraction());
   if (m.has_grid()) r.grid = grid(m.grid());
+  r.isospin_channel = m.isospin_channel();
+  r.isospin_coefficient = maybe(m.has_isospin_coefficient(), m.isospin_coefficient());
   return r;
 }
 
@@ -138,7 +143,6 @@ inline Parent parent(const v1::Parent& m) {
   p.total_origin = static_cast<TotalOrigin>(m.total_origin());
   p.rows = list<Row>(m.rows(), row);
   p.warnings = list<std::string>(m.warnings());
-  if (m.has_line_shape()) p.line_shape = line_shape(m.line_shape());
   return p;
 }
 

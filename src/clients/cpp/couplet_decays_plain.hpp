@@ -198,6 +198,20 @@ inline void read(Header& h, Wire wire) {
   }
 }
 
+inline void read(LineShape& s, Wire wire) {
+  while (wire.next()) {
+    switch (wire.number()) {
+      case 1: wire.get(s.low); break;
+      case 2: wire.get(s.high); break;
+      case 3: wire.get(s.normalisation); break;
+      case 4: wire.get(s.distances); break;
+      case 5: wire.get(s.cumulative); break;
+      case 6: wire.get(s.power); break;
+      default: wire.skip();
+    }
+  }
+}
+
 inline void read(Hadron& h, Wire wire) {
   while (wire.next()) {
     switch (wire.number()) {
@@ -215,6 +229,7 @@ inline void read(Hadron& h, Wire wire) {
       case 12: wire.zigzag(h.charm); break;
       case 13: wire.get(h.antiparticle); break;
       case 15: wire.get(h.notes); break;
+      case 16: wire.get(h.line_shape); break;
       default: wire.skip();
     }
   }
@@ -264,6 +279,8 @@ inline void read(Wave& w, Wire wire) {
       case 6: wire.get(w.model); break;
       case 7: wire.get(w.options); break;
       case 8: wire.get(w.flavour_amplitude); break;
+      case 9: wire.get(w.kinematic_factor); break;
+      case 10: wire.get(w.unit); break;
       default: wire.skip();
     }
   }
@@ -276,20 +293,6 @@ inline void read(MassGrid& g, Wire wire) {
       case 2: wire.get(g.distances); break;
       case 3: wire.get(g.log_widths); break;
       case 4: wire.get(g.slopes); break;
-      default: wire.skip();
-    }
-  }
-}
-
-inline void read(LineShape& s, Wire wire) {
-  while (wire.next()) {
-    switch (wire.number()) {
-      case 1: wire.get(s.low); break;
-      case 2: wire.get(s.high); break;
-      case 3: wire.get(s.normalisation); break;
-      case 4: wire.get(s.distances); break;
-      case 5: wire.get(s.cumulative); break;
-      case 6: wire.get(s.power); break;
       default: wire.skip();
     }
   }
@@ -313,6 +316,8 @@ inline void read(Row& r, Wire wire) {
       case 14: wire.get(r.waves); break;
       case 15: wire.get(r.integrated_fraction); break;
       case 16: wire.get(r.grid); break;
+      case 17: wire.get(r.isospin_channel); break;
+      case 18: wire.get(r.isospin_coefficient); break;
       default: wire.skip();
     }
   }
@@ -328,7 +333,6 @@ inline void read(Parent& p, Wire wire) {
       case 5: wire.get(p.total_origin); break;
       case 6: wire.get(p.rows); break;
       case 7: wire.get(p.warnings); break;
-      case 8: wire.get(p.line_shape); break;
       default: wire.skip();
     }
   }

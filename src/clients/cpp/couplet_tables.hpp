@@ -69,6 +69,13 @@ struct Header {
   double breaking = MISSING;
 };
 
+// Distribution of a hadron's mass; draw_mass draws from it.
+struct LineShape {
+  double low = MISSING, high = MISSING, normalisation = MISSING;
+  std::vector<float> distances, cumulative;
+  double power = MISSING;
+};
+
 struct Hadron {
   std::string name;
   std::optional<std::int32_t> mc_number;
@@ -78,6 +85,8 @@ struct Hadron {
   std::optional<std::int32_t> parity, charge, baryon_number, strangeness, charm;
   std::optional<std::string> antiparticle;
   std::vector<std::string> notes;
+  // Absent for a narrow hadron: it has its nominal mass.
+  std::optional<LineShape> line_shape;
 };
 
 struct Daughter {
@@ -103,6 +112,8 @@ struct Wave {
   std::string model;
   std::vector<Option> options;
   double flavour_amplitude = MISSING;
+  double kinematic_factor = MISSING;
+  std::string unit;
 };
 
 // Partial width against mass, for rows whose width has no closed form; ParentWidths evaluates it.
@@ -124,13 +135,8 @@ struct Row {
   std::vector<Wave> waves;
   std::optional<double> integrated_fraction;
   std::optional<MassGrid> grid;
-};
-
-// Distribution of a hadron's mass; draw_mass draws from it.
-struct LineShape {
-  double low = MISSING, high = MISSING, normalisation = MISSING;
-  std::vector<float> distances, cumulative;
-  double power = MISSING;
+  std::string isospin_channel;
+  std::optional<double> isospin_coefficient;
 };
 
 struct Parent {
@@ -140,8 +146,6 @@ struct Parent {
   TotalOrigin total_origin = TotalOrigin::unspecified;
   std::vector<Row> rows;
   std::vector<std::string> warnings;
-  // Absent for a narrow parent: it has its nominal mass.
-  std::optional<LineShape> line_shape;
 };
 
 struct Tables {

@@ -324,6 +324,42 @@ void draws(Checks& check, const Reader& reader, const std::string& bytes) {
         reader.name + ": draws with a generator of 31 bits follow the fractions");
 }
 
+// Masses drawn from line shapes, counted between the points of the shape; the same false-alarm rate as above.
+void masses(Checks& check, const std::string& bytes) {
+  const Tables tables = READERS[1].read(bytes, "f");
+  std::mt19937 rng(SEED % 4'000'000'000);
+  const auto shapes = std::count_if(tables.parents.begin(), tables.parents.end(),
+                                    [](const Parent& parent) { return parent.hadron.line_shape.has_value(); });
+  int follow = 0, powerful = 0;
+  for (const Parent& parent : tables.parents) {
+    if (!parent.hadron.line_shape) continue;
+    const couplet::LineShape& shape = *parent.hadron.line_shape;
+    std::vector<long> counts(shape.distances.size());
+    std::vector<double> chances;
+    double before = 0;
+    for (const float chance : shape.cumulative) {
+      chances.push_back(chance - before);
+      before = chance;
+    }
+    bool inside = true;
+    for (long k = 0; k < DRAWS / 4; ++k) {
+      const double mass = couplet::draw_mass(shape, rng);
+      inside = inside && mass >= shape.low && mass <= shape.high * (1 + 1e-7);
+      const auto bin = std::lower_bound(shape.distances.begin(), shape.distances.end() - 1, mass - shape.low);
+      ++counts[static_cast<std::size_t>(bin - shape.distances.begin())];
+    }
+    const double limit = FALSE_ALARM / static_cast<double>(shapes);
+    follow += inside && probability(counts, chances, DRAWS / 4) >= limit;
+    std::rotate(chances.begin(), chances.begin() + 1, chances.end());
+    powerful += probability(counts, chances, DRAWS / 4) < limit;
+  }
+  check(shapes > 0 && follow == shapes, "masses drawn for " + std::to_string(shapes) + " parents follow their line shapes");
+  check(powerful == shapes, "line shapes moved by a point are refused");
+  check.refused<Damaged>([&] { couplet::draw_mass(couplet::LineShape{}, rng); },
+                         "line shape: expected distances and chances of two points or more, got others",
+                         "an empty line shape is refused");
+}
+
 void widths(Checks& check, const Reader& reader, const std::string& bytes) {
   const Tables tables = reader.read(bytes, "f");
   int rows = 0, open = 0, nominal = 0, below = 0, fractions = 0, above = 0, closed = 0;
@@ -431,6 +467,7 @@ int main(int argc, char** argv) {
     draws(check, reader, bytes);
     widths(check, reader, bytes);
   }
+  masses(check, bytes);
   width_refusals(check, small);
   // The library would print a line for each text that is none.
   const google::protobuf::LogSilencer silence;

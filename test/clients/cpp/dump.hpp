@@ -56,8 +56,8 @@ class Dump {
     all(a, b, c, d, e, f, g, h, i, j, k);
   }
   void add(const couplet::Hadron& hadron) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n] = hadron;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o] = hadron;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o);
   }
   void add(const couplet::Daughter& daughter) {
     const auto& [a, b] = daughter;
@@ -72,8 +72,8 @@ class Dump {
     all(a, b, c);
   }
   void add(const couplet::Wave& wave) {
-    const auto& [a, b, c, d, e, f, g, h] = wave;
-    all(a, b, c, d, e, f, g, h);
+    const auto& [a, b, c, d, e, f, g, h, i, j] = wave;
+    all(a, b, c, d, e, f, g, h, i, j);
   }
   void add(const couplet::MassGrid& grid) {
     const auto& [a, b, c, d] = grid;
@@ -84,12 +84,12 @@ class Dump {
     all(a, b, c, d, e, f);
   }
   void add(const couplet::Row& row) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o] = row;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q] = row;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q);
   }
   void add(const couplet::Parent& parent) {
-    const auto& [a, b, c, d, e, f, g, h] = parent;
-    all(a, b, c, d, e, f, g, h);
+    const auto& [a, b, c, d, e, f, g] = parent;
+    all(a, b, c, d, e, f, g);
   }
   void add(const couplet::Tables& tables) {
     const auto& [a, b, c, d] = tables;

@@ -6,10 +6,30 @@
  * @returns e.g. `-0.240 +- 0.033`; without an error (0 or not finite) four significant digits
  */
 export function withError(value: number, error: number): string {
-  // An error lost in the digits of a double is none.
-  if (!(error > 1e-12 * Math.abs(value)) || !Number.isFinite(error)) return significant(value, 4);
+  if (!isError(value, error)) return significant(value, 4);
   const decimals = errorDecimals(error);
   return `${fixed(value, decimals)} +- ${fixed(error, decimals)}`;
+}
+
+/** A value with its upper and lower error, rounded as `withError`; the smaller error decides. */
+export interface RoundedValue {
+  readonly value: string;
+  /** Empty without errors. */
+  readonly plus: string;
+  readonly minus: string;
+}
+
+/** A value and two errors rounded by the same rule, as parts for a typesetter. */
+export function roundedValue(value: number, plus: number, minus: number): RoundedValue {
+  const errors = [plus, minus].filter((error) => isError(value, error));
+  if (errors.length === 0) return { value: significant(value, 4), plus: "", minus: "" };
+  const decimals = errorDecimals(Math.min(...errors));
+  return { value: fixed(value, decimals), plus: fixed(plus, decimals), minus: fixed(minus, decimals) };
+}
+
+/** An error lost in the digits of a double is none. */
+function isError(value: number, error: number): boolean {
+  return error > 1e-12 * Math.abs(value) && Number.isFinite(error);
 }
 
 /** A measurement with the digits its author gave, `20.4 +- 3.6` or `58 +4 -3`; noise of unit conversion drops out. */
