@@ -1,6 +1,8 @@
+import { formatRoot } from "../src/exact/signed-root.js";
 import { parseIrrep } from "../src/su3/irrep.js";
 import { isoscalarTable } from "../src/su3/isoscalar-factors.js";
 import { encodeFactors } from "../src/tables/encode-factors.js";
+import { ladderCopies, ladderProduct } from "../test/support/ladder-table.js";
 import { type ColdRun, coldRun } from "./cold-start.js";
 import { checkDense, denseProduct, denseSquares, denseStates } from "./dense-baseline.js";
 import { checkFinished } from "./engine-cases.js";
@@ -12,15 +14,18 @@ import { varintBytes } from "./varint-bytes.js";
  *
  * Finished: every factor of every copy as sign, numerator and denominator in lowest terms. Divided, within the same run,
  * by encoding that table to the bytes of a `couplet.v1.FactorTable` file, and by writing it as plain varints, the
- * shortest serialisation there is. Warm times, the fastest of the samples of one thread.
+ * shortest serialisation there is. Two rivals, both exact on all product states and checked to give the same answer:
+ * dense is elimination without fractions, lowering and squares in lowest terms, but leaves copies as they come; complete
+ * works in fractions and ends with every signed factor of every copy. Warm times, the fastest of the samples of one
+ * thread.
  */
 const ROWS = [
-  { name: "8x8", irrep: "8", factors: 86, dense: true },
-  { name: "27x27", irrep: "27", factors: 1801, dense: true },
-  { name: "64x64", irrep: "64", factors: 16_816, dense: true },
-  { name: "125x125", irrep: "125", factors: 97_225, dense: true },
-  { name: "(5,5)x(5,5)", irrep: "5,5", factors: 411_286, dense: false },
-  { name: "(6,6)x(6,6)", irrep: "6,6", factors: 1_397_921, dense: false },
+  { name: "8x8", irrep: "8", factors: 86 },
+  { name: "27x27", irrep: "27", factors: 1801 },
+  { name: "64x64", irrep: "64", factors: 16_816 },
+  { name: "125x125", irrep: "125", factors: 97_225 },
+  { name: "(5,5)x(5,5)", irrep: "5,5", factors: 411_286 },
+  { name: "(6,6)x(6,6)", irrep: "6,6", factors: 1_397_921 },
 ];
 
 /** Rows from here on give the growth of cost with the number of factors: (n,n)x(n,n), n = 3..6. */
@@ -34,9 +39,9 @@ interface Row {
 function main(quick: boolean): void {
   console.log(`Node ${process.version}, ${process.platform} ${process.arch}\n`);
   console.log(
-    "| product | factors | copies | finished | us/factor | / file bytes | / varints | dense / finished |",
+    "| product | factors | copies | finished | us/factor | / file bytes | / varints | dense / finished | complete / finished |",
   );
-  console.log("| --- | --- | --- | --- | --- | --- | --- | --- |");
+  console.log("| --- | --- | --- | --- | --- | --- | --- | --- | --- |");
   const rows = ROWS.map((row) => measuredRow(row, quick));
   const exponent = slope(rows.slice(GROWTH_FROM));
   console.log(`\nGrowth over (n,n)x(n,n), n = 3..6: time ~ factors^${exponent.toFixed(2)}.`);
@@ -48,7 +53,7 @@ function main(quick: boolean): void {
   for (const n of [1, 2, 3, 4, 6]) console.log(coldRow(n, coldRun(n, n, n < 6 ? 10 : 3)));
 }
 
-function measuredRow({ name, irrep: label, factors, dense }: (typeof ROWS)[number], quick: boolean): Row {
+function measuredRow({ name, irrep: label, factors }: (typeof ROWS)[number], quick: boolean): Row {
   const irrep = parseIrrep(label);
   const finished = () => isoscalarTable(irrep, irrep).columns();
   const table = isoscalarTable(irrep, irrep);
@@ -59,7 +64,8 @@ function measuredRow({ name, irrep: label, factors, dense }: (typeof ROWS)[numbe
   warmUp(() => varintBytes(columns), 0.2);
   const varints = measured(`${name} varints`, () => varintBytes(columns)).seconds;
   const file = measured(`${name} file`, () => encodeFactors(table, { states: false })).seconds;
-  const slow = dense && !(quick && factors > 10_000) ? denseSeconds(label, factors) / seconds : undefined;
+  const dense = factors < (quick ? 10_000 : 100_000) ? denseSeconds(label, factors) : undefined;
+  const complete = factors < (quick ? 10_000 : 20_000) ? completeSeconds(label) : undefined;
   const copies = table.series.reduce((sum, { multiplicity }) => sum + multiplicity, 0);
   const cells = [
     name,
@@ -69,7 +75,7 @@ function measuredRow({ name, irrep: label, factors, dense }: (typeof ROWS)[numbe
     ((seconds * 1e6) / factors).toFixed(2),
     (seconds / file).toPrecision(2),
     (seconds / varints).toPrecision(2),
-    slow?.toFixed(0) ?? "",
+    ...[dense, complete].map((slow) => (slow === undefined ? "" : (slow / seconds).toPrecision(2))),
   ];
   console.log(`| ${cells.join(" | ")} |`);
   return { factors, seconds };
@@ -90,6 +96,29 @@ function denseSeconds(label: string, factors: number): number {
   const start = performance.now();
   run();
   return (performance.now() - start) / 1e3;
+}
+
+/** The complete rival; its factors are compared with the engine's one by one. */
+function completeSeconds(label: string): number {
+  const irrep = parseIrrep(label);
+  const table = isoscalarTable(irrep, irrep);
+  const start = performance.now();
+  const product = ladderProduct(irrep, irrep);
+  const copies = table.series.map((entry) => ({ ...entry, found: ladderCopies(product, entry.irrep) }));
+  const seconds = (performance.now() - start) / 1e3;
+  const found = new Map<string, string>();
+  for (const { irrep: into, found: list } of copies) {
+    list.forEach((copy, i) => {
+      for (const [labels, value] of copy) found.set(`${into.p},${into.q} ${i + 1} ${labels}`, value);
+    });
+  }
+  let same = 0;
+  for (const { irrep: into, copy, value, ...x } of table.factors()) {
+    const labels = `${x.threeY},${x.twoI}|${x.threeY1},${x.twoI1},${x.threeY2},${x.twoI2}`;
+    if (found.get(`${into.p},${into.q} ${copy} ${labels}`) === formatRoot(value)) same++;
+  }
+  if (same !== found.size) throw new Error(`${label}: ${found.size - same} factors differ`);
+  return seconds;
 }
 
 /** Least-squares slope of log time against log number of factors. */

@@ -1,6 +1,6 @@
 // Speed of the sidecar as ratios against an echo service: same library, same sizes of messages, same clients.
 //
-//     ts-node -T bench/sidecar/run.ts [--rounds N] [--seconds S] [--rows N] [--cpp LOAD_CLIENT]
+//     ts-node -T bench/sidecar/run.ts [--rounds N] [--seconds S] [--rows N] [--only PATTERN] [--cpp LOAD_CLIENT]
 //
 // Needs `npm run build`. --rows: rows evaluated before memory is looked at again (default 10 million). --cpp: a compiled
 // load-client.cpp; without it the C++ rows are missing. Rounds alternate between the two servers, so that what else the
@@ -8,6 +8,7 @@
 import { type ChildProcess, execFileSync, spawn } from "node:child_process";
 import { readFileSync } from "node:fs";
 import { join } from "node:path";
+import { performance } from "node:perf_hooks";
 import { parseArgs } from "node:util";
 import { SidecarClient } from "../../src/clients/typescript/couplet-sidecar.js";
 import { couplet } from "../../src/gen/couplet.js";
@@ -21,6 +22,7 @@ const { values } = parseArgs({
     seconds: { type: "string", default: "3" },
     rows: { type: "string", default: "10000000" },
     cpp: { type: "string" },
+    only: { type: "string", default: "" },
   },
 });
 const ROUNDS = Number(values.rounds);
@@ -202,15 +204,19 @@ async function memory(port: number, pid: number, rowCount: number): Promise<void
 }
 
 async function main(): Promise<void> {
+  const began = performance.now();
   const child = sidecar();
   const port = await started(child, /127\.0\.0\.1:(\d+)/);
+  const startSeconds = (performance.now() - began) / 1000;
   const client = new SidecarClient(`127.0.0.1:${port}`);
   const rowCount = (await client.decayTable(PARENT.name)).parent.rows.length;
   client.close();
   process.stdout.write(
-    `Node ${process.version}; ${ROUNDS} rounds of ${SECONDS} s; ${PARENT.name} with ${rowCount} rows\n`,
+    `Node ${process.version}; ${ROUNDS} rounds of ${SECONDS} s; ${PARENT.name} with ${rowCount} rows\n` +
+      `start with the built-in tables: ${startSeconds.toFixed(2)} s, ${processorSeconds(child.pid!).toFixed(2)} s of processor time\n`,
   );
-  for (const one of cases(rowCount)) await compare(one, { port, pid: child.pid! });
+  const wanted = cases(rowCount).filter(({ name }) => new RegExp(values.only).test(name));
+  for (const one of wanted) await compare(one, { port, pid: child.pid! });
   await memory(port, child.pid!, rowCount);
   child.kill("SIGTERM");
 }

@@ -35,4 +35,7 @@ measurements:
     source: "invented: Larkfield, production"
   # This one does not agree with the others: watch its pull.
   - { width: Xi(1874) -> Sigma Kbar, value: 4.4 +- 2.2 MeV, source: "invented: an older run" }
+
+# Sigma0, eta and pi0 decay as measured (these decays are real), so that every cascade ends in particles that live long.
+tables: { daughters: decayed }
 `;

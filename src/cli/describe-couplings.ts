@@ -1,8 +1,8 @@
 import { equalRoots, formatRoot, ONE_ROOT } from "../exact/signed-root.js";
 import { couplet } from "../gen/couplet.js";
 import { rootOfExact } from "../tables/exact-message.js";
-import { fractionText } from "./labels.js";
 import { significant, withError } from "../tables/rounding.js";
+import { fractionText } from "./labels.js";
 import { textTable } from "./text-table.js";
 
 import v1 = couplet.v1;

@@ -1,12 +1,31 @@
+import { scaleFactor } from "../fit/chi-square.js";
 import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
 import { asGiven, significant, withError } from "../tables/rounding.js";
+import { describeUncertainties } from "./describe-uncertainty.js";
+import {
+  toyOptions,
+  type UncertaintyOptions,
+  uncertaintiesJson,
+  uncertaintiesOf,
+} from "./fit-uncertainty.js";
 import { fitStudyFile } from "./run-study.js";
 import { textTable } from "./text-table.js";
 
-/** `couplet fit`: every minimum of a study's fit, for people or as JSON. */
-export function runFit(path: string, options: { json?: true }): void {
+/** What `couplet fit` was asked for. */
+export interface FitOptions extends UncertaintyOptions {
+  readonly json?: true;
+}
+
+/** `couplet fit`: every minimum of a study's fit, and further errors of the best one, for people or as JSON. */
+export async function runFit(path: string, options: FitOptions): Promise<void> {
+  toyOptions(options);
   const fit = fitStudyFile(path);
-  process.stdout.write(options.json ? `${JSON.stringify(fitJson(fit), null, 2)}\n` : describeFit(fit));
+  const further = await uncertaintiesOf(fit, options);
+  process.stdout.write(
+    options.json
+      ? `${JSON.stringify({ ...fitJson(fit), ...uncertaintiesJson(fit, further) }, null, 2)}\n`
+      : describeFit(fit) + describeUncertainties(fit, further),
+  );
 }
 
 /** A fit as plain data for programs; minima best first. */
@@ -17,6 +36,7 @@ export function fitJson(fit: Fit) {
       chi2: minimum.chi2,
       ndf: minimum.ndf,
       probability: minimum.probability ?? null,
+      scaleFactor: scaleFactor(minimum.chi2, minimum.ndf) ?? null,
       parameters: minimum.parameters,
       covariance: minimum.covariance,
       pulls: minimum.pulls.map(({ observable, fitted, pull }) => ({
@@ -68,6 +88,11 @@ export function describeMinimum(minimum: StudyMinimum, title: string): string {
   const chance =
     minimum.probability === undefined ? "" : `, probability ${minimum.probability.toPrecision(3)}`;
   const head = `\n${title}: chi2 ${minimum.chi2.toFixed(2)} with ${minimum.ndf} degrees of freedom${chance}\n`;
+  const scale = scaleFactor(minimum.chi2, minimum.ndf) ?? 1;
+  const isScaled = scale >= 1.005;
+  const scaled = isScaled
+    ? `  in brackets: errors times the scale factor S = sqrt(chi2/ndf) = ${scale.toFixed(2)}; used nowhere else\n`
+    : "";
   const rank = ({ kind }: FittedParameter) =>
     (MAIN_KINDS.indexOf(kind) + MAIN_KINDS.length + 1) % (MAIN_KINDS.length + 1);
   const rows = [...minimum.parameters]
@@ -77,6 +102,7 @@ export function describeMinimum(minimum: StudyMinimum, title: string): string {
       withError(value, error),
       unit === "1" ? "" : unit,
       inDegrees(value, error, unit),
+      isScaled ? `(+- ${withError(value, scale * error).split(" +- ")[1] ?? "0"})` : "",
     ]);
   const signs = Object.entries(minimum.reactionSigns).map(
     ([reaction, sign]) => `  sign ${sign === 1 ? "+" : "-"} for ${reaction}\n`,
@@ -85,7 +111,9 @@ export function describeMinimum(minimum: StudyMinimum, title: string): string {
     minimum.equivalents === 0
       ? ""
       : `  ${minimum.equivalents} other sets of parameters predict exactly the same; they are not listed\n`;
-  return head + textTable(rows, { indent: 2 }) + signs.join("") + equivalents + describeVerdicts(minimum);
+  return (
+    head + textTable(rows, { indent: 2 }) + scaled + signs.join("") + equivalents + describeVerdicts(minimum)
+  );
 }
 
 function inDegrees(value: number, error: number, unit: string): string {

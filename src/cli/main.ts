@@ -3,10 +3,15 @@ import { isMainThread } from "node:worker_threads";
 import { Command, CommanderError } from "commander";
 import { CoupletError } from "../errors.js";
 import { packageVersion } from "../version.js";
+import type { AuditOptions } from "./audit.js";
+import type { CompareOptions } from "./compare.js";
+import type { ExportOptions } from "./export.js";
 import type { FactorsOptions } from "./factors.js";
+import type { FitOptions } from "./fit.js";
 import { needsOwnThread, runInOwnThread } from "./own-thread.js";
 import type { ProductOptions } from "./product.js";
 import type { ServeOptions } from "./serve.js";
+import type { ShowOptions } from "./show.js";
 
 // Each command's module is loaded when it runs, so that `couplet --help` starts fast.
 function program(): Command {
@@ -20,7 +25,7 @@ function program(): Command {
     .addHelpText(
       "after",
       `
-An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 3 a damaged or newer table file;
+An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 1 a comparison found differences; 2 wrong input; 3 a damaged or newer table file;
 4 a request too large; 70 a bug of ours; 130 stopped by the user.`,
     );
   root
@@ -63,10 +68,14 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
     .command("fit")
     .description("fit a study's reduced couplings: F and D, every minimum, pulls")
     .argument("<study>", "a study file (YAML)")
-    .option("--json", "minima, pulls and verdicts as JSON")
-    .action(async (study: string, options: { json?: true }) =>
-      (await import("./fit.js")).runFit(study, options),
-    );
+    .option("--profile", "68.3 and 95.4 % intervals by profile likelihood, right also near a zero")
+    .option("--toys <n>", "so many pseudo-experiments: quantiles, coverage, probability of chi2")
+    .option("--seed <n>", "with --toys: the seed (default: 1)")
+    .option("--workers <n>", "with --toys: threads (default: one a processor); results do not depend on it")
+    .option("--leave-one-out", "fits without each measurement in turn")
+    .option("--models", "fits with every other width model, and the parts of each prediction's error")
+    .option("--json", "all of this as JSON")
+    .action(async (study: string, options: FitOptions) => (await import("./fit.js")).runFit(study, options));
   root
     .command("couplings")
     .description("fit a study, print the coupling of every vertex, exact and as a number")
@@ -93,9 +102,34 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
     .description("what a table file holds, for people")
     .argument("<file>", "a .pb file written by Couplet")
     .option("--parent <name>", "only this hadron, in detail")
+    .option("--row <id>", "one row's number from its source on, e.g. 'Delta(1232)+ -> p pi0'")
     .option("--json", "canonical JSON of the message in the file")
-    .action(async (file: string, options: { parent?: string; json?: true }) =>
-      (await import("./show.js")).runShow(file, options),
+    .action(async (file: string, options: ShowOptions) => (await import("./show.js")).runShow(file, options));
+  root
+    .command("compare")
+    .description("what changed between two table files, by row, in percent and in sigma")
+    .argument("<first>", "a decay or coupling table file")
+    .argument("<second>", "another of the same kind")
+    .option("--percent <x>", "a change of more than x percent counts; 1 where neither is given")
+    .option("--sigma <y>", "one of more than y standard deviations of both counts; 1 where neither is given")
+    .option("--json", "every difference as JSON")
+    .action(async (first: string, second: string, options: CompareOptions) =>
+      (await import("./compare.js")).runCompare(first, second, options),
+    );
+  root
+    .command("export")
+    .description("a table file as comma-separated values, LaTeX, Les Houches accord text or JSON")
+    .argument("<file>", "a .pb file written by Couplet")
+    .requiredOption("--to <format>", "csv, latex, accord or json")
+    .option("-o, --out <file>", "where to write; printed without")
+    .option(
+      "--number <name=id>",
+      "accord: a Monte Carlo number for a hadron that has none; may be given again",
+      (text: string, before: string[] = []) => [...before, text],
+    )
+    .option("--rescale", "accord: scale modes up to 1 where a part of the width has no final state")
+    .action(async (file: string, options: ExportOptions) =>
+      (await import("./export.js")).runExport(file, options),
     );
   root
     .command("serve")
@@ -120,6 +154,14 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 2 wrong input; 
     .action(async (files: string[], options: ServeOptions) =>
       (await import("./serve.js")).runServe(files, options),
     );
+  root
+    .command("audit")
+    .description(
+      "check the coefficients: published tables, identities, rounding, and the last version's tables",
+    )
+    .option("--grid <n>", "identities over all products with p + q <= n in either factor", "2")
+    .option("--json", "every check as JSON")
+    .action(async (options: AuditOptions) => (await import("./audit.js")).runAudit(options));
   return root;
 }
 

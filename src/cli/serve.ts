@@ -18,13 +18,15 @@ export interface ServeOptions {
 
 const LOG_LEVELS = ["debug", "info", "warn", "error"];
 
-/** `couplet serve`: runs the sidecar until it is told to stop. SIGTERM drains, SIGHUP reads the files again. */
+/** `couplet serve`: runs the sidecar until it is told to stop. */
 export async function runServe(files: readonly string[], options: ServeOptions): Promise<void> {
   const drainSeconds = Number(options.drainSeconds);
   requireInteger("--drain-seconds", drainSeconds, 0, "", 3600);
   if (!LOG_LEVELS.includes(options.logLevel))
     refuse("--log-level", `one of ${LOG_LEVELS.join(", ")}`, options.logLevel);
   const log = pino({ level: options.logLevel, base: null }, pino.destination({ fd: 2, sync: true }));
+  // Before anything else, so that no signal is lost between a start that succeeded and its handlers.
+  const signals = new Signals(1000 * drainSeconds);
   const sidecar = await startSidecar({
     listen: parseAddress("--listen", options.listen),
     metrics: options.metrics === "none" ? undefined : parseAddress("--metrics", options.metrics),
@@ -40,8 +42,7 @@ export async function runServe(files: readonly string[], options: ServeOptions):
       log.error({ err: error }, "an error escaped its call; this is a bug");
     });
   }
-  process.on("SIGHUP", () => sidecar.replaceTables());
-  await stopped(sidecar, drainSeconds);
+  await signals.runUntilStopped(sidecar);
 }
 
 function tlsFiles({ tlsCert, tlsKey, tlsClientCa }: ServeOptions): TlsFiles | undefined {
@@ -51,21 +52,31 @@ function tlsFiles({ tlsCert, tlsKey, tlsClientCa }: ServeOptions): TlsFiles | un
   return { certificate: tlsCert, key: tlsKey, clientAuthorities: tlsClientCa };
 }
 
-/** Waits for SIGTERM or SIGINT and drains; a second one stops at once. */
-function stopped(sidecar: Sidecar, drainSeconds: number): Promise<void> {
-  return new Promise((resolve) => {
+/** SIGTERM and SIGINT drain, a second one or one during the start stops at once; SIGHUP reads the files again. */
+class Signals {
+  #sidecar: Sidecar | undefined;
+  #stopping = false;
+  #stopped: () => void = () => {};
+
+  constructor(private readonly drainMs: number) {
     // The command line's own handler leaves at once; here calls may run.
     process.removeAllListeners("SIGINT");
-    for (const [signal, exitCode] of [
-      ["SIGTERM", 0],
-      ["SIGINT", 130],
-    ] as const) {
-      process.once(signal, () => {
-        process.exitCode = exitCode;
-        process.once("SIGTERM", () => process.exit(exitCode));
-        process.once("SIGINT", () => process.exit(exitCode));
-        sidecar.drain(1000 * drainSeconds).then(resolve);
-      });
-    }
-  });
+    process.on("SIGTERM", () => this.#stop(0));
+    process.on("SIGINT", () => this.#stop(130));
+    process.on("SIGHUP", () => this.#sidecar?.replaceTables());
+  }
+
+  runUntilStopped(sidecar: Sidecar): Promise<void> {
+    this.#sidecar = sidecar;
+    return new Promise((resolve) => {
+      this.#stopped = resolve;
+    });
+  }
+
+  #stop(exitCode: number): void {
+    if (this.#sidecar === undefined || this.#stopping) process.exit(exitCode);
+    this.#stopping = true;
+    process.exitCode = exitCode;
+    this.#sidecar.drain(this.drainMs).then(this.#stopped);
+  }
 }

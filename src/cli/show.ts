@@ -5,19 +5,34 @@ import { canonicalJson } from "../tables/canonical-json.js";
 import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
 import { decodeFactors } from "../tables/decode-factors.js";
+import { significant, withError } from "../tables/rounding.js";
 import { checkSeal, digestOf, type TableKind } from "../tables/sealed-bytes.js";
 import { describeCouplings } from "./describe-couplings.js";
+import { describeRow, rowNamed } from "./describe-row.js";
 import { readInput } from "./read-input.js";
-import { significant, withError } from "../tables/rounding.js";
 import { textTable } from "./text-table.js";
 
 import v1 = couplet.v1;
 
+/** Options of `couplet show` as the command line gives them. */
+export interface ShowOptions {
+  readonly parent?: string;
+  readonly row?: string;
+  readonly json?: true;
+}
+
 /** `couplet show`: what a table file holds. */
-export function runShow(path: string, options: { parent?: string; json?: true }): void {
+export function runShow(path: string, options: ShowOptions): void {
   const bytes = readInput(path);
   const kind = checkSeal(bytes, path);
-  if (options.json) {
+  if (options.row !== undefined) {
+    const found = rowNamed(decodeDecays(bytes, path), options.row, path);
+    process.stdout.write(
+      options.json
+        ? `${JSON.stringify(canonicalJson("couplet.v1.Row", found.row), null, 2)}\n`
+        : describeRow(found),
+    );
+  } else if (options.json) {
     process.stdout.write(`${JSON.stringify(canonicalJson(kind, decoded(kind, bytes, path)), null, 2)}\n`);
   } else if (kind === "couplet.v1.DecayTables") {
     const tables = decodeDecays(bytes, path);
@@ -48,7 +63,7 @@ function parentNamed({ parents }: v1.DecayTables, name: string, path: string): v
 }
 
 function describeHeader(
-  { header, fit, parents, externals }: v1.DecayTables,
+  { header, fit, parents, externals, leftOpen }: v1.DecayTables,
   path: string,
   digest: string,
 ): string {
@@ -57,6 +72,7 @@ function describeHeader(
     `${path}: ${header.title}`,
     `decay tables by ${header.producer}, schema 1.${header.schemaMinor}, sha256 ${digest.slice(0, 16)}..., masses and widths in ${header.unit}`,
     `convention ${header.convention}; ${parents.length} parents; daughters to be known elsewhere: ${externals.map(({ name }) => name).join(", ")}`,
+    closureText(leftOpen, parents),
     `fit: minimum ${(fit?.used ?? 0) + 1} of ${fit?.minima?.length ?? 0} (mirrors: ${fit?.mirrors}), chi2 ${best?.chi2?.toFixed(2)} with ${best?.ndf} degrees of freedom`,
     ...(best?.parameters ?? []).map(
       ({ name, value, error, unit }) =>
@@ -68,8 +84,30 @@ function describeHeader(
   return `${lines.join("\n")}\n`;
 }
 
+/** What a generator must still decay by itself, and what it cannot decay. */
+function closureText(leftOpen: readonly string[], parents: readonly v1.Parent[]): string {
+  const open =
+    leftOpen.length === 0
+      ? "closed: every daughter has rows, lives long or is stable"
+      : `left open, to be decayed by the generator: ${leftOpen.join(", ")}`;
+  const undecayable = parents.filter(({ rows }) =>
+    rows.some(({ flags }) => (flags ?? []).includes(v1.Flag.FLAG_UNDECAYABLE)),
+  );
+  const names = undecayable.map(({ hadron }) => hadron?.name).join(", ");
+  return `cascades ${open}${names === "" ? "" : `; parents with a remainder that names no daughters: ${names}`}`;
+}
+
 const ORIGIN_WORDS = ["?", "measured", "predicted", "remainder"];
-const FLAG_WORDS = ["?", "isospin split", "undecayable", "near threshold", "small amplitude", "folded"];
+const FLAG_WORDS = [
+  "?",
+  "isospin split",
+  "undecayable",
+  "near threshold",
+  "small amplitude",
+  "folded",
+  "adjusted",
+  "weak",
+];
 
 /** One parent's table in words: fractions in percent with errors from data and, behind `br.`, from breaking. */
 export function describeParent(parent: v1.Parent): string {

@@ -1,42 +1,49 @@
 import { InputError } from "../errors.js";
 import { DaughterShapes } from "../model/daughter-shapes.js";
 import type { Fit } from "../model/fit-model.js";
-import type { Channel, Model, Observable, Quantum } from "../model/model.js";
-import { drawGrid } from "../widths/draw-mass.js";
-import type { LineShape } from "../widths/line-shape.js";
+import type { Channel, Model, Observable, Parent, Quantum } from "../model/model.js";
+import { withAntiparticles } from "./antiparticle-tables.js";
+import { checkRows } from "./check-rows.js";
+import { closureOf } from "./closure.js";
+import { measuredModes } from "./mode-rows.js";
+import { withShortAndLongKaons } from "./neutral-kaons.js";
 import { parentTable } from "./parent-table.js";
 import { type Predictions, predict } from "./predictions.js";
-import type { External, MassShape, ParentTable, Tables } from "./tables.js";
+import type { ParentTable, Tables } from "./tables.js";
 import { completeParent, type Entry } from "./total-width.js";
 
 /**
  * Complete decay tables of all members and charge states: what is measured stays, the rest is predicted, what is left
  * of a measured total width is an explicit remainder, and each parent's fractions add up to 10^9 parts exactly.
  *
+ * The study's policies come in this order: conflicts, antiparticles, neutral kaons. Every row is checked for what decays
+ * conserve, and every daughter is a parent or an external.
  * @param minimum - index of the minimum of the fit that predicts
  * @throws InputError naming the entries where measured and predicted fractions add up to more than 1
  */
 export function complete(fit: Fit, minimum: number): Tables {
   const { model } = fit;
+  const { tables: policies, file } = model.study;
   const predictions = predict(fit, minimum);
   const measured = measuredWidths(model, predictions);
   const shapes = new DaughterShapes();
   const problems: string[] = [];
-  const parents: ParentTable[] = [];
+  const plain: ParentTable[] = [];
   for (const parent of model.parents) {
-    const entries = parent.channels.map((index) => entryOf(model, predictions, index, measured));
-    const completed = completeParent(
-      parent,
-      entries,
-      predictions.minimum.covariance,
-      measured.observables,
-      model,
-    );
-    if ("conflict" in completed) problems.push(`${model.study.file}: ${completed.conflict}`);
-    else parents.push(parentTable(predictions, parent, entries, completed, shapes));
+    const entries = entriesOf(model, predictions, parent, measured);
+    const completed = completeParent(parent, entries, {
+      covariance: predictions.minimum.covariance,
+      values: [...measured.observables, ...model.modeValues],
+      conflicts: policies.conflicts,
+    });
+    if ("conflict" in completed) problems.push(`${file}: ${completed.conflict}`);
+    else plain.push(parentTable(predictions, parent, entries, completed, shapes));
   }
   if (problems.length > 0) throw new InputError(problems.join("\n"));
-  return { fit, minimum, parents, externals: externalDaughters(model, shapes) };
+  checkRows(plain);
+  const own = policies.antiparticles === "rows" ? withAntiparticles(plain) : plain;
+  const parents = policies.neutralKaons === "short-long" ? withShortAndLongKaons(own, file) : own;
+  return { fit, minimum, parents, externals: closureOf(parents, model, shapes) };
 }
 
 interface MeasuredShare {
@@ -114,11 +121,29 @@ function refuseClosed(model: Model, channel: number, observable: Observable): ne
   );
 }
 
+/** Entries of a parent: its channels, then its measured modes. */
+function entriesOf(model: Model, predictions: Predictions, parent: Parent, measured: Measured): Entry[] {
+  const channels = parent.channels.map((index) => entryOf(model, predictions, index, measured));
+  const modes = measuredModes(parent).map(({ id, origin }): Entry => {
+    const { kind, value, share, split } = origin;
+    return {
+      id,
+      kind: kind === "width" ? "measured width" : "measured fraction",
+      observable: measured.observables.length + value,
+      share,
+      value: model.modeValues[value]!.measured.value * share,
+      split,
+    };
+  });
+  return [...channels, ...modes];
+}
+
 function entryOf(model: Model, predictions: Predictions, index: number, measured: Measured): Entry {
-  const { id } = model.channels[index]!;
+  const { id, isospinChannel } = model.channels[index]!;
   const { widthMeV, gradient, breakingMeV } = predictions.channels[index]!;
   const found = measured.byChannel.get(index);
-  if (found === undefined) return { id, kind: "predicted", widthMeV, gradient, breakingMeV };
+  if (found === undefined)
+    return { id, kind: "predicted", widthMeV, gradient, breakingMeV, group: isospinChannel };
   const { quantum, measured: quantity } = measured.observables[found.observable]!;
   return {
     id,
@@ -128,23 +153,4 @@ function entryOf(model: Model, predictions: Predictions, index: number, measured
     value: quantity.value * found.share,
     split: found.split,
   };
-}
-
-function externalDaughters(model: Model, shapes: DaughterShapes): External[] {
-  const parents = new Set(model.parents.map(({ hadron }) => hadron.name));
-  const byName = new Map<string, External>();
-  const legs = model.channels.flatMap(({ waves }) =>
-    waves.flatMap(({ kinematics }) => kinematics.legs.slice(1)),
-  );
-  for (const placed of legs) {
-    const { hadron } = placed;
-    if (parents.has(hadron.name) || byName.has(hadron.name)) continue;
-    const shape = shapes.of(placed, "charge");
-    byName.set(hadron.name, shape === undefined ? { hadron } : { hadron, lineShape: massShape(shape) });
-  }
-  return [...byName.values()];
-}
-
-function massShape(shape: LineShape): MassShape {
-  return { windowMeV: shape.windowMeV, normalisation: shape.normalisation, draw: drawGrid(shape) };
 }

@@ -1,12 +1,13 @@
 import type { DaughterShapes } from "../model/daughter-shapes.js";
 import type { WaveKinematics } from "../model/kinematics.js";
-import type { Channel, Observable, Parent } from "../model/model.js";
+import type { Channel, Mode, Parent, TableValue } from "../model/model.js";
 import { widthModel } from "../widths/width-model.js";
+import { leftovers, measuredModes, modeFlags, modeRow, modeRunning } from "./mode-rows.js";
 import { partsPerBillion } from "./parts-per-billion.js";
 import type { Predictions } from "./predictions.js";
 import { runningRows } from "./running-rows.js";
 import type { Comparison, Flag, ParentTable, Row, RowWave } from "./tables.js";
-import type { Completed, Entry } from "./total-width.js";
+import type { Completed, CompletedRow, Entry } from "./total-width.js";
 
 /** Below this momentum, in MeV, phase space rules the width; common practice, as is one width above threshold. */
 const NEAR_THRESHOLD_MOMENTUM_MEV = 100;
@@ -23,50 +24,71 @@ export function parentTable(
   shapes: DaughterShapes,
 ): ParentTable {
   const { model } = predictions.fit;
-  const fractions = completed.estimates.map(({ fraction }) => fraction.value);
-  const remainder = completed.remainder;
-  const all = remainder === undefined ? fractions : [...fractions, remainder.fraction.value];
-  const parts = partsPerBillion(all, residueRow(entries, fractions, remainder !== undefined));
-  const waves = parent.channels.map((index, k) =>
-    wavesOf(predictions, index, completed.estimates[k]!.widthMeV.value),
-  );
+  const { estimates } = completed;
+  const modes = measuredModes(parent);
+  const left = leftovers(parent, completed.remainder);
+  const fractions = [...estimates, ...left].map(({ fraction }) => fraction.value);
+  const parts = partsPerBillion(fractions, residueRow(entries, fractions));
+  const waves = parent.channels.map((index, k) => wavesOf(predictions, index, estimates[k]!.widthMeV.value));
+  const ofMode = (k: number) => estimates[parent.channels.length + k]!;
+  const named = left.flatMap(({ mode, widthMeV }) => (mode === undefined ? [] : [{ mode, widthMeV }]));
   const running = runningRows(
     parent.hadron.massMeV,
     completed.totalMeV,
-    parent.channels.map((index, k) => ({
-      channel: model.channels[index]!,
-      strengths: strengthsOf(model.channels[index]!, waves[k]!),
-    })),
-    remainder?.widthMeV.value ?? 0,
+    [
+      ...parent.channels.map((index, k) => ({
+        channel: model.channels[index]!,
+        strengths: strengthsOf(model.channels[index]!, waves[k]!),
+      })),
+      ...modes.map((mode, k) => modeRunning(mode, ofMode(k).widthMeV.value)),
+      ...named.map(({ mode, widthMeV }) => modeRunning(mode, widthMeV.value)),
+    ],
+    left.find(({ mode }) => mode === undefined)?.widthMeV.value ?? 0,
     shapes,
   );
-  const integrated = (k: number) =>
-    running === undefined ? {} : { integratedFraction: running.integratedFractions[k]! };
+  /** What the place of a row among all rows decides. */
+  const placed = (k: number): Pick<Row, "partsPerBillion" | "integratedFraction" | "grid"> => {
+    const grid = running?.grids[k];
+    return {
+      partsPerBillion: parts[k]!,
+      ...(running === undefined ? {} : { integratedFraction: running.integratedFractions[k]! }),
+      ...(grid === undefined ? {} : { grid }),
+    };
+  };
+  const settled = (k: number): CompletedRow & Pick<Row, "origin" | "sources" | "measurement"> => ({
+    ...estimates[k]!,
+    ...provenanceOf(predictions, completed, entries[k]!),
+  });
+  const moved = (k: number): Flag[] => (estimates[k]!.unadjusted === undefined ? [] : ["adjusted"]);
   const rows = parent.channels.map((index, k): Row => {
     const channel = model.channels[index]!;
-    const { fraction, widthMeV } = completed.estimates[k]!;
-    const entry = entries[k]!;
-    const grid = running?.grids[k];
+    const flags = flagsOf(channel, entries[k]!, predictions.channels[index]!.relativeStrength);
     return {
       id: channel.id,
       daughters: channel.daughters,
-      partsPerBillion: parts[k]!,
-      fraction,
-      ...integrated(k),
-      widthMeV,
-      flags: flagsOf(channel, entry, predictions.channels[index]!.relativeStrength),
-      ...provenanceOf(predictions, completed, entry),
+      ...placed(k),
+      ...settled(k),
+      flags: [...flags, ...moved(k)],
       kinematics: kinematicsOf(channel),
       thresholdMeV: channel.thresholdMeV,
       momentumMeV: channel.momentumMeV,
       identicalFactor: channel.identicalFactor,
       waves: waves[k]!,
-      ...(grid === undefined ? {} : { grid }),
       isospin: { channel: channel.isospinChannel, coefficient: channel.isospinCoefficient },
     };
   });
-  if (remainder !== undefined) {
-    rows.push({ ...remainderRow(parent, parts.at(-1)!, remainder), ...integrated(rows.length) });
+  for (const mode of modes) {
+    const k = rows.length;
+    rows.push({
+      ...modeRow(parent, mode),
+      ...placed(k),
+      ...settled(k),
+      flags: [...modeFlags(mode), ...moved(k)],
+    });
+  }
+  for (const { mode, fraction, widthMeV } of left) {
+    const k = rows.length;
+    rows.push({ ...leftoverRow(parent, mode), ...placed(k), fraction, widthMeV });
   }
   return {
     parent,
@@ -93,11 +115,11 @@ function provenanceOf(
   entry: Entry,
 ): Pick<Row, "origin" | "sources" | "measurement"> {
   if (entry.kind === "predicted") return { origin: "predicted", sources: [] };
-  const observable = completed.observables[entry.observable]!;
+  const value = completed.values[entry.observable]!;
   return {
     origin: "measured",
-    sources: [observable.source],
-    measurement: { ...comparisonOf(predictions, observable), share: entry.share },
+    sources: [value.source],
+    measurement: { ...comparisonOf(predictions, value), share: entry.share },
   };
 }
 
@@ -117,23 +139,21 @@ function strengthsOf(channel: Channel, waves: readonly RowWave[]): number[] {
   });
 }
 
-/** Where the residue of rounding goes: the remainder, else the largest predicted row, else the largest row. */
-function residueRow(entries: readonly Entry[], fractions: readonly number[], hasRemainder: boolean): number {
-  if (hasRemainder) return fractions.length;
-  const largest = (wanted: (entry: Entry) => boolean) =>
-    fractions.reduce(
-      (best, f, k) => (wanted(entries[k]!) && (best < 0 || f > fractions[best]!) ? k : best),
-      -1,
-    );
-  const predicted = largest((entry) => entry.kind === "predicted");
+/** Where the residue of rounding goes: the largest of the remainder, else the largest predicted row, else the largest. */
+function residueRow(entries: readonly Entry[], fractions: readonly number[]): number {
+  const largest = (wanted: (k: number) => boolean) =>
+    fractions.reduce((best, f, k) => (wanted(k) && (best < 0 || f > fractions[best]!) ? k : best), -1);
+  const left = largest((k) => k >= entries.length);
+  if (left >= 0) return left;
+  const predicted = largest((k) => entries[k]!.kind === "predicted");
   return predicted >= 0 && fractions[predicted]! > 0 ? predicted : largest(() => true);
 }
 
-function comparisonOf(predictions: Predictions, observable: Observable): Omit<Comparison, "share"> {
-  const { value, plus, minus, unit } = observable.measured;
-  const pull = predictions.minimum.pulls.find((candidate) => candidate.observable === observable);
+function comparisonOf(predictions: Predictions, settling: TableValue): Omit<Comparison, "share"> {
+  const { value, plus, minus, unit } = settling.measured;
+  const pull = predictions.minimum.pulls.find(({ observable }) => observable === settling);
   return {
-    quantity: observable.label,
+    quantity: settling.label,
     value,
     plus,
     minus,
@@ -181,17 +201,18 @@ function amplitudeUnit({ L, model, spins }: WaveKinematics): string {
   return widthModel(model.id, model.options).amplitudeUnit({ L, parent, daughters });
 }
 
-function remainderRow(
+/** A row of what is left of the total width, with the daughters that the study names for it or without. */
+function leftoverRow(
   parent: Parent,
-  parts: number,
-  { fraction, widthMeV }: NonNullable<Completed["remainder"]>,
-): Row {
+  mode: Mode | undefined,
+): Omit<Row, "partsPerBillion" | "fraction" | "widthMeV"> {
+  if (mode !== undefined) {
+    const sources = mode.origin.kind === "remainder" ? [mode.origin.source] : [];
+    return { ...modeRow(parent, mode), origin: "remainder", flags: modeFlags(mode), sources };
+  }
   return {
     id: `${parent.hadron.name} -> (remainder)`,
     daughters: [],
-    partsPerBillion: parts,
-    fraction,
-    widthMeV,
     origin: "remainder",
     flags: ["undecayable"],
     sources: [],
@@ -204,7 +225,8 @@ function remainderRow(
 }
 
 function warningsOf(parent: Parent, { remainder }: Completed): string[] {
-  if (remainder === undefined || remainder.fraction.value <= 0.5) return [];
+  const isNamed = parent.modes.some(({ origin }) => origin.kind === "remainder");
+  if (remainder === undefined || isNamed || remainder.fraction.value <= 0.5) return [];
   const percent = (100 * remainder.fraction.value).toFixed(1);
   return [
     `${parent.hadron.name}: ${percent} % of the width has no channel in this study; do not rely on the fractions as a set.`,

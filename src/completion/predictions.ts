@@ -1,5 +1,6 @@
 import { Evaluation, evaluator } from "../model/evaluate.js";
 import type { Fit, StudyMinimum } from "../model/fit-model.js";
+import { widthBreakingMeV } from "../model/width-breaking.js";
 
 /** What one minimum of a fit says about one channel. */
 export interface Prediction {
@@ -24,13 +25,7 @@ export interface Predictions {
   readonly channels: readonly Prediction[];
 }
 
-/**
- * Amplitude and partial width of every charge channel at one minimum.
- *
- * Breaking adds amplitude: A -> A + breaking |g| z in each isospin channel, |g| the length of the decay's vector of
- * reduced couplings and z a standard normal number common to the channel's charge states; the width's standard
- * deviation is then K sqrt(4 A^2 s^2 + 2 s^4), s the amplitude's.
- */
+/** Amplitude and partial width of every charge channel at one minimum, with the error of breaking (`widthBreakingMeV`). */
 export function predict(fit: Fit, minimumIndex: number): Predictions {
   const minimum = fit.minima[minimumIndex]!;
   const evaluation = new Evaluation(evaluator(fit.model), minimum.vector);
@@ -43,19 +38,15 @@ export function predict(fit: Fit, minimumIndex: number): Predictions {
 }
 
 function predictChannel(evaluation: Evaluation, index: number): Prediction {
-  const { model } = evaluation;
-  const channel = model.channels[index]!;
+  const channel = evaluation.model.channels[index]!;
   const amplitudes = channel.waves.map((_, w) => evaluation.amplitude(index, w).value);
   const { value, gradient } = evaluation.width(index);
-  let variance = 0;
   let relativeStrength = 0;
   for (const w of channel.waves.keys()) {
     const isospinLength = Math.abs(channel.isospinCoefficient) * evaluation.couplingStrength(index, w).value;
-    const sigma = model.study.breaking * isospinLength;
-    const scale = channel.identicalFactor * evaluation.kinematicFactor(index, w);
-    variance += scale * scale * (4 * amplitudes[w]! ** 2 * sigma ** 2 + 2 * sigma ** 4);
     if (isospinLength > 0)
       relativeStrength = Math.max(relativeStrength, Math.abs(amplitudes[w]!) / isospinLength);
   }
-  return { widthMeV: value, gradient, breakingMeV: Math.sqrt(variance), amplitudes, relativeStrength };
+  const breakingMeV = widthBreakingMeV(evaluation, index);
+  return { widthMeV: value, gradient, breakingMeV, amplitudes, relativeStrength };
 }

@@ -19,11 +19,13 @@ export interface RunningRows {
   readonly grids: readonly (MassGrid | undefined)[];
 }
 
-/** A row as far as its running goes: its channel, and the strength of each wave, s |A|^2, that gives its width. */
-export interface RunningRow {
-  readonly channel: Channel;
-  readonly strengths: readonly number[];
-}
+/**
+ * A row as far as its running goes: its channel, and the strength of each wave, s |A|^2, that gives its width; or its width
+ * at the nominal mass and the power of the distance from threshold with which it grows.
+ */
+export type RunningRow =
+  | { readonly channel: Channel; readonly strengths: readonly number[] }
+  | { readonly widthMeV: number; readonly thresholdMeV: number; readonly power: number };
 
 /** A parent narrower than this part of its distance from threshold, or than a keV, has its nominal mass. */
 const NARROW = 1e-4;
@@ -49,7 +51,7 @@ export function runningRows(
   if (!(totalMeV > NARROW_MEV)) return undefined;
   // Grids follow their widths to 1e-4, and the window is made from their sum: a little more than the window.
   const topMeV = massMeV + WINDOW_WIDTHS * totalMeV * 1.001;
-  const widths = rows.map((row) => rowWidth(row, topMeV, shapes));
+  const widths = rows.map((row) => rowWidth(row, massMeV, topMeV, shapes));
   const open = widths.flatMap((width) =>
     width === undefined || width.running.widthMeV(massMeV) === 0 ? [] : [width.running],
   );
@@ -75,10 +77,17 @@ export function runningRows(
 
 /** A row's width against mass and its grid; undefined where it vanishes or opens above the window. */
 function rowWidth(
-  { channel, strengths }: RunningRow,
+  row: RunningRow,
+  massMeV: number,
   topMeV: number,
   shapes: DaughterShapes,
 ): { running: RunningWidth; grid: MassGrid } | undefined {
+  if ("power" in row) {
+    if (row.widthMeV === 0) return undefined;
+    const running = powerWidth(row.widthMeV, massMeV, row.thresholdMeV, row.power);
+    return { running, grid: massGrid(running, topMeV) };
+  }
+  const { channel, strengths } = row;
   const waves = channel.waves.flatMap((wave, w) =>
     strengths[w]! > 0 ? [{ channel: twoBodyChannel(wave.kinematics, shapes), strength: strengths[w]! }] : [],
   );

@@ -17,7 +17,14 @@ export interface Estimate {
 export type Origin = "measured" | "predicted" | "remainder";
 
 /** What a user of a row must know. */
-export type Flag = "isospin-split" | "folded" | "undecayable" | "near-threshold" | "small-amplitude";
+export type Flag =
+  | "isospin-split"
+  | "folded"
+  | "undecayable"
+  | "near-threshold"
+  | "small-amplitude"
+  | "adjusted"
+  | "weak";
 
 /** A measurement beside the fit's value of the same quantity. */
 export interface Comparison {
@@ -71,6 +78,28 @@ export interface Row {
   readonly grid?: MassGrid;
   /** Channel of whole isospin multiplets, and the SU(2) coefficient; absent outside the symmetry. */
   readonly isospin?: { readonly channel: string; readonly coefficient: number };
+  /** Power of the distance from threshold with which the width grows; of rows outside the symmetry. */
+  readonly power?: number;
+  /** Fraction and width before a policy moved them; absent for rows that stand as they were. */
+  readonly unadjusted?: { readonly fraction: Estimate; readonly widthMeV: Estimate };
+  /** Of a weak row without waves: the phase of its amplitude, where it is known. */
+  readonly amplitude?: { readonly phaseRad: number };
+  /** What a row with K_S0 or K_L0 is projected from; absent without a projection. */
+  readonly kaonFlavours?: readonly FlavourAmplitude[];
+}
+
+/**
+ * One flavour row behind a row with K_S0 or K_L0. The amplitude of the projected row is the sum over flavour rows of
+ * projection times amplitude, before it is squared.
+ */
+export interface FlavourAmplitude {
+  /** Id of the flavour row, e.g. `K*(892)+ -> K0 pi+`. */
+  readonly row: string;
+  /** Coefficient of the flavour state in the projected one, e.g. sqrt(1/2). */
+  readonly projection: number;
+  /** sqrt(MeV); by wave in the order of the row's waves, or one for a row without. */
+  readonly re: readonly number[];
+  readonly im: readonly number[];
 }
 
 /** Distribution of a hadron's mass. */
@@ -96,7 +125,12 @@ export interface ParentTable {
 export interface External {
   readonly hadron: Hadron;
   readonly lineShape?: MassShape;
+  /** How far the tables leave it to others; see `closureOf`. */
+  readonly life: Life;
 }
+
+/** What becomes of a hadron that is not decayed here: it is stable, it flies on before it decays, or it decays at once. */
+export type Life = "stable" | "flies" | "decays";
 
 /** Decay tables of all members and charge states of a study, for one minimum of its fit. */
 export interface Tables {
@@ -104,6 +138,6 @@ export interface Tables {
   /** Index of the minimum the rows use. */
   readonly minimum: number;
   readonly parents: readonly ParentTable[];
-  /** Daughters that are no parents of these tables. */
+  /** Daughters that are no parents of these tables; every daughter is one or the other. */
   readonly externals: readonly External[];
 }

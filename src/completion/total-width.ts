@@ -1,4 +1,6 @@
-import type { Model, Observable, Parent } from "../model/model.js";
+import type { Parent, TableValue } from "../model/model.js";
+import { constrainedFractions, smallestConflict } from "./constrained-fractions.js";
+import { ErrorSpace, type Gradient } from "./error-space.js";
 import type { Estimate } from "./tables.js";
 
 /** A row before its fraction is known. Gradients are with respect to the model's parameters. */
@@ -9,11 +11,13 @@ export type Entry =
       readonly widthMeV: number;
       readonly gradient: readonly number[];
       readonly breakingMeV: number;
+      /** Isospin channel: breaking moves its charge states together. */
+      readonly group: string;
     }
   | {
       readonly id: string;
       readonly kind: "measured width" | "measured fraction";
-      /** Index into the list of table observables. */
+      /** Index into the list of values that settle rows. */
       readonly observable: number;
       /** The row's part of the measured value. */
       readonly share: number;
@@ -22,33 +26,52 @@ export type Entry =
       readonly split: boolean;
     };
 
+/** A row's fraction and width; `unadjusted` where a policy moved them. */
+export interface CompletedRow {
+  readonly fraction: Estimate;
+  readonly widthMeV: Estimate;
+  readonly unadjusted?: { readonly fraction: Estimate; readonly widthMeV: Estimate };
+}
+
 /** A parent's fractions and widths, with errors, and what is left of its total width. */
 export interface Completed {
   readonly totalMeV: number;
   readonly totalErrorMeV: number;
-  readonly estimates: readonly { readonly fraction: Estimate; readonly widthMeV: Estimate }[];
+  readonly estimates: readonly CompletedRow[];
   readonly remainder?: { readonly fraction: Estimate; readonly widthMeV: Estimate };
-  readonly observables: readonly Observable[];
+  readonly values: readonly TableValue[];
+}
+
+/** How a parent is completed. */
+export interface CompletionOptions {
+  /** Covariance of the model's parameters. */
+  readonly covariance: readonly (readonly number[])[];
+  /** Measured values that entries refer to. */
+  readonly values: readonly TableValue[];
+  readonly conflicts: "refuse" | "constrained";
 }
 
 /** Sums of fractions may pass 1 by this through rounding of doubles. */
 const ROUNDING = 1e-9;
+
+/** Standard deviations by which fractions may be moved; common practice. */
+const CONSTRAINED_SIGMAS = 2;
 
 /**
  * Fractions of one parent from measured and predicted entries.
  *
  * A measured total width fixes the scale and leaves a remainder; `sum` makes the total the sum of the rows:
  * T = (sum of widths) / (1 - sum of measured fractions). Errors are linear, in the space of the model's parameters
- * (with the fit's covariance), the measured values and the total width (each independent).
+ * (with the fit's covariance), the measured values and the total width (each independent). Fractions that add up to more
+ * than 1 of a measured total are a conflict, unless the policy `constrained` brings them to 1 with a chi2 up to 4; then
+ * every row keeps its old value beside the new one.
  *
  * @returns the fractions, or a sentence naming the conflicting entries where they add up to more than 1
  */
 export function completeParent(
   parent: Parent,
   entries: readonly Entry[],
-  covariance: readonly (readonly number[])[],
-  observables: readonly Observable[],
-  model: Model,
+  { covariance, values, conflicts }: CompletionOptions,
 ): Completed | { conflict: string } {
   const widths = entries.map((entry) =>
     entry.kind === "predicted" ? entry.widthMeV : entry.kind === "measured width" ? entry.value : 0,
@@ -60,170 +83,121 @@ export function completeParent(
   const totalMeV = isSum ? widthTotal / (1 - fractionTotal) : parent.total.widthMeV;
   const fractions = entries.map((_, k) => fixed[k]! + widths[k]! / totalMeV);
   const excess = isSum ? (fractionTotal < 1 && widthTotal > 0 ? 0 : 1) : sumOf(fractions) - 1;
-  if (!(excess <= ROUNDING))
-    return { conflict: conflictText(parent, entries, fractions, observables, totalMeV) };
-  const space = new ErrorSpace(parent, entries, covariance, observables, model);
-  const totalGradient = space.total(isSum, fractionTotal, totalMeV);
-  const estimates = entries.map((entry, k) => space.estimates(entry, fractions[k]!, totalMeV, totalGradient));
-  const totalErrorMeV = isSum
-    ? space.sigma(totalGradient)
-    : (parent.total.plusMeV + parent.total.minusMeV) / 2;
-  const base = { totalMeV, totalErrorMeV, estimates, observables };
+  const isConflict = !(excess <= ROUNDING);
+  if (isConflict && (isSum || conflicts === "refuse"))
+    return { conflict: conflictText(parent, entries, fractions, values, totalMeV) };
+  const space = new ErrorSpace(parent, covariance, values, covariance.length);
+  const total = isSum ? space.summedTotal(entries, fractionTotal, totalMeV) : space.givenTotal();
+  const gradients = entries.map((entry, k) => space.fraction(entry, fractions[k]!, totalMeV, total));
+  const breaking = entries.map((entry) => (entry.kind === "predicted" ? entry.breakingMeV / totalMeV : 0));
+  const plain = entries.map((_, k) =>
+    space.estimates(fractions[k]!, gradients[k]!, breaking[k]!, totalMeV, total),
+  );
+  const totalErrorMeV = isSum ? space.sigma(total) : (parent.total.plusMeV + parent.total.minusMeV) / 2;
+  const base = { totalMeV, totalErrorMeV, values };
+  if (isConflict)
+    return adjusted({ parent, entries, fractions, gradients, breaking, plain, space, total, base });
   const left = 1 - sumOf(fractions);
-  if (isSum || left < ROUNDING / 2) return base;
-  return { ...base, remainder: space.remainder(entries, left, fractions, totalMeV, totalGradient) };
+  if (isSum || left < ROUNDING / 2) return { ...base, estimates: plain };
+  const remainder = space.combination(
+    entries.map(() => -1),
+    gradients,
+  );
+  const unknown = Math.hypot(...breaking);
+  return {
+    ...base,
+    estimates: plain,
+    remainder: space.estimates(left, remainder, unknown, totalMeV, total),
+  };
 }
 
 function sumOf(values: readonly number[]): number {
   return values.reduce((sum, value) => sum + value, 0);
 }
 
-/** A gradient over model parameters, then measured values (by observable), then the total width. */
-type Gradient = readonly number[];
+/** A parent whose fractions add up to more than 1, with everything known of it. */
+interface Conflict {
+  readonly parent: Parent;
+  readonly entries: readonly Entry[];
+  readonly fractions: readonly number[];
+  readonly gradients: readonly Gradient[];
+  /** Standard deviation of each fraction from breaking of the symmetry. */
+  readonly breaking: readonly number[];
+  readonly plain: readonly CompletedRow[];
+  readonly space: ErrorSpace;
+  readonly total: Gradient;
+  readonly base: Omit<Completed, "estimates">;
+}
 
-/** Linear error propagation for one parent. */
-class ErrorSpace {
-  private readonly parameterCount: number;
-  private readonly size: number;
+/** Fractions moved to add up to 1 within their errors, or the smallest set of entries that does not allow it. */
+function adjusted(conflict: Conflict): Completed | { conflict: string } {
+  const { entries, fractions, gradients, breaking, plain, space, total, base } = conflict;
+  const together = (i: number, j: number) => i === j || groupOf(entries[i]!) === groupOf(entries[j]!);
+  const broken = breaking.map((a, i) => breaking.map((b, j) => (together(i, j) ? a * b : 0)));
+  const covariance = gradients.map((a, i) =>
+    gradients.map((b, j) => space.covarianceOf(a, b) + broken[i]![j]!),
+  );
+  const { fractions: moved, chi2, projection } = constrainedFractions(fractions, covariance);
+  if (!(chi2 <= CONSTRAINED_SIGMAS ** 2)) return { conflict: beyondText(conflict, covariance, chi2) };
+  const estimates = entries.map((_, k): CompletedRow => {
+    const row = projection[k]!;
+    const variance = sumOf(row.map((a, i) => sumOf(row.map((b, j) => a * b * broken[i]![j]!))));
+    const gradient = space.combination(row, gradients);
+    const now = space.estimates(moved[k]!, gradient, Math.sqrt(Math.max(0, variance)), base.totalMeV, total);
+    const hasMoved = Math.abs(moved[k]! - fractions[k]!) > ROUNDING * fractions[k]!;
+    return hasMoved ? { ...now, unadjusted: plain[k]! } : plain[k]!;
+  });
+  return { ...base, estimates };
+}
 
-  constructor(
-    private readonly parent: Parent,
-    private readonly entries: readonly Entry[],
-    private readonly covariance: readonly (readonly number[])[],
-    private readonly observables: readonly Observable[],
-    model: Model,
-  ) {
-    this.parameterCount = model.parameters.length;
-    this.size = this.parameterCount + observables.length + 1;
-  }
+/** What moves together, and is named together: the rows of one measurement, or of one predicted isospin channel. */
+function groupOf(entry: Entry): string {
+  return entry.kind === "predicted" ? entry.group : `value ${entry.observable}`;
+}
 
-  private zero(): number[] {
-    return new Array<number>(this.size).fill(0);
-  }
+function beyondText(
+  { parent, entries, fractions, base }: Conflict,
+  covariance: readonly (readonly number[])[],
+  chi2: number,
+): string {
+  const names = [...new Set(entries.map(groupOf))];
+  const groups = names.map((name) => entries.flatMap((entry, k) => (groupOf(entry) === name ? [k] : [])));
+  const listed = smallestConflict(groups, fractions, covariance, CONSTRAINED_SIGMAS).map((g) => {
+    const members = groups[g]!;
+    const value = sumOf(members.map((k) => fractions[k]!));
+    const error = Math.sqrt(sumOf(members.map((i) => sumOf(members.map((j) => covariance[i]![j]!)))));
+    const ids = members.map((k) => entries[k]!.id).join(", ");
+    return `  ${value.toFixed(4)} +- ${error.toFixed(4)}  ${ids}  (${originText(entries[members[0]!]!, base.values)})`;
+  });
+  const { plusMeV, minusMeV } = parent.total;
+  const sigmas = Number.isFinite(chi2)
+    ? `${Math.sqrt(chi2).toFixed(1)} standard deviations`
+    : "without errors";
+  return [
+    `${parent.hadron.name}: expected fractions that come to 1 within ${CONSTRAINED_SIGMAS} standard deviations, got ${sumOf(fractions).toFixed(4)} of the total width ${base.totalMeV} +- ${((plusMeV + minusMeV) / 2).toFixed(1)} MeV, ${sigmas} too much. The smallest set that conflicts by itself:`,
+    ...listed,
+    "  Mend a value, give the member `width: sum`, or keep a measurement out of the table with `use: fit`.",
+  ].join("\n");
+}
 
-  /** Gradient of the part of an entry's width that does not scale with the total. */
-  private width(entry: Entry): number[] {
-    const gradient = this.zero();
-    if (entry.kind === "predicted") for (const [k, d] of entry.gradient.entries()) gradient[k] = d;
-    else if (entry.kind === "measured width") gradient[this.parameterCount + entry.observable] = entry.share;
-    return gradient;
-  }
-
-  private fixedFraction(entry: Entry): number[] {
-    const gradient = this.zero();
-    if (entry.kind === "measured fraction") gradient[this.parameterCount + entry.observable] = entry.share;
-    return gradient;
-  }
-
-  /** Gradient of the total width. */
-  total(isSum: boolean, fractionTotal: number, totalMeV: number): Gradient {
-    if (!isSum) {
-      const gradient = this.zero();
-      gradient[this.size - 1] = 1;
-      return gradient;
-    }
-    return this.zero().map(
-      (_, k) =>
-        sumOf(this.entries.map((entry) => this.width(entry)[k]! + totalMeV * this.fixedFraction(entry)[k]!)) /
-        (1 - fractionTotal),
-    );
-  }
-
-  private fraction(entry: Entry, widthPart: number, totalMeV: number, total: Gradient): number[] {
-    const width = this.width(entry);
-    const fixed = this.fixedFraction(entry);
-    return width.map((d, k) => fixed[k]! + (d - widthPart * total[k]!) / totalMeV);
-  }
-
-  estimates(
-    entry: Entry,
-    fraction: number,
-    totalMeV: number,
-    total: Gradient,
-  ): { fraction: Estimate; widthMeV: Estimate } {
-    const widthPart = entry.kind === "measured fraction" ? 0 : fraction;
-    const fractionGradient = this.fraction(entry, widthPart, totalMeV, total);
-    const widthGradient = fractionGradient.map((d, k) => d * totalMeV + fraction * total[k]!);
-    const breakingMeV = entry.kind === "predicted" ? entry.breakingMeV : 0;
-    return {
-      fraction: this.estimate(fraction, fractionGradient, breakingMeV / totalMeV),
-      widthMeV: this.estimate(fraction * totalMeV, widthGradient, breakingMeV),
-    };
-  }
-
-  remainder(
-    entries: readonly Entry[],
-    left: number,
-    fractions: readonly number[],
-    totalMeV: number,
-    total: Gradient,
-  ): { fraction: Estimate; widthMeV: Estimate } {
-    const gradient = this.zero();
-    for (const [k, entry] of entries.entries()) {
-      const part = this.fraction(
-        entry,
-        entry.kind === "measured fraction" ? 0 : fractions[k]!,
-        totalMeV,
-        total,
-      );
-      for (let j = 0; j < this.size; j++) gradient[j]! -= part[j]!;
-    }
-    const breaking = Math.hypot(
-      ...entries.map((entry) => (entry.kind === "predicted" ? entry.breakingMeV : 0)),
-    );
-    return {
-      fraction: this.estimate(left, gradient, breaking / totalMeV),
-      widthMeV: this.estimate(
-        left * totalMeV,
-        gradient.map((d, k) => d * totalMeV + left * total[k]!),
-        breaking,
-      ),
-    };
-  }
-
-  private estimate(value: number, gradient: Gradient, breaking: number): Estimate {
-    return { value, plus: this.side(gradient, 1), minus: this.side(gradient, -1), breaking };
-  }
-
-  sigma(gradient: Gradient): number {
-    return (this.side(gradient, 1) + this.side(gradient, -1)) / 2;
-  }
-
-  /** Standard deviation upwards (+1) or downwards (-1): measured values and the total may have different sides. */
-  private side(gradient: Gradient, direction: 1 | -1): number {
-    let variance = 0;
-    for (let i = 0; i < this.parameterCount; i++) {
-      for (let j = 0; j < this.parameterCount; j++)
-        variance += gradient[i]! * this.covariance[i]![j]! * gradient[j]!;
-    }
-    const { plusMeV, minusMeV } = this.parent.total;
-    const sides = this.observables.map(({ measured }) => measured);
-    for (const [k, { plus, minus }] of [...sides, { plus: plusMeV, minus: minusMeV }].entries()) {
-      const d = gradient[this.parameterCount + k]!;
-      variance += (d * (d * direction > 0 ? plus : minus)) ** 2;
-    }
-    return Math.sqrt(Math.max(0, variance));
-  }
+function originText(entry: Entry, values: readonly TableValue[]): string {
+  if (entry.kind === "predicted") return "predicted";
+  const { label, position } = values[entry.observable]!;
+  return `${label}, line ${position.line}`;
 }
 
 function conflictText(
   parent: Parent,
   entries: readonly Entry[],
   fractions: readonly number[],
-  observables: readonly Observable[],
+  values: readonly TableValue[],
   totalMeV: number,
 ): string {
   const listed = entries
     .map((entry, k) => ({ entry, fraction: fractions[k]! }))
     .filter(({ fraction }) => fraction > 0)
     .sort((a, b) => b.fraction - a.fraction)
-    .map(({ entry, fraction }) => {
-      const origin =
-        entry.kind === "predicted"
-          ? "predicted"
-          : `${observables[entry.observable]!.label}, line ${observables[entry.observable]!.position.line}`;
-      return `  ${fraction.toFixed(4)}  ${entry.id}  (${origin})`;
-    });
+    .map(({ entry, fraction }) => `  ${fraction.toFixed(4)}  ${entry.id}  (${originText(entry, values)})`);
   const { name } = parent.hadron;
   if (parent.total.kind === "sum") {
     return `${name}: the rows leave no total width to sum to. Give the member a total width, or measure one of its partial widths.`;

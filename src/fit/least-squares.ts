@@ -13,7 +13,7 @@ export interface LeastSquaresProblem {
 export interface FitOptions {
   /** Default 1000. */
   readonly maximumIterations?: number;
-  /** Converged when |U^T r| <= this times |r|, U spanning the columns of the Jacobian. Default 1e-7. */
+  /** Converged when |U^T r| <= this times |r|, U spanning the columns of the Jacobian. Default 1e-7. Given and without `refine`, it also ends the descent. */
   readonly offsetTolerance?: number;
   /** Converged when the scaled Gauss-Newton step is at most this times the scaled parameters. Default 1e-10. */
   readonly stepTolerance?: number;
@@ -45,6 +45,8 @@ export interface FitVerdicts {
   readonly iterations: number;
   /** Calls of `residuals`, those for numerical derivatives included. */
   readonly evaluations: number;
+  /** Linearised problems solved; Newton steps by the true Hessian not counted. */
+  readonly linearSolves: number;
   /** |U^T r| / |r| at the end; 0 at a stationary point. */
   readonly relativeOffset: number;
   /** Indices of the parameters held at a bound that the fit would like to cross. */

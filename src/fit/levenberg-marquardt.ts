@@ -66,6 +66,7 @@ class Search {
   private readonly typicalSizes: readonly number[];
   private iterations = 0;
   private evaluations = 0;
+  private linearSolves = 0;
   private ending: "iteration limit" | "no descent" | undefined;
   /** Decomposition and verdict at the present point, until it moves. */
   private linear: LinearModel | undefined;
@@ -94,6 +95,9 @@ class Search {
   descend(): void {
     const limit = this.options.maximumIterations ?? 1000;
     let radius = (this.options.initialRadius ?? 1) * (this.scaledLength(this.point.parameters) || 1);
+    // Where digits beyond the tolerance are not wanted, the descent ends with it.
+    const wanted = this.options.refine === false ? (this.options.offsetTolerance ?? 0) : 0;
+    const enough = Math.max(wanted, Math.sqrt(CHI2_RESOLUTION));
     const history: number[] = [];
     while (this.iterations < limit) {
       history.push(this.point.chi2);
@@ -102,7 +106,7 @@ class Search {
         history.length = 0;
       } else if (history.length > STALL_ITERATIONS) history.shift();
       const model = this.model();
-      if (offset(model, this.point) ** 2 <= CHI2_RESOLUTION || this.point.chi2 === 0) return;
+      if (offset(model, this.point) <= enough || this.point.chi2 === 0) return;
       if (this.gaussNewtonLength(model) <= 1e-13 * this.size()) return;
       this.iterations++;
       const next = this.descentFrom(model, radius);
@@ -224,6 +228,7 @@ class Search {
         stoppedBy,
         iterations: this.iterations,
         evaluations: this.evaluations,
+        linearSolves: this.linearSolves,
         relativeOffset: offset(estimate.model, this.point),
         atBound: this.heldAtBound(),
         covariancePositiveDefinite: estimate.degenerateDirections.length === 0,
@@ -293,6 +298,7 @@ class Search {
   }
 
   private decomposed(): LinearModel {
+    this.linearSolves++;
     const held = this.heldAtBound();
     const columns = this.scales.map((_, j) => j).filter((j) => !held.includes(j));
     return linearModel(

@@ -43,6 +43,8 @@ const STIFF = 1e-4;
 const MAXIMUM_FITS = 40;
 /** Relative agreement of sqrt(delta chi-square); the slope then mends what is left, to its square. */
 const CLOSE = 3e-4;
+/** Where chi-square has kinks fits stop a little beside the profile: this relative width of the bracket must do. */
+const NARROW = 2e-3;
 /** Beyond so many times the expected width of the interval an end counts as open. */
 const FAR = 1e4;
 
@@ -165,7 +167,13 @@ class Profile {
     const start = this.startAlong(side, u);
     if (side < 0 && this.least !== undefined && this.reachesLeast())
       return { value: this.least, kind: "least" };
-    const expected = dot(gradient, u) + dot(u, hessian.map((row) => dot(row, u))) / 2;
+    const expected =
+      dot(gradient, u) +
+      dot(
+        u,
+        hessian.map((row) => dot(row, u)),
+      ) /
+        2;
     const first = Math.max(side * expected, 0.1 * variation);
     return this.crossing(side, start, first);
   }
@@ -211,6 +219,8 @@ class Profile {
         return { value: this.value + side * (reached + missing), kind: "crossed" };
       if (missing > 0) inside = Math.max(inside, reached);
       else outside = Math.min(outside, reached);
+      if (outside - inside < NARROW * outside)
+        return { value: this.value + (side * (inside + outside)) / 2, kind: "crossed" };
       distance = Math.min(reached + missing, 4 * Math.max(reached, first));
       if (!(distance > inside && distance < outside)) {
         if (outside === Number.POSITIVE_INFINITY) distance = 2 * Math.max(inside, first);

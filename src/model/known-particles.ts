@@ -47,10 +47,9 @@ export class KnownParticles {
   }
 
   #addOwn(written: StudyParticle): void {
-    const { name, mass, width, spinParity: _, ...numbers } = { ...written, spinParity: null };
+    const { name, mass, width } = written;
     if (this.#find(name) !== undefined)
-      refuse(`${written.path}/name`, "a particle that is not known yet", name, "Leave it out.");
-    const { twoJ, parity, cParity, charge, baryonNumber, strangeness, charm } = numbers;
+      refuse(name, "a particle that is not known yet", name, "Leave it out.");
     const particle: Particle = {
       name,
       mcNumber: written.mcNumber ?? null,
@@ -58,14 +57,21 @@ export class KnownParticles {
       massErrorMeV: { plus: mass.plus, minus: mass.minus },
       widthMeV: width?.value ?? null,
       widthErrorMeV: width === undefined ? null : { plus: width.plus, minus: width.minus },
-      // Of no use here: a particle written by itself is in no isospin multiplet.
-      twoI: 0,
+      // Nothing reads this; what the study says of isospin goes with the name.
+      twoI: written.twoI ?? 0,
+      twoJ: written.twoJ,
+      parity: written.parity,
+      cParity: written.cParity,
       gParity: null,
+      charge: written.charge,
+      strangeness: written.strangeness,
+      charm: written.charm,
+      baryonNumber: written.baryonNumber,
       chargeAveraged: false,
-      ...{ twoJ, parity, cParity, charge, baryonNumber, strangeness, charm },
     };
     for (const each of [particle, antiparticle(particle)]) {
-      if (each !== null) this.#add({ hadron: bareHadron(each), member: each.name, twoI: null });
+      if (each !== null)
+        this.#add({ hadron: bareHadron(each), member: each.name, twoI: written.twoI ?? null });
     }
   }
 

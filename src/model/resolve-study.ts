@@ -14,6 +14,7 @@ import { Problems } from "./problems.js";
 import { resolveDecays } from "./resolve-decays.js";
 import { resolveMeasurements } from "./resolve-measurements.js";
 import { type MixedStates, resolveMixing } from "./resolve-mixing.js";
+import { resolveModes } from "./resolve-modes.js";
 import { type StudyBoundMultiplet, studyMultiplet } from "./resolve-multiplets.js";
 import { resolvePriors } from "./resolve-priors.js";
 import type { NamedMember } from "./width-sums.js";
@@ -44,6 +45,7 @@ export function resolveStudy(study: Study, earlier: readonly StudyProblem[] = []
     ...resolveMeasurements(context, problems),
     ...resolvePriors(study, decays, parameters, problems),
   ];
+  const modes = resolveModes(study, parents, plain, placedInDecays(decays, groups), problems);
   problems.throwIfAny();
   const channels = withBreaking(study, plain, observables, parameters);
   return {
@@ -52,11 +54,12 @@ export function resolveStudy(study: Study, earlier: readonly StudyProblem[] = []
     couplingCount: couplings.length,
     decays,
     mixing: groups.map(({ mixing }) => mixing),
-    parents,
+    parents: modes.parents,
     channels,
     observables,
+    modeValues: modes.values,
     notes: notesOf(decays, groups),
-    editions: [`hadrons: ${catalogueEdition().edition}, ${catalogueEdition().source}`],
+    editions: [`hadrons: ${catalogueEdition().edition}, ${catalogueEdition().source}`, ...modes.editions],
   };
 }
 
@@ -88,7 +91,7 @@ function parentsOf(
         continue;
       }
       const mine = channels.flatMap(({ parent }, index) => (parent.name === hadron.name ? [index] : []));
-      parents.push({ hadron, multiplet: from.id, total, channels: mine });
+      parents.push({ hadron, multiplet: from.id, total, channels: mine, modes: [] });
     }
   }
   return parents;

@@ -46,6 +46,11 @@ export class Client {
   closeStream(): void {
     this.#streams--;
   }
+
+  /** Whether a streaming call runs, or an answer is on its way. */
+  get busy(): boolean {
+    return this.#streams > 0 || this.#untakenBytes > 0;
+  }
 }
 
 /** The connections of a server, each a client of its own. */
@@ -70,7 +75,7 @@ export class Clients {
     return this.#byPeer.get(peer) ?? this.#others;
   }
 
-  get count(): number {
-    return this.#byPeer.size;
+  get busy(): boolean {
+    return this.#others.busy || [...this.#byPeer.values()].some((client) => client.busy);
   }
 }

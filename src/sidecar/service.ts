@@ -105,11 +105,16 @@ function streamHandler(method: Method, context: ServiceContext): handleBidiStrea
     metrics.streams.inc();
     call.once("cancelled", () => {
       client.closeStream();
+      metrics.streams.dec();
+      // A client that leaves looks like one that ends its requests, unless answers were still on their way to it.
+      const lost = waitingBytes > 0 || !call.writableFinished;
+      metrics.ended(
+        method.name,
+        code === status.OK && lost ? status.CANCELLED : code,
+        performance.now() - started,
+      );
       client.taken(waitingBytes);
       waitingBytes = 0;
-      metrics.streams.dec();
-      const ended = code === status.OK && !call.writableFinished ? status.CANCELLED : code;
-      metrics.ended(method.name, ended, performance.now() - started);
     });
     call.on("data", (request: Buffer) => {
       if (code !== status.OK || isOver(call)) return;

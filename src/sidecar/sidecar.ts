@@ -45,6 +45,9 @@ export interface Sidecar {
   drain(mostMs: number): Promise<void>;
 }
 
+/** How long a request that a client has sent before it heard of the end may take to come in. */
+const DRAIN_MOMENT_MS = 500;
+
 const KEEPALIVE = { afterMs: 30_000, timeoutMs: 10_000 };
 
 /**
@@ -109,7 +112,7 @@ export async function startSidecar(options: SidecarOptions): Promise<Sidecar> {
       health.replacement(taken);
       return taken;
     },
-    drain: (mostMs) => drain({ grpc, connections, web, health, log }, mostMs),
+    drain: (mostMs) => drain({ grpc, connections, clients, web, health, log }, mostMs),
   };
 }
 
@@ -175,28 +178,41 @@ function requireLocalMetrics(address: ListenAddress | undefined): void {
 interface Draining {
   readonly grpc: Server;
   readonly connections: Connections;
+  readonly clients: Clients;
   readonly web: WebServer;
   readonly health: SidecarHealth;
   readonly log: Logger;
 }
 
-async function drain({ grpc, connections, web, health, log }: Draining, mostMs: number): Promise<void> {
+async function drain(draining: Draining, mostMs: number): Promise<void> {
+  const { grpc, connections, web, health, log } = draining;
   log.info({ mostMs }, "draining");
   health.shuttingDown();
   connections.stopListening();
-  const inTime = await new Promise<boolean>((resolve) => {
-    const timer = setTimeout(() => resolve(false), mostMs);
-    grpc.tryShutdown(() => {
-      clearTimeout(timer);
-      resolve(true);
-    });
-  });
-  if (!inTime) {
+  if (!(await callsEnded(draining, mostMs)))
     log.warn("calls still ran at the end of the time to drain; they were ended");
-    grpc.forceShutdown();
-  }
+  grpc.forceShutdown();
   connections.destroyAll();
   web.close();
   web.closeAllConnections();
   log.info("stopped");
+}
+
+/**
+ * Waits for the end of the running calls; false if they take longer than a time. Watches of the health service never
+ * end by themselves: after a moment for requests on their way, only the sidecar's own calls count.
+ */
+function callsEnded({ grpc, clients }: Draining, mostMs: number): Promise<boolean> {
+  return new Promise((resolve) => {
+    const end = (ended: boolean) => {
+      clearTimeout(timer);
+      clearInterval(poll);
+      resolve(ended);
+    };
+    const timer = setTimeout(() => end(!clients.busy), mostMs);
+    const poll = setInterval(() => {
+      if (!clients.busy) end(true);
+    }, DRAIN_MOMENT_MS);
+    grpc.tryShutdown(() => end(true));
+  });
 }

@@ -155,9 +155,10 @@ function toStudy(document: StudyDocument, kept: Kept, syntax: StudySyntax, file:
       toMeasurement(written, pathOf("measurements", k)),
     ),
     modes: document.modes.map((written, k) => toMode(written, pathOf("modes", k))),
-    particles: document.particles.map(({ spinParity, ...particle }, k) => ({
+    particles: document.particles.map(({ spinParity, isospin, ...particle }, k) => ({
       ...particle,
       ...spinParity,
+      twoI: isospin,
       path: pathOf("particles", k),
     })),
     normalisations: Object.fromEntries(

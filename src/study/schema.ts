@@ -302,15 +302,16 @@ const particle = mapping({
   name: z
     .string()
     .min(1)
-    .regex(/^\S+$/)
+    .regex(/^\S+$/, { error: "expected a name without blanks" })
     .describe("Its name with its charge, such as `a1(1260)+`; its antiparticle comes with it"),
   mass: quantity("MeV", nonNegative),
   width: width.optional().describe("Absent for a stable particle"),
-  charge: z.int(),
+  charge: z.int().describe("In units of the proton charge"),
   spinParity,
-  baryonNumber: z.int().default(0),
+  isospin: spin.optional().describe("Needed where a mode of it names isospin multiplets"),
+  baryonNumber: z.int().default(0).describe("1 for a baryon"),
   strangeness: z.int().default(0).describe("+1 for K+"),
-  charm: z.int().default(0),
+  charm: z.int().default(0).describe("+1 for D+"),
   mcNumber: z.int().optional().describe("Monte Carlo number"),
 });
 
@@ -385,7 +386,9 @@ export const studySchema = mapping({
     conflicts: z
       .enum(["refuse", "constrained"])
       .default("refuse")
-      .describe("Fractions that add up to more than 1: refuse, or move them within 2 sigma and flag the rows"),
+      .describe(
+        "Fractions that add up to more than 1: refuse, or move them within 2 sigma and flag the rows",
+      ),
     neutralKaons: z
       .enum(["flavour", "short-long"])
       .default("flavour")

@@ -157,6 +157,8 @@ export interface StudyParticle {
   readonly twoJ: number;
   readonly parity: 1 | -1;
   readonly cParity: 1 | -1 | null;
+  /** Twice the isospin; undefined where it is not given. */
+  readonly twoI?: number | undefined;
   readonly baryonNumber: number;
   readonly strangeness: number;
   readonly charm: number;

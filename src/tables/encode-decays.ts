@@ -1,3 +1,4 @@
+import { lifetimeSeconds } from "../completion/closure.js";
 import type {
   Comparison,
   Estimate,
@@ -41,6 +42,7 @@ export function decaysMessage(tables: Tables): v1.DecayTables.$Properties {
     fit: fitMessage(tables.fit, tables.minimum),
     parents: tables.parents.map(parentMessage),
     externals: tables.externals.map(({ hadron, lineShape }) => hadronMessage(hadron, lineShape)),
+    leftOpen: tables.externals.flatMap(({ hadron, life }) => (life === "decays" ? [hadron.name] : [])),
   };
 }
 
@@ -58,6 +60,7 @@ export function headerMessage({ study, notes, editions }: Model): v1.Header.$Pro
     cautions: [...CAUTIONS],
     notes: [...notes],
     breaking: study.breaking,
+    policies: { ...study.tables },
   };
 }
 
@@ -138,6 +141,7 @@ function hadronMessage(hadron: Hadron, lineShape: MassShape | undefined): v1.Had
       weight,
     })),
     notes: [...hadron.notes],
+    lifetime: lifetimeSeconds(hadron),
     ...(lineShape === undefined ? {} : { lineShape: lineShapeMessage(lineShape) }),
   };
 }
@@ -175,6 +179,8 @@ const FLAGS: Readonly<Record<Flag, v1.Flag>> = {
   folded: v1.Flag.FLAG_FOLDED,
   "near-threshold": v1.Flag.FLAG_NEAR_THRESHOLD,
   "small-amplitude": v1.Flag.FLAG_SMALL_AMPLITUDE,
+  adjusted: v1.Flag.FLAG_ADJUSTED,
+  weak: v1.Flag.FLAG_WEAK,
 };
 
 function rowMessage(row: Row): v1.Row.$Properties {
@@ -198,6 +204,18 @@ function rowMessage(row: Row): v1.Row.$Properties {
     ...(row.isospin === undefined
       ? {}
       : { isospinChannel: row.isospin.channel, isospinCoefficient: row.isospin.coefficient }),
+    power: row.power ?? null,
+    ...(row.unadjusted === undefined
+      ? {}
+      : {
+          unadjustedFraction: estimateMessage(row.unadjusted.fraction),
+          unadjustedWidth: estimateMessage(row.unadjusted.widthMeV),
+        }),
+    kaonFlavours: (row.kaonFlavours ?? []).map(({ re, im, ...flavour }) => ({
+      ...flavour,
+      re: [...re],
+      im: [...im],
+    })),
   };
 }
 

@@ -36,8 +36,8 @@ export function tableHadrons(tables: v1.DecayTables): HadronsByName {
  * and K the wave's width model at the masses of the table's hadrons; where K(m0) = 0, so that re = im = 0, it is
  * identicalFactor flavourAmplitude^2 K(m). So at m0 it is the row's width, measured or predicted, and a measured row
  * takes its shape from the model. A row flagged as folded, or with a width at m0 where K(m0) = 0, follows its grid. A
- * row without waves is constant above its threshold; a remainder, above the lowest one of the parent. The readers in C++
- * and Python compute the same.
+ * row with a power grows with that power of the distance from its threshold; one with neither is constant above its
+ * threshold, a remainder above the lowest one of the parent. The readers in C++ and Python compute the same.
  * @throws TableError for a model, an option or a vertex this version does not know, or a hadron or grid that is missing
  */
 export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByName): RowsEvaluator {
@@ -81,8 +81,9 @@ function rowWidth(
 ): RowWidth {
   if (takesGrid(row)) return gridOf(row);
   const waves = row.waves ?? [];
-  if (waves.length === 0) return constantWidth(row, lowestMeV);
   const nominalMeV = parent.hadron?.mass ?? Number.NaN;
+  if (waves.length === 0 && row.power != null) return powerOfDistance(row, row.power, nominalMeV);
+  if (waves.length === 0) return constantWidth(row, lowestMeV, nominalMeV);
   const [first, second, more] = (row.daughters ?? []).map((daughter) => daughterOf(row, daughter, hadrons));
   if (first === undefined || second === undefined || more !== undefined || !(nominalMeV > 0)) {
     throw new TableError(
@@ -140,14 +141,15 @@ function gridOf(row: v1.Row.$Properties): RowWidth {
   throw new TableError(`${row.id}: expected a grid of two points or more in ascending order, got another`);
 }
 
-function constantWidth(row: v1.Row.$Properties, lowestMeV: number): RowWidth {
+function constantWidth(row: v1.Row.$Properties, lowestMeV: number, nominalMeV: number): RowWidth {
   const width = row.width?.value ?? Number.NaN;
   const own = row.threshold ?? Number.NaN;
   if (!Number.isFinite(width) || !Number.isFinite(own)) {
     throw new TableError(`${row.id}: expected a row without waves to have a width and a threshold, got none`);
   }
-  // A remainder alone has no other row that could open or close it.
-  const threshold = (row.daughters ?? []).length > 0 || !Number.isFinite(lowestMeV) ? own : lowestMeV;
+  // A remainder of a parent below its lowest threshold is all there is of its width.
+  const takesLowest = (row.daughters ?? []).length === 0 && lowestMeV < nominalMeV;
+  const threshold = takesLowest ? lowestMeV : own;
   return (massMeV) => (massMeV > threshold ? width : 0);
 }
 
@@ -159,6 +161,18 @@ function daughterOf(
   const hadron = hadrons.get(name ?? "");
   if (hadron?.mass != null && hadron.mass >= 0 && Number.isFinite(hadron.mass)) return hadron;
   throw new TableError(`${row.id}: expected ${name} among the hadrons of the table with its mass, got none`);
+}
+
+/** The law of a row outside the symmetry, width ((m - threshold)/(m0 - threshold))^power. */
+function powerOfDistance(row: v1.Row.$Properties, power: number, nominalMeV: number): RowWidth {
+  const [width, threshold] = [row.width?.value ?? Number.NaN, row.threshold ?? Number.NaN];
+  const distance = nominalMeV - threshold;
+  if (!(Number.isFinite(width) && width >= 0 && distance > 0 && power >= 0)) {
+    throw new TableError(
+      `${row.id}: expected a width, a threshold below the parent's mass and a power >= 0, got others`,
+    );
+  }
+  return (massMeV) => (massMeV > threshold ? width * ((massMeV - threshold) / distance) ** power : 0);
 }
 
 /** Part of a row's width at the nominal mass that a wave has, in MeV. */

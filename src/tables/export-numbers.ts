@@ -30,8 +30,9 @@ export function parseOwnNumbers(texts: readonly string[]): OwnNumbers {
 
 /** Monte Carlo numbers of a table's hadrons, by name: the published ones, and a user's own. */
 export class HadronNumbers {
-  readonly #hadrons: ReadonlyMap<string, Hadron>;
-  readonly #numbers: ReadonlyMap<string, number>;
+  readonly #hadrons = new Map<string, Hadron>();
+  readonly #conjugates = new Map<string, string>();
+  readonly #numbers = new Map<string, number>();
 
   /**
    * @param hadrons - every hadron of the table
@@ -39,22 +40,30 @@ export class HadronNumbers {
    * @throws InputError for a name that is not in the table, or one number for two hadrons
    */
   constructor(hadrons: readonly Hadron[], own: OwnNumbers) {
-    this.#hadrons = new Map(hadrons.map((hadron) => [hadron.name!, hadron]));
-    const numbers = new Map<string, number>();
-    for (const { name, mcNumber } of hadrons) if (mcNumber != null) numbers.set(name!, mcNumber);
+    for (const hadron of hadrons) this.#add(hadron);
     for (const [name, id] of own) {
-      const hadron = this.#hadrons.get(name) ?? refuseName(name, [...this.#hadrons.keys()]);
-      numbers.set(name, id);
-      const { antiparticle } = hadron;
-      if (antiparticle != null && !own.has(antiparticle)) numbers.set(antiparticle, -id);
+      if (!this.#hadrons.has(name)) refuseName(name, [...this.#hadrons.keys()]);
+      this.#numbers.set(name, id);
+      const antiparticle = this.#conjugates.get(name);
+      if (antiparticle !== undefined && !own.has(antiparticle)) this.#numbers.set(antiparticle, -id);
     }
-    this.#numbers = numbers;
-    requireDistinct(numbers);
+    requireDistinct(this.#numbers);
   }
 
-  /** The hadron of a name. */
-  hadron(name: string): Hadron | undefined {
-    return this.#hadrons.get(name);
+  #add(hadron: Hadron): void {
+    const { mcNumber, antiparticle } = hadron;
+    const name = hadron.name!;
+    this.#hadrons.set(name, hadron);
+    if (mcNumber != null) this.#numbers.set(name, mcNumber);
+    if (antiparticle == null) return;
+    this.#conjugates.set(name, antiparticle).set(antiparticle, name);
+    if (!this.#hadrons.has(antiparticle)) this.#hadrons.set(antiparticle, hadron);
+    if (mcNumber != null && !this.#numbers.has(antiparticle)) this.#numbers.set(antiparticle, -mcNumber);
+  }
+
+  /** Mass of a hadron or of an antiparticle, in MeV; NaN for one that the table does not know. */
+  massMeV(name: string): number {
+    return this.#hadrons.get(name)?.mass ?? Number.NaN;
   }
 
   /** The number of a hadron, or of the antiparticle of one. */
@@ -64,7 +73,7 @@ export class HadronNumbers {
 
   /** Name of the antiparticle; its own for a hadron that is its own. */
   conjugateName(name: string): string {
-    return this.#hadrons.get(name)?.antiparticle ?? name;
+    return this.#conjugates.get(name) ?? name;
   }
 
   /**

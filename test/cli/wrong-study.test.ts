@@ -1,5 +1,11 @@
+import { writeFileSync } from "node:fs";
+import { join } from "node:path";
 import { afterAll, describe, expect, test } from "vitest";
-import { couplet, refusal, scratchFolder } from "./command.js";
+import { fitStudyFile } from "../../src/cli/run-study.js";
+import { CoupletError } from "../../src/errors.js";
+import { catalogueMultipletIds } from "../../src/hadrons/catalogue-multiplet.js";
+import { studySchema } from "../../src/study/schema.js";
+import { couplet, type Run, refusal, scratchFolder } from "./command.js";
 
 const SHORT = `couplet: 1
 title: short
@@ -12,12 +18,17 @@ measurements:
 const { folder, remove } = scratchFolder();
 afterAll(remove);
 
-/** What `couplet fit` says of a study's text; the file's name is `s.yaml` in every message. */
-function fit(text: string) {
-  const scratch = scratchFolder({ "s.yaml": text });
-  const run = couplet(scratch.folder, "fit", "s.yaml");
-  scratch.remove();
-  return run;
+/** What `couplet fit` says of a study's text, called without starting a process; the file's name is `s.yaml`. */
+function said(text: string): Run {
+  const file = join(folder, "s.yaml");
+  writeFileSync(file, text);
+  try {
+    fitStudyFile(file);
+  } catch (error) {
+    if (!(error instanceof CoupletError)) throw error;
+    return refusal(error.message.replaceAll(file, "s.yaml"), error.exitCode);
+  }
+  throw new Error("the study was not refused");
 }
 
 const changed = (from: string, to: string) => {
@@ -25,20 +36,20 @@ const changed = (from: string, to: string) => {
   return SHORT.replace(from, to);
 };
 
-const MULTIPLETS =
-  "pseudoscalar-octet, pseudoscalar-singlet, vector-octet, vector-singlet, tensor-octet, tensor-singlet, baryon-octet, baryon-decuplet, charmed-meson-antitriplet, charmed-baryon-antitriplet, charmed-baryon-sextet, charmed-baryon-sextet-3/2";
+const MULTIPLETS = catalogueMultipletIds().join(", ");
+const KEYS = Object.keys(studySchema.shape).join(", ");
 
 describe("an unknown name is refused with the nearest ones", () => {
   test("of a hadron", () => {
-    expect(fit(changed("Delta(1232) -> N pi", "Dleta(1232) -> N pi"))).toEqual(
+    expect(said(changed("Delta(1232) -> N pi", "Dleta(1232) -> N pi"))).toEqual(
       refusal(
-        's.yaml:6:14: measurements/0/width: expected a hadron of this study, got "Dleta(1232)". Did you mean Delta(1232), Delta(1232)++, Delta(1232)+?',
+        's.yaml:6:14: measurements/0/width: expected a hadron of this study, got "Dleta(1232)". Did you mean Delta(1232), Delta(1232)+, Delta(1232)0?',
       ),
     );
   });
 
   test("of a multiplet", () => {
-    expect(fit(changed("from: baryon-decuplet", "from: barion-decuplet"))).toEqual(
+    expect(said(changed("from: baryon-decuplet", "from: barion-decuplet"))).toEqual(
       refusal(
         `s.yaml:4:13: decays/0/from: expected a multiplet of this study (it has none) or of the catalogue (${MULTIPLETS}), got "barion-decuplet". Did you mean baryon-decuplet?`,
       ),
@@ -46,7 +57,7 @@ describe("an unknown name is refused with the nearest ones", () => {
   });
 
   test("of a width model", () => {
-    expect(fit(changed("model: a", "model: breit-wigner"))).toEqual(
+    expect(said(changed("model: a", "model: breit-wigner"))).toEqual(
       refusal(
         's.yaml:4:83: decays/0/model: widthModel: id: expected one of a, b, c, d, e, got "breit-wigner". Choose from: a (power of the momentum), b (momentum with a range), c (centrifugal barrier), d (effective Lagrangian, baryon to spin-1/2 baryon and spinless meson), e (effective Lagrangian, mesons).',
       ),
@@ -63,7 +74,7 @@ describe("an impossible channel is refused", () => {
     ["isospin", "Sigma(1385) -> Lambda eta"],
     ["strangeness", "Sigma(1385) -> N pi"],
   ])("by %s", (_, channel) => {
-    expect(fit(changed("Delta(1232) -> N pi", channel))).toEqual(
+    expect(said(changed("Delta(1232) -> N pi", channel))).toEqual(
       refusal(
         `s.yaml:6:14: measurements/0/width: expected a channel of this study that conserves charge, isospin and strangeness, got "${channel}". There are: ${channels}.`,
       ),
@@ -71,7 +82,7 @@ describe("an impossible channel is refused", () => {
   });
 
   test("by its threshold", () => {
-    expect(fit(changed("Delta(1232) -> N pi", "Delta(1232) -> Sigma K"))).toEqual(
+    expect(said(changed("Delta(1232) -> N pi", "Delta(1232) -> Sigma K"))).toEqual(
       refusal(
         "s.yaml:6:14: measurements/0/width: expected a channel that is open, got Delta(1232)++ -> Sigma+ K+ with its threshold at 1683.0 MeV above the parent's 1232 MeV. Check the masses, or take the measurement out.",
       ),
@@ -82,7 +93,7 @@ describe("an impossible channel is refused", () => {
     ["parity", "L: 2", 2],
     ["spin", "L: 3", 3],
   ])("by %s, with the waves there are", (_, wave, L) => {
-    expect(fit(changed("L: 1", wave))).toEqual(
+    expect(said(changed("L: 1", wave))).toEqual(
       refusal(
         `s.yaml:4:5: decays/0: L: expected a wave that spin and parity allow, got ${L}. They allow: L=1 S=1/2.`,
       ),
@@ -103,7 +114,7 @@ decays:`,
       .replace("Delta(1232) -> N pi", "X(1900) -> N pi");
 
   test("by triality", () => {
-    expect(fit(withMultiplet("3"))).toEqual(
+    expect(said(withMultiplet("3"))).toEqual(
       refusal(
         's.yaml:9:5: decays/0: reducedCouplings: mine by the operator strong: expected a product of flavours that meets 8 x 8 = 1, 2 x 8, 10, 10bar, 27, got "3". SU(3) forbids this decay; check the irreps of the multiplets.',
       ),
@@ -112,7 +123,7 @@ decays:`,
 
   test("by an irrep that is not in the product", () => {
     const text = withMultiplet("64").replace("Y=1/3 I=1/2", "Y=1 I=1/2");
-    expect(fit(text)).toEqual(
+    expect(said(text)).toEqual(
       refusal(
         's.yaml:9:5: decays/0: reducedCouplings: mine by the operator strong: expected a product of flavours that meets 8 x 8 = 1, 2 x 8, 10, 10bar, 27, got "64". SU(3) forbids this decay; check the irreps of the multiplets.',
       ),
@@ -120,10 +131,10 @@ decays:`,
   });
 
   test("by baryon number, and with the daughters in the wrong order", () => {
-    expect(fit(changed("pseudoscalar-octet", "baryon-octet"))).toEqual(
+    expect(said(changed("pseudoscalar-octet", "baryon-octet"))).toEqual(
       refusal("s.yaml:4:5: decays/0: to: expected two multiplets of baryon number 1 together, got 2."),
     );
-    expect(fit(changed("[baryon-octet, pseudoscalar-octet]", "[pseudoscalar-octet, baryon-octet]"))).toEqual(
+    expect(said(changed("[baryon-octet, pseudoscalar-octet]", "[pseudoscalar-octet, baryon-octet]"))).toEqual(
       refusal(
         's.yaml:4:5: decays/0: to: expected the baryon first, the meson second, got "pseudoscalar-octet, baryon-octet". Exchange them: the order fixes the sign of F.',
       ),
@@ -131,7 +142,7 @@ decays:`,
   });
 
   test("that is no channel at all", () => {
-    expect(fit(changed("Delta(1232) -> N pi", "Delta(1232) N pi"))).toEqual(
+    expect(said(changed("Delta(1232) -> N pi", "Delta(1232) N pi"))).toEqual(
       refusal(
         's.yaml:6:14: measurements/0/width: expected a channel such as `N(1675) -> N pi`, got "Delta(1232) N pi".',
       ),
@@ -139,7 +150,7 @@ decays:`,
   });
 
   test("of an irrep whose dimension means several", () => {
-    expect(fit(withMultiplet("15"))).toEqual(
+    expect(said(withMultiplet("15"))).toEqual(
       refusal(
         's.yaml:5:12: multiplets/mine/irrep: parseIrrep: expected 15(2,1) or 15(4,0), got "15". Dimension 15 belongs to several irreps; write the labels.',
       ),
@@ -158,7 +169,7 @@ describe("a value that cannot be", () => {
       `${VALUE}expected an error, since the value enters the fit. Write \`value +- error\`, or give it \`use: table\`.`,
     ],
   ])("such as a width of %s is refused", (value, message) => {
-    expect(fit(changed("117 +- 3 MeV", value))).toEqual(refusal(message));
+    expect(said(changed("117 +- 3 MeV", value))).toEqual(refusal(message));
   });
 
   test("such as a fraction above one is refused", () => {
@@ -166,7 +177,7 @@ describe("a value that cannot be", () => {
       "width: Delta(1232) -> N pi, value: 117 +- 3 MeV",
       "fraction: Delta(1232) -> N pi, value: 1.2 +- 0.1",
     );
-    expect(fit(text)).toEqual(
+    expect(said(text)).toEqual(
       refusal('s.yaml:6:45: measurements/0/value: expected a fraction from 0 to 1, got "1.2 +- 0.1".'),
     );
   });
@@ -202,10 +213,11 @@ measurements:
   - { fraction: Lambda(1830) N Kbar, value: 0.2 +- 0.1, source: invented }
   - { widht: Lambda(1830) -> N Kbar, value: 1e999 MeV, source: invented }
 `;
-  expect(fit(text)).toEqual(
+  writeFileSync(join(folder, "s.yaml"), text);
+  expect(couplet(folder, "fit", "s.yaml")).toEqual(
     refusal(
       [
-        "s.yaml:2:1: study: expected keys among couplet, title, multiplets, mixing, decays, quarkLine, measurements, normalisations, priors, fit, tables, got `titel`.",
+        `s.yaml:2:1: study: expected keys among ${KEYS}, got \`titel\`.`,
         "s.yaml:4:1: not valid YAML: expected each key once, got it again. Take one of them out.",
         's.yaml:10:42: multiplets/octet/members/0/mass: expected a unit such as MeV or GeV, got none in "1675".',
         's.yaml:11:69: multiplets/octet/members/1/width: expected a width > 0, got "-90 MeV".',
@@ -216,7 +228,7 @@ measurements:
         's.yaml:21:43: decays/3/to: expected at least 2 entries, got ["baryon-octet"].',
         's.yaml:21:62: decays/3/L: expected a number, got "one".',
         's.yaml:23:38: measurements/0/value: expected a unit such as MeV or GeV, got none in "117 +- 3".',
-        's.yaml:24:14: measurements/1/width: expected a hadron of this study, got "Dleta(1232)". Did you mean Delta(1232), Delta(1232)++, Delta(1232)+?',
+        's.yaml:24:14: measurements/1/width: expected a hadron of this study, got "Dleta(1232)". Did you mean Delta(1232), Delta(1232)-, Delta(1232)0?',
         's.yaml:25:48: measurements/2/value: expected a fraction from 0 to 1, got "1.2 +- 0.1".',
         "s.yaml:26:49: measurements/3/value: expected an error, since the value enters the fit. Write `value +- error`, or give it `use: table`.",
         's.yaml:27:17: measurements/4/fraction: expected a channel such as `N(1675) -> N pi`, got "Lambda(1830) N Kbar".',
@@ -230,11 +242,11 @@ measurements:
 
 test("a file that is no study is refused", () => {
   const start = "Start one with `couplet new NAME`.";
-  expect(fit("")).toEqual(refusal(`s.yaml: expected a study, got an empty file. ${start}`));
-  expect(fit("couplet: 1\0")).toEqual(
+  expect(said("")).toEqual(refusal(`s.yaml: expected a study, got an empty file. ${start}`));
+  expect(said("couplet: 1\0")).toEqual(
     refusal("s.yaml: expected a YAML text, got a binary file. Is this the right file?"),
   );
-  expect(fit("x".repeat(50_000_000))).toEqual(
+  expect(said("x".repeat(50_000_000))).toEqual(
     refusal("s.yaml: expected a study of at most 1000000 bytes, got more. Is this the right file?"),
   );
   expect(couplet(folder, "fit", "/dev/zero")).toEqual(

@@ -134,8 +134,15 @@ def every_model():
     # Two waves of one row, and a row without waves.
     two_waves = tables.parents[0].rows[0]
     two_waves.waves.add().CopyFrom(tables.parents[0].rows[1].waves[0])
+    # Rows outside the symmetry.
+    for power in (None, 0, 2, 3.5):
+        made = tables.parents[2].rows.add(id=f"power {power}", parts_per_billion=0, threshold=1000.5, power=power)
+        made.daughters.add(name="three pions")
+        made.width.value = 12.5
+    # A parent below its only threshold.
+    row(parent("light meson", 600.0, 0), [heavy[0], light[0]], "a", 0)
     for made in tables.parents:
-        made.rows.add(id="remainder", threshold=100, parts_per_billion=couplet_decays.WHOLE).width.value = 7.5
+        made.rows.add(id="remainder", threshold=0 if made.hadron.mass < 900 else 100, parts_per_billion=couplet_decays.WHOLE).width.value = 7.5
     body = tables.SerializeToString()
     return body + couplet_decays.SEAL_HEAD + hashlib.sha256(body).digest()
 

@@ -1,6 +1,10 @@
 import { describe, expect, test } from "vitest";
 import { type LeastSquaresProblem, levenbergMarquardt } from "../../src/fit/levenberg-marquardt.js";
-import { type GradedFunction, type ProfileInterval, profileInterval } from "../../src/fit/profile-interval.js";
+import {
+  type GradedFunction,
+  type ProfileInterval,
+  profileInterval,
+} from "../../src/fit/profile-interval.js";
 import { seededNormal } from "./seeded-normal.js";
 import { seededUniform } from "./squared-forms.js";
 
@@ -38,7 +42,10 @@ test("for a linear function of a linear problem the profile gives the linear err
       jacobian: () => rows,
     };
     const minimum = levenbergMarquardt(problem, [0, 0, 0]);
-    const variance = dot(weights, minimum.covariance.map((row) => dot(row, weights)));
+    const variance = dot(
+      weights,
+      minimum.covariance.map((row) => dot(row, weights)),
+    );
     const f = (x: readonly number[]) => ({ value: dot(weights, x), gradient: weights });
     for (const times of [1, 2]) {
       const { lower, upper } = profileInterval(problem, minimum, f, times * times);
@@ -141,10 +148,12 @@ test("a combination that the data leave free is open on both sides, one that the
       [0.5, 0.5],
     ],
   };
-  const linear = (weights: readonly number[]): GradedFunction => (p) => ({
-    value: weights.reduce((sum, w, j) => sum + w * p[j]!, 0),
-    gradient: weights,
-  });
+  const linear =
+    (weights: readonly number[]): GradedFunction =>
+    (p) => ({
+      value: weights.reduce((sum, w, j) => sum + w * p[j]!, 0),
+      gradient: weights,
+    });
   expect(intervalOf(problem, [0, 0], linear([1, 0]), 1)).toEqual({
     lower: { value: Number.NEGATIVE_INFINITY, kind: "open" },
     upper: { value: Number.POSITIVE_INFINITY, kind: "open" },

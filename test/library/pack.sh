@@ -34,7 +34,7 @@ npx --no-install attw "$tarball" --no-emoji
 mkdir "$work/empty"
 cd "$work/empty"
 echo '{ "name": "empty", "private": true }' >package.json
-npm install --no-audit --no-fund --loglevel=error "$tarball" 2>"$work/install.log"
+npm install --no-audit --no-fund --prefer-offline --loglevel=error "$tarball" 2>"$work/install.log"
 if [ -s "$work/install.log" ]; then
   cat "$work/install.log" >&2
   exit 1

@@ -18,12 +18,19 @@ import {
 } from "couplet";
 
 const octet: Irrep = { p: 1, q: 1 };
-const root: SignedRoot = isoscalarFactor(octet, octet, octet, 1, { threeY: 0, twoI: 0 }, {
-  threeY1: 3,
-  twoI1: 1,
-  threeY2: -3,
-  twoI2: 1,
-});
+const root: SignedRoot = isoscalarFactor(
+  octet,
+  octet,
+  octet,
+  1,
+  { threeY: 0, twoI: 0 },
+  {
+    threeY1: 3,
+    twoI1: 1,
+    threeY2: -3,
+    twoI2: 1,
+  },
+);
 export const value: number = rootToNumber(root);
 export const model: WidthModel = widthModel("a", { n: 1 });
 

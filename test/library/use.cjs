@@ -28,6 +28,7 @@ for (const { rows } of tables.parents) {
 }
 assert.throws(
   () => couplet.parseIrrep("15"),
-  (error) => error instanceof couplet.InputError && error instanceof couplet.CoupletError && error.exitCode === 2,
+  (error) =>
+    error instanceof couplet.InputError && error instanceof couplet.CoupletError && error.exitCode === 2,
 );
 console.log(`CommonJS: ${tables.parents.length} decay tables`);

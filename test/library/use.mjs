@@ -1,7 +1,14 @@
 // The library as an ECMAScript module: named imports, and the same numbers.
 import assert from "node:assert/strict";
 import * as all from "couplet";
-import { catalogueParticle, clebschGordan, decomposeProduct, formatRoot, irrepName, parseIrrep } from "couplet";
+import {
+  catalogueParticle,
+  clebschGordan,
+  decomposeProduct,
+  formatRoot,
+  irrepName,
+  parseIrrep,
+} from "couplet";
 
 const octet = parseIrrep("8");
 const series = decomposeProduct(octet, octet).map(

@@ -1,76 +1,75 @@
-import { expect, test } from "vitest";
+import { describe, expect, test } from "vitest";
 import { Evaluation, evaluator } from "../../src/model/evaluate.js";
+import { fittedObservables } from "../../src/model/fit-model.js";
 import type { Model } from "../../src/model/model.js";
-import { comparisons } from "../../src/model/residuals.js";
 import { resolveStudy } from "../../src/model/resolve-study.js";
 import { readStudy } from "../../src/study/read-study.js";
 import { studyText } from "../chain/run.js";
-import { seededIntegers } from "../support/seeded-integers.js";
 
-const modelOf = (text: string): Model => resolveStudy(readStudy(Buffer.from(text), "study.yaml"));
+const resolved = (text: string): Model => resolveStudy(readStudy(Buffer.from(text), "study.yaml"));
 
-/** A point near the start of every parameter, away from zeros. */
-function pointNear(model: Model, seed: number): number[] {
-  const integers = seededIntegers(seed);
-  return model.parameters.map(({ kind, start, prior }) => {
-    const shift = (integers.below(1001) - 500) / 1000;
-    if (kind === "coupling") return 3 * shift + 0.2;
-    return kind === "mixing angle" ? shift : start + shift * (prior?.plus ?? 1);
-  });
+/** Models with mixing, with nuisance masses, and with breaking in the fit. */
+const MODELS = {
+  "octet and singlet mixed": resolved(studyText("octet-3-2")),
+  "octet with breaking in the fit": resolved(
+    studyText("octet-3-2-alone").replace("measurements:", "fit: { theoryError: 0.2 }\nmeasurements:"),
+  ),
+  decuplet: resolved(studyText("decuplet")),
+};
+
+/** A point where no parameter is at a special value. */
+function point(model: Model): number[] {
+  return model.parameters.map(({ start, kind }, k) =>
+    kind === "mass" || kind === "total width" ? start * (1 + 0.002 * (k + 1)) : 0.7 * Math.cos(3 * k + 1),
+  );
 }
 
-const STUDIES: [string, string][] = [
-  ["free mixing, total widths and masses", studyText("octet-3-2")],
-  ["mixing of parents and daughters with the quark-line rule", studyText("tensor-nonet")],
-  ["two waves and folded daughters", studyText("n1520-delta-pi")],
-  ["signed amplitudes", studyText("decuplet-7-2")],
-  ["semileptonic ratios", studyText("semileptonic-2003")],
-  ["breaking in the fit", `${studyText("octet-5-2")}fit: { theoryError: 0.2 }\n`],
-  [
-    "products, totals, residues, normalisations and priors",
-    studyText("octet-5-2").replace(
-      "measurements:\n",
-      `normalisations: { beam: 5 % }
-priors:
-  - { parameter: F/D, value: -0.2 +- 0.1, source: test }
-  - { parameter: alpha_D, value: 1.2 +- 0.1, source: test }
-measurements:
-  - { product: [Sigma(1775) -> N Kbar, Sigma(1775) -> Lambda pi], value: 0.07 +- 0.01, normalisation: beam, source: test }
-  - { total: Lambda(1830), value: 60 +- 10 MeV, source: test }
-  - { residue: [Sigma(1775) -> N Kbar, Sigma(1775) -> Sigma pi], value: 7 +- 2 MeV, source: test }
-  - { amplitude: [Sigma(1775) -> N Kbar, Sigma(1775) -> Sigma pi], value: 0.1 +- 0.02, source: test }
-  - { fraction: Lambda(1830) -> Lambda eta, value: < 10 % at 90 %, source: test }
-`,
-    ),
-  ],
-];
-
-test.each(STUDIES)("gradients of residuals equal finite differences: %s", (_, text) => {
-  const model = modelOf(text);
+describe.each(Object.entries(MODELS))("%s", (_, model) => {
   const ready = evaluator(model);
-  const fitted = model.observables.filter(({ use }) => use !== "table");
-  const point = pointNear(model, 20261201);
-  const residuals = (parameters: readonly number[]) =>
-    comparisons(new Evaluation(ready, parameters), fitted).map(({ residual }) => residual);
-  const graded = comparisons(new Evaluation(ready, point), fitted);
-  for (const k of model.parameters.keys()) {
-    const h = 1e-6 * Math.max(1, Math.abs(point[k]!));
-    const at = (sign: number) => residuals(point.map((value, j) => (j === k ? value + sign * h : value)));
-    const [up, down] = [at(1), at(-1)];
-    for (const [r, { gradient, residual }] of graded.entries()) {
-      const numeric = (up[r]! - down[r]!) / (2 * h);
-      expect(Math.abs(gradient[k]! - numeric)).toBeLessThan(
-        1e-5 * (1 + Math.abs(numeric) + Math.abs(residual)),
-      );
-    }
-  }
-});
+  const at = point(model);
 
-test("a model is plain data: a structured clone evaluates to the same residuals", () => {
-  const model = modelOf(studyText("octet-3-2"));
-  const copy = structuredClone(model);
-  const point = pointNear(model, 7);
-  const values = (of: Model) =>
-    comparisons(new Evaluation(evaluator(of), point), of.observables).map(({ residual }) => residual);
-  expect(values(copy)).toEqual(values(model));
+  test("every width is the identical factor times the sum of A^2 K, with A from its own row", () => {
+    const evaluation = new Evaluation(ready, at);
+    for (const [c, channel] of model.channels.entries()) {
+      const sum = channel.waves.reduce((total, { breaking }, w) => {
+        const row = evaluation.amplitudeRow(c, w);
+        const plain = row.reduce((value, entry, k) => value + entry * at[k]!, 0);
+        const z = breaking === undefined ? 0 : at[breaking]!;
+        const broken = model.study.fit.theoryError * evaluation.couplingStrength(c, w).value * z;
+        const amplitude = plain + channel.isospinCoefficient * broken;
+        expect(Math.abs(evaluation.amplitude(c, w).value - amplitude)).toBeLessThan(
+          1e-13 * (1 + Math.abs(amplitude)),
+        );
+        return total + channel.identicalFactor * amplitude ** 2 * evaluation.kinematicFactor(c, w);
+      }, 0);
+      expect(Math.abs(evaluation.width(c).value - sum)).toBeLessThan(1e-12 * (1 + sum));
+    }
+  });
+
+  test("charge states share amplitudes: far fewer are computed than there are waves", () => {
+    const waves = model.channels.reduce((count, channel) => count + channel.waves.length, 0);
+    const isospin = new Set(model.channels.map(({ isospinChannel }) => isospinChannel)).size;
+    expect(ready.shared.representatives.length).toBe(isospin);
+    expect(waves).toBeGreaterThan(2 * isospin);
+  });
+
+  test("gradients of all observables and widths equal central differences", () => {
+    const values = (parameters: readonly number[]) => {
+      const evaluation = new Evaluation(ready, parameters);
+      return [
+        ...fittedObservables(model).map((observable) => evaluation.observable(observable)),
+        ...model.channels.map((_, c) => evaluation.width(c)),
+      ];
+    };
+    const here = values(at);
+    for (const [k, value] of at.entries()) {
+      const step = 1e-6 * Math.max(1, Math.abs(value));
+      const [high, low] = [values(at.with(k, value + step)), values(at.with(k, value - step))];
+      for (const [i, graded] of here.entries()) {
+        const difference = (high[i]!.value - low[i]!.value) / (2 * step);
+        const size = Math.abs(graded.value) / Math.max(1, Math.abs(value)) + Math.abs(difference);
+        expect(Math.abs(graded.gradient[k]! - difference)).toBeLessThan(1e-7 * size + 1e-12);
+      }
+    }
+  });
 });

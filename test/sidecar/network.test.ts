@@ -32,10 +32,10 @@ async function requireAnswers(): Promise<void> {
   expect((await server.client().widths("rho(770)0", 800)).totalWidth).toBeGreaterThan(0);
 }
 
-test("2,000 connections with garbage bytes (seed 61) end, and the server still answers", async () => {
+test("1,000 connections with garbage bytes (seed 61) end, and the server still answers", async () => {
   const random = seededIntegers(61);
   const garbage = (length: number) => Buffer.from(Array.from({ length }, () => random.below(256)));
-  for (let round = 0; round < 40; round++) {
+  for (let round = 0; round < 20; round++) {
     const sockets = await Promise.all(Array.from({ length: 50 }, () => opened()));
     for (const socket of sockets) {
       const kind = random.below(4);

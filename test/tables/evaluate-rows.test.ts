@@ -74,6 +74,35 @@ test("rows are zero below threshold; a remainder keeps its width above the lowes
   expect(above.filter((width) => width > 0)).toHaveLength(1);
 });
 
+test("the remainder of a parent below all its thresholds is there at every mass", () => {
+  const parent = couplet.v1.Parent.decode(couplet.v1.Parent.encode(parentNamed("Sigma(1731)+")).finish());
+  parent.hadron.mass = 1200;
+  for (const wave of parent.rows.flatMap((row) => row.waves)) wave.re = 0;
+  const remainder = parent.rows.at(-1)!.width.value!;
+  for (const massMeV of [10, 1200, 1250]) {
+    expect(widthsAt(demo, parent, massMeV)).toEqual(
+      parent.rows.map(({ id }) => (id.endsWith("(remainder)") ? remainder : 0)),
+    );
+  }
+});
+
+test("a row outside the symmetry grows with its power of the distance from threshold", () => {
+  const parent = couplet.v1.Parent.decode(couplet.v1.Parent.encode(parentNamed("Sigma(1731)+")).finish());
+  const row = parent.rows[0]!;
+  row.waves = [];
+  row.threshold = 1631;
+  row.power = 3;
+  const widths = [1781, 1731, 1681, 1631, 1600].map((massMeV) => widthsAt(demo, parent, massMeV)[0]! / 2);
+  expect(widths).toEqual([1.5 ** 3, 1, 0.5 ** 3, 0, 0]);
+  row.threshold = 1732;
+  expect(() => rowsEvaluator(parent, hadrons)).toThrow(
+    expect.objectContaining({
+      name: "TableError",
+      message: `${row.id}: expected a width, a threshold below the parent's mass and a power >= 0, got others`,
+    }),
+  );
+});
+
 test("a folded row follows its grid, to the grid's end", () => {
   const parent = couplet.v1.Parent.decode(couplet.v1.Parent.encode(parentNamed("Sigma(1731)+")).finish());
   const row = parent.rows[0]!;

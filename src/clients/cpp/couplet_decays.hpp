@@ -49,6 +49,8 @@ inline Header header(const v1::Header& m) {
   h.cautions = list<std::string>(m.cautions());
   h.notes = list<std::string>(m.notes());
   h.breaking = number(m.has_breaking(), m.breaking());
+  const v1::Policies& p = m.policies();
+  h.policies = {p.conflicts(), p.neutral_kaons(), p.antiparticles(), p.daughters()};
   return h;
 }
 
@@ -80,6 +82,7 @@ inline Hadron hadron(const v1::Hadron& m) {
   h.antiparticle = maybe(m.has_antiparticle(), m.antiparticle());
   h.notes = list<std::string>(m.notes());
   if (m.has_line_shape()) h.line_shape = line_shape(m.line_shape());
+  h.lifetime = maybe(m.has_lifetime(), m.lifetime());
   return h;
 }
 
@@ -112,6 +115,10 @@ inline MassGrid grid(const v1::MassGrid& m) {
           list<float>(m.slopes())};
 }
 
+inline FlavourAmplitude flavour_amplitude(const v1::FlavourAmplitude& m) {
+  return {m.row(), number(m.has_projection(), m.projection()), list<double>(m.re()), list<double>(m.im())};
+}
+
 inline Row row(const v1::Row& m) {
   Row r;
   r.id = m.id();
@@ -131,6 +138,10 @@ inline Row row(const v1::Row& m) {
   if (m.has_grid()) r.grid = grid(m.grid());
   r.isospin_channel = m.isospin_channel();
   r.isospin_coefficient = maybe(m.has_isospin_coefficient(), m.isospin_coefficient());
+  r.power = maybe(m.has_power(), m.power());
+  if (m.has_unadjusted_fraction()) r.unadjusted_fraction = estimate(m.unadjusted_fraction());
+  if (m.has_unadjusted_width()) r.unadjusted_width = estimate(m.unadjusted_width());
+  r.kaon_flavours = list<FlavourAmplitude>(m.kaon_flavours(), flavour_amplitude);
   return r;
 }
 
@@ -162,6 +173,7 @@ inline Tables tables_from_bytes(std::string_view bytes, const std::string& name)
   tables.header = detail::header(message.header());
   tables.parents = detail::list<Parent>(message.parents(), detail::parent);
   tables.externals = detail::list<Hadron>(message.externals(), detail::hadron);
+  tables.left_open = detail::list<std::string>(message.left_open());
   couplet::detail::check_content(tables, name);
   return tables;
 }

@@ -71,21 +71,14 @@ class Wire {
   // A list of enums comes as one block or as one field each.
   template <class Enum, std::enable_if_t<std::is_enum_v<Enum>, bool> = true>
   void get(std::vector<Enum>& values) {
-    if (type_ == Type::bytes) {
-      Wire packed(block());
-      while (!packed.bytes_.empty()) values.push_back(static_cast<Enum>(static_cast<std::int32_t>(packed.varint())));
-    } else if (is(Type::varint)) {
-      values.push_back(static_cast<Enum>(static_cast<std::int32_t>(varint())));
-    }
+    list(values, Type::varint, [](Wire& wire) { return static_cast<Enum>(static_cast<std::int32_t>(wire.varint())); });
   }
   // So does a list of numbers.
   void get(std::vector<float>& values) {
-    if (type_ == Type::bytes) {
-      Wire packed(block());
-      while (!packed.bytes_.empty()) values.push_back(packed.fixed32());
-    } else if (is(Type::fixed32)) {
-      values.push_back(fixed32());
-    }
+    list(values, Type::fixed32, [](Wire& wire) { return wire.fixed<float, std::uint32_t>(); });
+  }
+  void get(std::vector<double>& values) {
+    list(values, Type::fixed64, [](Wire& wire) { return wire.fixed<double, std::uint64_t>(); });
   }
   // A message given twice is merged, as the format has it: `read` only writes the fields it meets.
   template <class Message, std::enable_if_t<std::is_class_v<Message>, bool> = true>
@@ -113,6 +106,16 @@ class Wire {
     return false;
   }
 
+  template <class Value, class Take>
+  void list(std::vector<Value>& values, Type of_one, Take take_one) {
+    if (type_ == Type::bytes) {
+      Wire packed(block());
+      while (!packed.bytes_.empty()) values.push_back(take_one(packed));
+    } else if (is(of_one)) {
+      values.push_back(take_one(*this));
+    }
+  }
+
   std::string_view take(std::uint64_t length) {
     if (length > bytes_.size()) throw NoMessage{};
     const std::string_view taken = bytes_.substr(0, static_cast<std::size_t>(length));
@@ -133,7 +136,6 @@ class Wire {
   std::string_view block() { return take(varint()); }
 
   double fixed64() { return fixed<double, std::uint64_t>(); }
-  float fixed32() { return fixed<float, std::uint32_t>(); }
 
   // A number of the format, lowest byte first.
   template <class Number, class Bits>
@@ -179,6 +181,18 @@ class Wire {
 
 // Field numbers are the ones of proto/couplet/v1/decays.proto.
 
+inline void read(Policies& p, Wire wire) {
+  while (wire.next()) {
+    switch (wire.number()) {
+      case 1: wire.get(p.conflicts); break;
+      case 2: wire.get(p.neutral_kaons); break;
+      case 3: wire.get(p.antiparticles); break;
+      case 4: wire.get(p.daughters); break;
+      default: wire.skip();
+    }
+  }
+}
+
 inline void read(Header& h, Wire wire) {
   while (wire.next()) {
     switch (wire.number()) {
@@ -193,6 +207,7 @@ inline void read(Header& h, Wire wire) {
       case 9: wire.get(h.cautions); break;
       case 10: wire.get(h.notes); break;
       case 11: wire.get(h.breaking); break;
+      case 12: wire.get(h.policies); break;
       default: wire.skip();
     }
   }
@@ -230,6 +245,7 @@ inline void read(Hadron& h, Wire wire) {
       case 13: wire.get(h.antiparticle); break;
       case 15: wire.get(h.notes); break;
       case 16: wire.get(h.line_shape); break;
+      case 17: wire.get(h.lifetime); break;
       default: wire.skip();
     }
   }
@@ -298,6 +314,18 @@ inline void read(MassGrid& g, Wire wire) {
   }
 }
 
+inline void read(FlavourAmplitude& f, Wire wire) {
+  while (wire.next()) {
+    switch (wire.number()) {
+      case 1: wire.get(f.row); break;
+      case 2: wire.get(f.projection); break;
+      case 3: wire.get(f.re); break;
+      case 4: wire.get(f.im); break;
+      default: wire.skip();
+    }
+  }
+}
+
 inline void read(Row& r, Wire wire) {
   while (wire.next()) {
     switch (wire.number()) {
@@ -318,6 +346,10 @@ inline void read(Row& r, Wire wire) {
       case 16: wire.get(r.grid); break;
       case 17: wire.get(r.isospin_channel); break;
       case 18: wire.get(r.isospin_coefficient); break;
+      case 19: wire.get(r.power); break;
+      case 20: wire.get(r.unadjusted_fraction); break;
+      case 21: wire.get(r.unadjusted_width); break;
+      case 22: wire.get(r.kaon_flavours); break;
       default: wire.skip();
     }
   }
@@ -345,6 +377,7 @@ inline void read(Tables& t, Wire wire) {
       case 2: wire.get(t.header); break;
       case 4: wire.get(t.parents); break;
       case 5: wire.get(t.externals); break;
+      case 6: wire.get(t.left_open); break;
       default: wire.skip();
     }
   }

@@ -59,7 +59,13 @@ enum class Flag {
   undecayable = 2,
   near_threshold = 3,
   small_amplitude = 4,
-  folded = 5
+  folded = 5,
+  adjusted = 6,
+  weak = 7
+};
+
+struct Policies {
+  std::string conflicts, neutral_kaons, antiparticles, daughters;
 };
 
 struct Header {
@@ -67,6 +73,7 @@ struct Header {
   std::string producer, title, study_text, convention, multiplicity_rule, unit;
   std::vector<std::string> editions, cautions, notes;
   double breaking = MISSING;
+  Policies policies;
 };
 
 // Distribution of a hadron's mass; draw_mass draws from it.
@@ -87,6 +94,8 @@ struct Hadron {
   std::vector<std::string> notes;
   // Absent for a narrow hadron: it has its nominal mass.
   std::optional<LineShape> line_shape;
+  // Mean life in seconds.
+  std::optional<double> lifetime;
 };
 
 struct Daughter {
@@ -122,6 +131,12 @@ struct MassGrid {
   std::vector<float> distances, log_widths, slopes;
 };
 
+struct FlavourAmplitude {
+  std::string row;
+  double projection = MISSING;
+  std::vector<double> re, im;
+};
+
 struct Row {
   std::string id;
   std::vector<Daughter> daughters;
@@ -137,6 +152,9 @@ struct Row {
   std::optional<MassGrid> grid;
   std::string isospin_channel;
   std::optional<double> isospin_coefficient;
+  std::optional<double> power;
+  std::optional<Estimate> unadjusted_fraction, unadjusted_width;
+  std::vector<FlavourAmplitude> kaon_flavours;
 };
 
 struct Parent {
@@ -154,6 +172,8 @@ struct Tables {
   Header header;
   std::vector<Parent> parents;
   std::vector<Hadron> externals;
+  // Externals whose decays a generator must know itself.
+  std::vector<std::string> left_open;
 };
 
 // The parent of a name; throws NotOurs that says what there is if there is none.

@@ -10,8 +10,9 @@
 // model. For a predicted row both lines are the same number. Below the sum of the daughters' masses it is 0.
 //
 // A row that is averaged over the line shapes of its daughters (flag `folded`), or has a width at m0 where K(m0) = 0, is
-// evaluated from its grid, by the rule that the schema states and to its accuracy of 1e-4. A row without waves has a
-// constant width, since nothing is known of its shape: above its threshold, or for a remainder above the parent's lowest.
+// evaluated from its grid, by the rule that the schema states and to its accuracy of 1e-4. A row without waves grows with
+// its `power` of the distance from its threshold; without a power it is constant above its threshold, since nothing is
+// known of its shape. A remainder is constant above the parent's lowest threshold, or everywhere if that lies above m0.
 #ifndef COUPLET_WIDTHS_HPP
 #define COUPLET_WIDTHS_HPP
 
@@ -218,10 +219,11 @@ inline const MassGrid& checked(const MassGrid& grid, const std::string& row) {
   throw Damaged(row + ": expected a grid of two points or more in ascending order, got another");
 }
 
-// One row made ready for many masses: closed form, grid, or a constant above a threshold.
+// One row made ready for many masses: closed form, grid, or a power of the distance from a threshold.
 struct ReadyRow {
   double threshold = 0;
-  double constant = 0;
+  // Without waves: width = constant ((m - threshold)/distance)^power.
+  double constant = 0, distance = 1, power = 0;
   double first = 0, second = 0;
   // The sum of scale times K is the partial width.
   std::vector<std::pair<double, WidthModel>> waves;
@@ -229,7 +231,7 @@ struct ReadyRow {
 
   double width(double mass) const {
     if (grid) return grid_width(*grid, mass);
-    if (waves.empty()) return mass > threshold ? constant : 0;
+    if (waves.empty()) return mass > threshold ? constant * std::pow((mass - threshold) / distance, power) : 0;
     const double momentum = breakup_momentum(mass, first, second);
     if (momentum == 0) return 0;
     double sum = 0;
@@ -255,6 +257,12 @@ inline ReadyRow ready_row(const Tables& tables, const Parent& parent, const Row&
   }
   if (row.waves.empty()) {
     ready.constant = row.width.value;
+    if (row.power) {
+      ready.power = *row.power;
+      ready.distance = parent.hadron.mass - row.threshold;
+      if (std::isfinite(ready.constant) && ready.constant >= 0 && ready.distance > 0 && ready.power >= 0) return ready;
+      throw Damaged(row.id + ": expected a width, a threshold below the parent's mass and a power >= 0, got others");
+    }
     if (std::isfinite(ready.constant) && std::isfinite(ready.threshold)) return ready;
     throw Damaged(row.id + ": expected a row without waves to have a width and a threshold, got none");
   }
@@ -284,7 +292,8 @@ inline ReadyRow ready_row(const Tables& tables, const Parent& parent, const Row&
   return ready;
 }
 
-// All rows; a remainder is constant above the lowest threshold of the rows that have daughters, if there are any.
+// All rows; a remainder is constant above the lowest threshold of the rows that have daughters, unless the nominal mass
+// lies below it: then it is all there is of the parent's width.
 inline std::vector<ReadyRow> ready_rows(const Tables& tables, const Parent& parent) {
   std::vector<ReadyRow> ready;
   double lowest = std::numeric_limits<double>::infinity();
@@ -293,7 +302,7 @@ inline std::vector<ReadyRow> ready_rows(const Tables& tables, const Parent& pare
     if (!row.daughters.empty()) lowest = std::min(lowest, last.grid ? last.grid->threshold : last.threshold);
   }
   for (std::size_t k = 0; k < ready.size(); ++k) {
-    if (parent.rows[k].daughters.empty() && std::isfinite(lowest)) ready[k].threshold = lowest;
+    if (parent.rows[k].daughters.empty() && lowest < parent.hadron.mass) ready[k].threshold = lowest;
   }
   return ready;
 }

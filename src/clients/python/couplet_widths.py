@@ -10,9 +10,10 @@ width, measured or predicted; a measured row keeps its measured value and takes 
 predicted row both lines are the same number. Below the sum of the daughters' masses it is 0.
 
 A row that is averaged over the line shapes of its daughters (flag `folded`), or has a width at m0 where K(m0) = 0, is
-evaluated from its grid, by the rule that the schema states and to its accuracy of 1e-4. A row without waves has a
-constant width, since nothing is known of its shape: above its threshold, or for a remainder above the parent's lowest.
-All masses are in MeV.
+evaluated from its grid, by the rule that the schema states and to its accuracy of 1e-4. A row without waves grows with
+its `power` of the distance from its threshold; without a power it is constant above its threshold, since nothing is
+known of its shape. A remainder is constant above the parent's lowest threshold, or everywhere if that lies above m0. All
+masses are in MeV.
 """
 
 import bisect
@@ -202,7 +203,7 @@ class ParentWidths:
     def __init__(self, tables, parent):
         hadrons = {hadron.name: hadron for hadron in tables.externals}
         hadrons.update((p.hadron.name, p.hadron) for p in tables.parents)
-        lowest = min((_lowest_mass(row) for row in parent.rows if row.daughters), default=0.0)
+        lowest = min((_lowest_mass(row) for row in parent.rows if row.daughters), default=math.inf)
         self._rows = [_ready_row(hadrons, parent, row, lowest) for row in parent.rows]
 
     def widths(self, mass):
@@ -248,7 +249,11 @@ def _ready_row(hadrons, parent, row, lowest):
     if not row.waves:
         if not (row.width.HasField("value") and row.HasField("threshold")):
             raise Damaged(f"{row.id}: expected a row without waves to have a width and a threshold, got none")
-        constant, threshold = row.width.value, row.threshold if row.daughters else lowest
+        if row.HasField("power"):
+            return _power_of_distance(row, parent.hadron.mass)
+        # A remainder of a parent below its lowest threshold is all there is of its width.
+        takes_lowest = not row.daughters and lowest < parent.hadron.mass
+        constant, threshold = row.width.value, lowest if takes_lowest else row.threshold
         return lambda mass: constant if mass > threshold else 0.0
     nominal = parent.hadron.mass
     if len(row.daughters) != 2 or not nominal > 0:
@@ -282,6 +287,15 @@ def _ready_row(hadrons, parent, row, lowest):
         return sum(scale * k(mass, m1, m2, q) for scale, k in waves) if q > 0 else 0.0
 
     return width
+
+
+def _power_of_distance(row, nominal):
+    """The law of a row outside the symmetry: width ((m - threshold)/(m0 - threshold))^power."""
+    width, threshold, power = row.width.value, row.threshold, row.power
+    distance = nominal - threshold
+    if not (math.isfinite(width) and width >= 0 and distance > 0 and power >= 0):
+        raise Damaged(f"{row.id}: expected a width, a threshold below the parent's mass and a power >= 0, got others")
+    return lambda mass: width * ((mass - threshold) / distance) ** power if mass > threshold else 0.0
 
 
 def _daughter(hadrons, row, daughter):

@@ -6,6 +6,7 @@ import type { RandomGenerator } from "pure-rand/types/RandomGenerator";
 import { WHOLE } from "../../completion/parts-per-billion.js";
 import { couplet } from "../../gen/couplet.js";
 import { refuse } from "../../require.js";
+import { doubles } from "../doubles.js";
 import { requireWithin } from "../limits.js";
 import type { ServedParent } from "../served.js";
 import { requireMass } from "./mass.js";
@@ -67,7 +68,7 @@ function drawnAtNominalMass(
 
 function drawnAt(parent: ServedParent, masses: readonly number[], random: RandomGenerator): number[] {
   const evaluator = parent.evaluator();
-  const widths = new Array<number>(evaluator.rowCount).fill(0);
+  const widths = doubles(evaluator.rowCount);
   return masses.map((massMeV, k) => {
     requireMass(massMeV, k, (index) => `masses[${index}]`);
     // One random number a draw, used or not, so that draws do not depend on one another.

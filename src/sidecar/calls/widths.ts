@@ -1,4 +1,5 @@
 import { couplet } from "../../gen/couplet.js";
+import { type Doubles, doubles } from "../doubles.js";
 import { requireWithin } from "../limits.js";
 import type { ServedParent } from "../served.js";
 import { requireMass } from "./mass.js";
@@ -51,13 +52,6 @@ function batchOfWidths(
     message: { tableSha256: parent.table.sha256, totalWidths, widths, fractions },
     rowsEvaluated: widths.length,
   };
-}
-
-/** What the encoder takes for a repeated double; arrays of this kind alone keep it fast. */
-type Doubles = Float64Array & number[];
-
-function doubles(length: number): Doubles {
-  return new Float64Array(length) as Doubles;
 }
 
 function widthsAt(

@@ -43,7 +43,8 @@ export function irrepLayout(product: ProductBlocks, irrep: Irrep): IrrepLayout {
 /**
  * A copy lowered from its leading multiplet to all others: T-steps up in L at K = P + Q, then W-steps down in K.
  *
- * Below K = Q one more W-step must give zero; that closure is checked.
+ * Below K = Q one more W-step must give zero, and along K = Q a T-step must give the multiplet that came down; both are
+ * checked.
  */
 export function loweredCopy(
   product: ProductBlocks,
@@ -67,9 +68,17 @@ export function loweredCopy(
         raiseKFactors(irrep, k),
       );
     }
-    descent.checkClosure(patternNumber(patterns, irrep.q, l));
+    const lowest = patternNumber(patterns, irrep.q, l);
+    descent.checkClosure(lowest);
+    if (l > 0) descent.checkPath(patternNumber(patterns, irrep.q, l - 1), lowest);
   }
   return { layout, copy, ...descent.result };
+}
+
+function sameIntegers(a: ArrayLike<number | bigint>, b: ArrayLike<number | bigint>): boolean {
+  if (a.length !== b.length) return false;
+  for (let i = 0; i < a.length; i++) if (a[i] !== b[i] && BigInt(a[i]!) !== BigInt(b[i]!)) return false;
+  return true;
 }
 
 /** The vectors of one copy while they are being filled in. */
@@ -136,6 +145,20 @@ class Descent {
     const { irrep } = this.#layout;
     requireIdentity("loweredCopy", vanishes, () => {
       return `a step below the lowest multiplet of (${irrep.p},${irrep.q}) does not vanish`;
+    });
+  }
+
+  /** Checks that a T-step gives the multiplet that was reached by the other path. */
+  checkPath(from: number, to: number): void {
+    const link = this.#links.from(this.#layout.blocks[from]!, "T")!;
+    const numbers = new Float64Array(link.target.size + 1);
+    const { big } = this.#advanced(link, from, numbers);
+    const known = this.#big.get(to) ?? this.#numbers(to);
+    // Both are primitive vectors, each in numbers as soon as these hold it.
+    const same = sameIntegers(big ?? numbers, known);
+    const { irrep } = this.#layout;
+    requireIdentity("loweredCopy", same, () => {
+      return `two paths to the multiplet ${to} of (${irrep.p},${irrep.q}) give different factors`;
     });
   }
 

@@ -51,13 +51,21 @@ class Dump {
     text += ']';
   }
 
+  void add(const couplet::Policies& policies) {
+    const auto& [a, b, c, d] = policies;
+    all(a, b, c, d);
+  }
+  void add(const couplet::FlavourAmplitude& amplitude) {
+    const auto& [a, b, c, d] = amplitude;
+    all(a, b, c, d);
+  }
   void add(const couplet::Header& header) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k] = header;
-    all(a, b, c, d, e, f, g, h, i, j, k);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l] = header;
+    all(a, b, c, d, e, f, g, h, i, j, k, l);
   }
   void add(const couplet::Hadron& hadron) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o] = hadron;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p] = hadron;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p);
   }
   void add(const couplet::Daughter& daughter) {
     const auto& [a, b] = daughter;
@@ -84,16 +92,16 @@ class Dump {
     all(a, b, c, d, e, f);
   }
   void add(const couplet::Row& row) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q] = row;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u] = row;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u);
   }
   void add(const couplet::Parent& parent) {
     const auto& [a, b, c, d, e, f, g] = parent;
     all(a, b, c, d, e, f, g);
   }
   void add(const couplet::Tables& tables) {
-    const auto& [a, b, c, d] = tables;
-    all(a, b, c, d);
+    const auto& [a, b, c, d, e] = tables;
+    all(a, b, c, d, e);
   }
 
  private:

@@ -42,6 +42,18 @@ inline couplet::v1::DecayTables small_table(const couplet::v1::DecayTables& whol
   return small;
 }
 
+// Keeps a few points of each curve, so that the table stays small.
+inline void shorten(google::protobuf::RepeatedField<float>* points) {
+  if (points->size() > 3) points->Truncate(3);
+}
+
+inline void shorten(couplet::v1::Hadron& hadron) {
+  hadron.clear_content();
+  if (!hadron.has_line_shape()) return;
+  shorten(hadron.mutable_line_shape()->mutable_distances());
+  shorten(hadron.mutable_line_shape()->mutable_cumulative());
+}
+
 // Of a small table, one row and what its width needs.
 inline couplet::v1::DecayTables one_row_table(couplet::v1::DecayTables table) {
   couplet::v1::Parent& parent = *table.mutable_parents(0);
@@ -49,8 +61,22 @@ inline couplet::v1::DecayTables one_row_table(couplet::v1::DecayTables table) {
   parent.mutable_rows(0)->set_parts_per_billion(couplet::WHOLE);
   parent.mutable_rows(0)->clear_measurement();
   parent.mutable_rows(0)->clear_sources();
-  parent.mutable_hadron()->clear_content();
-  for (auto& hadron : *table.mutable_externals()) hadron.clear_content();
+  shorten(*parent.mutable_hadron());
+  for (auto& hadron : *table.mutable_externals()) shorten(hadron);
+  if (parent.rows(0).has_grid()) {
+    couplet::v1::MassGrid& grid = *parent.mutable_rows(0)->mutable_grid();
+    shorten(grid.mutable_distances());
+    shorten(grid.mutable_log_widths());
+    shorten(grid.mutable_slopes());
+  }
+  return table;
+}
+
+// A table so small that every byte of it can take every value.
+inline couplet::v1::DecayTables tiny_table(couplet::v1::DecayTables table) {
+  table.clear_externals();
+  table.mutable_parents(0)->mutable_hadron()->clear_line_shape();
+  table.mutable_parents(0)->mutable_rows(0)->clear_grid();
   return table;
 }
 

@@ -1,0 +1,89 @@
+import { spawn, spawnSync } from "node:child_process";
+import { join } from "node:path";
+import { describe, expect, test } from "vitest";
+
+const command = join(__dirname, "..", "..", "dist", "cli", "main.js");
+const study = (name: string) => join(__dirname, "..", "chain", "studies", `${name}.yaml`);
+
+function run(...args: string[]) {
+  return spawnSync(process.execPath, [command, "fit", ...args], { encoding: "utf8", maxBuffer: 2 ** 26 });
+}
+
+describe("couplet fit", () => {
+  test("prints further errors only where they are asked for", () => {
+    const { status, stdout, stderr } = run(study("decuplet"));
+    expect([status, stderr]).toEqual([0, ""]);
+    expect(stdout).not.toMatch(/profile|pseudo|left out|width models/);
+    // chi2 11.46 with 3 degrees of freedom: S = 1.95, beside an error that stays as it is.
+    expect(stdout).toContain("S = sqrt(chi2/ndf) = 1.95");
+    expect(stdout).toMatch(/g\(10\) +5\.35 \+- 0\.05 +\(\+- 0\.10\)/);
+  });
+
+  test("prints intervals, pseudo-experiments, leave-one-out and models, and the same as JSON", () => {
+    const options = ["--profile", "--toys", "40", "--seed", "3", "--leave-one-out", "--models"];
+    const { status, stdout, stderr } = run(study("decuplet"), ...options, "--workers", "2");
+    expect([status, stderr]).toEqual([0, ""]);
+    for (const heading of [
+      "Intervals by profile likelihood, all other parameters fitted again:",
+      "40 pseudo-experiments, seed 3; ",
+      "Fits without one measurement each, shifts in brackets:",
+      "The same data with other width models:",
+      "error of a predicted width, MeV  statistical  branch  model  breaking",
+    ])
+      expect(stdout.replaceAll(/ {2,}/g, "  ")).toContain(heading);
+    const json = JSON.parse(run(study("decuplet"), ...options, "--workers", "1", "--json").stdout);
+    expect(Object.keys(json)).toEqual([
+      "title",
+      "minima",
+      "notes",
+      "profiles",
+      "pseudoExperiments",
+      "models",
+      "leaveOneOut",
+      "errorParts",
+    ]);
+    expect(json.pseudoExperiments.seed).toBe(3);
+    expect(json.leaveOneOut).toHaveLength(4);
+    expect(json.errorParts[0].channel).toBe("Delta(1232)++ -> p pi+");
+  });
+
+  test.each([
+    {
+      options: ["--seed", "3"],
+      message:
+        "couplet: couplet fit: --seed belongs to --toys, which is not there. Add --toys <n>, or leave it out.\n",
+    },
+    {
+      options: ["--toys", "many"],
+      message: "couplet: couplet fit: --toys: expected an integer from 1 to 100000000, got NaN.\n",
+    },
+    {
+      options: ["--toys", "5", "--workers", "0"],
+      message: "couplet: couplet fit: --workers: expected an integer from 1 to 256, got 0.\n",
+    },
+  ])("refuses $options with exit code 2", ({ options, message }) => {
+    const { status, stdout, stderr } = run(study("decuplet"), ...options);
+    expect([status, stdout, stderr]).toEqual([2, "", message]);
+  });
+
+  test("ends with 130 on Ctrl-C in the middle of pseudo-experiments, and prints nothing", async () => {
+    const child = spawn(process.execPath, [
+      command,
+      "fit",
+      study("decuplet"),
+      "--toys",
+      "1000000",
+      "--workers",
+      "2",
+    ]);
+    let output = "";
+    child.stdout.on("data", (piece) => {
+      output += piece;
+    });
+    const ended = new Promise((resolve) => child.on("exit", resolve));
+    await new Promise((resolve) => setTimeout(resolve, 2500));
+    expect(child.exitCode).toBe(null);
+    child.kill("SIGINT");
+    expect([await ended, output]).toEqual([130, ""]);
+  });
+});

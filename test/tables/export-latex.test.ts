@@ -1,0 +1,111 @@
+import { describe, expect, test } from "vitest";
+import { couplet } from "../../src/gen/couplet.js";
+import { decaysMessage } from "../../src/tables/encode-decays.js";
+import { exportLatex } from "../../src/tables/export-latex.js";
+import { latexHadron } from "../../src/tables/export-latex-names.js";
+import { roundedValue } from "../../src/tables/rounding.js";
+import { studyText, tablesOf } from "../chain/run.js";
+import { HALF, madeDecays } from "./made-decays.js";
+
+import v1 = couplet.v1;
+
+describe("values rounded by the trade's rule", () => {
+  // Cases of the Review's introduction, "Rounding": three leading digits of the error 100-354, 355-949, 950-999.
+  test.each([
+    [0.827, 0.119, ["0.83", "0.12"]],
+    [0.827, 0.367, ["0.8", "0.4"]],
+    [0.827, 0.951, ["0.8", "1.0"]],
+    [1234.5, 354, ["1230", "350"]],
+    [1234.5, 41, ["1230", "40"]],
+  ])("%s with error %s", (value, error, [rounded, roundedError]) => {
+    expect(roundedValue(value, error, error)).toEqual({
+      value: rounded,
+      plus: roundedError,
+      minus: roundedError,
+    });
+  });
+
+  test("of two errors the smaller decides, and without errors four digits stay", () => {
+    expect(roundedValue(2.04, 0.7, 0.12)).toEqual({ value: "2.04", plus: "0.70", minus: "0.12" });
+    expect(roundedValue(12.3456, 0, 0)).toEqual({ value: "12.35", plus: "", minus: "" });
+  });
+});
+
+test.each([
+  ["p", "p"],
+  ["Sigma(1385)+", "\\Sigma(1385)^{+}"],
+  ["Delta(1232)++", "\\Delta(1232)^{++}"],
+  ["K0bar", "\\overline{K^{0}}"],
+  ["pbar", "\\overline{p}"],
+  ["K2*(1430)+", "K_{2}^{*}(1430)^{+}"],
+  ["K*(892)-", "K^{*}(892)^{-}"],
+  ["f2'(1525)", "f_{2}^{\\prime}(1525)"],
+  ["eta'(958)", "\\eta^{\\prime}(958)"],
+  ["D_s+", "D_{s}^{+}"],
+  ["K_S0", "K_{S}^{0}"],
+  ["chi_c0(1P)", "\\chi_{c0}(1P)"],
+  ["J/psi(1S)", "J/\\psi(1S)"],
+  ["a&b_{c}%", "\\mathrm{a\\&b\\_\\{c\\}\\%}"],
+])("%s is typeset as %s", (name, latex) => {
+  expect(latexHadron(name)).toBe(latex);
+});
+
+/** Lines of a tabular as read: cells by row id. */
+function readRows(text: string): Map<string, string[]> {
+  const rows = [...text.matchAll(/^(.*) \\\\ % (.*)$/gm)];
+  return new Map(rows.map(([, cells, id]) => [id!, cells!.split(" & ")]));
+}
+
+/** `$12.6 \pm 3.0$` or `$2.0^{+0.7}_{-0.5}$` as value, upper and lower error. */
+function readValue(cell: string): number[] {
+  const math = cell.replace(/^\$|\$$/g, "").replace(/ \\times 10\^\{(-?\d+)\}/, "e$1");
+  const symmetric = /^(\S+) \\pm (\S+)$/.exec(math);
+  if (symmetric !== null) return [symmetric[1], symmetric[2], symmetric[2]].map(Number);
+  const sides = /^([^^]+)\^\{\+([^}]+)\}_\{-([^}]+)\}$/.exec(math);
+  return sides === null ? [Number(math), 0, 0] : [sides[1], sides[2], sides[3]].map(Number);
+}
+
+describe("decay tables as LaTeX", () => {
+  const tables = v1.DecayTables.create(decaysMessage(tablesOf(studyText("octet-5-2"))));
+  const text = exportLatex(tables);
+
+  test("every row is read back, value and errors within half of the error's last digit", () => {
+    const read = readRows(text);
+    const rows = tables.parents.flatMap((parent) => parent.rows!);
+    expect(read.size).toBe(rows.length);
+    for (const row of rows) {
+      const [, fraction, breaking, width] = read.get(row.id!)!;
+      if (row.kinematics === v1.Kinematics.KINEMATICS_CLOSED) {
+        expect([fraction, breaking, width]).toEqual(["closed", "", ""]);
+        continue;
+      }
+      for (const [cell, estimate, factor] of [
+        [fraction, row.fraction, 100],
+        [width, row.width, 1],
+      ] as const) {
+        const [value, plus, minus] = readValue(cell!) as [number, number, number];
+        const error = factor * Math.min(estimate!.plus!, estimate!.minus!);
+        // The rule keeps at least one digit of the error: half a unit of it is below a seventh of 3.55 units.
+        expect(Math.abs(value - factor * estimate!.value!)).toBeLessThanOrEqual(error / 7);
+        expect(Math.abs(plus / (factor * estimate!.plus!) - 1)).toBeLessThan(1 / 7);
+        expect(Math.abs(minus / (factor * estimate!.minus!) - 1)).toBeLessThan(1 / 7);
+      }
+    }
+  });
+
+  test("each parent is one tabular with the rules of booktabs", () => {
+    const count = (part: string) => text.split(part).length - 1;
+    for (const part of ["\\begin{tabular}", "\\toprule", "\\bottomrule", "\\end{tabular}"])
+      expect(count(part)).toBe(tables.parents.length);
+    expect(text).toContain(
+      "\\multicolumn{5}{l}{$\\Sigma(1775)^{0}$, mass $1775$~MeV, width $120.0$~MeV (measured)} \\\\",
+    );
+    expect(text).toContain("\n$n\\,\\overline{K^{0}}$ & ");
+  });
+
+  test("a title of two lines stays a comment, and a remainder has its name", () => {
+    const made = exportLatex(madeDecays([HALF]));
+    expect(made.split("\n")[0]).toBe("% made up (couplet 9.9.9)");
+    expect(made).toContain("\nremainder & ");
+  });
+});

@@ -1,0 +1,105 @@
+import {
+  existsSync,
+  lstatSync,
+  mkdirSync,
+  mkdtempSync,
+  readdirSync,
+  readFileSync,
+  rmSync,
+  symlinkSync,
+  writeFileSync,
+} from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { afterEach, beforeEach, describe, expect, test } from "vitest";
+import { InputError } from "../../src/errors.js";
+import { writeWhole } from "../../src/tables/whole-file.js";
+
+let folder = "";
+beforeEach(() => {
+  folder = mkdtempSync(join(tmpdir(), "couplet-whole-"));
+});
+afterEach(() => rmSync(folder, { recursive: true, force: true }));
+
+/** The message with which a place is refused, with the folder's name taken out. */
+function refusal(path: string): string {
+  try {
+    writeWhole(path, "new");
+  } catch (error) {
+    if (error instanceof InputError) return error.message.replaceAll(folder, "");
+    throw error;
+  }
+  throw new Error(`${path} was written`);
+}
+
+describe("a file is written", () => {
+  test("with nothing left beside it, in folders that are made on the way", () => {
+    writeWhole(join(folder, "a/b/t.pb"), Buffer.from([1, 2, 3]));
+    expect([...readFileSync(join(folder, "a/b/t.pb"))]).toEqual([1, 2, 3]);
+    expect(readdirSync(join(folder, "a/b"))).toEqual(["t.pb"]);
+  });
+
+  test("in place of an old one, keeping its mode", () => {
+    const path = join(folder, "t.pb");
+    writeFileSync(path, "old and longer", { mode: 0o640 });
+    writeWhole(path, "new");
+    expect(readFileSync(path, "utf8")).toBe("new");
+    expect(lstatSync(path).mode & 0o777).toBe(0o640);
+  });
+
+  test("through a link to where it points", () => {
+    mkdirSync(join(folder, "real"));
+    writeFileSync(join(folder, "real/t.pb"), "old");
+    symlinkSync(join(folder, "real/t.pb"), join(folder, "link.pb"));
+    writeWhole(join(folder, "link.pb"), "new");
+    expect(lstatSync(join(folder, "link.pb")).isSymbolicLink()).toBe(true);
+    expect(readFileSync(join(folder, "real/t.pb"), "utf8")).toBe("new");
+  });
+
+  test("past a stale file of a killed run, which is never taken for it", () => {
+    const path = join(folder, "t.pb");
+    writeFileSync(`${path}.123456`, "half");
+    writeWhole(path, "new");
+    expect(readFileSync(path, "utf8")).toBe("new");
+    expect(readFileSync(`${path}.123456`, "utf8")).toBe("half");
+  });
+});
+
+describe("a place is refused in words, and stays as it was", () => {
+  test("that is a folder", () => {
+    mkdirSync(join(folder, "d"));
+    expect(refusal(join(folder, "d"))).toBe(
+      "/d: expected a place for a file, got a folder. Name a file in it.",
+    );
+    expect(readdirSync(join(folder, "d"))).toEqual([]);
+  });
+
+  test("under a file", () => {
+    writeFileSync(join(folder, "f"), "old");
+    for (const path of ["/f/t.pb", "/f/deep/t.pb"]) {
+      expect(refusal(join(folder, path))).toBe(
+        `${path}: could not be written: ENOTDIR: not a directory. A part of the path is a file; choose another folder. Nothing was changed.`,
+      );
+    }
+    expect(readFileSync(join(folder, "f"), "utf8")).toBe("old");
+  });
+
+  test("with a name that is too long, and takes away the folders it made", () => {
+    const name = "n".repeat(300);
+    expect(refusal(join(folder, "made/deep", name))).toBe(
+      `/made/deep/${name}: could not be written: ENAMETOOLONG: name too long. Choose a shorter name. Nothing was changed.`,
+    );
+    expect(readdirSync(folder)).toEqual([]);
+  });
+
+  test("without a name", () => {
+    expect(refusal("")).toBe("expected the name of a file to write, got an empty name.");
+  });
+
+  test("where the system lets nobody write", () => {
+    expect(refusal("/proc/t.pb")).toBe(
+      "/proc/t.pb: could not be written: ENOENT: no such file or directory. Choose another folder. Nothing was changed.",
+    );
+    expect(existsSync("/proc/t.pb")).toBe(false);
+  });
+});
