@@ -36,7 +36,7 @@ describe("what README says", () => {
     const listed = [...couplet(folder, "--help").out.matchAll(/^ {2}([a-z]+) .*$/gm)].map(
       (match) => match[1]!,
     );
-    const shown = new Set([...README.matchAll(/^\s*couplet ([a-z]+)/gm)].map((match) => match[1]));
+    const shown = new Set([...README.matchAll(/^\s*(?:npx )?couplet ([a-z]+)/gm)].map((match) => match[1]));
     expect(listed.filter((name) => name !== "help" && !shown.has(name))).toEqual([]);
   });
 

@@ -28,7 +28,7 @@ export class Connections {
         options.clients.disconnected(peer);
         options.onCount(this.#sockets.size);
       });
-      // gRPC ends the session itself; without a listener a reset by the peer would end the process.
+      // gRPC ends the connection itself; without a listener a reset by the peer would end the process.
       socket.on("error", () => socket.destroy());
       injector.injectConnection(socket);
     });

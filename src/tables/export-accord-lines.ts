@@ -36,9 +36,7 @@ function integer(value: number, columns: number): string {
 /** `1P,E16.8`: one digit before the point, eight behind it; an exponent of three digits takes the place of the E. */
 function real(value: number): string {
   const [mantissa, exponent] = value.toExponential(8).split("e") as [string, string];
-  const digits = exponent.slice(1);
-  const sign = exponent[0];
-  return `${mantissa}${digits.length > 2 ? sign : `E${sign}${digits.padStart(2, "0")}`}${digits.length > 2 ? digits : ""}`.padStart(
-    16,
-  );
+  const [sign, digits] = [exponent[0]!, exponent.slice(1)];
+  const power = digits.length > 2 ? sign + digits : `E${sign}${digits.padStart(2, "0")}`;
+  return `${mantissa}${power}`.padStart(16);
 }

@@ -3,7 +3,7 @@ import { DEMO_STUDY } from "../../src/cli/demo-study.js";
 import type { ParentTable, Row, Tables } from "../../src/completion/tables.js";
 import { decodeDecays } from "../../src/tables/decode-decays.js";
 import { encodeDecays } from "../../src/tables/encode-decays.js";
-import { SeededIntegers } from "../support/seeded-integers.js";
+import { seededIntegers } from "../support/seeded-integers.js";
 import { studyText, tablesOf } from "./run.js";
 
 const WHOLE = {
@@ -42,7 +42,7 @@ describe.each(Object.entries(WHOLE))("the table of the %s is closed", (name, tab
   });
 
   test("parts of every parent add up to 10^9, and 2000 cascades drawn from them conserve charge and baryon number", () => {
-    const random = new SeededIntegers(20240501);
+    const random = seededIntegers(20240501);
     const draw = (start: string): number[] => {
       const sums = [0, 0];
       const queue = [start];
@@ -59,7 +59,7 @@ describe.each(Object.entries(WHOLE))("the table of the %s is closed", (name, tab
           part -= partsPerBillion;
           return part < 0;
         })!;
-        // The demo and the Delta leave remainders without daughters; such a draw ends here with its charges.
+        // The demo leaves remainders without daughters; such a draw ends here with its charges.
         if (row.daughters.length === 0) {
           sums[0]! += table.parent.hadron.charge;
           sums[1]! += table.parent.hadron.baryonNumber;
@@ -75,9 +75,9 @@ describe.each(Object.entries(WHOLE))("the table of the %s is closed", (name, tab
     }
   });
 
-  test.skipIf(name === "demo")("no row is without daughters", () => {
-    const rows = tables.parents.flatMap(({ rows }) => rows);
-    expect(rows.filter(({ daughters }) => daughters.length === 0)).toEqual([]);
+  test("no row is without daughters, but for the remainders of the demo", () => {
+    const rows = tables.parents.flatMap(({ rows }) => rows).filter(({ daughters }) => daughters.length === 0);
+    expect(rows.length > 0).toBe(name === "demo");
   });
 });
 
@@ -136,7 +136,10 @@ describe("vector and tensor mesons", () => {
   test("measured sums come out whole, over charge states and kaons", () => {
     const kaons = ["K+ K-", "K_S0 K_S0", "K_L0 K_L0"];
     expect(fractionOf(mesons, "f2(1270)", kaons)).toBeCloseTo(0.046, 12);
-    expect(fractionOf(mesons, "f2'(1525)", kaons)).toBeCloseTo(0.876, 12);
+    // 87.6, 11.6 and 0.83 % come to 100.03 %: within 0.1 sigma, so they are moved a little.
+    const old = rowsOf(mesons, "f2'(1525)", kaons).map(({ unadjusted }) => unadjusted!.fraction.value);
+    expect(old.reduce((sum, value) => sum + value, 0)).toBeCloseTo(0.876, 12);
+    expect(Math.abs(fractionOf(mesons, "f2'(1525)", kaons) - 0.876)).toBeLessThan(0.0022);
     expect(fractionOf(mesons, "phi(1020)", ["K_S0 K_L0"])).toBeCloseTo(0.339, 12);
     expect(fractionOf(mesons, "K*(892)+", ["K+ pi0", "K_S0 pi+", "K_L0 pi+"])).toBeCloseTo(0.99902, 12);
     expect(fractionOf(mesons, "a2(1320)+", ["rho(770)+ pi0", "rho(770)0 pi+"])).toBeCloseTo(0.701, 12);

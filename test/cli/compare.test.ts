@@ -1,5 +1,5 @@
 import { spawnSync } from "node:child_process";
-import { mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
@@ -65,35 +65,5 @@ describe("couplet compare", () => {
   test("refuses a threshold that is none, with exit code 2", () => {
     const { status, stderr } = run("compare", first, second, "--percent", "-1");
     expect([status, stderr]).toEqual([2, 'couplet: --percent: expected a number >= 0, got "-1".\n']);
-  });
-});
-
-describe("couplet export", () => {
-  test("writes a file, or prints the same text", () => {
-    const out = join(folder, "first.slha");
-    const printed = run("export", first, "--to", "accord");
-    const written = run("export", first, "--to", "accord", "-o", out);
-    const text = readFileSync(out, "utf8");
-    expect([printed.status, printed.stderr, printed.stdout]).toEqual([0, "", text]);
-    expect([written.status, written.stdout]).toEqual([0, `wrote ${out} (${text.length} bytes)\n`]);
-  });
-
-  test("JSON is that of `couplet show --json`", () => {
-    expect(run("export", first, "--to", "json").stdout).toBe(run("show", first, "--json").stdout);
-  });
-
-  test("refuses what does not go together, with exit code 2", () => {
-    const refused = (...args: string[]) => {
-      const { status, stderr } = run("export", first, ...args);
-      return [status, stderr];
-    };
-    expect(refused("--to", "xml")).toEqual([
-      2,
-      'couplet: --to: expected one of csv, latex, accord, json, got "xml".\n',
-    ]);
-    expect(refused("--to", "csv", "--rescale")).toEqual([
-      2,
-      "couplet: --number and --rescale: expected with --to accord only. Leave them out.\n",
-    ]);
   });
 });

@@ -35,7 +35,8 @@ const COPIED = [
 ];
 const ALL_TESTS = ["test/exact", "test/su2", "test/su3"];
 const REQUIRED_SCORE = 0.85;
-const TIMEOUT_MS = 180_000;
+/** A run that takes so many times as long as all tests without a mutant is taken for endless. */
+const PATIENCE = 5;
 
 function main(args: readonly string[]): number {
   const option = (name: string, fallback: string) => {
@@ -54,12 +55,15 @@ function main(args: readonly string[]): number {
   try {
     for (const name of COPIED) cpSync(join(root, name), join(copy, name), { recursive: true });
     symlinkSync(join(root, "node_modules"), join(copy, "node_modules"));
-    if (!passes(copy, ALL_TESTS)) throw new Error("the tests fail without any mutant");
+    const start = performance.now();
+    if (outcome(copy, ALL_TESTS, 3_600_000) !== "survived")
+      throw new Error("the tests fail without any mutant");
+    const patience = Math.ceil(PATIENCE * (performance.now() - start));
     const survivors: Mutant[] = [];
     for (const [i, mutant] of sample.entries()) {
-      const alive = survives(copy, mutant);
-      if (alive) survivors.push(mutant);
-      console.log(`${i + 1}/${sample.length} ${alive ? "SURVIVED" : "killed"} ${described(mutant)}`);
+      const fate = fateOf(copy, mutant, patience);
+      if (fate === "survived") survivors.push(mutant);
+      console.log(`${i + 1}/${sample.length} ${fate} ${described(mutant)}`);
     }
     const score = 1 - survivors.length / sample.length;
     console.log(`\nscore ${(100 * score).toFixed(1)} %, ${survivors.length} survivors of ${sample.length}`);
@@ -86,13 +90,14 @@ function sampled(mutants: readonly Mutant[], count: number, seed: number): Mutan
   );
 }
 
-function survives(copy: string, mutant: Mutant): boolean {
+function fateOf(copy: string, mutant: Mutant, patience: number): Outcome {
   const path = join(copy, mutant.file);
   const text = readFileSync(path, "utf8");
   writeFileSync(path, text.slice(0, mutant.start) + mutant.replacement + text.slice(mutant.end));
   try {
     const own = ownTests(copy, mutant.file);
-    return (own.length === 0 || passes(copy, own)) && passes(copy, ALL_TESTS);
+    const first = own.length === 0 ? "survived" : outcome(copy, own, patience);
+    return first === "survived" ? outcome(copy, ALL_TESTS, patience) : first;
   } finally {
     writeFileSync(path, text);
   }
@@ -106,8 +111,10 @@ function ownTests(copy: string, file: string): string[] {
   return existsSync(join(copy, mirror)) ? [mirror] : [];
 }
 
-/** Whether the tests pass; one that does not end counts as failed. */
-function passes(copy: string, tests: readonly string[]): boolean {
+/** `survived` if the tests pass, `killed` if one fails, `endless` if they do not end; only the first is a gap. */
+type Outcome = "survived" | "killed" | "endless";
+
+function outcome(copy: string, tests: readonly string[], patience: number): Outcome {
   const vitest = join(copy, "node_modules", "vitest", "vitest.mjs");
   const flags = [
     "--bail",
@@ -121,11 +128,11 @@ function passes(copy: string, tests: readonly string[]): boolean {
   ];
   const { status } = spawnSync(process.execPath, [vitest, "run", "--root", copy, ...flags, ...tests], {
     cwd: copy,
-    timeout: TIMEOUT_MS,
+    timeout: patience,
     killSignal: "SIGKILL",
     stdio: "ignore",
   });
-  return status === 0;
+  return status === 0 ? "survived" : status === null ? "endless" : "killed";
 }
 
 function described({ file, line, original, replacement }: Mutant): string {

@@ -59,10 +59,10 @@ test("1,000 connections with garbage bytes (seed 61) end, and the server still a
 test("1,000 calls cut off in the middle of a message (seed 62) leave the server whole", async () => {
   const random = seededIntegers(62);
   for (let round = 0; round < 20; round++) {
-    const session = connectHttp2(`http://${server.address}`);
-    session.on("error", () => {});
+    const http2 = connectHttp2(`http://${server.address}`);
+    http2.on("error", () => {});
     const done = Array.from({ length: 50 }, () => {
-      const stream = session.request({
+      const stream = http2.request({
         ":method": "POST",
         ":path": "/couplet.v1.SidecarService/EvaluateWidthsStream",
         "content-type": "application/grpc",
@@ -82,17 +82,17 @@ test("1,000 calls cut off in the middle of a message (seed 62) leave the server 
       return end === 0 ? new Promise((resolve) => stream.once("close", resolve)) : Promise.resolve();
     });
     await Promise.all(done);
-    session.destroy();
+    http2.destroy();
   }
   await requireAnswers();
   await until(async () => /^couplet_streams_open 0$/m.test(await server.sidecar.metrics.registry.metrics()));
 });
 
 test("calls of other paths and content types get an answer and do no harm", async () => {
-  const session = connectHttp2(`http://${server.address}`);
+  const http2 = connectHttp2(`http://${server.address}`);
   const status = (headers: Record<string, string>) =>
     new Promise((resolve, reject) => {
-      const stream = session.request({ ":method": "POST", ...headers });
+      const stream = http2.request({ ":method": "POST", ...headers });
       stream.once("response", (response) => resolve([response[":status"], response["grpc-status"]]));
       stream.once("error", reject);
       stream.end();
@@ -104,7 +104,7 @@ test("calls of other paths and content types get an answer and do no harm", asyn
   expect(
     await status({ ":path": "/couplet.v1.SidecarService/ListTables", "content-type": "text/html" }),
   ).toEqual([415, undefined]);
-  session.destroy();
+  http2.destroy();
   await requireAnswers();
 });
 

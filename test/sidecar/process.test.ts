@@ -186,8 +186,8 @@ describe("memory of the server", () => {
 
   test("stays flat against a client that asks and never reads", async () => {
     const { child, address } = await served(FILE());
-    const session = connectHttp2(`http://${address}`);
-    session.on("error", () => {});
+    const http2 = connectHttp2(`http://${address}`);
+    http2.on("error", () => {});
     const masses = Buffer.alloc(8000);
     for (let k = 0; k < 1000; k++) masses.writeDoubleLE(1300, 8 * k);
     const name = Buffer.from("Sigma(1385)0");
@@ -204,7 +204,7 @@ describe("memory of the server", () => {
     const before = residentMiB(child);
     // 1,400 answers of 150 kB: 210 MB without a limit; it is 16 MiB.
     for (let k = 0; k < 1400; k++) {
-      const stream = session.request({
+      const stream = http2.request({
         ":method": "POST",
         ":path": "/couplet.v1.SidecarService/EvaluateWidthsBatch",
         "content-type": "application/grpc",
@@ -220,7 +220,7 @@ describe("memory of the server", () => {
     }
     expect(residentMiB(child) - before).toBeLessThan(120);
     reader.close();
-    session.destroy();
+    http2.destroy();
   });
 });
 

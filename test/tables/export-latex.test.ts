@@ -2,53 +2,10 @@ import { describe, expect, test } from "vitest";
 import { couplet } from "../../src/gen/couplet.js";
 import { decaysMessage } from "../../src/tables/encode-decays.js";
 import { exportLatex } from "../../src/tables/export-latex.js";
-import { latexHadron } from "../../src/tables/export-latex-names.js";
-import { roundedValue } from "../../src/tables/rounding.js";
 import { studyText, tablesOf } from "../chain/run.js";
 import { HALF, madeDecays } from "./made-decays.js";
 
 import v1 = couplet.v1;
-
-describe("values rounded by the trade's rule", () => {
-  // Cases of the Review's introduction, "Rounding": three leading digits of the error 100-354, 355-949, 950-999.
-  test.each([
-    [0.827, 0.119, ["0.83", "0.12"]],
-    [0.827, 0.367, ["0.8", "0.4"]],
-    [0.827, 0.951, ["0.8", "1.0"]],
-    [1234.5, 354, ["1230", "350"]],
-    [1234.5, 41, ["1230", "40"]],
-  ])("%s with error %s", (value, error, [rounded, roundedError]) => {
-    expect(roundedValue(value, error, error)).toEqual({
-      value: rounded,
-      plus: roundedError,
-      minus: roundedError,
-    });
-  });
-
-  test("of two errors the smaller decides, and without errors four digits stay", () => {
-    expect(roundedValue(2.04, 0.7, 0.12)).toEqual({ value: "2.04", plus: "0.70", minus: "0.12" });
-    expect(roundedValue(12.3456, 0, 0)).toEqual({ value: "12.35", plus: "", minus: "" });
-  });
-});
-
-test.each([
-  ["p", "p"],
-  ["Sigma(1385)+", "\\Sigma(1385)^{+}"],
-  ["Delta(1232)++", "\\Delta(1232)^{++}"],
-  ["K0bar", "\\overline{K^{0}}"],
-  ["pbar", "\\overline{p}"],
-  ["K2*(1430)+", "K_{2}^{*}(1430)^{+}"],
-  ["K*(892)-", "K^{*}(892)^{-}"],
-  ["f2'(1525)", "f_{2}^{\\prime}(1525)"],
-  ["eta'(958)", "\\eta^{\\prime}(958)"],
-  ["D_s+", "D_{s}^{+}"],
-  ["K_S0", "K_{S}^{0}"],
-  ["chi_c0(1P)", "\\chi_{c0}(1P)"],
-  ["J/psi(1S)", "J/\\psi(1S)"],
-  ["a&b_{c}%", "\\mathrm{a\\&b\\_\\{c\\}\\%}"],
-])("%s is typeset as %s", (name, latex) => {
-  expect(latexHadron(name)).toBe(latex);
-});
 
 /** Lines of a tabular as read: cells by row id. */
 function readRows(text: string): Map<string, string[]> {

@@ -1,47 +1,36 @@
 import { describe, expect, test } from "vitest";
-import { asGiven, significant, withError } from "../../src/tables/rounding.js";
+import { asGiven, roundedValue, significant, withError } from "../../src/tables/rounding.js";
 
-describe("a value with its error, for people", () => {
-  // The examples of the Review of Particle Physics, introduction, section "Rounding" (Particle Data Group, Phys. Rev. D
-  // 110, 030001 (2024)); provenance: memory.
+describe("values rounded by the trade's rule", () => {
+  // Cases of the Review's introduction, "Rounding": three leading digits of the error 100-354, 355-949, 950-999.
   test.each([
-    [0.827, 0.119, "0.83 +- 0.12"],
-    [0.827, 0.367, "0.8 +- 0.4"],
-  ])("%d +- %d is rounded as the Particle Data Group does", (value, error, text) => {
-    expect(withError(value, error)).toBe(text);
+    [0.827, 0.119, ["0.83", "0.12"]],
+    [0.827, 0.367, ["0.8", "0.4"]],
+    [0.827, 0.951, ["0.8", "1.0"]],
+    [1234.5, 354, ["1230", "350"]],
+    [1234.5, 41, ["1230", "40"]],
+  ])("%s with error %s", (value, error, [rounded, roundedError]) => {
+    expect(roundedValue(value, error, error)).toEqual({
+      value: rounded,
+      plus: roundedError,
+      minus: roundedError,
+    });
   });
 
-  test.each([
-    [0.827, 0.354, "0.83 +- 0.35"],
-    [0.827, 0.355, "0.8 +- 0.4"],
-    [0.827, 0.949, "0.8 +- 0.9"],
-    [0.827, 0.95, "0.8 +- 0.9"],
-    [117.04, 2.96, "117.0 +- 3.0"],
-    [1234.5, 120, "1230 +- 120"],
-    [12345, 3600, "12000 +- 4000"],
-    [-0.24, 0.033, "-0.240 +- 0.033"],
-  ])("%d +- %d becomes %s", (value, error, text) => {
-    expect(withError(value, error)).toBe(text);
+  test("of two errors the smaller decides, and without errors four digits stay", () => {
+    expect(roundedValue(2.04, 0.7, 0.12)).toEqual({ value: "2.04", plus: "0.70", minus: "0.12" });
+    expect(roundedValue(12.3456, 0, 0)).toEqual({ value: "12.35", plus: "", minus: "" });
   });
+});
 
-  test("has four digits where there is no error", () => {
-    expect(withError(0.123456, 0)).toBe("0.1235");
-    expect(withError(0.123456, Number.NaN)).toBe("0.1235");
-  });
-
-  test("keeps every digit of what was given", () => {
-    expect(asGiven(20.4, 3.6, 3.6)).toBe("20.4 +- 3.6");
-    expect(asGiven(58, 4, 3)).toBe("58 +4 -3");
-    expect(asGiven(1, 0, 0)).toBe("1");
-  });
-
-  test("has an exponent only where it is very small or very large", () => {
-    expect([0, 1e-4, 9.9e-5, 1e6, 1e7].map((value) => significant(value, 2))).toEqual([
-      "0",
-      "0.00010",
-      "9.9e-5",
-      "1000000",
-      "1.0e+7",
-    ]);
-  });
+test("text keeps what its reader needs: rounded with its error, as given, or to a count of digits", () => {
+  expect(withError(-0.24012, 0.0331)).toBe("-0.240 +- 0.033");
+  expect(withError(12.3456, 1e-14)).toBe("12.35");
+  expect(asGiven(0.1 + 0.2, 0.1, 0.1)).toBe("0.3 +- 0.1");
+  expect(asGiven(58, 4, 3)).toBe("58 +4 -3");
+  expect([significant(0, 4), significant(0.00123456, 3), significant(1.5e-9, 3)]).toEqual([
+    "0",
+    "0.00123",
+    "1.50e-9",
+  ]);
 });

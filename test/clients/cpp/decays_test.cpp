@@ -376,7 +376,8 @@ void widths(Checks& check, const Reader& reader, const std::string& bytes) {
       const bool folded = std::count(row.flags.begin(), row.flags.end(), couplet::Flag::folded) > 0;
       nominal += close(at.width(k, mass), row.width.value, folded ? 1e-4 : 1e-9);
       if (row.waves.empty() || folded) {
-        below += at.width(k, 1) == 0;
+        // Massless daughters, or a remainder that is all there is, have no threshold.
+        below += row.threshold == 0 || at.width(k, row.threshold / 2) == 0;
         continue;
       }
       // The threshold in the table is a rounded sum.

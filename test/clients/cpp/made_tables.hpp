@@ -29,15 +29,17 @@ inline couplet::v1::DecayTables small_table(const couplet::v1::DecayTables& whol
   parent->mutable_rows()->DeleteSubrange(2, parent->rows_size() - 2);
   parent->mutable_rows(0)->set_parts_per_billion(123456789);
   parent->mutable_rows(1)->set_parts_per_billion(1000000000 - 123456789);
-  for (const auto& hadron : whole.externals()) {
-    for (const auto& row : parent->rows()) {
-      for (const auto& daughter : row.daughters()) {
-        if (daughter.name() == hadron.name()) {
-          *small.add_externals() = hadron;
-          break;
-        }
-      }
+  const auto named = [&](const std::string& name) -> const couplet::v1::Hadron& {
+    for (const auto& hadron : whole.externals()) {
+      if (hadron.name() == name) return hadron;
     }
+    for (const auto& other : whole.parents()) {
+      if (other.hadron().name() == name) return other.hadron();
+    }
+    std::abort();
+  };
+  for (const auto& row : parent->rows()) {
+    for (const auto& daughter : row.daughters()) *small.add_externals() = named(daughter.name());
   }
   return small;
 }
