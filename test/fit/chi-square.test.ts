@@ -1,6 +1,6 @@
 import { expect, test } from "vitest";
 import { InputError } from "../../src/errors.js";
-import { chiSquareProbability, gaussianDeviations } from "../../src/fit/chi-square.js";
+import { chiSquareProbability, gaussianDeviations, scaleFactor } from "../../src/fit/chi-square.js";
 
 function relative(value: number, reference: number): number {
   return Math.abs(value / reference - 1);
@@ -106,4 +106,10 @@ test("the Gaussian deviations for 68.27, 90, 95, 95.45, 99 and 99.73 % are the o
   expect(gaussianDeviations(0.9).toFixed(4)).toBe("1.6449");
   expect(gaussianDeviations(0.95).toFixed(4)).toBe("1.9600");
   expect(gaussianDeviations(0.99).toFixed(4)).toBe("2.5758");
+});
+
+test("the scale factor is sqrt(chi2/ndf), never below 1, and undefined without degrees of freedom", () => {
+  expect(scaleFactor(18, 2)).toBe(3);
+  expect(scaleFactor(1, 4)).toBe(1);
+  expect(scaleFactor(1, 0)).toBeUndefined();
 });

@@ -86,7 +86,7 @@ describe("the square of an amplitude measured as x +- 1", () => {
   });
 
   // The interval in the square holds the truth a^2 when x is within 1 of +a or of -a: for a = 1 from -2 to 2, in
-  // probability Phi(1) - Phi(-3) = 0.8400; linear errors 2 |x| on x^2 hold it for |x^2 - 1| < 2 |x|: 0.6839 by hand.
+  // probability Phi(1) - Phi(-3) = 0.8400.
   test("covers a true square of 1 in 84.0 % of 1500 draws (seed 5; false alarm 1 in 10000)", () => {
     const normal = seededNormal(5);
     let covered = 0;

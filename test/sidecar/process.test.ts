@@ -45,7 +45,7 @@ function spawned(args: readonly string[]): Omit<Served, "address"> {
 async function served(...args: readonly string[]): Promise<Served> {
   const started = spawned(args.includes("--listen") ? args : [...args, "--listen", "127.0.0.1:0"]);
   const address = () => /"address":"([^"]+)"/.exec(started.log())?.[1];
-  await until(() => address() !== undefined || started.child.exitCode !== null, 20_000);
+  await until(() => address() !== undefined || started.child.exitCode !== null, 50_000);
   if (address() === undefined) throw new Error(started.log());
   return { ...started, address: address()! };
 }

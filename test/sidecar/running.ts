@@ -96,7 +96,7 @@ export async function failure(call: Promise<unknown>): Promise<{ code: number; d
 }
 
 /** Waits until something holds; fails after a time. */
-export async function until(holds: () => boolean | Promise<boolean>, milliseconds = 10_000): Promise<void> {
+export async function until(holds: () => boolean | Promise<boolean>, milliseconds = 30_000): Promise<void> {
   const end = Date.now() + milliseconds;
   while (!(await holds())) {
     if (Date.now() > end) throw new Error(`not within ${milliseconds} ms: ${holds}`);

@@ -59,6 +59,7 @@ interface Scratch {
 export function finisher({ table, largestBlock }: ProductBlocks): Finisher {
   const width = table.primes.length;
   const powers = Array.from(table.primes, (p) => Float64Array.from({ length: POWERS }, (_, e) => p ** e));
+  const bigPowers = keptPowers(table);
   const column = () => new Float64Array(largestBlock);
   const scratch = { y: column(), above: column(), aboveRest: column(), below: column(), belowRest: column() };
   return (lowered, m, columns, start) => {
@@ -76,7 +77,9 @@ export function finisher({ table, largestBlock }: ProductBlocks): Finisher {
       movePrime(scratch, size, weights, j, width, normExponents[m * width + j]!, powers[j]!);
     }
     const cofactor = bigVector === undefined ? lowered.normCofactors[m]! : NO_NUMBER;
-    writeFractions(scratch, size, cofactor, columns, start, (c) => exactSquare(table, lowered, m, c));
+    writeFractions(scratch, size, cofactor, columns, start, (c) =>
+      exactSquare(table, lowered, m, c, bigPowers),
+    );
   };
 }
 
@@ -156,19 +159,39 @@ function writeFractions(
   }
 }
 
+/** A power of prime number j of a table. */
+type BigPower = (j: number, exponent: number) => bigint;
+
+/** Powers of primes that are kept once made: the same few dozen come again with every factor. */
+function keptPowers({ primes }: PrimeTable): BigPower {
+  const kept = primes.map(() => [1n]);
+  return (j, exponent) => {
+    const powers = kept[j]!;
+    for (let e = powers.length; e <= exponent; e++) powers.push(powers[e - 1]! * BigInt(primes[j]!));
+    return powers[exponent]!;
+  };
+}
+
 /** The square of a factor other than 0, in lowest terms, for any size. */
-export function exactSquare({ primes }: PrimeTable, lowered: LoweredCopy, m: number, c: number): BigFraction {
+export function exactSquare(
+  table: PrimeTable,
+  lowered: LoweredCopy,
+  m: number,
+  c: number,
+  power: BigPower = keptPowers(table),
+): BigFraction {
+  const { primes } = table;
   const { layout, normExponents, normCofactors } = lowered;
   const value = exactInteger(lowered, m, c);
   let y = value < 0n ? -value : value;
   let num = 1n;
   let den = 1n;
-  for (const [j, prime] of primes.entries()) {
-    const p = BigInt(prime);
+  for (let j = 0; j < primes.length; j++) {
+    const p = power(j, 1);
     let e = layout.blocks[m]!.weights[c * primes.length + j]! - normExponents[m * primes.length + j]!;
     for (; e < 0 && y % p === 0n; e += 2) y /= p;
-    if (e > 0) num *= p ** BigInt(e);
-    if (e < 0) den *= p ** BigInt(-e);
+    if (e > 0) num *= power(j, e);
+    if (e < 0) den *= power(j, -e);
   }
   const square = y * y;
   const common = gcd(square, normCofactors[m]!);
