@@ -30,6 +30,8 @@ export function complete(fit: Fit, minimum: number): Tables {
   const problems: string[] = [];
   const plain: ParentTable[] = [];
   for (const parent of model.parents) {
+    // A stable parent (the proton of a study of semileptonic decays) has nothing to be completed.
+    if (parent.total.kind === "measured" && parent.total.widthMeV === 0) continue;
     const entries = entriesOf(model, predictions, parent, measured);
     const completed = completeParent(parent, entries, {
       covariance: predictions.minimum.covariance,

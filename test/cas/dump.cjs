@@ -10,16 +10,23 @@ const { sixJ, isTriad } = require(join(dist, "su2", "six-j.js"));
 
 const [folder] = process.argv.slice(2);
 const irrepsUpTo = (n) =>
-  Array.from({ length: n + 1 }, (_, sum) => Array.from({ length: sum + 1 }, (_, q) => ({ p: sum - q, q }))).flat();
+  Array.from({ length: n + 1 }, (_, sum) =>
+    Array.from({ length: sum + 1 }, (_, q) => ({ p: sum - q, q })),
+  ).flat();
 
 const products = irrepsUpTo(3).flatMap((left) =>
   irrepsUpTo(3).map((right) => {
-    const series = decomposeProduct(left, right).map(({ irrep, multiplicity }) => `[[${irrep.p},${irrep.q}],${multiplicity}]`);
+    const series = decomposeProduct(left, right).map(
+      ({ irrep, multiplicity }) => `[[${irrep.p},${irrep.q}],${multiplicity}]`,
+    );
     return `[[${left.p},${left.q}],[${right.p},${right.q}],[${series.join(",")}]]`;
   }),
 );
 const dimensions = irrepsUpTo(8).map((irrep) => `[[${irrep.p},${irrep.q}],${irrepDimension(irrep)}]`);
-writeFileSync(join(folder, "su3.g"), `products := [${products.join(",\n")}];;\ndimensions := [${dimensions.join(",\n")}];;\n`);
+writeFileSync(
+  join(folder, "su3.g"),
+  `products := [${products.join(",\n")}];;\ndimensions := [${dimensions.join(",\n")}];;\n`,
+);
 
 const square = ({ sign, num, den }) => `${sign < 0 ? "-" : ""}${num}/${den}`;
 const spins = [0, 1, 2, 3, 4, 5];
@@ -30,7 +37,10 @@ for (const a of spins) {
       for (let m1 = -a; m1 <= a; m1 += 2) {
         for (let m2 = -b; m2 <= b; m2 += 2) {
           if (Math.abs(m1 + m2) > j) continue;
-          lines.push({ clebschGordan: [a, m1, b, m2, j, m1 + m2], square: square(clebschGordan(a, m1, b, m2, j, m1 + m2)) });
+          lines.push({
+            clebschGordan: [a, m1, b, m2, j, m1 + m2],
+            square: square(clebschGordan(a, m1, b, m2, j, m1 + m2)),
+          });
         }
       }
     }
