@@ -45,9 +45,12 @@ describe("what README says", () => {
     expect({ code, error }).toEqual({ code: 0, error: "" });
   });
 
-  test.each(blocks("yaml"))("is a study that can be read: %#", (study) => {
-    expect(() => readStudy(Buffer.from(study), "README.md")).not.toThrow();
-  });
+  test.each(blocks("yaml").filter((block) => block.startsWith("couplet: 1")))(
+    "is a study that can be read: %#",
+    (study) => {
+      expect(() => readStudy(Buffer.from(study), "README.md")).not.toThrow();
+    },
+  );
 
   test("names exports of the library that exist", () => {
     const library = require(join(ROOT, "dist", "index.js")) as Record<string, unknown>;
