@@ -29,7 +29,8 @@ if grep '^package/src/' "$work/files" | grep -v '^package/src/clients/'; then
 fi
 
 npx --no-install publint run --strict "$tarball"
-npx --no-install attw "$tarball" --no-emoji
+# The package needs Node 20.19, which reads `exports`; the resolution of Node 10 does not, and is left out.
+npx --no-install attw "$tarball" --no-emoji --profile node16
 
 mkdir "$work/empty"
 cd "$work/empty"
