@@ -101,7 +101,7 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 1 a comparison 
     .command("show")
     .description("what a table file holds, for people")
     .argument("<file>", "a .pb file written by Couplet")
-    .option("--parent <name>", "only this hadron, in detail")
+    .option("--parent <name>", "only this hadron, by name or Monte Carlo number")
     .option("--row <id>", "one row's number from its source on, e.g. 'Delta(1232)+ -> p pi0'")
     .option("--json", "canonical JSON of the message in the file")
     .action(async (file: string, options: ShowOptions) => (await import("./show.js")).runShow(file, options));

@@ -54,7 +54,10 @@ function decoded(kind: TableKind, bytes: Uint8Array, path: string): object {
 }
 
 function parentNamed({ parents }: v1.DecayTables, name: string, path: string): v1.Parent {
-  const found = parents.find(({ hadron }) => hadron?.name === name);
+  const number = Number(name);
+  const found =
+    parents.find(({ hadron }) => hadron?.name === name || hadron?.mcNumber === number) ??
+    parents.find(({ hadron }) => hadron?.mcAliases?.includes(number));
   if (found !== undefined) return found;
   const names = parents.map(({ hadron }) => hadron?.name ?? "");
   throw new InputError(
@@ -109,10 +112,17 @@ const FLAG_WORDS = [
   "weak",
 ];
 
+function aliasText(aliases: readonly number[]): string {
+  return aliases.length === 0 ? "" : ` (also ${aliases.join(", ")})`;
+}
+
 /** One parent's table in words: fractions in percent with errors from data and, behind `br.`, from breaking. */
 export function describeParent(parent: v1.Parent): string {
   const { hadron } = parent;
-  const mc = hadron?.mcNumber == null ? "no Monte Carlo number" : `Monte Carlo number ${hadron.mcNumber}`;
+  const mc =
+    hadron?.mcNumber == null
+      ? "no Monte Carlo number"
+      : `Monte Carlo number ${hadron.mcNumber}${aliasText(hadron.mcAliases ?? [])}`;
   const width = withError(parent.totalWidth ?? 0, parent.totalWidthError ?? 0);
   const origin = parent.totalOrigin === v1.TotalOrigin.TOTAL_ORIGIN_SUM ? "sum of rows" : "measured";
   const head = `\n${hadron?.name}  mass ${significant(hadron?.mass ?? 0, 6)} MeV, width ${width} MeV (${origin}), ${mc}\n`;

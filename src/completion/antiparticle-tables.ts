@@ -41,7 +41,7 @@ function conjugateRow(parent: string, row: Row): Row {
  * Its flavour content is that of the conjugate states, in the phases of `conjugateState`.
  */
 export function antihadron(hadron: Hadron): Hadron {
-  const { antiparticle, name, mcNumber, parity, baryonNumber, twoJ, content } = hadron;
+  const { antiparticle, name, mcNumber, mcAliases, parity, baryonNumber, twoJ, content } = hadron;
   if (antiparticle === null) return hadron;
   const opposite = (n: number) => (n === 0 ? 0 : -n);
   return {
@@ -49,6 +49,7 @@ export function antihadron(hadron: Hadron): Hadron {
     name: antiparticle,
     antiparticle: name,
     mcNumber: mcNumber === null ? null : -mcNumber,
+    mcAliases: mcAliases.map((alias) => -alias),
     parity: twoJ % 2 === 0 ? parity : (-parity as 1 | -1),
     charge: opposite(hadron.charge),
     baryonNumber: opposite(baryonNumber),

@@ -20,7 +20,7 @@ export function catalogueEdition(): CatalogueEdition {
 
 /** Every particle of the catalogue in its order, each followed by its antiparticle where that is another one. */
 export function catalogueParticles(): Particle[] {
-  return listedParticles().flatMap((particle) => {
+  return LISTED.flatMap((particle) => {
     const other = antiparticle(particle);
     return other === null ? [particle] : [particle, other];
   });
@@ -34,7 +34,7 @@ export function catalogueParticles(): Particle[] {
  */
 export function findParticle(name: string): Particle | undefined {
   const canonical = canonicalName(name);
-  for (const particle of listedParticles()) {
+  for (const particle of LISTED) {
     if (particle.name === canonical) return particle;
     if (antiparticleName(particle) === canonical) return antiparticle(particle) ?? undefined;
   }
@@ -70,7 +70,8 @@ export function canonicalName(name: string): string {
   return `${Object.hasOwn(stems, stem) ? stems[stem] : stem}${charge}${bar}`;
 }
 
-/** The entries as they stand in the file; its shape and the ranges of its values are tested. */
-function listedParticles(): readonly Particle[] {
-  return edition2024.particles as readonly Particle[];
-}
+/** The entries as they stand in the file, each with its aliases; shape and ranges of the values are tested. */
+const LISTED: readonly Particle[] = edition2024.particles.map((entry) => {
+  const aliases: Readonly<Record<string, readonly number[]>> = edition2024.mcAliases;
+  return { ...(entry as Omit<Particle, "mcAliases">), mcAliases: aliases[entry.name] ?? [] };
+});

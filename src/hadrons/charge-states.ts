@@ -33,6 +33,7 @@ export function chargeStates(
     return {
       name: chargedName,
       mcNumber: known?.mcNumber ?? null,
+      mcAliases: known?.mcAliases ?? [],
       massMeV: values.massMeV,
       massErrorMeV: values.massErrorMeV,
       widthMeV: values.widthMeV,

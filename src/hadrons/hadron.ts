@@ -23,6 +23,7 @@ export interface ContentTerm {
 export interface Hadron {
   readonly name: string;
   readonly mcNumber: number | null;
+  readonly mcAliases: readonly number[];
   readonly massMeV: number;
   readonly massErrorMeV: AsymmetricError;
   readonly widthMeV: number | null;

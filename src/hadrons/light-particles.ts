@@ -18,6 +18,7 @@ export function findLightParticle(name: string): Hadron | undefined {
     massErrorMeV: { plus: 0, minus: 0 },
     widthErrorMeV: null,
     chargeAveraged: false,
+    mcAliases: [],
     baryonNumber: 0,
     strangeness: 0,
     charm: 0,

@@ -12,6 +12,8 @@ export interface AsymmetricError {
 export interface Particle {
   readonly name: string;
   readonly mcNumber: number | null;
+  /** Other numbers in use for it, in another edition of the scheme or in a framework; read, never written. */
+  readonly mcAliases: readonly number[];
   readonly massMeV: number;
   readonly massErrorMeV: AsymmetricError;
   readonly widthMeV: number | null;
@@ -57,6 +59,7 @@ export function antiparticle(particle: Particle): Particle | null {
     ...particle,
     name,
     mcNumber: mcNumber === null ? null : -mcNumber,
+    mcAliases: particle.mcAliases.map((alias) => -alias),
     parity: parity !== null && baryonNumber % 2 !== 0 ? (-parity as 1 | -1) : parity,
     charge: opposite(particle.charge),
     strangeness: opposite(particle.strangeness),

@@ -27,7 +27,8 @@ export class KnownParticles {
 
   /**
    * @param placed - the hadrons of the study's decays, which come before the catalogue's
-   * @throws InputError for a particle of the study that the catalogue has already
+   * @throws InputError for a particle of the study that the catalogue has already, and for a Monte Carlo number or alias
+   * that two of these hadrons have
    */
   constructor(placed: readonly Placed[], own: readonly StudyParticle[]) {
     for (const { hadron, member, state } of placed) this.#add({ hadron, member, twoI: state.twoI });
@@ -37,6 +38,10 @@ export class KnownParticles {
       }
     }
     for (const written of own) this.#addOwn(written);
+    requireDistinctNumbers([
+      ...placed.map(({ hadron }) => hadron),
+      ...own.map(({ name }) => this.#byName.get(name)!.hadron),
+    ]);
   }
 
   #add(particle: KnownParticle): void {
@@ -53,6 +58,7 @@ export class KnownParticles {
     const particle: Particle = {
       name,
       mcNumber: written.mcNumber ?? null,
+      mcAliases: written.mcAliases,
       massMeV: mass.value,
       massErrorMeV: { plus: mass.plus, minus: mass.minus },
       widthMeV: width?.value ?? null,
@@ -119,4 +125,23 @@ function bareHadron(particle: Particle): Hadron {
     refuse(`${particle.name}: spin and parity`, "both known", [twoJ, parity], "Leave it out of the study.");
   }
   return { ...rest, twoJ, parity, antiparticle: antiparticleName(particle), content: [], notes: [] };
+}
+
+/** A generator that looks a number up must find one hadron. */
+function requireDistinctNumbers(hadrons: readonly Hadron[]): void {
+  const owners = new Map<number, string>();
+  for (const { name, mcNumber, mcAliases } of hadrons) {
+    for (const number of mcNumber === null ? mcAliases : [mcNumber, ...mcAliases]) {
+      const owner = owners.get(number) ?? name;
+      if (owner !== name) {
+        refuse(
+          `${name}: Monte Carlo number ${number}`,
+          "a number of its own",
+          `the number of ${owner}`,
+          "Give one of the two another.",
+        );
+      }
+      owners.set(number, name);
+    }
+  }
 }

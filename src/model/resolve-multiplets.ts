@@ -140,7 +140,7 @@ export function memberParticles(
   for (const name of Object.keys(member.chargeStates)) {
     if (!names.includes(name)) refuse(`${member.name}: charge state`, `one of ${names.join(", ")}`, name);
   }
-  const particles = states.map((state) => particleOf(state, member, member.chargeStates[state.name] ?? {}));
+  const particles = states.map((state) => particleOf(state, member, member.chargeStates[state.name] ?? { mcAliases: [] }));
   return { name: member.name, particles };
 }
 
@@ -171,6 +171,7 @@ function particleOf(state: Particle, member: StudyState, own: StudyChargeState):
   return {
     ...state,
     mcNumber: own.mcNumber ?? state.mcNumber,
+    mcAliases: [...state.mcAliases, ...own.mcAliases],
     massMeV: mass?.value ?? known!.massMeV,
     massErrorMeV: errors(mass) ?? known!.massErrorMeV,
     widthMeV,

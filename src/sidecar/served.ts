@@ -42,6 +42,7 @@ export interface ServedParent {
 export class Served {
   readonly #byName = new Map<string, ServedParent[]>();
   readonly #byNumber = new Map<number, ServedParent[]>();
+  readonly #byAlias = new Map<number, ServedParent[]>();
 
   constructor(
     readonly decays: readonly ServedDecays[],
@@ -49,8 +50,9 @@ export class Served {
   ) {
     for (const parent of decays.flatMap(parentsOf)) {
       append(this.#byName, parent.name, parent);
-      const number = parent.message.hadron.mcNumber;
-      if (number != null) append(this.#byNumber, number, parent);
+      const { mcNumber, mcAliases } = parent.message.hadron;
+      if (mcNumber != null) append(this.#byNumber, mcNumber, parent);
+      for (const alias of mcAliases ?? []) append(this.#byAlias, alias, parent);
     }
   }
 
@@ -83,7 +85,8 @@ export class Served {
 
   #found(key: v1.ParentKey.$Properties | null | undefined): readonly ServedParent[] {
     if (key?.name != null) return this.#byName.get(key.name) ?? [];
-    if (key?.mcNumber != null) return this.#byNumber.get(key.mcNumber) ?? [];
+    if (key?.mcNumber != null)
+      return this.#byNumber.get(key.mcNumber) ?? this.#byAlias.get(key.mcNumber) ?? [];
     return [];
   }
 

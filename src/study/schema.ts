@@ -73,10 +73,16 @@ const spin = z
   })
   .transform((text) => (String(text).endsWith("/2") ? Number.parseInt(String(text), 10) : 2 * Number(text)));
 
+const mcAliases = z
+  .array(z.int())
+  .default([])
+  .describe("Other Monte Carlo numbers in use for it: readers and the sidecar find it by these too");
+
 const chargeState = mapping({
   mass: mass.optional(),
   width: width.optional(),
   mcNumber: z.int().optional().describe("Monte Carlo number, where the catalogue has none or another"),
+  mcAliases,
 }).describe("What one charge state has of its own");
 
 const member = mapping({
@@ -196,6 +202,11 @@ const channel = z
   .describe("A channel such as `N(1675) -> N pi`; isospin multiplets stand for all their charge states");
 const pair = z.tuple([channel, channel]);
 
+const reactionSign = z
+  .union([z.enum(["+", "-", "free"]), z.literal(1), z.literal(-1)])
+  .default("free")
+  .describe("Sign s_f of the reaction against these phases; `free` is fitted, one for each reaction");
+
 const measurement = z.union(
   [
     mapping({ width: channel, value: quantity("MeV", nonNegative), normalisation, source, use }),
@@ -221,17 +232,19 @@ const measurement = z.union(
           error: "expected a signed number such as `-0.25 +- 0.03`, or `+` or `-` alone",
         })
         .describe("The amplitude at resonance with its sign, or the sign alone"),
-      sign: z
-        .union([z.enum(["+", "-", "free"]), z.literal(1), z.literal(-1)])
-        .default("free")
-        .describe("Sign s_f of the reaction against these phases; `free` is fitted, one for each reaction"),
+      sign: reactionSign,
       source,
       use: onlyFit,
     }),
     mapping({
       residue: pair.describe("Entrance and exit channel of one parent; the value is the residue's modulus"),
       value: quantity("MeV", nonNegative),
-      phase: quantity("rad").optional(),
+      phase: quantity("rad")
+        .optional()
+        .describe(
+          "Its phase. Couplings are real here, so it gives the sign alone: + up to 90 deg, - beyond. Without it only the modulus counts",
+        ),
+      sign: reactionSign,
       source,
       use: onlyFit,
     }),
@@ -313,6 +326,7 @@ const particle = mapping({
   strangeness: z.int().default(0).describe("+1 for K+"),
   charm: z.int().default(0).describe("+1 for D+"),
   mcNumber: z.int().optional().describe("Monte Carlo number"),
+  mcAliases,
 });
 
 /** The form of a study file; from this one description come the checks and their messages. */

@@ -34,6 +34,7 @@ export interface StudyChargeState {
   readonly mass?: Quantity | undefined;
   readonly width?: Quantity | undefined;
   readonly mcNumber?: number | undefined;
+  readonly mcAliases: readonly number[];
 }
 
 /** A multiplet written member by member. Members may be missing. */
@@ -108,9 +109,9 @@ export interface StudyMeasurement {
   /** The value; for an amplitude of which only the sign is known, +1 or -1. */
   readonly value: Quantity;
   readonly signOnly: boolean;
-  /** Sign s_f of an amplitude's reaction; `free` is fitted, one for each reaction. */
+  /** Sign s_f of the reaction of an amplitude or residue; `free` is fitted, one for each reaction. */
   readonly sign: 1 | -1 | "free";
-  /** Phase of a residue; undefined where it is not given. */
+  /** Phase of a residue, of which only the sign of its cosine counts; undefined where it is not given. */
   readonly phase?: Quantity | undefined;
   /** Name of a common normalisation. */
   readonly normalisation?: string | undefined;
@@ -163,6 +164,7 @@ export interface StudyParticle {
   readonly strangeness: number;
   readonly charm: number;
   readonly mcNumber?: number | undefined;
+  readonly mcAliases: readonly number[];
 }
 
 /** Policies of the tables, each by its name. */

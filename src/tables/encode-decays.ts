@@ -124,6 +124,7 @@ function hadronMessage(hadron: Hadron, lineShape: MassShape | undefined): v1.Had
   return {
     name: hadron.name,
     mcNumber: hadron.mcNumber,
+    mcAliases: [...hadron.mcAliases],
     mass: hadron.massMeV,
     massError: mean(hadron.massErrorMeV),
     width: hadron.widthMeV,

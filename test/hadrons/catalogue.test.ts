@@ -13,7 +13,7 @@ import { antiparticle, type Particle } from "../../src/hadrons/particle.js";
 const particles = catalogueParticles();
 const KEYS =
   "name mcNumber massMeV massErrorMeV widthMeV widthErrorMeV twoI twoJ parity cParity gParity charge strangeness charm " +
-  "baryonNumber chargeAveraged";
+  "baryonNumber chargeAveraged mcAliases";
 
 /** What makes an entry wrong by itself, in words; empty if nothing does. */
 function faults(particle: Particle): string[] {
@@ -47,7 +47,7 @@ describe("particle catalogue", () => {
     expect(source).toContain("Phys. Rev. D 110, 030001 (2024)");
     expect(provenance).toBe("read");
     expect(transcribed.length).toBeGreaterThan(100);
-    expect(notes).toHaveLength(5);
+    expect(notes).toHaveLength(6);
   });
 
   test("has 153 listed particles and their antiparticles, with names and numbers that are unique", () => {
@@ -56,6 +56,8 @@ describe("particle catalogue", () => {
     expect(particles).toHaveLength(153 + listed.filter((particle) => antiparticle(particle) !== null).length);
     expect(new Set(particles.map(({ name }) => name)).size).toBe(particles.length);
     expect(new Set(particles.map(({ mcNumber }) => mcNumber)).size).toBe(particles.length);
+    const numbers = particles.flatMap(({ mcNumber, mcAliases }) => [mcNumber, ...mcAliases]);
+    expect(new Set(numbers).size).toBe(numbers.length);
   });
 
   test("every entry has the right keys, ranges, isospin, spin, C and G", () => {
@@ -66,12 +68,15 @@ describe("particle catalogue", () => {
   });
 
   test("charge, strangeness, charm and spin of every entry are those of its Monte Carlo number", () => {
-    const wrong = particles.filter(({ mcNumber, charge, strangeness, charm, baryonNumber, twoJ }) => {
-      const content = mcNumberContent(mcNumber!);
+    const isWrong = ({ charge, strangeness, charm, baryonNumber, twoJ }: Particle, number: number) => {
+      const content = mcNumberContent(number);
       if (content.charge !== charge || content.baryonNumber !== baryonNumber) return true;
       if (content.strangeness !== strangeness || content.charm !== charm) return true;
       return twoJ !== null && content.twoJ !== twoJ;
-    });
+    };
+    const wrong = particles.filter((particle) =>
+      [particle.mcNumber!, ...particle.mcAliases].some((number) => isWrong(particle, number)),
+    );
     expect(wrong.map(({ name }) => name)).toEqual([]);
   });
 

@@ -95,7 +95,9 @@ describe("a study", () => {
           place: "N",
           mass: { value: 1500, plus: 10, minus: 10, unit: "MeV" },
           width: "sum",
-          chargeStates: { "X(1500)+": { mass: { value: 1501, plus: 0, minus: 0, unit: "MeV" } } },
+          chargeStates: {
+            "X(1500)+": { mass: { value: 1501, plus: 0, minus: 0, unit: "MeV" }, mcAliases: [] },
+          },
         },
       ],
     });

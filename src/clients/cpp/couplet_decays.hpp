@@ -83,6 +83,7 @@ inline Hadron hadron(const v1::Hadron& m) {
   h.notes = list<std::string>(m.notes());
   if (m.has_line_shape()) h.line_shape = line_shape(m.line_shape());
   h.lifetime = maybe(m.has_lifetime(), m.lifetime());
+  h.mc_aliases = list<std::int32_t>(m.mc_aliases());
   return h;
 }
 

@@ -61,8 +61,10 @@ class Wire {
   }
   void zigzag(std::optional<std::int32_t>& value) {
     if (!is(Type::varint)) return;
-    const auto n = static_cast<std::uint32_t>(varint());
-    value = static_cast<std::int32_t>((n >> 1) ^ (0u - (n & 1u)));
+    value = zigzag();
+  }
+  void zigzag(std::vector<std::int32_t>& values) {
+    list(values, Type::varint, [](Wire& wire) { return wire.zigzag(); });
   }
   template <class Enum, std::enable_if_t<std::is_enum_v<Enum>, bool> = true>
   void get(Enum& value) {
@@ -134,6 +136,11 @@ class Wire {
   }
 
   std::string_view block() { return take(varint()); }
+
+  std::int32_t zigzag() {
+    const auto n = static_cast<std::uint32_t>(varint());
+    return static_cast<std::int32_t>((n >> 1) ^ (0u - (n & 1u)));
+  }
 
   double fixed64() { return fixed<double, std::uint64_t>(); }
 
@@ -246,6 +253,7 @@ inline void read(Hadron& h, Wire wire) {
       case 15: wire.get(h.notes); break;
       case 16: wire.get(h.line_shape); break;
       case 17: wire.get(h.lifetime); break;
+      case 18: wire.zigzag(h.mc_aliases); break;
       default: wire.skip();
     }
   }

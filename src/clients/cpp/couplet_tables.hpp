@@ -86,6 +86,8 @@ struct LineShape {
 struct Hadron {
   std::string name;
   std::optional<std::int32_t> mc_number;
+  // Other numbers in use for it.
+  std::vector<std::int32_t> mc_aliases;
   double mass = MISSING, mass_error = MISSING;
   std::optional<double> width, width_error;
   std::optional<std::uint32_t> two_j;
@@ -184,6 +186,18 @@ inline const Parent& parent_named(const Tables& tables, std::string_view name) {
     known += (known.empty() ? "" : ", ") + parent.hadron.name;
   }
   throw NotOurs("no parent \"" + std::string(name) + "\" in this table; there are: " + known);
+}
+
+// The parent of a Monte Carlo number, or else the one that has it as an alias; throws NotOurs if there is none.
+inline const Parent& parent_numbered(const Tables& tables, std::int32_t number) {
+  for (const Parent& parent : tables.parents) {
+    if (parent.hadron.mc_number == number) return parent;
+  }
+  for (const Parent& parent : tables.parents) {
+    const auto& aliases = parent.hadron.mc_aliases;
+    if (std::find(aliases.begin(), aliases.end(), number) != aliases.end()) return parent;
+  }
+  throw NotOurs("no parent with the Monte Carlo number " + std::to_string(number) + " in this table; ask by name");
 }
 
 // The hadron of a name among parents and externals; null if there is none.

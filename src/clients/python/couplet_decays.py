@@ -29,6 +29,7 @@ __all__ = [
     "ParentWidths",
     "draw_mass",
     "parent_named",
+    "parent_numbered",
     "read_tables",
     "tables_from_bytes",
 ]
@@ -128,6 +129,17 @@ def parent_named(tables, name):
         if parent.hadron.name == name:
             return parent
     raise NotOurs(f'no parent "{name}" in this table; there are: ' + ", ".join(p.hadron.name for p in tables.parents))
+
+
+def parent_numbered(tables, number):
+    """The parent of a Monte Carlo number, or else the one that has it as an alias."""
+    for parent in tables.parents:
+        if parent.hadron.HasField("mc_number") and parent.hadron.mc_number == number:
+            return parent
+    for parent in tables.parents:
+        if number in parent.hadron.mc_aliases:
+            return parent
+    raise NotOurs(f"no parent with the Monte Carlo number {number} in this table; ask by name")
 
 
 def main(arguments=None):

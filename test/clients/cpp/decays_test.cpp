@@ -171,6 +171,16 @@ void messages(Checks& check, const Reader& reader, const couplet::v1::DecayTable
   check.refused<NotOurs>([&] { couplet::parent_named(tables, "Z"); },
                          "no parent \"Z\" in this table; there are: " + tables.parents[0].hadron.name,
                          reader.name + ": an unknown parent is refused");
+  couplet::v1::DecayTables numbered = small;
+  numbered.mutable_parents(0)->mutable_hadron()->set_mc_number(-3226);
+  for (const int alias : {-103226, 103}) numbered.mutable_parents(0)->mutable_hadron()->add_mc_aliases(alias);
+  const Tables by_number = reader.read(sealed(numbered), "f.pb");
+  bool found = true;
+  for (const int number : {-3226, -103226, 103}) found = found && &couplet::parent_numbered(by_number, number) == by_number.parents.data();
+  check(found, reader.name + ": a parent is found by its Monte Carlo number and by each alias");
+  check.refused<NotOurs>([&] { couplet::parent_numbered(by_number, 3226); },
+                         "no parent with the Monte Carlo number 3226 in this table; ask by name",
+                         reader.name + ": an unknown number is refused");
 }
 
 // Unknown fields of every wire type, groups in groups among them, change nothing.
