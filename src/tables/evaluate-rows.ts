@@ -1,7 +1,7 @@
 import { InputError, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { refuse, requirePositive } from "../require.js";
-import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
+import { breakupMomentumMeV, momentumOfMeV } from "../widths/breakup-momentum.js";
 import { gridWidthMeV } from "../widths/mass-grid.js";
 import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
 import type { Kinematics, Vertex } from "../widths/width-model-definition.js";
@@ -19,9 +19,17 @@ export interface RowsEvaluator {
    * @throws InputError for a mass that is not a finite number > 0, or so large that a width overflows
    */
   widthsInto(massMeV: number, widths: number[] | Float64Array, offset: number): number;
+  /**
+   * The same for many masses: widths mass by mass, and their sum for each mass into `totals`.
+   *
+   * Row after row, so that each row's formula meets all masses in one loop.
+   * @throws InputError as `widthsInto`
+   */
+  manyInto(massesMeV: ArrayLike<number>, widths: Float64Array, totals: Float64Array): void;
 }
 
-type HadronsByName = ReadonlyMap<string, v1.Hadron.$Properties>;
+/** Hadrons by their names. */
+export type HadronsByName = ReadonlyMap<string, v1.Hadron.$Properties>;
 
 /** The hadrons of a decay table by name: its parents and its externals. */
 export function tableHadrons(tables: v1.DecayTables): HadronsByName {
@@ -46,18 +54,40 @@ export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByN
   const rows = all.map((row) => rowWidth(parent, row, hadrons, lowestMeV));
   return {
     rowCount: rows.length,
+    manyInto(massesMeV, widths, totals) {
+      for (let k = 0; k < massesMeV.length; k++)
+        requirePositive("mass of the parent", massesMeV[k]!, "Give the mass in MeV.");
+      for (let row = 0; row < rows.length; row++) {
+        const { thresholdMeV, widthMeV } = rows[row]!;
+        for (let k = 0, at = row; k < massesMeV.length; k++, at += rows.length) {
+          const massMeV = massesMeV[k]!;
+          widths[at] = massMeV > thresholdMeV ? widthMeV(massMeV) : 0;
+        }
+      }
+      for (let k = 0, at = 0; k < massesMeV.length; k++) {
+        let total = 0;
+        for (const end = at + rows.length; at < end; at++) total += widths[at]!;
+        requireFinite(total, massesMeV[k]!);
+        totals[k] = total;
+      }
+    },
     widthsInto(massMeV, widths, offset) {
       requirePositive("mass of the parent", massMeV, "Give the mass in MeV.");
       let total = 0;
       for (let k = 0; k < rows.length; k++) {
-        const width = rows[k]!(massMeV);
+        const { thresholdMeV, widthMeV } = rows[k]!;
+        const width = massMeV > thresholdMeV ? widthMeV(massMeV) : 0;
         widths[offset + k] = width;
         total += width;
       }
-      if (!Number.isFinite(total)) refuse("mass of the parent", "one at which widths are finite", massMeV);
+      requireFinite(total, massMeV);
       return total;
     },
   };
+}
+
+function requireFinite(total: number, massMeV: number): void {
+  if (!Number.isFinite(total)) refuse("mass of the parent", "one at which widths are finite", massMeV);
 }
 
 /** Fractions of all rows at a mass; they add up to 1, or are all 0 where every row is closed. */
@@ -67,11 +97,16 @@ export function fractionsAt(evaluator: RowsEvaluator, massMeV: number): number[]
   return total > 0 ? widths.map((width) => width / total) : widths;
 }
 
-/** Partial width in MeV of one row against the parent's mass in MeV. */
-type RowWidth = (massMeV: number) => number;
+/** Partial width of one row against the parent's mass, both in MeV. */
+interface RowWidth {
+  /** The width is 0 up to here. */
+  readonly thresholdMeV: number;
+  /** Asked above the threshold; may still be 0. */
+  widthMeV(massMeV: number): number;
+}
 
 /** K in MeV over the square of the amplitude's unit, above threshold. */
-type Factor = (kinematics: Kinematics) => number;
+export type Factor = (kinematics: Kinematics) => number;
 
 function rowWidth(
   parent: v1.Parent.$Properties,
@@ -103,14 +138,17 @@ function rowWidth(
     factor,
     scale: scaleOf(row, wave, atNominal),
   }));
-  return (massMeV) => {
-    const momentum = breakupMomentumMeV(massMeV, firstMeV, secondMeV);
+  const [heavyMeV, lightMeV] = [Math.max(firstMeV, secondMeV), Math.min(firstMeV, secondMeV)];
+  const widthMeV = (massMeV: number) => {
+    const momentum = momentumOfMeV(massMeV, heavyMeV, lightMeV);
     if (momentum === 0) return 0;
     const kinematics = { parentMeV: massMeV, firstMeV, secondMeV, momentumMeV: momentum };
     let width = 0;
-    for (const { factor, scale } of scaled) width += scale * factor(kinematics);
+    for (let k = 0; k < scaled.length; k++) width += scaled[k]!.scale * scaled[k]!.factor(kinematics);
     return width;
   };
+  // A sum of masses is rounded, the momentum is exact there: it decides.
+  return { thresholdMeV: (heavyMeV + lightMeV) * (1 - 1e-12), widthMeV };
 }
 
 /** True for a row whose width has no closed form. */
@@ -137,7 +175,9 @@ function gridOf(row: v1.Row.$Properties): RowWidth {
   const x = grid.distancesMeV;
   const sizes = x.length >= 2 && grid.logWidths.length === x.length && grid.slopes.length === x.length;
   const ascending = x.every((distance, k) => distance > (k === 0 ? 0 : x[k - 1]!));
-  if (sizes && ascending && Number.isFinite(threshold)) return (massMeV) => gridWidthMeV(grid, massMeV);
+  if (sizes && ascending && Number.isFinite(threshold)) {
+    return { thresholdMeV: grid.thresholdMeV, widthMeV: (massMeV) => gridWidthMeV(grid, massMeV) };
+  }
   throw new TableError(`${row.id}: expected a grid of two points or more in ascending order, got another`);
 }
 
@@ -150,10 +190,11 @@ function constantWidth(row: v1.Row.$Properties, lowestMeV: number, nominalMeV: n
   // A remainder of a parent below its lowest threshold is all there is of its width.
   const takesLowest = (row.daughters ?? []).length === 0 && lowestMeV < nominalMeV;
   const threshold = takesLowest ? lowestMeV : own;
-  return (massMeV) => (massMeV > threshold ? width : 0);
+  return { thresholdMeV: threshold, widthMeV: () => width };
 }
 
-function daughterOf(
+/** A daughter's hadron; TableError where the table lacks it or its mass. */
+export function daughterOf(
   row: v1.Row.$Properties,
   { name }: v1.Daughter.$Properties,
   hadrons: HadronsByName,
@@ -172,7 +213,10 @@ function powerOfDistance(row: v1.Row.$Properties, power: number, nominalMeV: num
       `${row.id}: expected a width, a threshold below the parent's mass and a power >= 0, got others`,
     );
   }
-  return (massMeV) => (massMeV > threshold ? width * ((massMeV - threshold) / distance) ** power : 0);
+  return {
+    thresholdMeV: threshold,
+    widthMeV: (massMeV) => width * ((massMeV - threshold) / distance) ** power,
+  };
 }
 
 /** Part of a row's width at the nominal mass that a wave has, in MeV. */
@@ -190,7 +234,7 @@ function scaleOf(row: v1.Row.$Properties, wave: v1.Wave.$Properties, atNominal: 
 }
 
 /** K of a wave, with model, options and vertex checked here and not at every mass. */
-function factorOf(
+export function factorOf(
   row: v1.Row.$Properties,
   wave: v1.Wave.$Properties,
   spins: readonly v1.Hadron.$Properties[],
@@ -210,9 +254,7 @@ function factorOf(
   try {
     const options = (wave.options ?? []).map(({ name, value }) => [name, value ?? Number.NaN]);
     const model = widthModel(definition.id, Object.fromEntries(options));
-    // Asking for the unit checks the vertex.
-    model.amplitudeUnit(vertex);
-    return (kinematics) => definition.factorMeV(kinematics, vertex, model.options);
+    return model.factorMeV(vertex);
   } catch (cause) {
     if (cause instanceof InputError) throw new TableError(`${row.id}: ${cause.message}`, { cause });
     throw cause;

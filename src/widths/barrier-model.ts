@@ -35,9 +35,12 @@ export const barrierModel: WidthModelDefinition = {
   ],
   requireVertex: () => {},
   amplitudeUnit: () => "1",
-  factorMeV({ parentMeV, momentumMeV }, { L }, options) {
-    const rootZ = (options["radiusFm"]! * momentumMeV) / HBAR_C_MEV_FM;
-    const phaseSpace = momentumMeV * (options["referenceMassMeV"]! / parentMeV);
-    return phaseSpace * barrierFactorSquared(L, rootZ * rootZ);
+  factorMeV({ L }, options) {
+    const radius = options["radiusFm"]! / HBAR_C_MEV_FM;
+    const referenceMass = options["referenceMassMeV"]!;
+    return ({ parentMeV, momentumMeV }) => {
+      const rootZ = radius * momentumMeV;
+      return momentumMeV * (referenceMass / parentMeV) * barrierFactorSquared(L, rootZ * rootZ);
+    };
   },
 };

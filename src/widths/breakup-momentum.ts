@@ -17,8 +17,11 @@ export function breakupMomentumMeV(parentMeV: number, firstMeV: number, secondMe
   requirePositive("breakupMomentumMeV: parentMeV", parentMeV, "Give the mass in MeV.");
   requireDaughterMass("breakupMomentumMeV: firstMeV", firstMeV);
   requireDaughterMass("breakupMomentumMeV: secondMeV", secondMeV);
-  const heavy = Math.max(firstMeV, secondMeV);
-  const light = Math.min(firstMeV, secondMeV);
+  return momentumOfMeV(parentMeV, Math.max(firstMeV, secondMeV), Math.min(firstMeV, secondMeV));
+}
+
+/** `breakupMomentumMeV` for masses that have been checked, `heavy` >= `light`. */
+export function momentumOfMeV(parentMeV: number, heavy: number, light: number): number {
   const excess = parentMeV - heavy - light;
   if (excess <= 0) return 0;
   const difference = heavy - light;

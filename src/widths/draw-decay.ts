@@ -27,16 +27,65 @@ export function drawChannel(channels: readonly RunningWidth[], massMeV: number, 
   return last;
 }
 
-/** Tries before a draw of daughter masses gives up; the least efficient channel needs thousands near its threshold. */
-const MOST_TRIES = 10_000_000;
+/** What a daughter's mass is drawn from: its only mass in MeV, or the draw grid of its line shape. */
+export type MassSource = number | DrawGrid;
+
+/** Lowest mass in MeV that a daughter can be drawn with. */
+export function lowestDrawnMeV(source: MassSource): number {
+  return typeof source === "number" ? source : source.originMeV;
+}
+
+/** Tries after which a draw takes the one that came nearest; the least efficient channels need thousands. */
+const MOST_TRIES = 100_000;
 
 /**
- * Masses of both daughters of a channel, drawn jointly at a mass of the parent: chance ~ rho(w1) rho(w2) K(M, w1, w2).
+ * Masses of a decay's daughters, drawn jointly: chance ~ rho(w1) ... rho(wn) K(w1, ..., wn) where they fit into the parent.
  *
- * By rejection, with random numbers used in this order: for each unstable daughter, first to second, a mass from the
- * part of its grid below what the other leaves at its lowest mass (u times that part's chance, through `drawMass`);
- * pairs heavier than the parent are thrown away; one more number v accepts a pair if v K(lowest masses) < K(w1, w2),
- * and otherwise all is drawn again. Stable daughters take no number; with two of them none is drawn.
+ * By rejection, with random numbers used in this order: for each unstable daughter, first to last, a mass from the part
+ * of its grid below what the others leave at their lowest masses (u times that part's chance, through `drawMass`);
+ * masses that do not fit are thrown away; one more number v accepts the others if v K(lowest masses) < K(w), and otherwise
+ * all is drawn again. Stable daughters take no number; with none but them none is drawn.
+ *
+ * After 100 000 tries the one with the largest K/v is taken. That is the one accepted first if the bound is lowered
+ * step by step, so that its chance is the right one but for terms of order 1/tries.
+ * @param K - not larger than at the lowest masses; a common factor does not matter
+ * @param parentMeV - above the sum of the lowest masses
+ * @param uniform - independent numbers in [0, 1)
+ * @returns in MeV, in the order of the daughters; their sum is below the parent's mass
+ */
+export function drawMassesJointly(
+  sources: readonly MassSource[],
+  K: (massesMeV: readonly number[]) => number,
+  parentMeV: number,
+  uniform: () => number,
+): number[] {
+  const lowest = sources.map(lowestDrawnMeV);
+  if (sources.every((source) => typeof source === "number")) return lowest;
+  const part = sources.map((source, k) =>
+    typeof source === "number" ? 0 : cumulativeAt(source, parentMeV - sum(lowest.filter((_, i) => i !== k))),
+  );
+  const bound = K(lowest);
+  let nearest = { masses: lowest, ratio: 0 };
+  for (let tries = 0; tries < MOST_TRIES; tries++) {
+    const masses = sources.map((source, k) =>
+      typeof source === "number" ? source : drawMass(source, uniform() * part[k]!),
+    );
+    if (!(sum(masses) < parentMeV)) continue;
+    const v = uniform();
+    const factor = K(masses);
+    if (v * bound < factor) return masses;
+    if (factor > nearest.ratio * v) nearest = { masses, ratio: factor / v };
+  }
+  return nearest.masses;
+}
+
+function sum(numbers: readonly number[]): number {
+  return numbers.reduce((total, number) => total + number, 0);
+}
+
+/**
+ * Masses of both daughters of a channel, drawn jointly at a mass of the parent: chance ~ rho(w1) rho(w2) K(M, w1, w2), by
+ * `drawMassesJointly`.
  *
  * K falls as a daughter gets heavier, in every model, so K at the lowest masses bounds it. The one exception, model d
  * in an S wave with a baryon lighter than half the parent, passes the bound by less than 1 % for baryons above 0.45 M.
@@ -51,29 +100,16 @@ export function drawDaughterMasses(
   parentMeV: number,
   uniform: () => number,
 ): [number, number] {
-  const lowest = daughters.map(lowestMassMeV) as [number, number];
-  const factor = (masses: readonly [number, number]) =>
-    model.kinematicFactorMeV(parentMeV, masses[0], masses[1], vertex);
-  const bound = factor(lowest);
-  if (bound === 0) {
-    refuse("drawDaughterMasses: parentMeV", `a mass above ${lowest[0] + lowest[1]}`, parentMeV);
+  const lowest = daughters.map(lowestMassMeV);
+  const factor = ([first, second]: readonly number[]) =>
+    model.kinematicFactorMeV(parentMeV, first!, second!, vertex);
+  if (factor(lowest) === 0) {
+    refuse("drawDaughterMasses: parentMeV", `a mass above ${sum(lowest)}`, parentMeV);
   }
-  if (typeof daughters[0] === "number" && typeof daughters[1] === "number") return lowest;
-  const part = daughters.map((daughter, k) => {
-    if (typeof daughter === "number") return 0;
-    const grid = grids[k];
-    if (grid === undefined) refuse(`drawDaughterMasses: grid of daughter ${k + 1}`, "a draw grid", "none");
-    return cumulativeAt(grid, parentMeV - lowest[1 - k]!);
+  const sources = daughters.map((daughter, k): MassSource => {
+    const source = typeof daughter === "number" ? daughter : grids[k];
+    if (source === undefined) refuse(`drawDaughterMasses: grid of daughter ${k + 1}`, "a draw grid", "none");
+    return source;
   });
-  const draw = (k: 0 | 1) =>
-    typeof daughters[k] === "number" ? daughters[k] : drawMass(grids[k]!, uniform() * part[k]!);
-  for (let tries = 0; tries < MOST_TRIES; tries++) {
-    const masses: [number, number] = [draw(0), draw(1)];
-    if (masses[0] + masses[1] < parentMeV && uniform() * bound < factor(masses)) return masses;
-  }
-  return refuse(
-    "drawDaughterMasses: parentMeV",
-    "a mass at which the channel is not all but closed",
-    parentMeV,
-  );
+  return drawMassesJointly(sources, factor, parentMeV, uniform) as [number, number];
 }

@@ -1,4 +1,5 @@
 import { refuse } from "../require.js";
+import { integerPower } from "./integer-power.js";
 import type { Vertex, WidthModelDefinition } from "./width-model-definition.js";
 
 const WHERE = "width model d";
@@ -37,20 +38,21 @@ export const effectiveBaryonModel: WidthModelDefinition = {
     );
   },
   amplitudeUnit: () => "1",
-  factorMeV({ parentMeV, firstMeV, momentumMeV }, vertex, options) {
+  factorMeV(vertex, options) {
     const n = derivatives(vertex);
-    const energyMeV = Math.hypot(firstMeV, momentumMeV);
-    const sum = energyMeV + firstMeV;
-    // E - m without the cancellation of the plain difference.
-    const energyFactorMeV = vertex.L === n ? sum : (momentumMeV / sum) * momentumMeV;
+    const isLowerWave = vertex.L === n;
+    const scale = options["scaleMeV"]!;
     let prefactor = 1 / (4 * Math.PI);
     for (let k = 1; k <= n; k++) prefactor *= k / (2 * k + 1);
-    return (
-      prefactor *
-      momentumMeV *
-      (momentumMeV / options["scaleMeV"]!) ** (2 * n) *
-      (energyFactorMeV / parentMeV)
-    );
+    return ({ parentMeV, firstMeV, momentumMeV }) => {
+      const energyMeV = Math.hypot(firstMeV, momentumMeV);
+      const sum = energyMeV + firstMeV;
+      // E - m without the cancellation of the plain difference.
+      const energyFactorMeV = isLowerWave ? sum : (momentumMeV / sum) * momentumMeV;
+      return (
+        prefactor * momentumMeV * integerPower(momentumMeV / scale, 2 * n) * (energyFactorMeV / parentMeV)
+      );
+    };
   },
 };
 

@@ -72,14 +72,18 @@ export const effectiveMesonModel: WidthModelDefinition = {
     couplingOf(vertex);
   },
   amplitudeUnit: (vertex) => couplingOf(vertex).unit,
-  factorMeV(kinematics, vertex) {
-    const coupling = couplingOf(vertex);
-    const vectorMeV = vertex.daughters![0].twoJ === 2 ? kinematics.firstMeV : kinematics.secondMeV;
-    if (vectorMeV === 0 && coupling.L === 0 && vertex.parent!.twoJ === 2) {
-      const mend = "This coupling is not gauge invariant; there is none for a photon here.";
-      refuse("width model e: mass of the vector daughter in MeV", "a number > 0", vectorMeV, mend);
-    }
-    return coupling.factor(kinematics, vectorMeV);
+  factorMeV(vertex) {
+    const { factor, L } = couplingOf(vertex);
+    const isFirst = vertex.daughters![0].twoJ === 2;
+    const needsMass = L === 0 && vertex.parent!.twoJ === 2;
+    return (kinematics) => {
+      const vectorMeV = isFirst ? kinematics.firstMeV : kinematics.secondMeV;
+      if (vectorMeV === 0 && needsMass) {
+        const mend = "This coupling is not gauge invariant; there is none for a photon here.";
+        refuse("width model e: mass of the vector daughter in MeV", "a number > 0", vectorMeV, mend);
+      }
+      return factor(kinematics, vectorMeV);
+    };
   },
 };
 

@@ -1,7 +1,13 @@
 export { allowedWaves, type Wave } from "./allowed-waves.js";
 export { barrierFactorSquared, barrierPolynomial } from "./barrier.js";
 export { breakupMomentumMeV } from "./breakup-momentum.js";
-export { drawChannel, drawDaughterMasses } from "./draw-decay.js";
+export {
+  drawChannel,
+  drawDaughterMasses,
+  drawMassesJointly,
+  lowestDrawnMeV,
+  type MassSource,
+} from "./draw-decay.js";
 export { cumulativeAt, type DrawGrid, drawGrid, drawMass } from "./draw-mass.js";
 export {
   channelThresholdMeV,

@@ -43,11 +43,15 @@ export const powerLawModel: WidthModelDefinition = {
   ],
   requireVertex: () => {},
   amplitudeUnit: () => "1",
-  factorMeV({ parentMeV, momentumMeV }, { L }, options) {
+  factorMeV({ L }, options) {
     const reference = options["referenceMomentumMeV"]!;
-    const massRatio = options["referenceMassMeV"]! / parentMeV;
-    return (
-      reference * integerPower(momentumMeV / reference, 2 * L + 1) * integerPower(massRatio, options["n"]!)
-    );
+    const referenceMass = options["referenceMassMeV"]!;
+    const massPower = options["n"]!;
+    const order = 2 * L + 1;
+    const perReference = 1 / reference;
+    return ({ parentMeV, momentumMeV }) =>
+      reference *
+      integerPower(momentumMeV * perReference, order) *
+      integerPower(referenceMass / parentMeV, massPower);
   },
 };

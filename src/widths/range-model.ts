@@ -1,3 +1,4 @@
+import { integerPower } from "./integer-power.js";
 import type { WidthModelDefinition } from "./width-model-definition.js";
 
 /** Model `b`: threshold law cut off at a range, K = (q^2/(q^2 + X^2))^L q M_N/M. */
@@ -31,8 +32,12 @@ export const rangeModel: WidthModelDefinition = {
   ],
   requireVertex: () => {},
   amplitudeUnit: () => "1",
-  factorMeV({ parentMeV, momentumMeV }, { L }, options) {
-    const ratio = options["rangeMeV"]! / momentumMeV;
-    return momentumMeV * (options["nucleonMassMeV"]! / parentMeV) * (1 + ratio * ratio) ** -L;
+  factorMeV({ L }, options) {
+    const range = options["rangeMeV"]!;
+    const nucleonMass = options["nucleonMassMeV"]!;
+    return ({ parentMeV, momentumMeV }) => {
+      const ratio = range / momentumMeV;
+      return (momentumMeV * (nucleonMass / parentMeV)) / integerPower(1 + ratio * ratio, L);
+    };
   },
 };

@@ -40,8 +40,8 @@ export type WidthModelOptions = Readonly<Record<string, number>>;
 /**
  * A way to turn a flavour amplitude into a width: Gamma = s |A|^2 K(M, m1, m2; wave), of which this is K.
  *
- * `factorMeV` is only ever called above threshold, with options that have been checked and completed. A new model is
- * one file that exports one of these, and one line in `width-model.ts`.
+ * `factorMeV` is only ever called with a vertex and options that have been checked and completed. A new model is one file
+ * that exports one of these, and one line in `width-model.ts`.
  */
 export interface WidthModelDefinition {
   readonly id: string;
@@ -54,5 +54,9 @@ export interface WidthModelDefinition {
   requireVertex(vertex: Vertex): void;
   /** Unit of the amplitude A, so that |A|^2 K is in MeV: `1`, `MeV` or `1/MeV`. */
   amplitudeUnit(vertex: Vertex): string;
-  factorMeV(kinematics: Kinematics, vertex: Vertex, options: WidthModelOptions): number;
+  /** K of one wave, ready for many masses; what it returns is only ever called above threshold. */
+  factorMeV(vertex: Vertex, options: WidthModelOptions): KinematicFactor;
 }
+
+/** K in MeV times the inverse square of the amplitude's unit; it keeps nothing of what it is given. */
+export type KinematicFactor = (kinematics: Kinematics) => number;

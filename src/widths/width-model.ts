@@ -6,6 +6,7 @@ import { effectiveMesonModel } from "./effective-meson-model.js";
 import { powerLawModel } from "./power-law-model.js";
 import { rangeModel } from "./range-model.js";
 import type {
+  KinematicFactor,
   Vertex,
   WidthModelDefinition,
   WidthModelOption,
@@ -38,6 +39,8 @@ export interface WidthModel {
   readonly options: WidthModelOptions;
   /** Unit of the amplitude A: `1`, `MeV` or `1/MeV`. Throws InputError for a vertex the model has no formula for. */
   amplitudeUnit(vertex: Vertex): string;
+  /** K of one wave for many masses above threshold. Throws InputError for a vertex the model has no formula for. */
+  factorMeV(vertex: Vertex): KinematicFactor;
   /**
    * K in MeV times the inverse square of the amplitude's unit; 0 at and below threshold, never NaN.
    * Throws InputError for an impossible mass or L, or a vertex the model has no formula for.
@@ -81,11 +84,15 @@ export function widthModel(id: string, options: WidthModelOptions = {}): WidthMo
       checkVertex(definition, vertex);
       return definition.amplitudeUnit(vertex);
     },
+    factorMeV(vertex) {
+      checkVertex(definition, vertex);
+      return definition.factorMeV(vertex, values);
+    },
     kinematicFactorMeV(parentMeV, firstMeV, secondMeV, vertex) {
       checkVertex(definition, vertex);
       const momentumMeV = breakupMomentumMeV(parentMeV, firstMeV, secondMeV);
       if (momentumMeV === 0) return 0;
-      return definition.factorMeV({ parentMeV, firstMeV, secondMeV, momentumMeV }, vertex, values);
+      return definition.factorMeV(vertex, values)({ parentMeV, firstMeV, secondMeV, momentumMeV });
     },
   };
 }

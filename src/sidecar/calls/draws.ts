@@ -6,7 +6,6 @@ import type { RandomGenerator } from "pure-rand/types/RandomGenerator";
 import { WHOLE } from "../../completion/parts-per-billion.js";
 import { couplet } from "../../gen/couplet.js";
 import { refuse } from "../../require.js";
-import { doubles } from "../doubles.js";
 import { requireWithin } from "../limits.js";
 import type { ServedParent } from "../served.js";
 import { requireMass } from "./mass.js";
@@ -68,7 +67,7 @@ function drawnAtNominalMass(
 
 function drawnAt(parent: ServedParent, masses: readonly number[], random: RandomGenerator): number[] {
   const evaluator = parent.evaluator();
-  const widths = doubles(evaluator.rowCount);
+  const widths = new Float64Array(evaluator.rowCount);
   return masses.map((massMeV, k) => {
     requireMass(massMeV, k, (index) => `masses[${index}]`);
     // One random number a draw, used or not, so that draws do not depend on one another.

@@ -27,34 +27,39 @@ export interface Answer {
   readonly draws: number;
 }
 
-/** A message class of the generated code, as far as calls need it. */
-interface MessageClass<Decoded, Written> {
-  decode(bytes: Uint8Array): Decoded;
-  encode(message: Written): { finish(): Uint8Array };
+/** What reads requests; the generated message classes do. */
+interface Decoder<Message> {
+  decode(bytes: Uint8Array): Message;
 }
+
+/** What writes answers: a generated message class, or a function. */
+type Encoder<Message> =
+  | { encode(message: Message): { finish(): Uint8Array } }
+  | ((message: Message) => Uint8Array);
 
 /** Builds a method from its messages and its answer as a message. */
 export function method<Request, Response>(
   name: string,
   streaming: boolean,
-  request: MessageClass<Request, never>,
-  response: MessageClass<unknown, Response>,
+  request: Decoder<Request>,
+  response: Encoder<Response>,
   answer: (
     snapshot: Snapshot,
     request: Request,
   ) => { message: Response; rowsEvaluated?: number; draws?: number },
 ): Method {
+  const encode = "encode" in response ? (message: Response) => response.encode(message).finish() : response;
   return {
     name,
     streaming,
     answer(snapshot, bytes) {
       const { message, rowsEvaluated = 0, draws = 0 } = answer(snapshot, decoded(name, request, bytes));
-      return { bytes: response.encode(message).finish(), rowsEvaluated, draws };
+      return { bytes: encode(message), rowsEvaluated, draws };
     },
   };
 }
 
-function decoded<Request>(name: string, request: MessageClass<Request, never>, bytes: Uint8Array): Request {
+function decoded<Request>(name: string, request: Decoder<Request>, bytes: Uint8Array): Request {
   try {
     return request.decode(bytes);
   } catch (cause) {
