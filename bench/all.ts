@@ -4,6 +4,7 @@ import type { BenchCase } from "./bench-case.js";
 import { type Baseline, compared, ratioOf, type Verdict } from "./compare.js";
 import { ENGINE_CASES } from "./engine-cases.js";
 import { measured, timeText, warmUp } from "./measure.js";
+import { PHYSICS_CASES } from "./physics-cases.js";
 import { yardstick } from "./yardstick.js";
 
 /**
@@ -13,7 +14,7 @@ import { yardstick } from "./yardstick.js";
  * bench/baseline.json is the ratio, and only a difference beyond the scatter of the rounds of both runs counts.
  * Exit code 1 if a case became slower. `--save` writes the measured ratios to the baseline.
  */
-const CASES: readonly BenchCase[] = [...ENGINE_CASES];
+const CASES: readonly BenchCase[] = [...ENGINE_CASES, ...PHYSICS_CASES];
 const BASELINE = join(__dirname, "baseline.json");
 const ROUNDS = 7;
 const SECONDS_PER_ROUND = 0.25;

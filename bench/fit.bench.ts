@@ -9,8 +9,10 @@ import { type Fit, fittedObservables } from "../src/model/fit-model.js";
 import { drawPseudoData, truthAt } from "../src/uncertainty/pseudo-data.js";
 import { pseudoExperiments } from "../src/uncertainty/pseudo-experiments.js";
 import { QUICK } from "../src/uncertainty/refit.js";
+import { foldedFactor } from "../src/widths/folded-width.js";
 import { requireResult } from "./bench-case.js";
 import { timeText, warmUp } from "./measure.js";
+import { deltaPi } from "./physics-cases.js";
 import { tenObservables } from "./ten-observables.js";
 
 /**
@@ -22,12 +24,36 @@ import { tenObservables } from "./ten-observables.js";
  *    each linearised problem it solves, of a matrix of the same size. Goal: within 5 times.
  * 2. 1,000 pseudo-experiments against 1,000 fits of the same data from the same start. Goal: within 1.2 times on one
  *    core (processor time), 0.65 times on two (time by the clock, which needs two idle cores to mean anything).
+ *
+ * 3. The factor of a channel averaged over the line shape of an unstable daughter against the same factor at one mass,
+ *    and against as many plain factors as the average takes.
  */
 async function main(): Promise<void> {
   console.log(`Node ${process.version}, load ${loadavg()[0]!.toFixed(1)}`);
   const fit = tenObservables();
   againstLinearSolves(fit);
+  againstPlainWidth();
   await againstFits(fit);
+}
+
+function againstPlainWidth(): void {
+  const channel = deltaPi();
+  const [delta, pionMeV] = channel.daughters;
+  const { evaluations } = foldedFactor(channel, 1515);
+  const folded = () => foldedFactor(channel, 1515);
+  const plain = () => {
+    let sum = 0;
+    for (let k = 0; k < 1000; k++)
+      sum += channel.model.kinematicFactorMeV(1515, delta.massMeV, pionMeV, channel.vertex);
+    return sum;
+  };
+  for (const each of [folded, plain]) warmUp(each, 0.5);
+  const rounds = Array.from({ length: 8 }, () => [processorSeconds(folded), processorSeconds(plain) / 1000]);
+  const [one, factor] = [0, 1].map((k) => Math.min(...rounds.map((round) => round[k]!)));
+  console.log(
+    `widths/folded-factor/Delta-pi ${timeText(one!)} for ${evaluations} masses; ${(one! / factor!).toFixed(0)} times a plain width ` +
+      `(${timeText(factor!)}), ${(one! / factor! / evaluations).toFixed(1)} times as many of them`,
+  );
 }
 
 function againstLinearSolves(fit: Fit): void {

@@ -2,6 +2,7 @@ import { describe, expect, test } from "vitest";
 import { compared, ratioOf } from "../bench/compare.js";
 import { checkDense, denseProduct, denseStates } from "../bench/dense-baseline.js";
 import { checkFinished, ENGINE_CASES } from "../bench/engine-cases.js";
+import { PHYSICS_CASES } from "../bench/physics-cases.js";
 import { yardstick } from "../bench/yardstick.js";
 import { parseIrrep } from "../src/su3/irrep.js";
 import { isoscalarTable } from "../src/su3/isoscalar-factors.js";
@@ -28,8 +29,9 @@ describe("regression benchmarks", () => {
   });
 
   test("have names that tell them apart, and results that pass their checks", () => {
-    expect(new Set(ENGINE_CASES.map(({ name }) => name)).size).toBe(ENGINE_CASES.length);
-    for (const { name, make } of ENGINE_CASES) {
+    const cases = [...ENGINE_CASES, ...PHYSICS_CASES];
+    expect(new Set(cases.map(({ name }) => name)).size).toBe(cases.length);
+    for (const { name, make } of cases) {
       if (name.includes("125")) continue;
       const { run, check } = make();
       check(run() as never);
