@@ -83,7 +83,7 @@ function describeLeaveOneOut(left: readonly LeftOut[]): string {
     const mark = verdicts.degenerateDirections.length > 0 ? "<- not fixed by the others" : "";
     return [
       observable.label,
-      asGiven(value, plus, minus),
+      observable.signOnly ? (value > 0 ? "+" : "-") : asGiven(value, plus, minus),
       significant(predicted, 4),
       pull.toFixed(2),
       chi2.toFixed(2),
@@ -120,7 +120,17 @@ function describeModels({ own, fits, skipped }: ModelSpread): string {
   );
   const head = ["width model", "chi2/ndf", ...names, ""];
   const left = skipped.map(({ model, reason }) => `  not ${modelText({ model })}: ${reason}\n`);
-  return `\nThe same data with other width models:\n${textTable([head, row("as in the study", own, ""), ...rows], { indent: 2 })}${left.join("")}`;
+  const wide = comparable(own.parameters).flatMap(({ name, value, error }) => {
+    const others = fits.flatMap(({ parameters }) => parameters.filter((p) => p.name === name));
+    const values = [value, ...others.map((other) => other.value)];
+    const spread = (Math.max(...values) - Math.min(...values)) / 2;
+    return spread > error ? [`${name} (${significant(spread, 2)} against ${significant(error, 2)})`] : [];
+  });
+  const warning =
+    wide.length === 0
+      ? ""
+      : `  WARNING: half the range over the models is larger than the error of the data for ${wide.join(", ")}: quote the spread as the error\n`;
+  return `\nThe same data with other width models:\n${textTable([head, row("as in the study", own, ""), ...rows], { indent: 2 })}${left.join("")}${warning}`;
 }
 
 function modelText({ model: { id, options } }: Pick<ModelFit, "model">): string {

@@ -1,5 +1,6 @@
 import { scaleFactor } from "../fit/chi-square.js";
 import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
+import { validityWarnings } from "../model/validity.js";
 import { asGiven, significant, withError } from "../tables/rounding.js";
 import { describeUncertainties } from "./describe-uncertainty.js";
 import {
@@ -54,6 +55,7 @@ export function fitJson(fit: Fit) {
       equivalents: minimum.equivalents,
     })),
     notes: fit.model.notes,
+    warnings: validityWarnings(fit, 0),
   };
 }
 
@@ -69,8 +71,15 @@ export function describeFit(fit: Fit): string {
     );
   }
   if (fit.minima.length === 1) parts.push("\nThere is no other minimum.\n");
-  parts.push(...fit.model.notes.map((note) => `\nNote: ${note}\n`));
+  parts.push(...fit.model.notes.map((note) => `\nNote: ${note}\n`), describeWarnings(fit, 0));
   return parts.join("");
+}
+
+/** Where the numbers of a minimum should not be trusted, a paragraph for each reason. */
+export function describeWarnings(fit: Fit, minimum: number): string {
+  return validityWarnings(fit, minimum)
+    .map(({ text }) => `\nWarning: ${text}\n`)
+    .join("");
 }
 
 function shortText({ parameters }: StudyMinimum): string {
@@ -143,7 +152,7 @@ export function describePulls({ pulls }: StudyMinimum): string {
     const mark = Math.abs(pull) >= 2 ? "<- contradicts the others" : "";
     return [
       observable.label,
-      asGiven(value, plus, minus),
+      observable.signOnly ? (value > 0 ? "+" : "-") : asGiven(value, plus, minus),
       unit === "1" ? "" : unit,
       fitted.toPrecision(4),
       pull.toFixed(2),

@@ -72,6 +72,19 @@ export function placeOf(irrep: Irrep, name: string): IsospinMultiplet {
   );
 }
 
+const BARYON = /^(N|Lambda|Sigma|Xi|Delta|Omega|Theta)$/;
+
+/**
+ * The usual name of a place for baryons or for mesons, else its labels.
+ *
+ * @example usualPlaceName({ threeY: -3, twoI: 1 }, 1) // "Xi"; "Kbar" for baryon number 0
+ */
+export function usualPlaceName(place: IsospinMultiplet, baryonNumber: number): string {
+  const names = Object.keys(PLACES).filter((name) => sameAs(PLACES[name]!, place));
+  const fits = (name: string) => isGeneric(name) && BARYON.test(name) === (baryonNumber !== 0);
+  return names.find(fits) ?? placeText(place);
+}
+
 function placeFromName(name: string): IsospinMultiplet | undefined {
   const bare = name.replace(/\(\d+\)$/, "");
   if (!Object.hasOwn(PLACES, bare)) return undefined;

@@ -209,7 +209,7 @@ export class Evaluation {
       }
       case "residue": {
         const product = this.#isospinProduct(quantum.pair);
-        return scaled(product, quantum.signed || product.value >= 0 ? 0.5 : -0.5);
+        return scaled(product, (quantum.sign ?? (product.value < 0 ? -1 : 1)) / 2);
       }
       case "axial": {
         const gradient = this.#zero();

@@ -1,5 +1,6 @@
 import { fAndD } from "../couplings/f-and-d.js";
 import { InputError } from "../errors.js";
+import { chiSquareProbability } from "../fit/chi-square.js";
 import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
 import { findMinima, type MinimaProblem, type Minimum, minimumNear } from "../fit/minima.js";
 import { sumsOf } from "./breaking.js";
@@ -31,6 +32,7 @@ export interface Pull {
 /** One minimum of chi2. */
 export interface StudyMinimum {
   readonly chi2: number;
+  /** Number of data and priors, but for signs alone, less number of free parameters. */
   readonly ndf: number;
   /** Chance of a chi2 at least as large; undefined when ndf is 0. */
   readonly probability: number | undefined;
@@ -125,6 +127,11 @@ export function fittedObservables(model: Model): Observable[] {
   return model.observables.filter((observable) => observable.use !== "table");
 }
 
+/** Degrees of freedom of a minimum: a sign alone is right or wrong, and leaves nothing to scatter. */
+export function degreesOfFreedom({ ndf }: Pick<Minimum, "ndf">, fitted: readonly Observable[]): number {
+  return Math.max(0, ndf - fitted.filter(({ signOnly }) => signOnly).length);
+}
+
 /** Parameters after the couplings, at every combination of starts of the free mixing angles. */
 function nuisanceStarts(model: Model): number[][] {
   const count = Math.round(Math.PI / ANGLE_STEP);
@@ -207,6 +214,7 @@ function studyMinimum(
 ): StudyMinimum {
   const { model } = ready;
   const evaluation = new Evaluation(ready, minimum.parameters);
+  const ndf = degreesOfFreedom(minimum, fitted);
   const direct = model.parameters.map(
     ({ name, unit, kind }, k): FittedParameter => ({
       name,
@@ -218,8 +226,8 @@ function studyMinimum(
   );
   return {
     chi2: minimum.chi2,
-    ndf: minimum.ndf,
-    probability: minimum.ndf > 0 ? minimum.probability : undefined,
+    ndf,
+    probability: ndf > 0 ? chiSquareProbability(minimum.chi2, ndf) : undefined,
     parameters: [...direct, ...model.decays.flatMap((_, index) => derivedParameters(model, index, minimum))],
     vector: minimum.parameters,
     covariance: minimum.covariance,

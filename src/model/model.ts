@@ -146,7 +146,13 @@ export type Quantum =
       readonly sign: 1 | -1;
       readonly reaction?: string;
     }
-  | { readonly kind: "residue"; readonly pair: readonly [WidthSum, WidthSum]; readonly signed: boolean }
+  | {
+      readonly kind: "residue";
+      readonly pair: readonly [WidthSum, WidthSum];
+      /** Absent where no phase is given: only the modulus counts. */
+      readonly sign?: 1 | -1;
+      readonly reaction?: string;
+    }
   | { readonly kind: "total"; readonly of: WidthSum }
   | { readonly kind: "axial"; readonly row: readonly number[] }
   | { readonly kind: "parameter"; readonly parameter: PriorTarget };

@@ -56,7 +56,7 @@ export function priorResidual(
 }
 
 function reactionOf({ quantum }: Observable): string | undefined {
-  return quantum.kind === "amplitude" ? quantum.reaction : undefined;
+  return "reaction" in quantum ? quantum.reaction : undefined;
 }
 
 function signed(graded: Graded, sign: 1 | -1): Graded {

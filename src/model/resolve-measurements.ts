@@ -5,6 +5,9 @@ import type { Decay, Observable, Parameter, Parent, Quantum, Total, WidthSum } f
 import type { Problems } from "./problems.js";
 import { hadronsNamed, type Known, widthSumOf } from "./width-sums.js";
 
+/** A phase this near to 90 degrees, in radians, has no sign. */
+const PHASE_ROUNDING = 1e-9;
+
 /** What measurements are resolved against. */
 export interface Context extends Known {
   readonly study: Study;
@@ -26,8 +29,8 @@ function resolveMeasurement(
   problems: Problems,
 ): Observable | undefined {
   const { path, signOnly, source, use } = measurement;
-  const measured = withLimit(measurement.value);
-  if (!requireError(measurement, problems)) return undefined;
+  const measured = withPhase(withLimit(measurement.value), measurement.phase);
+  if (!requireError(measurement, problems) || !requireSignOfPhase(measurement, problems)) return undefined;
   const quantum = quantumOf(measurement, path, context, problems);
   if (quantum === undefined) return undefined;
   const common = { measured, signOnly, source, use, position: problems.positionOf(path) };
@@ -99,15 +102,39 @@ function quantumOf(
   if (kind === "product") return { kind, of, by: other, total };
   const pair = [of, other] as const;
   for (const [k, sum] of pair.entries()) if (!oneWave(sum, paths[k]!, context, problems)) return undefined;
-  if (kind === "residue") return { kind, pair, signed: measurement.phase !== undefined };
-  const sign = measurement.sign === "free" ? 1 : measurement.sign;
-  return {
-    kind,
-    pair,
-    total,
-    sign,
-    ...(measurement.sign === "free" ? { reaction: reactionOf(pair, context) } : {}),
-  };
+  if (kind === "residue" && measurement.phase === undefined) return { kind, pair };
+  const signs = signOf(measurement, pair, context);
+  return kind === "residue" ? { kind, pair, ...signs } : { kind, pair, total, ...signs };
+}
+
+/** The sign of a reaction: given, or fitted; that of elastic scattering is +. */
+function signOf(
+  { sign }: StudyMeasurement,
+  pair: readonly [WidthSum, WidthSum],
+  context: Context,
+): { sign: 1 | -1; reaction?: string } {
+  if (sign !== "free") return { sign };
+  const [entrance, exit] = pair.map(([first]) => context.channels[first!.channel]!.isospinChannel);
+  return entrance === exit ? { sign: 1 } : { sign: 1, reaction: reactionOf(pair, context) };
+}
+
+/** A residue's modulus with the sign of its phase: couplings are real here, so + up to 90 degrees and - beyond. */
+function withPhase(quantity: Quantity, phase: Quantity | undefined): Quantity {
+  if (phase === undefined || Math.cos(phase.value) > 0) return quantity;
+  return { ...quantity, value: -quantity.value, plus: quantity.minus, minus: quantity.plus };
+}
+
+/** A phase must tell the sign; notes where it is as near to +-90 degrees as its error. */
+function requireSignOfPhase({ path, phase }: StudyMeasurement, problems: Problems): boolean {
+  if (phase === undefined) return true;
+  const distance = Math.abs(Math.asin(Math.cos(phase.value)));
+  if (distance > Math.max(phase.plus, phase.minus, PHASE_ROUNDING)) return true;
+  const degrees = (phase.value * 180) / Math.PI;
+  problems.add(
+    `${path}/phase`,
+    `expected a phase farther from 90 and -90 deg than its error, since it gives the residue's sign, got ${degrees.toFixed(1)} deg. Leave the phase out: then the modulus alone counts.`,
+  );
+  return false;
 }
 
 /** A measured value other than 0 needs a channel that is open; notes at `path` one that is closed in every charge state. */

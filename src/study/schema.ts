@@ -415,6 +415,24 @@ export const studySchema = mapping({
       .enum(["external", "decayed"])
       .default("external")
       .describe("Short-lived ground states among the daughters: left to the reader, or decayed as measured"),
+    widthModels: z
+      .enum(["own", "compared"])
+      .default("own")
+      .describe(
+        "Whether the fit is repeated with every other width model, so that rows quote the error from the model",
+      ),
+    replicas: z
+      .int()
+      .min(0)
+      .max(10_000)
+      .default(0)
+      .describe("Alternatives drawn for each kind of error, with which a finished simulation is reweighted"),
+    seed: z
+      .int()
+      .min(0)
+      .max(2 ** 32 - 1)
+      .default(1)
+      .describe("Seed of the replicas; the same seed gives the same file"),
   })
     .prefault({})
     .describe("How the tables are made"),

@@ -176,6 +176,11 @@ export interface StudyTableOptions {
   readonly antiparticles: "implied" | "rows";
   /** Whether short-lived ground states among the daughters are decayed as measured. */
   readonly daughters: "external" | "decayed";
+  /** Whether the fit is repeated with other width models, for the errors of rows. */
+  readonly widthModels: "own" | "compared";
+  /** Alternatives drawn for each kind of error, and their seed. */
+  readonly replicas: number;
+  readonly seed: number;
 }
 
 /** Something wrong in a study file, with where it stands. */

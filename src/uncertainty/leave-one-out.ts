@@ -2,7 +2,7 @@ import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
 import { minimumNear } from "../fit/minima.js";
 import { chiSquareProblem } from "../model/chi-square-problem.js";
 import { Evaluation, evaluator } from "../model/evaluate.js";
-import { type Fit, fittedObservables, LISTED_DELTA_CHI2 } from "../model/fit-model.js";
+import { degreesOfFreedom, type Fit, fittedObservables, LISTED_DELTA_CHI2 } from "../model/fit-model.js";
 import type { Observable } from "../model/model.js";
 import { comparisons } from "../model/residuals.js";
 import { linearError, parameterQuantities, type StudyQuantity } from "./quantities.js";
@@ -55,10 +55,8 @@ export function leaveOneOut(fit: Fit, options: LeaveOneOutOptions = {}): LeftOut
   const starts = [vector, ...fit.minima.filter(({ chi2 }) => chi2 < limit).map((minimum) => minimum.vector)];
   return fitted.map((observable, index): LeftOut => {
     options.signal?.throwIfAborted();
-    const problem = chiSquareProblem(
-      ready,
-      fitted.filter((_, k) => k !== index),
-    );
+    const others = fitted.filter((_, k) => k !== index);
+    const problem = chiSquareProblem(ready, others);
     const minima = [...new Set(starts)].map((start) => minimumNear(problem, start));
     const best = minima.reduce((a, b) => (b.chi2 < a.chi2 * (1 - 1e-6) ? b : a));
     const evaluation = new Evaluation(ready, best.parameters);
@@ -69,7 +67,7 @@ export function leaveOneOut(fit: Fit, options: LeaveOneOutOptions = {}): LeftOut
       predicted: comparison.fitted,
       pull: comparison.residual,
       chi2: best.chi2,
-      ndf: best.ndf,
+      ndf: degreesOfFreedom(best, others),
       verdicts: best.verdicts,
       parameters: quantities.map((quantity) => {
         const { name, unit, kind } = quantity;

@@ -26,6 +26,20 @@ const CHOICES: readonly WidthModelChoice[] = [
   { id: "e", options: {} },
 ];
 
+/** A study fitted again with one width model for all its decays, and the minimum of it that is meant. */
+export interface ModelRefit {
+  readonly model: WidthModelChoice;
+  readonly fit: Fit;
+  /** Index of the minimum whose amplitudes are nearest to those of the study's own. */
+  readonly minimum: number;
+}
+
+/** A width model that does not apply to a study, with the reason in words. */
+export interface SkippedModel {
+  readonly model: WidthModelChoice;
+  readonly reason: string;
+}
+
 /** A fit of a study with one width model for all its decays. */
 export interface ModelFit {
   readonly model: WidthModelChoice;
@@ -43,32 +57,56 @@ export interface ModelSpread {
   /** With the models that the study writes. */
   readonly own: Pick<ModelFit, "parameters" | "widthsMeV" | "chi2" | "ndf">;
   readonly fits: readonly ModelFit[];
-  /** Models that do not apply, with the reason in words. */
-  readonly skipped: readonly { readonly model: WidthModelChoice; readonly reason: string }[];
+  readonly skipped: readonly SkippedModel[];
+}
+
+/**
+ * The fit of a study repeated with every other width model that is defined for its decays, in numbers to compare.
+ *
+ * Couplings of different models cannot be compared, ratios and angles can.
+ * @param minimum - index of the minimum of the study's own fit
+ */
+export function modelSpread(fit: Fit, minimum = 0, options: FitModelOptions = {}): ModelSpread {
+  const { parameters, chi2, ndf } = fit.minima[minimum]!;
+  const { fits, skipped } = modelRefits(fit, minimum, options);
+  return {
+    own: { parameters, chi2, ndf, widthsMeV: widths(fit.model, fit.minima[minimum]!) },
+    fits: fits.map(modelFit),
+    skipped,
+  };
+}
+
+function modelFit({ model, fit, minimum }: ModelRefit): ModelFit {
+  const chosen = fit.minima[minimum]!;
+  const { chi2, ndf, parameters } = chosen;
+  const widthsMeV = widths(fit.model, chosen);
+  return { model, chi2, ndf, aboveBest: chi2 - fit.minima[0]!.chi2, parameters, widthsMeV };
 }
 
 /**
  * The fit of a study repeated with every other width model that is defined for its decays.
  *
  * In each, all minima are searched, and the one is taken whose amplitudes are nearest to those of the study's own: the
- * spread is that of the model, not of the branch. Couplings of different models cannot be compared, ratios and angles can.
+ * spread is that of the model, not of the branch.
  * @param minimum - index of the minimum of the study's own fit
  */
-export function modelSpread(fit: Fit, minimum = 0, options: FitModelOptions = {}): ModelSpread {
-  const own = fit.minima[minimum]!;
-  const reference = amplitudes(fit.model, own);
-  const fits: ModelFit[] = [];
-  const skipped: { model: WidthModelChoice; reason: string }[] = [];
+export function modelRefits(
+  fit: Fit,
+  minimum = 0,
+  options: FitModelOptions = {},
+): { readonly fits: readonly ModelRefit[]; readonly skipped: readonly SkippedModel[] } {
+  const reference = amplitudes(fit.model, fit.minima[minimum]!);
+  const fits: ModelRefit[] = [];
+  const skipped: SkippedModel[] = [];
   const others = CHOICES.filter((choice) => !isOwnModel(choice, fit.model));
   for (const [done, choice] of others.entries()) {
     const reason = couplingsAreFixed(fit.model) ?? missingFormula(choice, fit.model);
     const result = reason === undefined ? refitted(fit.model, choice, options) : reason;
     if (typeof result === "string") skipped.push({ model: choice, reason: result });
-    else fits.push(onSameBranch(result, choice, reference));
+    else fits.push({ model: choice, fit: result, minimum: onSameBranch(result, reference) });
     options.onProgress?.(done + 1, others.length);
   }
-  const { parameters, chi2, ndf } = own;
-  return { own: { parameters, chi2, ndf, widthsMeV: widths(fit.model, own) }, fits, skipped };
+  return { fits, skipped };
 }
 
 /** Half the range of each channel's width over the models, the study's own among them, in MeV. */
@@ -125,18 +163,11 @@ function refitted({ study }: Model, choice: WidthModelChoice, options: FitModelO
   }
 }
 
-function onSameBranch(
-  fit: Fit,
-  model: WidthModelChoice,
-  reference: readonly (readonly number[])[],
-): ModelFit {
-  const best = fit.minima[0]!;
-  const near = fit.minima.filter(({ chi2 }) => chi2 < best.chi2 + LISTED_DELTA_CHI2);
+function onSameBranch(fit: Fit, reference: readonly (readonly number[])[]): number {
+  const limit = fit.minima[0]!.chi2 + LISTED_DELTA_CHI2;
+  const near = fit.minima.filter(({ chi2 }) => chi2 < limit);
   const distances = near.map((minimum) => distance(amplitudes(fit.model, minimum), reference));
-  const minimum = near[distances.indexOf(Math.min(...distances))]!;
-  const { chi2, ndf, parameters } = minimum;
-  const widthsMeV = widths(fit.model, minimum);
-  return { model, chi2, ndf, aboveBest: chi2 - best.chi2, parameters, widthsMeV };
+  return distances.indexOf(Math.min(...distances));
 }
 
 function widths(model: Model, { vector }: StudyMinimum): number[] {

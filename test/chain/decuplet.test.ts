@@ -65,3 +65,31 @@ test("every charge state of the decuplet has rows that add up to 10^9 parts and 
   expect(rowWidthMeV(tables, "Sigma(1385)-", ["Lambda pi-"])).toBeCloseTo(32.4, 10);
   expect(rowWidthMeV(tables, "Delta(1232)+", ["p pi0", "n pi+"])).toBeCloseTo(117, 10);
 });
+
+// C. Becchi, E. Eberle and G. Morpurgo, Phys. Rev. 136 (1964) B808: to first order in the breaking by the strange quark's
+// mass, 2 (r_Delta + r_Xi) = 3 r_Lambda + r_Sigma, r an amplitude in units of its symmetric value. Widths of the Particle Data
+// Group, from memory: 117; 87.0 and 11.7 % of 37.2; 9.5 MeV. Model a, n = 2. Numbers from an independent program.
+test("the sum rule of the open decuplet decays holds for the measured widths: 0.009 +- 0.1 of 4", () => {
+  const text = withMeasurements(studyText("decuplet"), []);
+  const coupling = (channel: string, widthMeV: number, errorMeV: number) => {
+    const line = `  - { width: ${channel}, value: ${widthMeV} +- ${errorMeV} MeV, source: "PDG, from memory" }\n`;
+    const [g] = fitOf(`${text.trimEnd()}\n${line}`).minima[0]!.parameters;
+    return [g!.value, g!.error] as const;
+  };
+  const couplings = [
+    coupling("Delta(1232) -> N pi", 117, 3),
+    coupling("Sigma(1385) -> Lambda pi", 0.87 * 37.2, 1.2),
+    coupling("Sigma(1385) -> Sigma pi", 0.117 * 37.2, 0.6),
+    coupling("Xi(1530) -> Xi pi", 9.5, 0.6),
+  ];
+  const r = couplings.map(([g]) => g / couplings[0]![0]);
+  for (const [k, expected] of [1, 0.9547, 0.9398, 0.9063].entries())
+    expect(Math.abs(r[k]! - expected)).toBeLessThan(5e-4);
+  const weights = [2, -3, -1, 2];
+  const difference = weights.reduce((sum, weight, k) => sum + weight * r[k]!, 0);
+  expect(Math.abs(difference - 0.0087)).toBeLessThan(2e-3);
+  // Of the data alone: r_Delta is 1, and its error is in all others.
+  const error = Math.hypot(...weights.map((weight, k) => (weight * couplings[k]![1]) / couplings[0]![0]));
+  expect(error).toBeGreaterThan(0.08);
+  expect(Math.abs(difference)).toBeLessThan(error);
+});

@@ -1,4 +1,5 @@
 import { describe, expect, test } from "vitest";
+import { plantedStudy, rootWidth } from "./planted-octet.js";
 import { fitOf, parameterValue, rowWidthMeV, studyText, tablesOf, withMeasurements } from "./run.js";
 
 const STUDY = studyText("octet-5-2");
@@ -37,6 +38,18 @@ describe("the 5/2- octet with two couplings", () => {
     for (const { chi2 } of minima) expect(chi2).toBeLessThan(1e-12);
   });
 
+  // Signs of the listings, from memory: -(1 - 2a)(1 - a), -(1 - 2a)a and -(1 + 2a)(1 - a) at a = -0.24.
+  test("the measured signs of Lambda pi -, Sigma pi + (I = 1) and Sigma pi - (I = 0) agree with the widths", () => {
+    const { pulls, ndf } = fitOf(studyText("octet-5-2-whole")).minima[0]!;
+    const signs = pulls.filter(({ observable }) => observable.signOnly);
+    expect(signs.map(({ fitted, pull }) => [Math.sign(fitted), pull])).toEqual([
+      [-1, 0],
+      [1, 0],
+      [-1, 0],
+    ]);
+    expect(ndf).toBe(4);
+  });
+
   test("the table keeps measured widths and leaves an explicit remainder", () => {
     const tables = tablesOf(STUDY);
     const lambda = tables.parents.find(({ parent }) => parent.hadron.name === "Lambda(1830)")!;
@@ -48,5 +61,23 @@ describe("the 5/2- octet with two couplings", () => {
       1 - lambda.rows.slice(0, -1).reduce((s, r) => s + r.fraction.value, 0),
       12,
     );
+  });
+});
+
+// |1 - 2a| = 0.2 leaves a = 0.4 or 0.6; w = 4(1 - a)^2/9 = 0.16 leaves 0.4 or 1.6 (exact algebra). w and the square of the
+// former over 3/2 are widths without phase space over that of N -> N pi.
+describe("one ratio of reduced widths leaves two values of alpha_F", () => {
+  test.each([
+    { channel: "N Kbar", alphas: [0.4, 0.6] },
+    { channel: "Lambda pi", alphas: [0.4, 1.6] },
+  ])("of $channel: $alphas", ({ channel, alphas }) => {
+    const planted = { alpha: 0.4, g: 1 };
+    const line = (name: string, parent: string, to: string) =>
+      `  - { width: ${name} -> ${to}, value: ${rootWidth(parent, to, planted) ** 2} +- 0.1 MeV, source: invented }`;
+    const study = plantedStudy([line("N(1700)", "N", "N pi"), line("Sigma(1800)", "Sigma", channel)]);
+    const found = fitOf(study).minima.map((minimum) => parameterValue(minimum, "alpha_F"));
+    expect(found).toHaveLength(2);
+    for (const [k, alpha] of [...found].sort((a, b) => a - b).entries())
+      expect(alpha).toBeCloseTo(alphas[k]!, 8);
   });
 });

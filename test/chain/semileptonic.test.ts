@@ -41,4 +41,17 @@ describe("F and D from g1/f1 of semileptonic decays", () => {
     expect(Math.abs(minimum!.chi2 - known.published)).toBeGreaterThan(0.5);
     expect(Math.abs(minimum!.chi2 - known.here)).toBeLessThan(0.03);
   });
+
+  // The quark model of the ground states (56 of SU(6)): g_A = 5/3 of the neutron and -1/3 of Sigma-, F/D = 2/3, alpha_F = 2/5;
+  // F. Gursey and L.A. Radicati, Phys. Rev. Lett. 13 (1964) 173, provenance: memory; exact from quark wave functions.
+  test("axial charges of the SU(6) quark model give F/D = 2/3", () => {
+    const text = studyText("semileptonic-1993").split("measurements:")[0]!;
+    const axial = (what: string, value: number) =>
+      `  - { axial: ${what}, value: ${value} +- 0.01, source: "quark model" }\n`;
+    const lines = axial("n -> p", 5 / 3) + axial("Sigma- -> n", -1 / 3) + axial("Lambda -> p", 1);
+    const [minimum] = fitOf(`${text}measurements:\n${lines}`).minima;
+    expect(minimum!.chi2).toBeLessThan(1e-12);
+    expect(parameterValue(minimum!, "F/D")).toBeCloseTo(2 / 3, 9);
+    expect(parameterValue(minimum!, "alpha_F")).toBeCloseTo(2 / 5, 9);
+  });
 });

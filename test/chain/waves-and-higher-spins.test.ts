@@ -43,6 +43,8 @@ describe("multiplets of higher spin", () => {
       [1, 0],
       [-1, 0],
     ]);
+    // Five fractions and four priors less five parameters: signs are no degrees of freedom.
+    expect(minimum!.ndf).toBe(4);
   });
 
   test("signs against those of a decuplet are refused by chi2", () => {

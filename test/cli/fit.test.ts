@@ -36,6 +36,7 @@ describe("couplet fit", () => {
       "title",
       "minima",
       "notes",
+      "warnings",
       "profiles",
       "pseudoExperiments",
       "models",

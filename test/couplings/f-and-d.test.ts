@@ -89,6 +89,64 @@ describe("F and D", () => {
     },
   );
 
+  // Squares at two alphas as numbers, in the order above; from an independent program with traces of matrices.
+  test.each([
+    [0.4, [3, 0.12, 0.12, 1.08, 0.08, 0.48, 1.28, 0.48, 2, 2.16, 1.44, 0.48, 0.24, 3, 0.12, 0.12, 1.08]],
+    [
+      -0.24,
+      [
+        3, 1.2805333333, 6.5712, 0.0901333333, 4.3808, 2.0501333333, 0.4608, 2.0501333333, 2, 0.1802666667,
+        6.1504, 2.0501333333, 2.5610666667, 3, 1.2805333333, 6.5712, 0.0901333333,
+      ],
+    ],
+  ] as const)("at alpha = %d all 17 squares have the numbers of an independent program", (a, expected) => {
+    for (const [k, [parent, baryon, meson]] of SQUARES.entries()) {
+      const { D, F } = form(parent, baryon, meson);
+      expect(((1 - a) * rootToNumber(D) + a * rootToNumber(F)) ** 2).toBeCloseTo(expected[k]!, 9);
+    }
+  });
+
+  // Signs of A(N Kbar) A(f), which reactions measure; exact algebra, numbers from an independent program.
+  test.each([
+    [-0.24, [-2.99686905, 1.4208, -1.05295399]],
+    [0.4, [-0.19595918, -0.32, -1.76363261]],
+  ] as const)(
+    "at alpha = %d the products with N Kbar of Lambda pi, Sigma pi (I = 1, 0) are %j",
+    (a, expected) => {
+      const amplitude = (parent: string, baryon: string, meson: string) => {
+        const { D, F } = form(parent, baryon, meson);
+        return (1 - a) * rootToNumber(D) + a * rootToNumber(F);
+      };
+      const [sigma, lambda] = ["Sigma", "Lambda"].map((parent) => amplitude(parent, "N", "Kbar")) as [
+        number,
+        number,
+      ];
+      const products = [
+        sigma * amplitude("Sigma", "Lambda", "pi"),
+        sigma * amplitude("Sigma", "Sigma", "pi"),
+        lambda * amplitude("Lambda", "Sigma", "pi"),
+      ];
+      for (const [k, product] of products.entries()) expect(product).toBeCloseTo(expected[k]!, 7);
+    },
+  );
+
+  test("a singlet has Sigma pi + against N Kbar, a decuplet Lambda pi + and Sigma pi -: other signs than the octet's", () => {
+    const sign = (irrep: string, parent: string, baryon: string) => {
+      const place = placeOfMember(BARYONS, parent);
+      const single = makerOf(irrep, ["8", "8"]);
+      const c = (b: string, m: string) =>
+        rootToNumber(
+          single.isospinForm(place, [placeOfMember(BARYONS, b), placeOfMember(MESONS, m)]).terms[0]!.c,
+        );
+      return Math.sign(c("N", "Kbar") * c(baryon, "pi"));
+    };
+    expect([
+      sign("1", "Lambda", "Sigma"),
+      sign("10", "Sigma", "Lambda"),
+      sign("10", "Sigma", "Sigma"),
+    ]).toEqual([1, 1, -1]);
+  });
+
   test("every channel is covered once", () => {
     expect(new Set(SQUARES.map(([...labels]) => labels.slice(0, 3).join(" "))).size).toBe(17);
   });

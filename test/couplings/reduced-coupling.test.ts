@@ -1,9 +1,10 @@
 import { describe, expect, test } from "vitest";
-import { MASS_BREAKING, STRONG } from "../../src/couplings/operator.js";
+import { MASS_BREAKING, type Operator, STRONG } from "../../src/couplings/operator.js";
 import { reducedCouplings } from "../../src/couplings/reduced-coupling.js";
 import { InputError } from "../../src/errors.js";
 import { parseIrrep, sameIrrep } from "../../src/su3/irrep.js";
 import { irrepMultiplicities } from "../../src/su3/product.js";
+import { states } from "../../src/su3/state.js";
 import { schemeOf } from "./schemes.js";
 
 const names = (...scheme: Parameters<typeof schemeOf>) =>
@@ -52,6 +53,25 @@ describe("reduced couplings", () => {
     ["10", ["10", "8"], 4],
   ])("first-order mass breaking adds to %s -> %j %i couplings", (from, to, count) => {
     expect(names(from, to, MASS_BREAKING)).toHaveLength(count);
+  });
+
+  // Charmed antitriplets by the operators 15, (2,1), and 6bar of a Cabibbo-allowed decay; counted with characters, the first line as
+  // in C. Quigg, Z. Phys. C 4 (1980) 55 (from memory). Two equal octets keep the copies that are even under exchange.
+  test.each([
+    ["two equal octets", ["8", "8"], /(8_1|27|^1)\)$/, [2, 1]],
+    ["two octets", ["8", "8"], /./, [4, 3]],
+    ["an octet and a singlet", ["8", "1"], /./, [1, 1]],
+    ["a decuplet and an octet", ["10", "8"], /./, [3, 1]],
+  ] as const)("of a charmed antitriplet to %s there are so many by 15 and 6bar", (_, to, kept, counts) => {
+    const operator = (irrep: string): Operator => ({
+      name: irrep,
+      parts: states(parseIrrep(irrep)).map((state) => ({ state, weight: 1 })),
+      complex: true,
+    });
+    const found = ["2,1", "6bar"].map(
+      (irrep) => names("3bar", to, operator(irrep)).filter((name) => kept.test(name)).length,
+    );
+    expect(found).toEqual(counts);
   });
 
   test("of another operator say where the initial state goes first", () => {

@@ -85,3 +85,49 @@ test("mass formulas: theta_P is -10.6 degrees from squares of the masses and abo
   expect(degrees("convention: meson\n    angle: linear masses")).toBeLessThan(-23);
   expect(degrees("convention: meson\n    angle: linear masses")).toBeGreaterThan(-25);
 });
+
+test("at the ideal angle of 35.264 degrees the heavier state is -s sbar, the lighter (u ubar + d dbar)/sqrt2", () => {
+  const ideal = (Math.atan(Math.SQRT1_2) * 180) / Math.PI;
+  expect(ideal).toBeCloseTo(35.264389682754654, 12);
+  const [heavier, lighter] = weights(`convention: meson\n    angle: ${ideal} deg`) as [number[], number[]];
+  // psi8 = (uu + dd - 2 ss)/sqrt6, psi1 = (uu + dd + ss)/sqrt3, in (uu, dd, ss).
+  const quarks = ([w8, w1]: number[]) =>
+    [1, 1, -2].map((c, k) => (w8! * c) / Math.sqrt(6) + (w1! * [1, 1, 1][k]!) / Math.sqrt(3));
+  for (const [k, amplitude] of [0, 0, -1].entries()) expect(quarks(heavier)[k]).toBeCloseTo(amplitude, 14);
+  for (const [k, amplitude] of [Math.SQRT1_2, Math.SQRT1_2, 0].entries())
+    expect(quarks(lighter)[k]).toBeCloseTo(amplitude, 14);
+});
+
+// Isospin-averaged masses of the Particle Data Group, from memory; angles by 3 m8^2 = 4 mK^2 - ma^2 and
+// tan^2 = (m8^2 - m'^2)/(m^2 - m8^2), worked out with an independent program. Signs: pseudoscalars -, the others +.
+test.each([
+  ["0-+", 495.644, 138.04, 547.862, 957.78, -10.641],
+  ["1--", 893.6, 775.26, 1019.461, 782.66, 39.813],
+  ["2++", 1429, 1318.2, 1517.4, 1275.4, 29.014],
+])(
+  "squares of the masses of the %s nonet give the mixing angle of an independent program",
+  (spinParity, kaon, isovector, upper, lower, degrees) => {
+    const text = `couplet: 1
+title: An angle from masses
+multiplets:
+  octet:
+    irrep: 8
+    spinParity: ${spinParity}
+    members:
+      - { name: X(1), place: K, mass: ${kaon} MeV, width: 1 MeV }
+      - { name: Y(1), place: pi, mass: ${isovector} MeV, width: 1 MeV }
+  singlet: { irrep: 1, spinParity: ${spinParity} }
+mixing:
+  - bare: [octet/eta, singlet/eta]
+    states: [{ name: V(1), mass: ${upper} MeV, width: 1 MeV }, { name: W(1), mass: ${lower} MeV, width: 1 MeV }]
+    convention: meson
+    angle: quadratic masses
+decays:
+  - { from: baryon-decuplet, to: [baryon-octet, pseudoscalar-octet], L: 1, model: a }
+measurements:
+  - { width: Delta(1232) -> N pi, value: 117 +- 3 MeV, source: test }
+`;
+    const [rotation] = resolveStudy(readStudy(Buffer.from(text), "study.yaml")).mixing[0]!.rotations;
+    expect(Math.abs((rotation!.angle * 180) / Math.PI / degrees - 1)).toBeLessThan(2e-4);
+  },
+);

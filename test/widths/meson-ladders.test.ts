@@ -186,6 +186,7 @@ describe("tensor nonet from f2 -> pi pi", () => {
     expect(squares(light, KAONS)).toBeCloseTo(1, 14);
     expect(squares(unit(1, 2), [["K+", "K0bar"]])).toBeCloseTo(1, 14);
     expect(squares(unit(1, 2), [["eta", "pi+"]])).toBeCloseTo(2 * Math.cos(PHI_P) ** 2, 14);
+    expect(squares(unit(1, 2), [["eta", "pi+"]])).toBeCloseTo(1.1976573403791266, 9);
     expect(
       squares(unit(1, 3), [
         ["K0", "pi+"],
