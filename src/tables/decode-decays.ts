@@ -16,13 +16,15 @@ export function decodeDecays(bytes: Uint8Array, file: string): couplet.v1.DecayT
     couplet.v1.DecayTables.decode(all),
   );
   requireKnownHeader(tables.header, DECAYS_SCHEMA_MINOR, file);
-  for (const parent of tables.parents) {
-    const sum = parent.rows.reduce((total, row) => total + (row.partsPerBillion ?? 0), 0);
-    if (sum !== WHOLE) {
-      throw new TableError(
-        `${file}: ${parent.hadron?.name}: expected rows that add up to ${WHOLE} parts, got ${sum}. The file was written by something else; write it again.`,
-      );
-    }
-  }
+  for (const parent of tables.parents) requireWhole(parent, file);
   return tables;
+}
+
+/** @throws TableError for a parent whose rows do not add up to 10^9 parts */
+export function requireWhole(parent: couplet.v1.Parent, file: string): void {
+  const sum = parent.rows.reduce((total, row) => total + (row.partsPerBillion ?? 0), 0);
+  if (sum === WHOLE) return;
+  throw new TableError(
+    `${file}: ${parent.hadron?.name}: expected rows that add up to ${WHOLE} parts, got ${sum}. The file was written by something else; write it again.`,
+  );
 }

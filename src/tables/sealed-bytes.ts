@@ -13,7 +13,13 @@ export type TableKind = (typeof TABLE_KINDS)[number];
 
 // Field 1000, wire type 2, as a varint; then the length of a SHA-256.
 const SEAL_HEAD = Buffer.from([0xc2, 0x3e, 0x20]);
-const SEAL_LENGTH = SEAL_HEAD.length + 32;
+/** Bytes of the last field, which holds the digest. */
+export const SEAL_LENGTH = SEAL_HEAD.length + 32;
+
+/** The last field of a file whose other bytes have this SHA-256. */
+export function sealOf(digest: Uint8Array): Uint8Array {
+  return Buffer.concat([SEAL_HEAD, digest]);
+}
 
 /**
  * A table's bytes with the digest appended as its last field: SHA-256 of every byte before that field.
@@ -31,7 +37,7 @@ export function* sealedPieces(body: Iterable<Uint8Array>): Generator<Uint8Array>
     hash.update(piece);
     yield piece;
   }
-  yield Buffer.concat([SEAL_HEAD, hash.digest()]);
+  yield sealOf(hash.digest());
 }
 
 /**
@@ -42,21 +48,32 @@ export function* sealedPieces(body: Iterable<Uint8Array>): Generator<Uint8Array>
  * @throws TableError if it is one of ours and damaged
  */
 export function checkSeal(bytes: Uint8Array, file: string): TableKind {
-  const kind = kindOf(bytes);
-  const sealed = hasSeal(bytes);
+  return requireSealed({ start: bytes, length: bytes.length, sealed: hasSeal(bytes) }, file);
+}
+
+/**
+ * The kind of a table whose digest has been looked at elsewhere; `start` has at least its first 64 bytes, or all.
+ *
+ * @throws InputError and TableError as `checkSeal`
+ */
+export function requireSealed(
+  { start, length, sealed }: { start: Uint8Array; length: number; sealed: boolean },
+  file: string,
+): TableKind {
+  const kind = kindOf(start);
   if (kind !== undefined && sealed) return kind;
   if (kind !== undefined) {
     throw new TableError(
-      `${file}: the file is damaged: its digest does not match its content (${bytes.length} bytes). Nothing was read; get a fresh copy or write the table again.`,
+      `${file}: the file is damaged: its digest does not match its content (${length} bytes). Nothing was read; get a fresh copy or write the table again.`,
     );
   }
-  if (sealed && hasHead(bytes, "couplet.v")) {
+  if (sealed && hasHead(start, "couplet.v")) {
     throw new TableError(
       `${file}: expected one of ${TABLE_KINDS.join(", ")}, got a table of another kind. Read it with a newer Couplet.`,
     );
   }
   throw new InputError(
-    `${file}: expected a table file written by Couplet, got something else (${bytes.length} bytes). Give a .pb file that \`couplet tables\`, \`couplet couplings --out\` or \`couplet factors --out\` wrote.`,
+    `${file}: expected a table file written by Couplet, got something else (${length} bytes). Give a .pb file that \`couplet tables\`, \`couplet couplings --out\` or \`couplet factors --out\` wrote.`,
   );
 }
 
@@ -90,7 +107,7 @@ function hasSeal(bytes: Uint8Array): boolean {
   if (bytes.length < SEAL_LENGTH) return false;
   const body = bytes.subarray(0, bytes.length - SEAL_LENGTH);
   const digest = createHash("sha256").update(body).digest();
-  return Buffer.concat([SEAL_HEAD, digest]).equals(bytes.subarray(body.length));
+  return Buffer.from(sealOf(digest)).equals(bytes.subarray(body.length));
 }
 
 /** The digest of a sealed table, in hexadecimal. */
