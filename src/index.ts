@@ -29,6 +29,7 @@ export type {
   Flag,
   Origin,
   ParentTable,
+  Replica,
   Row,
   RowWave,
   Tables,
@@ -175,9 +176,12 @@ export { CAUTIONS } from "./tables/cautions.js";
 export { decodeCouplings } from "./tables/decode-couplings.js";
 export { decodeDecays } from "./tables/decode-decays.js";
 export { decodeFactors } from "./tables/decode-factors.js";
+export { type CascadeDrawer, type CascadeParticle, cascadeDrawer } from "./tables/draw-cascade.js";
 export { encodeCouplings } from "./tables/encode-couplings.js";
 export { encodeDecays } from "./tables/encode-decays.js";
 export { encodeFactors } from "./tables/encode-factors.js";
+export { type HadronsByName, tableHadrons } from "./tables/evaluate-rows.js";
+export { chainWeights, type ReplicaWeights, replicaWeights } from "./tables/replica-weights.js";
 export { checkSeal, digestOf, type TableKind } from "./tables/sealed-bytes.js";
 export { packageVersion } from "./version.js";
 // Width models and two-body kinematics, in MeV.

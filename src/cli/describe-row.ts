@@ -43,7 +43,7 @@ export function describeRow(found: RowOfTable): string {
   const sections: readonly (readonly [string, readonly string[]])[] = [
     ["The number", numberLines(found)],
     ["Before a policy moved it", adjustmentLines(found)],
-    ["Errors of the fraction, one standard deviation each", errorLines(row)],
+    ["Errors of the fraction, of which each answers another question", errorLines(row)],
     ["Total width", totalLines(parent, quotes)],
     ["Measurement", measurementLines(row, quotes)],
     ["Split into charge states", splitLines(found)],
@@ -117,7 +117,7 @@ function kaonLines({ kaonFlavours }: v1.Row.$Properties): string[] {
 }
 
 function errorLines({ fraction, origin }: v1.Row.$Properties): string[] {
-  const { value, plus, minus, breaking } = fraction ?? {};
+  const { value, plus, minus, breaking, branch, model } = fraction ?? {};
   // What is lost in the digits of a double is none.
   const error = (size: Maybe<number>) => ((size ?? 0) > 1e-12 * (value ?? 0) ? number(size, 3) : "0");
   const from =
@@ -129,6 +129,14 @@ function errorLines({ fraction, origin }: v1.Row.$Properties): string[] {
   return [
     `data      +${error(plus)} -${error(minus)}  ${from}`,
     `breaking  ${error(breaking)}  from breaking of the symmetry; independent of the data`,
+    ...(branch == null
+      ? []
+      : [
+          `branch    ${error(branch)}  the largest difference to another minimum within chi2 + 9 of the best`,
+        ]),
+    model == null
+      ? "model     not computed; `tables: { widthModels: compared }` in the study has it computed"
+      : `model     ${error(model)}  half the range over the width models, each fitted to the same data`,
   ];
 }
 

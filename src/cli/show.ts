@@ -66,7 +66,7 @@ function parentNamed({ parents }: v1.DecayTables, name: string, path: string): v
 }
 
 function describeHeader(
-  { header, fit, parents, externals, leftOpen }: v1.DecayTables,
+  { header, fit, parents, externals, leftOpen, replicas }: v1.DecayTables,
   path: string,
   digest: string,
 ): string {
@@ -81,10 +81,24 @@ function describeHeader(
       ({ name, value, error, unit }) =>
         `  ${name}  ${withError(value ?? 0, error ?? 0)}${unit === "1" ? "" : ` ${unit}`}`,
     ),
+    ...replicaLines(replicas),
     ...header.cautions.map((caution) => `caution: ${caution}`),
     ...header.notes.map((note) => `note: ${note}`),
   ];
   return `${lines.join("\n")}\n`;
+}
+
+/** How many replicas of which kind there are; nothing for a table without. */
+function replicaLines(replicas: readonly v1.Replica.$Properties[]): string[] {
+  if (replicas.length === 0) return [];
+  const { REPLICA_PART_DATA, REPLICA_PART_BREAKING, REPLICA_PART_BRANCH, REPLICA_PART_MODEL } =
+    v1.ReplicaPart;
+  const count = (wanted: v1.ReplicaPart) => replicas.filter(({ part }) => part === wanted).length;
+  const unreachable = replicas.filter(({ unreachableRows }) => unreachableRows).length;
+  const seed = replicas.find((replica) => replica.seed != null)?.seed;
+  return [
+    `${replicas.length} replicas: ${count(REPLICA_PART_DATA)} of the data and ${count(REPLICA_PART_BREAKING)} of breaking (seed ${seed}), ${count(REPLICA_PART_BRANCH)} of other minima, ${count(REPLICA_PART_MODEL)} of other width models${unreachable === 0 ? "" : `; ${unreachable} of them open rows that have no width here, which no weight can bring in`}`,
+  ];
 }
 
 /** What a generator must still decay by itself, and what it cannot decay. */
@@ -116,7 +130,10 @@ function aliasText(aliases: readonly number[]): string {
   return aliases.length === 0 ? "" : ` (also ${aliases.join(", ")})`;
 }
 
-/** One parent's table in words: fractions in percent with errors from data and, behind `br.`, from breaking. */
+/**
+ * One parent's table in words: fractions in percent with errors from data and, where there are any, from breaking (`br.`),
+ * from the choice of the minimum (`min.`) and from that of the width model (`mod.`).
+ */
 export function describeParent(parent: v1.Parent): string {
   const { hadron } = parent;
   const mc =
@@ -131,12 +148,19 @@ export function describeParent(parent: v1.Parent): string {
     const percent = (x: number | null | undefined) => 100 * (x ?? 0);
     const statistical = (percent(fraction?.plus) + percent(fraction?.minus)) / 2;
     const closed = row.kinematics === v1.Kinematics.KINEMATICS_CLOSED;
+    const parts = [
+      ["br.", fraction?.breaking],
+      ["min.", fraction?.branch],
+      ["mod.", fraction?.model],
+    ] as const;
     const integrated = row.integratedFraction;
     return [
       row.id,
       closed ? "closed" : withError(percent(fraction?.value), statistical),
       integrated === undefined || integrated === null ? "" : significant(percent(integrated), 3),
-      closed || !fraction?.breaking ? "" : `br. ${significant(percent(fraction.breaking), 2)}`,
+      parts
+        .flatMap(([name, part]) => (closed || !part ? [] : [`${name} ${significant(percent(part), 2)}`]))
+        .join("  "),
       significant(row.width?.value ?? 0, 4),
       String(row.partsPerBillion),
       ORIGIN_WORDS[row.origin ?? 0]!,

@@ -8,7 +8,7 @@ import { encodeCouplings } from "../tables/encode-couplings.js";
 import { encodeDecays } from "../tables/encode-decays.js";
 import { digestOf } from "../tables/sealed-bytes.js";
 import { writeWhole } from "../tables/whole-file.js";
-import { describeMinimum, describePulls } from "./fit.js";
+import { describeMinimum, describePulls, describeWarnings } from "./fit.js";
 import { fitStudyFile } from "./run-study.js";
 
 /** A decay table file that was written. */
@@ -82,6 +82,7 @@ function describeWritten(fit: Fit, written: readonly Written[]): string {
     return (
       describeMinimum(fit.minima[minimum]!, title) +
       describePulls(fit.minima[minimum]!) +
+      describeWarnings(fit, minimum) +
       `\nwrote ${file}: ${parents} parents, ${rows} rows, sha256 ${sha256.slice(0, 16)}...\n` +
       `wrote ${couplings.file}: ${couplings.vertices} vertices, sha256 ${couplings.sha256.slice(0, 16)}...\n`
     );

@@ -69,18 +69,18 @@ export class ErrorSpace {
     return sum;
   }
 
-  /** A fraction and its width from the fraction's gradient; `breaking` is the fraction's. */
+  /** A fraction and its width from the fraction's gradient and their errors from breaking. */
   estimates(
     fraction: number,
     gradient: Gradient,
-    breaking: number,
+    breaking: { readonly fraction: number; readonly widthMeV: number },
     totalMeV: number,
     total: Gradient,
   ): { fraction: Estimate; widthMeV: Estimate } {
     const width = gradient.map((d, k) => d * totalMeV + fraction * total[k]!);
     return {
-      fraction: this.estimate(fraction, gradient, breaking),
-      widthMeV: this.estimate(fraction * totalMeV, width, breaking * totalMeV),
+      fraction: this.estimate(fraction, gradient, breaking.fraction),
+      widthMeV: this.estimate(fraction * totalMeV, width, breaking.widthMeV),
     };
   }
 

@@ -37,8 +37,15 @@ export function leftovers({ modes }: Parent, remainder: Completed["remainder"]):
 }
 
 /** A part of an estimate, with all its errors. */
-export function part({ value, plus, minus, breaking }: Estimate, share: number): Estimate {
-  return { value: value * share, plus: plus * share, minus: minus * share, breaking: breaking * share };
+export function part({ value, plus, minus, breaking, branch, model }: Estimate, share: number): Estimate {
+  return {
+    value: value * share,
+    plus: plus * share,
+    minus: minus * share,
+    breaking: breaking * share,
+    ...(branch === undefined ? {} : { branch: branch * share }),
+    ...(model === undefined ? {} : { model: model * share }),
+  };
 }
 
 /** What a row of a mode has of itself: its kinematics and its law, without the number. */

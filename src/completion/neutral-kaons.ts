@@ -97,7 +97,9 @@ function singleRows(parent: string, row: Row, other: Row | undefined, file: stri
     return withParts(row.partsPerBillion, rows);
   }
   const [kaon, anti] = row.daughters.some(({ name }) => name === "K0") ? [row, other] : [other, row];
-  const shares = interfering(kaon, anti, file);
+  const cosine = interference(kaon, anti, file);
+  const widths = projectedWidths(kaon, anti, cosine, 1, 1);
+  const total = widths[0] + widths[1];
   const sum: Row = {
     ...row,
     fraction: added(row.fraction, other.fraction),
@@ -108,25 +110,54 @@ function singleRows(parent: string, row: Row, other: Row | undefined, file: stri
     partsPerBillion: row.partsPerBillion + other.partsPerBillion,
     sources: [...new Set([...row.sources, ...other.sources])],
   };
-  const rows = (["K_S0", "K_L0"] as const).map((name, k) => {
-    const sign = name === "K_S0" ? -1 : 1;
+  const rows = ([0, 1] as const).map((k) => {
+    const [name, sign] = k === 0 ? ["K_S0", -1] : ["K_L0", 1];
     const flavours = [flavourOf(kaon, Math.SQRT1_2), flavourOf(anti, sign * Math.SQRT1_2)];
-    return projectedRow(parent, sum, [name], shares[k]!, flavours);
+    const { replicaRatios: _, ...projected } = projectedRow(
+      parent,
+      sum,
+      [name],
+      widths[k]! / total,
+      flavours,
+    );
+    const ratios = projectedRatios(kaon, anti, cosine, k);
+    return ratios === undefined ? projected : { ...projected, replicaRatios: ratios };
   });
   return withParts(sum.partsPerBillion, rows);
 }
 
-/** Shares of K_S0 and K_L0 in the sum of two flavour rows, whose amplitudes interfere. */
-function interfering(kaon: Row, anti: Row, file: string): [number, number] {
+/** Cosine of the phase between two flavour rows, whose amplitudes interfere in K_S0 and K_L0. */
+function interference(kaon: Row, anti: Row, file: string): number {
   if (kaon.amplitude?.phaseRad === undefined || anti.amplitude?.phaseRad === undefined) {
     throw new InputError(
       `${file}: ${kaon.id} and ${anti.id}: expected the phases of both, since they interfere in K_S0 and K_L0. Give each mode its \`phase\`, or take \`neutralKaons: flavour\`.`,
     );
   }
-  const [a, b] = [kaon, anti].map(({ widthMeV }) => widthMeV.value) as [number, number];
-  const cosine = Math.cos(kaon.amplitude.phaseRad - anti.amplitude.phaseRad);
-  const mixed = (Math.sqrt(a * b) * cosine) / (a + b);
-  return [0.5 - mixed, 0.5 + mixed];
+  return Math.cos(kaon.amplitude.phaseRad - anti.amplitude.phaseRad);
+}
+
+/** Widths of K_S0 and K_L0 in the sum of two flavour rows, each scaled by a ratio. */
+function projectedWidths(
+  kaon: Row,
+  anti: Row,
+  cosine: number,
+  kaonRatio: number,
+  antiRatio: number,
+): [number, number] {
+  const [a, b] = [kaonRatio * kaon.widthMeV.value, antiRatio * anti.widthMeV.value];
+  const mixed = Math.sqrt(a * b) * cosine;
+  return [(a + b) / 2 - mixed, (a + b) / 2 + mixed];
+}
+
+/** What replicas of two flavour rows make of the row of K_S0 (0) or K_L0 (1); undefined where they leave it as it is. */
+function projectedRatios(kaon: Row, anti: Row, cosine: number, k: 0 | 1): number[] | undefined {
+  const replicas = kaon.replicaRatios ?? anti.replicaRatios;
+  const own = projectedWidths(kaon, anti, cosine, 1, 1)[k];
+  return replicas?.map((_, replica) => {
+    const ratio = (row: Row) => row.replicaRatios?.[replica] ?? 1;
+    const other = projectedWidths(kaon, anti, cosine, ratio(kaon), ratio(anti))[k];
+    return own > 0 ? Math.fround(other / own) : 1;
+  });
 }
 
 function added(a: Row["fraction"], b: Row["fraction"]): Row["fraction"] {
@@ -135,6 +166,8 @@ function added(a: Row["fraction"], b: Row["fraction"]): Row["fraction"] {
     plus: Math.hypot(a.plus, b.plus),
     minus: Math.hypot(a.minus, b.minus),
     breaking: Math.hypot(a.breaking, b.breaking),
+    ...(a.branch === undefined ? {} : { branch: Math.hypot(a.branch, b.branch ?? 0) }),
+    ...(a.model === undefined ? {} : { model: Math.hypot(a.model, b.model ?? 0) }),
   };
 }
 

@@ -1,6 +1,7 @@
 import { Evaluation, evaluator } from "../model/evaluate.js";
 import type { Fit, StudyMinimum } from "../model/fit-model.js";
 import { widthBreakingMeV } from "../model/width-breaking.js";
+import { breakingGroups } from "./breaking-groups.js";
 
 /** What one minimum of a fit says about one channel. */
 export interface Prediction {
@@ -14,6 +15,8 @@ export interface Prediction {
   readonly amplitudes: readonly number[];
   /** Largest |amplitude| over its wave's coupling strength, in the isospin channel; small means near a zero. */
   readonly relativeStrength: number;
+  /** What breaking of the symmetry moves together; see `breakingGroups`. */
+  readonly group: string;
 }
 
 /** Predictions of all channels of a fit's model, in the order of `model.channels`. */
@@ -29,15 +32,16 @@ export interface Predictions {
 export function predict(fit: Fit, minimumIndex: number): Predictions {
   const minimum = fit.minima[minimumIndex]!;
   const evaluation = new Evaluation(evaluator(fit.model), minimum.vector);
+  const groups = breakingGroups(fit.model);
   return {
     fit,
     minimum,
     evaluation,
-    channels: fit.model.channels.map((_, index) => predictChannel(evaluation, index)),
+    channels: fit.model.channels.map((_, index) => predictChannel(evaluation, index, groups[index]!)),
   };
 }
 
-function predictChannel(evaluation: Evaluation, index: number): Prediction {
+function predictChannel(evaluation: Evaluation, index: number, group: string): Prediction {
   const channel = evaluation.model.channels[index]!;
   const amplitudes = channel.waves.map((_, w) => evaluation.amplitude(index, w).value);
   const { value, gradient } = evaluation.width(index);
@@ -48,5 +52,5 @@ function predictChannel(evaluation: Evaluation, index: number): Prediction {
       relativeStrength = Math.max(relativeStrength, Math.abs(amplitudes[w]!) / isospinLength);
   }
   const breakingMeV = widthBreakingMeV(evaluation, index);
-  return { widthMeV: value, gradient, breakingMeV, amplitudes, relativeStrength };
+  return { widthMeV: value, gradient, breakingMeV, amplitudes, relativeStrength, group };
 }

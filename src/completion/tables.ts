@@ -9,8 +9,12 @@ export interface Estimate {
   readonly value: number;
   readonly plus: number;
   readonly minus: number;
-  /** From breaking of the symmetry; 0 for measured values. */
+  /** From breaking of the symmetry; 0 for what no prediction enters. */
   readonly breaking: number;
+  /** Largest difference to the value of another minimum within `LISTED_DELTA_CHI2`; undefined if not computed. */
+  readonly branch?: number;
+  /** Half the range of the values over width models; undefined if they were not compared. */
+  readonly model?: number;
 }
 
 /** Where a row's number comes from. */
@@ -86,6 +90,8 @@ export interface Row {
   readonly amplitude?: { readonly phaseRad: number };
   /** What a row with K_S0 or K_L0 is projected from; absent without a projection. */
   readonly kaonFlavours?: readonly FlavourAmplitude[];
+  /** By replica of the tables: its partial width over the row's, in single precision; absent where all are 1. */
+  readonly replicaRatios?: readonly number[];
 }
 
 /**
@@ -132,6 +138,22 @@ export interface External {
 /** What becomes of a hadron that is not decayed here: it is stable, it flies on before it decays, or it decays at once. */
 export type Life = "stable" | "flies" | "decays";
 
+/** What one replica of the tables is. */
+export interface Replica {
+  /** The part of the errors that it is a sample of, or that it is the other end of. */
+  readonly part: "data" | "breaking" | "branch" | "model";
+  /** Index of the minimum in the study's own fit. */
+  readonly minimum: number;
+  /** Of that minimum or, with another width model, of its fit. */
+  readonly chi2: number;
+  /** The width model of all decays; absent where it is the study's own. */
+  readonly model?: WidthModelChoice;
+  /** Number of the draw, from 0; absent for what is not drawn. */
+  readonly draw?: number;
+  /** Rows that it gives a width and the tables do not: no weight can bring them into a finished simulation. */
+  readonly unreachableRows: number;
+}
+
 /** Decay tables of all members and charge states of a study, for one minimum of its fit. */
 export interface Tables {
   readonly fit: Fit;
@@ -140,4 +162,6 @@ export interface Tables {
   readonly parents: readonly ParentTable[];
   /** Daughters that are no parents of these tables; every daughter is one or the other. */
   readonly externals: readonly External[];
+  /** Alternatives that rows have ratios for; empty unless the study asks for them. */
+  readonly replicas: readonly Replica[];
 }

@@ -11,7 +11,7 @@ export type Entry =
       readonly widthMeV: number;
       readonly gradient: readonly number[];
       readonly breakingMeV: number;
-      /** Isospin channel: breaking moves its charge states together. */
+      /** What breaking moves together: the charge states of an isospin channel. */
       readonly group: string;
     }
   | {
@@ -40,6 +40,8 @@ export interface Completed {
   readonly estimates: readonly CompletedRow[];
   readonly remainder?: { readonly fraction: Estimate; readonly widthMeV: Estimate };
   readonly values: readonly TableValue[];
+  /** Covariance of the fractions before they were moved to add up to 1; absent where they stand as they were. */
+  readonly movedBy?: readonly (readonly number[])[];
 }
 
 /** How a parent is completed. */
@@ -90,9 +92,23 @@ export function completeParent(
   const total = isSum ? space.summedTotal(entries, fractionTotal, totalMeV) : space.givenTotal();
   const gradients = entries.map((entry, k) => space.fraction(entry, fractions[k]!, totalMeV, total));
   const breaking = entries.map((entry) => (entry.kind === "predicted" ? entry.breakingMeV / totalMeV : 0));
-  const plain = entries.map((_, k) =>
-    space.estimates(fractions[k]!, gradients[k]!, breaking[k]!, totalMeV, total),
-  );
+  const broken = (weights: readonly number[]) => brokenError(entries, breaking, weights);
+  // Breaking moves a total that is the sum of the rows, by 1/(1 - sum of measured fractions) for each predicted width.
+  const share = isSum ? 1 / (1 - fractionTotal) : 0;
+  const plain = entries.map((entry, k) => {
+    const ofTotal = (part: number) => entries.map((_, j) => (j === k ? 1 : 0) - part * share);
+    const withTotal = entry.kind === "measured fraction" ? 0 : fractions[k]!;
+    return space.estimates(
+      fractions[k]!,
+      gradients[k]!,
+      {
+        fraction: broken(ofTotal(withTotal)),
+        widthMeV: totalMeV * broken(ofTotal(withTotal - fractions[k]!)),
+      },
+      totalMeV,
+      total,
+    );
+  });
   const totalErrorMeV = isSum ? space.sigma(total) : (parent.total.plusMeV + parent.total.minusMeV) / 2;
   const base = { totalMeV, totalErrorMeV, values };
   if (isConflict)
@@ -103,12 +119,31 @@ export function completeParent(
     entries.map(() => -1),
     gradients,
   );
-  const unknown = Math.hypot(...breaking);
+  const unknown = broken(entries.map(() => -1));
   return {
     ...base,
     estimates: plain,
-    remainder: space.estimates(left, remainder, unknown, totalMeV, total),
+    remainder: space.estimates(left, remainder, brokenAt(unknown, totalMeV), totalMeV, total),
   };
+}
+
+/** Error from breaking of a combination of entries: those of one isospin channel move together, others by themselves. */
+function brokenError(
+  entries: readonly Entry[],
+  breaking: readonly number[],
+  weights: readonly number[],
+): number {
+  const sums = new Map<string, number>();
+  for (const [k, entry] of entries.entries()) {
+    const group = groupOf(entry);
+    sums.set(group, (sums.get(group) ?? 0) + weights[k]! * breaking[k]!);
+  }
+  return Math.hypot(...sums.values());
+}
+
+/** The error from breaking of a fraction and of its width, where the total width does not move. */
+function brokenAt(fraction: number, totalMeV: number): { fraction: number; widthMeV: number } {
+  return { fraction, widthMeV: fraction * totalMeV };
 }
 
 function sumOf(values: readonly number[]): number {
@@ -143,11 +178,12 @@ function adjusted(conflict: Conflict): Completed | { conflict: string } {
     const row = projection[k]!;
     const variance = sumOf(row.map((a, i) => sumOf(row.map((b, j) => a * b * broken[i]![j]!))));
     const gradient = space.combination(row, gradients);
-    const now = space.estimates(moved[k]!, gradient, Math.sqrt(Math.max(0, variance)), base.totalMeV, total);
+    const unknown = brokenAt(Math.sqrt(Math.max(0, variance)), base.totalMeV);
+    const now = space.estimates(moved[k]!, gradient, unknown, base.totalMeV, total);
     const hasMoved = Math.abs(moved[k]! - fractions[k]!) > ROUNDING * fractions[k]!;
     return hasMoved ? { ...now, unadjusted: plain[k]! } : plain[k]!;
   });
-  return { ...base, estimates };
+  return { ...base, estimates, movedBy: covariance };
 }
 
 /** What moves together, and is named together: the rows of one measurement, or of one predicted isospin channel. */

@@ -44,6 +44,9 @@ export function leavesOf(message: JsonObject, skip: readonly string[] = []): Lea
   return leaves;
 }
 
+/** Lists of random draws: the numbers and errors they were drawn from are compared, and they are not. */
+const SAMPLES: readonly string[] = ["replicaRatios"];
+
 function collect(value: Json, path: string, leaves: Map<string, Leaf>): void {
   if (Array.isArray(value)) collectList(value, path, leaves);
   else if (isObject(value)) collectObject(value, path, leaves);
@@ -73,7 +76,7 @@ function collectObject(object: JsonObject, path: string, leaves: Map<string, Lea
   const taken = hasValue ? ["value", "plus", "minus", "breaking", "error"] : [];
   if (hasValue) leaves.set(path, estimateLeaf(object));
   for (const [name, inner] of Object.entries(object)) {
-    if (taken.includes(name)) continue;
+    if (taken.includes(name) || SAMPLES.includes(name)) continue;
     const own = path === "" ? name : `${path}.${name}`;
     const error = object[`${name}Error`];
     const isError = name.endsWith("Error") && name.slice(0, -"Error".length) in object;

@@ -16,6 +16,7 @@ import type { Hadron } from "../hadrons/hadron.js";
 import { hadronOfState } from "../hadrons/multiplet.js";
 import { parseChannel } from "../model/channel-names.js";
 import type { Model } from "../model/model.js";
+import { studyWarnings } from "../model/validity.js";
 import { CONVENTION } from "../su3/isoscalar-factors.js";
 import { estimateMessage, fitMessage, headerMessage, optionMessages } from "./encode-decays.js";
 import { exactMessage } from "./exact-message.js";
@@ -43,7 +44,7 @@ export function couplingsMessage(table: CouplingTable): v1.CouplingTables.$Prope
   const { model } = fit;
   return {
     kind: "couplet.v1.CouplingTables",
-    header: { ...headerMessage(model), schemaMinor: COUPLINGS_SCHEMA_MINOR },
+    header: { ...headerMessage(model, studyWarnings(fit, minimum)), schemaMinor: COUPLINGS_SCHEMA_MINOR },
     fit: fitMessage(fit, minimum),
     matrixConvention: matrixConventionMessage(),
     reduced: table.reduced.map((value) => reducedMessage(value, model)),

@@ -6,6 +6,7 @@ import type {
   MassShape,
   Origin,
   ParentTable,
+  Replica,
   Row,
   RowWave,
   Tables,
@@ -14,12 +15,14 @@ import { couplet } from "../gen/couplet.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
 import type { Model, WidthModelChoice } from "../model/model.js";
+import { studyWarnings } from "../model/validity.js";
+import type { StudyTableOptions } from "../study/study.js";
 import { CONVENTION, MULTIPLICITY_RULE } from "../su3/isoscalar-factors.js";
 import { producerName } from "../version.js";
 import type { MassGrid } from "../widths/mass-grid.js";
-import { widthModelDefinitions } from "../widths/width-model.js";
+import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
 import { CAUTIONS } from "./cautions.js";
-import { sealBytes } from "./sealed-bytes.js";
+import { sealedPieces } from "./sealed-bytes.js";
 
 import v1 = couplet.v1;
 
@@ -30,7 +33,22 @@ export const DECAYS_SCHEMA_MINOR = 0;
  * Decay tables as the bytes of a sealed `couplet.v1.DecayTables` file. The same tables give the same bytes.
  */
 export function encodeDecays(tables: Tables): Uint8Array {
-  return sealBytes(v1.DecayTables.encode(decaysMessage(tables)).finish());
+  return Buffer.concat([...sealedPieces(decayPieces(tables))]);
+}
+
+/** Decay tables whose parents may come one by one, so that a large file never is in memory whole. */
+export type StreamedTables = Omit<Tables, "parents"> & { readonly parents: Iterable<ParentTable> };
+
+/**
+ * The bytes of decay tables without their seal, piece by piece, one parent a piece: `sealedPieces` and
+ * `writeWholePieces` make a file of them. Together they are the bytes of one message.
+ */
+export function* decayPieces(tables: StreamedTables): Generator<Uint8Array> {
+  const { parents, externals, leftOpen, replicas, ...head } = decaysMessage({ ...tables, parents: [] });
+  yield v1.DecayTables.encode(head).finish();
+  for (const parent of tables.parents)
+    yield v1.DecayTables.encode({ parents: [parentMessage(parent)] }).finish();
+  yield v1.DecayTables.encode({ externals, leftOpen, replicas } as v1.DecayTables.$Properties).finish();
 }
 
 /** Decay tables as a message, without the digest. */
@@ -38,16 +56,24 @@ export function decaysMessage(tables: Tables): v1.DecayTables.$Properties {
   const { model } = tables.fit;
   return {
     kind: "couplet.v1.DecayTables",
-    header: headerMessage(model),
+    header: headerMessage(model, studyWarnings(tables.fit, tables.minimum)),
     fit: fitMessage(tables.fit, tables.minimum),
     parents: tables.parents.map(parentMessage),
     externals: tables.externals.map(({ hadron, lineShape }) => hadronMessage(hadron, lineShape)),
+    replicas: tables.replicas.map((replica) => replicaMessage(replica, model.study.tables.seed)),
     leftOpen: tables.externals.flatMap(({ hadron, life }) => (life === "decays" ? [hadron.name] : [])),
   };
 }
 
-/** The header that all tables of a study share; `schemaMinor` is that of decay tables. */
-export function headerMessage({ study, notes, editions }: Model): v1.Header.$Properties {
+/**
+ * The header that all tables of a study share; `schemaMinor` is that of decay tables.
+ *
+ * @param warnings - limits of validity that the study touches; they join its notes
+ */
+export function headerMessage(
+  { study, notes, editions }: Model,
+  warnings: readonly string[],
+): v1.Header.$Properties {
   return {
     schemaMinor: DECAYS_SCHEMA_MINOR,
     producer: producerName(),
@@ -58,10 +84,19 @@ export function headerMessage({ study, notes, editions }: Model): v1.Header.$Pro
     unit: "MeV",
     editions: [...editions],
     cautions: [...CAUTIONS],
-    notes: [...notes],
+    notes: [...notes, ...warnings],
     breaking: study.breaking,
-    policies: { ...study.tables },
+    policies: policiesMessage(study.tables),
   };
+}
+
+function policiesMessage({
+  conflicts,
+  neutralKaons,
+  antiparticles,
+  daughters,
+}: StudyTableOptions): v1.Policies.$Properties {
+  return { conflicts, neutralKaons, antiparticles, daughters };
 }
 
 /** The fit behind a table: every minimum near the best one, and which of them the table is from. */
@@ -217,6 +252,30 @@ function rowMessage(row: Row): v1.Row.$Properties {
       re: [...re],
       im: [...im],
     })),
+    replicaRatios: [...(row.replicaRatios ?? [])],
+  };
+}
+
+const PARTS: Readonly<Record<Replica["part"], v1.ReplicaPart>> = {
+  data: v1.ReplicaPart.REPLICA_PART_DATA,
+  breaking: v1.ReplicaPart.REPLICA_PART_BREAKING,
+  branch: v1.ReplicaPart.REPLICA_PART_BRANCH,
+  model: v1.ReplicaPart.REPLICA_PART_MODEL,
+};
+
+function replicaMessage(
+  { part, minimum, chi2, model, draw, unreachableRows }: Replica,
+  seed: number,
+): v1.Replica.$Properties {
+  return {
+    part: PARTS[part],
+    minimum,
+    chi2,
+    ...(model === undefined
+      ? {}
+      : { model: model.id, options: optionMessages(widthModel(model.id, model.options)) }),
+    ...(draw === undefined ? {} : { seed, draw }),
+    unreachableRows,
   };
 }
 
@@ -225,8 +284,8 @@ function comparisonMessage({ fitted, pull, ...measured }: Comparison): v1.Compar
 }
 
 /** A value with its errors as a message. */
-export function estimateMessage({ value, plus, minus, breaking }: Estimate): v1.Estimate.$Properties {
-  return { value, plus, minus, breaking };
+export function estimateMessage({ branch, model, ...always }: Estimate): v1.Estimate.$Properties {
+  return { ...always, branch: branch ?? null, model: model ?? null };
 }
 
 function waveMessage({ L, twoS, model, ...numbers }: RowWave): v1.Wave.$Properties {

@@ -119,15 +119,28 @@ def damage_checks(path):
     def expected(at):
         return couplet_decays.NotOurs if at < head else couplet_decays.Damaged
 
-    changed = bytearray(data)
-    wrong = 0
-    for at in range(len(data)):
-        changed[at] ^= 1 << (at % 8)
-        wrong += refusal(changed)[0] is not expected(at)
-        changed[at] = data[at]
-    yield wrong == 0, f"a change of any of the {len(data)} bytes is refused"
-    wrong = sum(refusal(data[:length])[0] is not expected(length) for length in range(len(data)))
-    yield wrong == 0, "every truncation is refused"
+    def wrong_changes(whole, changes_at):
+        changed = bytearray(whole)
+        wrong = 0
+        for at, byte in enumerate(whole):
+            for change in changes_at(at):
+                changed[at] = byte ^ change
+                wrong += refusal(changed)[0] is not expected(at)
+            changed[at] = byte
+        return wrong
+
+    def wrong_truncations(whole):
+        return sum(refusal(whole[:length])[0] is not expected(length) for length in range(len(whole)))
+
+    tiny = tiny_table(data)
+    accepted = refusal(tiny)[0] is None
+    wrong = wrong_changes(tiny, lambda at: range(1, 256))
+    yield accepted and wrong == 0, f"every change of one byte of a table of {len(tiny)} bytes is refused"
+    wrong = wrong_truncations(tiny) + (refusal(tiny + b"\0")[0] is not couplet_decays.Damaged)
+    yield wrong == 0, "every truncation of it, and a byte more, is refused"
+    wrong = wrong_changes(data, lambda at: [1 << (at % 8)])
+    yield wrong == 0, f"a change of any of the {len(data)} bytes of the given table is refused"
+    yield wrong_truncations(data) == 0, "every truncation of it is refused"
 
     foreign = "f.pb: expected decay tables written by Couplet, got something else (5 bytes). "
     foreign += "Give a .decays.pb file that `couplet tables` wrote."
@@ -139,11 +152,30 @@ def damage_checks(path):
         yield ok, what
 
 
+def sealed(body):
+    """The body with the digest of its bytes as the last field."""
+    return body + couplet_decays.SEAL_HEAD + hashlib.sha256(body).digest()
+
+
+def tiny_table(data):
+    """One row of a table, so small that every byte of it can take every value."""
+    whole = couplet_decays.decays_pb2.DecayTables.FromString(data)
+    tiny = couplet_decays.decays_pb2.DecayTables(kind=whole.kind)
+    tiny.header.schema_minor = whole.header.schema_minor
+    tiny.header.convention = whole.header.convention
+    parent = tiny.parents.add(total_width=whole.parents[0].total_width)
+    parent.hadron.name = whole.parents[0].hadron.name
+    parent.hadron.mass = whole.parents[0].hadron.mass
+    row = parent.rows.add()
+    row.CopyFrom(whole.parents[0].rows[0])
+    row.parts_per_billion = couplet_decays.WHOLE
+    for field in ("grid", "measurement", "sources"):
+        row.ClearField(field)
+    return sealed(tiny.SerializeToString())
+
+
 def content_checks(data, refusal):
     """Tables with a right digest and a wrong content."""
-
-    def sealed(body):
-        return body + couplet_decays.SEAL_HEAD + hashlib.sha256(body).digest()
 
     def remade(change):
         tables = couplet_decays.decays_pb2.DecayTables.FromString(data)

@@ -55,6 +55,22 @@ describe("comparison of decay tables", () => {
     expect([items, changed, counted]).toEqual([[], 0, 0]);
   });
 
+  test("replicas are not compared: the numbers and errors that they are drawn from are", () => {
+    const withReplicas = (seed: number, ratio: number) => (tables: v1.DecayTables.$Properties) => {
+      tables.replicas = [{ part: v1.ReplicaPart.REPLICA_PART_DATA, seed, draw: 0 }];
+      for (const parent of tables.parents!) for (const row of parent.rows!) row.replicaRatios = [ratio];
+    };
+    const [a, b] = [structuredClone(ORIGINAL), structuredClone(ORIGINAL)];
+    withReplicas(7, 1.5)(a);
+    withReplicas(8, 0.25)(b);
+    const { items, changed, counted } = compareTables(
+      { bytes: sealed(a), file: "a.pb" },
+      { bytes: sealed(b), file: "b.pb" },
+      { percent: 1, sigma: 1 },
+    );
+    expect([items, changed, counted]).toEqual([[], 0, 0]);
+  });
+
   test("a changed number is told in percent and in the errors that face each other", () => {
     const { fraction } = rowOf(ORIGINAL, ID);
     const step = fraction!.value! / 10;

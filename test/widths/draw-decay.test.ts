@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import { InputError } from "../../src/errors.js";
-import { drawChannel, drawDaughterMasses } from "../../src/widths/draw-decay.js";
-import { drawGrid, drawMass } from "../../src/widths/draw-mass.js";
+import { drawChannel, drawDaughterMasses, drawMassesJointly } from "../../src/widths/draw-decay.js";
+import { cumulativeAt, drawGrid, drawMass } from "../../src/widths/draw-mass.js";
 import { foldedFactor, lowestMassMeV, type TwoBodyChannel } from "../../src/widths/folded-width.js";
 import { integrateOverLineShape, type LineShape } from "../../src/widths/line-shape.js";
 import { parentLineShape } from "../../src/widths/parent-line-shape.js";
@@ -133,6 +133,21 @@ describe("drawing the masses of unstable daughters", () => {
         }
       }
     }
+  });
+
+  test("where next to nothing passes the bound, the masses nearest to it follow the density too", () => {
+    const grid = drawGrid(Delta);
+    const uniform = uniformNumbers();
+    const light = (w: number) => (w < Delta.massMeV ? 1 : 0);
+    const K = ([w]: readonly number[]) => (w === grid.originMeV ? 1e30 : light(w!));
+    const sample = Array.from(
+      { length: 40 },
+      () => drawMassesJointly([grid, PION_MEV], K, 3000, uniform)[0]!,
+    );
+    const half = cumulativeAt(grid, Delta.massMeV);
+    const right = (w: number) => Math.min(1, cumulativeAt(grid, w) / half);
+    expect(kolmogorovSmirnov(sample, right)).toBeLessThan(ONE_IN_A_MILLION);
+    expect(kolmogorovSmirnov(sample, (w) => cumulativeAt(grid, w))).toBeGreaterThan(ONE_IN_A_MILLION);
   });
 
   test("two stable daughters keep their masses and take no random number", () => {

@@ -91,7 +91,7 @@ inline Daughter daughter(const v1::Daughter& m) { return {m.name(), maybe(m.has_
 
 inline Estimate estimate(const v1::Estimate& m) {
   return {number(m.has_value(), m.value()), number(m.has_plus(), m.plus()), number(m.has_minus(), m.minus()),
-          number(m.has_breaking(), m.breaking())};
+          number(m.has_breaking(), m.breaking()), maybe(m.has_branch(), m.branch()), maybe(m.has_model(), m.model())};
 }
 
 inline Option option(const v1::Option& m) { return {m.name(), number(m.has_value(), m.value()), m.unit()}; }
@@ -143,6 +143,20 @@ inline Row row(const v1::Row& m) {
   if (m.has_unadjusted_fraction()) r.unadjusted_fraction = estimate(m.unadjusted_fraction());
   if (m.has_unadjusted_width()) r.unadjusted_width = estimate(m.unadjusted_width());
   r.kaon_flavours = list<FlavourAmplitude>(m.kaon_flavours(), flavour_amplitude);
+  r.replica_ratios = list<float>(m.replica_ratios());
+  return r;
+}
+
+inline Replica replica(const v1::Replica& m) {
+  Replica r;
+  r.part = static_cast<ReplicaPart>(m.part());
+  r.minimum = maybe(m.has_minimum(), m.minimum());
+  r.chi2 = number(m.has_chi2(), m.chi2());
+  r.model = m.model();
+  r.options = list<Option>(m.options(), option);
+  r.seed = maybe(m.has_seed(), m.seed());
+  r.draw = maybe(m.has_draw(), m.draw());
+  r.unreachable_rows = maybe(m.has_unreachable_rows(), m.unreachable_rows());
   return r;
 }
 
@@ -175,6 +189,7 @@ inline Tables tables_from_bytes(std::string_view bytes, const std::string& name)
   tables.parents = detail::list<Parent>(message.parents(), detail::parent);
   tables.externals = detail::list<Hadron>(message.externals(), detail::hadron);
   tables.left_open = detail::list<std::string>(message.left_open());
+  tables.replicas = detail::list<Replica>(message.replicas(), detail::replica);
   couplet::detail::check_content(tables, name);
   return tables;
 }

@@ -276,6 +276,8 @@ inline void read(Estimate& e, Wire wire) {
       case 2: wire.get(e.plus); break;
       case 3: wire.get(e.minus); break;
       case 4: wire.get(e.breaking); break;
+      case 5: wire.get(e.branch); break;
+      case 6: wire.get(e.model); break;
       default: wire.skip();
     }
   }
@@ -358,6 +360,7 @@ inline void read(Row& r, Wire wire) {
       case 20: wire.get(r.unadjusted_fraction); break;
       case 21: wire.get(r.unadjusted_width); break;
       case 22: wire.get(r.kaon_flavours); break;
+      case 23: wire.get(r.replica_ratios); break;
       default: wire.skip();
     }
   }
@@ -378,6 +381,22 @@ inline void read(Parent& p, Wire wire) {
   }
 }
 
+inline void read(Replica& r, Wire wire) {
+  while (wire.next()) {
+    switch (wire.number()) {
+      case 1: wire.get(r.part); break;
+      case 2: wire.get(r.minimum); break;
+      case 3: wire.get(r.chi2); break;
+      case 4: wire.get(r.model); break;
+      case 5: wire.get(r.options); break;
+      case 6: wire.get(r.seed); break;
+      case 7: wire.get(r.draw); break;
+      case 8: wire.get(r.unreachable_rows); break;
+      default: wire.skip();
+    }
+  }
+}
+
 inline void read(Tables& t, Wire wire) {
   while (wire.next()) {
     switch (wire.number()) {
@@ -386,6 +405,7 @@ inline void read(Tables& t, Wire wire) {
       case 4: wire.get(t.parents); break;
       case 5: wire.get(t.externals); break;
       case 6: wire.get(t.left_open); break;
+      case 7: wire.get(t.replicas); break;
       default: wire.skip();
     }
   }

@@ -52,6 +52,7 @@ inline constexpr double MISSING = std::numeric_limits<double>::quiet_NaN();
 enum class Origin { unspecified = 0, measured = 1, predicted = 2, remainder = 3 };
 enum class TotalOrigin { unspecified = 0, measured = 1, sum = 2 };
 enum class Kinematics { unspecified = 0, open = 1, closed = 2, folded = 3 };
+enum class ReplicaPart { unspecified = 0, data = 1, breaking = 2, branch = 3, model = 4 };
 enum class Phase { unspecified = 0, known = 1, assumed = 2 };
 enum class Flag {
   unspecified = 0,
@@ -107,6 +108,8 @@ struct Daughter {
 
 struct Estimate {
   double value = MISSING, plus = MISSING, minus = MISSING, breaking = MISSING;
+  // Absent where they were not computed.
+  std::optional<double> branch, model;
 };
 
 struct Option {
@@ -157,6 +160,8 @@ struct Row {
   std::optional<double> power;
   std::optional<Estimate> unadjusted_fraction, unadjusted_width;
   std::vector<FlavourAmplitude> kaon_flavours;
+  // By replica: its partial width over this row's; empty where all are 1.
+  std::vector<float> replica_ratios;
 };
 
 struct Parent {
@@ -168,6 +173,21 @@ struct Parent {
   std::vector<std::string> warnings;
 };
 
+// One alternative to the numbers of the tables; ReplicaWeights weights decays by it.
+struct Replica {
+  ReplicaPart part = ReplicaPart::unspecified;
+  // Place of its minimum among those of the fit, from 0.
+  std::optional<std::uint32_t> minimum;
+  double chi2 = MISSING;
+  // Empty for the study's own width models.
+  std::string model;
+  std::vector<Option> options;
+  // Of drawn replicas.
+  std::optional<std::uint32_t> seed, draw;
+  // Rows that no weight can bring into a simulation.
+  std::optional<std::uint32_t> unreachable_rows;
+};
+
 struct Tables {
   // Must be KIND; a reader has checked that it is.
   std::string kind;
@@ -176,6 +196,7 @@ struct Tables {
   std::vector<Hadron> externals;
   // Externals whose decays a generator must know itself.
   std::vector<std::string> left_open;
+  std::vector<Replica> replicas;
 };
 
 // The parent of a name; throws NotOurs that says what there is if there is none.
@@ -259,20 +280,49 @@ class Decayer {
   std::vector<std::uint32_t> cumulative_;
 };
 
-// A mass from a line shape, in MeV. Throws Damaged for a shape without points.
+namespace detail {
+
+// Uniform in [0, 1), in steps of 2^-53.
 template <class Generator>
-double draw_mass(const LineShape& shape, Generator& rng) {
+double draw_uniform(Generator& rng) {
+  const std::uint64_t high = draw_below(rng, 1u << 26), low = draw_below(rng, 1u << 27);
+  return static_cast<double>(high << 27 | low) * 0x1p-53;
+}
+
+inline void check_points(const LineShape& shape) {
+  const std::size_t points = shape.distances.size();
+  if (points >= 2 && points == shape.cumulative.size() && shape.power > 0) return;
+  throw Damaged("line shape: expected distances and chances of two points or more, got others");
+}
+
+// The mass up to which a line shape that has been checked has the chance u, in MeV.
+inline double mass_at(const LineShape& shape, double u) {
   const std::vector<float>&x = shape.distances, &chance = shape.cumulative;
-  if (x.size() < 2 || x.size() != chance.size() || !(shape.power > 0)) {
-    throw Damaged("line shape: expected distances and chances of two points or more, got others");
-  }
-  // Uniform in [0, 1), in steps of 2^-53.
-  const std::uint64_t high = detail::draw_below(rng, 1u << 26), low = detail::draw_below(rng, 1u << 27);
-  const double u = static_cast<double>(high << 27 | low) * 0x1p-53;
   if (u < chance[0]) return shape.low + x[0] * std::pow(u / chance[0], 1 / shape.power);
   const auto above = static_cast<std::size_t>(std::upper_bound(chance.begin() + 1, chance.end() - 1, u) - chance.begin());
   const double x0 = x[above - 1], x1 = x[above], f0 = chance[above - 1], f1 = chance[above];
   return shape.low + x0 * std::pow(x1 / x0, std::log(u / f0) / std::log(f1 / f0));
+}
+
+// The inverse: the chance of a mass up to this one; 0 below the shape and 1 above it.
+inline double chance_up_to(const LineShape& shape, double mass) {
+  const std::vector<float>&x = shape.distances, &chance = shape.cumulative;
+  const double distance = mass - shape.low;
+  if (!(distance > 0)) return 0;
+  if (distance >= x.back()) return 1;
+  if (distance < x[0]) return chance[0] * std::pow(distance / x[0], shape.power);
+  const auto above = static_cast<std::size_t>(std::upper_bound(x.begin() + 1, x.end() - 1, distance) - x.begin());
+  const double x0 = x[above - 1], x1 = x[above], f0 = chance[above - 1], f1 = chance[above];
+  return f0 * std::pow(f1 / f0, std::log(distance / x0) / std::log(x1 / x0));
+}
+
+}  // namespace detail
+
+// A mass from a line shape, in MeV. Throws Damaged for a shape without points.
+template <class Generator>
+double draw_mass(const LineShape& shape, Generator& rng) {
+  detail::check_points(shape);
+  return detail::mass_at(shape, detail::draw_uniform(rng));
 }
 
 namespace detail {

@@ -113,14 +113,37 @@ class Decayer:
 
 def draw_mass(shape, rng):
     """A mass in MeV from a parent's line_shape, drawn with a random.Random; a parent without one has its nominal mass."""
-    x, chance = shape.distances, shape.cumulative
-    if not (len(x) >= 2 and len(x) == len(chance) and shape.power > 0):
+    check_points(shape)
+    return mass_at(shape, rng.random())
+
+
+def check_points(shape):
+    """Raises Damaged for a line shape that cannot be drawn from."""
+    if not (len(shape.distances) >= 2 and len(shape.distances) == len(shape.cumulative) and shape.power > 0):
         raise Damaged("line shape: expected distances and chances of two points or more, got others")
-    u = rng.random()
+
+
+def mass_at(shape, u):
+    """The mass in MeV up to which a line shape that has been checked has the chance u."""
+    x, chance = shape.distances, shape.cumulative
     if u < chance[0]:
         return shape.low + x[0] * (u / chance[0]) ** (1 / shape.power)
     k = bisect.bisect_right(chance, u, 1, len(x) - 1) - 1
     return shape.low + x[k] * (x[k + 1] / x[k]) ** (math.log(u / chance[k]) / math.log(chance[k + 1] / chance[k]))
+
+
+def chance_up_to(shape, mass):
+    """The inverse: the chance of a mass up to this one; 0 below the shape and 1 above it."""
+    x, chance = shape.distances, shape.cumulative
+    distance = mass - shape.low
+    if not distance > 0:
+        return 0.0
+    if distance >= x[-1]:
+        return 1.0
+    if distance < x[0]:
+        return chance[0] * (distance / x[0]) ** shape.power
+    k = bisect.bisect_right(x, distance, 1, len(x) - 1) - 1
+    return chance[k] * (chance[k + 1] / chance[k]) ** (math.log(distance / x[k]) / math.log(x[k + 1] / x[k]))
 
 
 def parent_named(tables, name):

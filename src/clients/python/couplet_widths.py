@@ -258,7 +258,7 @@ def _ready_row(hadrons, parent, row, lowest):
     nominal = parent.hadron.mass
     if len(row.daughters) != 2 or not nominal > 0:
         raise Damaged(f"{row.id}: expected two daughters and a parent's mass > 0 of a row with waves, got others")
-    first, second = (_daughter(hadrons, row, daughter) for daughter in row.daughters)
+    first, second = (daughter_hadron(hadrons, row, daughter) for daughter in row.daughters)
     spins = [hadron.two_j if hadron.HasField("two_j") else None for hadron in (parent.hadron, first, second)]
     m1, m2 = first.mass, second.mass
     q0 = breakup_momentum(nominal, m1, m2)
@@ -298,7 +298,8 @@ def _power_of_distance(row, nominal):
     return lambda mass: width * ((mass - threshold) / distance) ** power if mass > threshold else 0.0
 
 
-def _daughter(hadrons, row, daughter):
+def daughter_hadron(hadrons, row, daughter):
+    """The hadron of a row's daughter; Damaged where the table lacks it or its mass."""
     hadron = hadrons.get(daughter.name)
     if hadron is None or not hadron.HasField("mass") or not 0 <= hadron.mass < math.inf:
         raise Damaged(f"{row.id}: expected {daughter.name} among the hadrons of the table with its mass, got none")

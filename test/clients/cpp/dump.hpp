@@ -64,16 +64,16 @@ class Dump {
     all(a, b, c, d, e, f, g, h, i, j, k, l);
   }
   void add(const couplet::Hadron& hadron) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p] = hadron;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q] = hadron;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q);
   }
   void add(const couplet::Daughter& daughter) {
     const auto& [a, b] = daughter;
     all(a, b);
   }
   void add(const couplet::Estimate& estimate) {
-    const auto& [a, b, c, d] = estimate;
-    all(a, b, c, d);
+    const auto& [a, b, c, d, e, f] = estimate;
+    all(a, b, c, d, e, f);
   }
   void add(const couplet::Option& option) {
     const auto& [a, b, c] = option;
@@ -92,16 +92,20 @@ class Dump {
     all(a, b, c, d, e, f);
   }
   void add(const couplet::Row& row) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u] = row;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u, v] = row;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u, v);
   }
   void add(const couplet::Parent& parent) {
     const auto& [a, b, c, d, e, f, g] = parent;
     all(a, b, c, d, e, f, g);
   }
+  void add(const couplet::Replica& replica) {
+    const auto& [a, b, c, d, e, f, g, h] = replica;
+    all(a, b, c, d, e, f, g, h);
+  }
   void add(const couplet::Tables& tables) {
-    const auto& [a, b, c, d, e] = tables;
-    all(a, b, c, d, e);
+    const auto& [a, b, c, d, e, f] = tables;
+    all(a, b, c, d, e, f);
   }
 
  private:

@@ -99,6 +99,8 @@ check "C++ classes of the schema" compile_schema
 check "example without a protobuf library" without_protobuf "$source/example.cpp" -o "$work/example-plain"
 check "example with protobuf" with_protobuf -DCOUPLET_WITH_PROTOBUF "$source/example.cpp" -o "$work/example-with-protobuf"
 check "evaluation for the comparison of languages" without_protobuf "$here/evaluate.cpp" -o "$work/evaluate"
+check "weights of replicas for the comparison of languages" without_protobuf "$here/replica_weights.cpp" -o "$work/replica-weights-plain"
+check "the same with protobuf" with_protobuf -DCOUPLET_WITH_PROTOBUF "$here/replica_weights.cpp" -o "$work/replica-weights-with-protobuf"
 check "tests" with_protobuf -O2 "$here/decays_test.cpp" -o "$work/decays_test"
 [ "$failed" -eq 0 ] || finish
 check "the plain reader needs no protobuf library" needs_no_protobuf
