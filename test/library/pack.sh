@@ -44,7 +44,7 @@ cp "$here/test/library/use.cjs" "$here/test/library/use.mjs" "$here/test/library
 cp "$here/test/library/use-types.ts" .
 node use.cjs
 node use.mjs
-npx --no-install couplet product 3 3 3 | head -n 1 | grep -qx '3 x 3 x 3 = 1 + 2\*8 + 10'
+[ "$(npx --no-install couplet product 3 3 3 | sed -n 1p)" = '3 x 3 x 3 = 1 + 2*8 + 10' ]
 npx --no-install couplet fit short.yaml >/dev/null
 # The types, as strict users of both module systems see them, with no other type package installed than the library's own.
 for module in node16 node20; do
