@@ -4,7 +4,9 @@ export function gcd(a: bigint, b: bigint): bigint {
   let y = b < 0n ? -b : b;
   while (y !== 0n) {
     if (x <= 0x1fffffffffffffn && y <= 0x1fffffffffffffn) return BigInt(gcdOfNumbers(Number(x), Number(y)));
-    [x, y] = [y, x % y];
+    const rest = x % y;
+    x = y;
+    y = rest;
   }
   return x;
 }
@@ -19,7 +21,9 @@ export function gcdOfNumbers(a: number, b: number): number {
   let y = b;
   while (y > 0x7fffffff || x > 0x7fffffff) {
     if (y === 0) return x;
-    [x, y] = [y, x - Math.floor(x / y) * y];
+    const rest = x - Math.floor(x / y) * y;
+    x = y;
+    y = rest;
   }
   return gcdOfSmall(x, y);
 }

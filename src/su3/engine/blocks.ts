@@ -52,7 +52,8 @@ export function productBlocks(leftIrrep: Irrep, rightIrrep: Irrep): ProductBlock
   const firstPlace = new Int32Array(left.count * right.count + 1);
   const key = blockKey(left, right);
   for (let pair = 0; pair < left.count * right.count; pair++) {
-    const [a, b] = [Math.floor(pair / right.count), pair % right.count];
+    const a = Math.floor(pair / right.count);
+    const b = pair % right.count;
     firstPlace[pair + 1] = firstPlace[pair]! + Math.min(left.d[a]!, right.d[b]!);
   }
   const places = new Int32Array(firstPlace[left.count * right.count]!);
@@ -126,8 +127,10 @@ function weightWriter(left: Patterns, right: Patterns, table: PrimeTable): Weigh
   return (lefts, rights, twoI) => {
     const weights = new Int16Array(lefts.length * width);
     for (let c = 0; c < lefts.length; c++) {
-      const [a, b] = [lefts[c]!, rights[c]!];
-      const [twoI1, twoI2] = [left.d[a]! - 1, right.d[b]! - 1];
+      const a = lefts[c]!;
+      const b = rights[c]!;
+      const twoI1 = left.d[a]! - 1;
+      const twoI2 = right.d[b]! - 1;
       const al = (twoI1 + twoI2 - twoI) / 2;
       const be = (twoI1 - twoI2 + twoI) / 2;
       const ga = (twoI2 - twoI1 + twoI) / 2;

@@ -112,7 +112,10 @@ function equationsAt(
 /** T to I + 1/2 gives zero at the target channel (a,b). */
 function raising(product: ProductBlocks, twoI: number, a: number, b: number): Equation {
   const { left, right } = product;
-  const [k1, l1, k2, l2] = [left.k[a]!, left.l[a]!, right.k[b]!, right.l[b]!];
+  const k1 = left.k[a]!;
+  const l1 = left.l[a]!;
+  const k2 = right.k[b]!;
+  const l2 = right.l[b]!;
   const { al, be, ga, si, d1, d2 } = triangle(product, twoI + 1, a, b);
   const at = (a1: number, b1: number) => product.place(a1, b1, twoI);
   return equation([
@@ -126,7 +129,10 @@ function raising(product: ProductBlocks, twoI: number, a: number, b: number): Eq
 /** W to I + 1/2 gives zero at the target channel (a,b). */
 function lowering(product: ProductBlocks, twoI: number, a: number, b: number): Equation {
   const { left, right } = product;
-  const [k1, l1, k2, l2] = [left.k[a]!, left.l[a]!, right.k[b]!, right.l[b]!];
+  const k1 = left.k[a]!;
+  const l1 = left.l[a]!;
+  const k2 = right.k[b]!;
+  const l2 = right.l[b]!;
   const { al, be, ga, si, d1, d2 } = triangle(product, twoI + 1, a, b);
   const at = (a1: number, b1: number) => product.place(a1, b1, twoI);
   return equation([
@@ -138,8 +144,10 @@ function lowering(product: ProductBlocks, twoI: number, a: number, b: number): E
 }
 
 function triangle({ left, right }: ProductBlocks, twoI: number, a: number, b: number) {
-  const [d1, d2] = [left.d[a]!, right.d[b]!];
-  const [twoI1, twoI2] = [d1 - 1, d2 - 1];
+  const d1 = left.d[a]!;
+  const d2 = right.d[b]!;
+  const twoI1 = d1 - 1;
+  const twoI2 = d2 - 1;
   return {
     al: (twoI1 + twoI2 - twoI) / 2,
     be: (twoI1 - twoI2 + twoI) / 2,

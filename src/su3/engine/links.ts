@@ -49,22 +49,24 @@ function makeLink(product: ProductBlocks, source: Block, target: Block, step: St
   const terms = step === "T" ? raisingTerms : loweringTerms;
   let growth = 0;
   for (let c = 0; c < target.size; c++) {
-    const [a, b] = [target.left[c]!, target.right[c]!];
-    const present = terms(product, a, b).map(([a2, b2, coefficient]) => {
+    const a = target.left[c]!;
+    const b = target.right[c]!;
+    let common = product.left.d[a]! * product.right.d[b]!;
+    divisors[c] = common;
+    for (const [i, [a2, b2, coefficient]] of terms(product, a, b).entries()) {
       const place = product.place(a2, b2, source.twoI);
-      return place < 0 ? [source.size, 0] : [place, coefficient];
-    }) as [number, number][];
-    const divisor = product.left.d[a]! * product.right.d[b]!;
-    const common = present.reduce((g, [, coefficient]) => gcdOfNumbers(g, Math.abs(coefficient)), divisor);
-    divisors[c] = divisor / common;
-    for (const [i, [place, coefficient]] of present.entries()) {
-      sources[4 * c + i] = place;
-      coefficients[4 * c + i] = coefficient / common;
+      sources[4 * c + i] = place < 0 ? source.size : place;
+      if (place < 0) continue;
+      coefficients[4 * c + i] = coefficient;
+      common = gcdOfNumbers(common, Math.abs(coefficient));
     }
-    growth = Math.max(
-      growth,
-      present.reduce((sum, [, coefficient]) => sum + Math.abs(coefficient), 0) / common,
-    );
+    divisors[c]! /= common;
+    let sum = 0;
+    for (let i = 4 * c; i < 4 * c + 4; i++) {
+      coefficients[i]! /= common;
+      sum += Math.abs(coefficients[i]!);
+    }
+    growth = Math.max(growth, sum);
   }
   return { target, sources, coefficients, divisors, growth };
 }
@@ -73,8 +75,12 @@ type Term = [left: number, right: number, coefficient: number];
 
 /** d1 d2 y' = d2 [a1(k1-1) y(k1-1) + b1(l1-1) y(l1-1)] + d1 [-a2(k2-1) y(k2-1) + b2(l2-1) y(l2-1)] */
 function raisingTerms({ left, right }: ProductBlocks, a: number, b: number): Term[] {
-  const [k1, l1, k2, l2] = [left.k[a]!, left.l[a]!, right.k[b]!, right.l[b]!];
-  const [d1, d2] = [left.d[a]!, right.d[b]!];
+  const k1 = left.k[a]!;
+  const l1 = left.l[a]!;
+  const k2 = right.k[b]!;
+  const l2 = right.l[b]!;
+  const d1 = left.d[a]!;
+  const d2 = right.d[b]!;
   return [
     [patternNumber(left, k1 - 1, l1), b, d2 * raiseK(left.irrep, k1 - 1)],
     [patternNumber(left, k1, l1 - 1), b, d2 * raiseL(left.irrep, l1 - 1)],
@@ -85,8 +91,12 @@ function raisingTerms({ left, right }: ProductBlocks, a: number, b: number): Ter
 
 /** d1 d2 y' = d2 [y(k1+1) - y(l1+1)] + d1 [y(k2+1) + y(l2+1)] */
 function loweringTerms({ left, right }: ProductBlocks, a: number, b: number): Term[] {
-  const [k1, l1, k2, l2] = [left.k[a]!, left.l[a]!, right.k[b]!, right.l[b]!];
-  const [d1, d2] = [left.d[a]!, right.d[b]!];
+  const k1 = left.k[a]!;
+  const l1 = left.l[a]!;
+  const k2 = right.k[b]!;
+  const l2 = right.l[b]!;
+  const d1 = left.d[a]!;
+  const d2 = right.d[b]!;
   return [
     [patternNumber(left, k1 + 1, l1), b, d2],
     [patternNumber(left, k1, l1 + 1), b, -d2],
