@@ -118,7 +118,9 @@ export type {
   Wave as DecayWave,
   WidthModelChoice,
 } from "./model/model.js";
+export type { ValidityWarning } from "./model/parent-validity.js";
 export { resolveStudy } from "./model/resolve-study.js";
+export { studyWarnings, validityWarnings } from "./model/validity.js";
 export { studyJsonSchema } from "./study/json-schema.js";
 export { listProblems } from "./study/list-problems.js";
 export { draftStudy, readStudy, type StudyDraft } from "./study/read-study.js";
@@ -173,16 +175,33 @@ export { conjugateState, type State, sameState, states, threeCharge } from "./su
 // Tables as sealed Protocol Buffers files, and what must go with them.
 export { canonicalJson } from "./tables/canonical-json.js";
 export { CAUTIONS } from "./tables/cautions.js";
+export {
+  type Change,
+  type Comparison as TableComparison,
+  compareTables,
+  DEFAULT_THRESHOLDS,
+  type ItemChange,
+  type Thresholds,
+} from "./tables/compare.js";
+export type { ItemKind } from "./tables/compare-items.js";
+export type { Leaf } from "./tables/compare-leaves.js";
 export { decodeCouplings } from "./tables/decode-couplings.js";
 export { decodeDecays } from "./tables/decode-decays.js";
 export { decodeFactors } from "./tables/decode-factors.js";
 export { type CascadeDrawer, type CascadeParticle, cascadeDrawer } from "./tables/draw-cascade.js";
 export { encodeCouplings } from "./tables/encode-couplings.js";
-export { encodeDecays } from "./tables/encode-decays.js";
+export { decayPieces, encodeDecays, type StreamedTables } from "./tables/encode-decays.js";
 export { encodeFactors } from "./tables/encode-factors.js";
 export { type HadronsByName, tableHadrons } from "./tables/evaluate-rows.js";
+export { type AccordOptions, exportAccord } from "./tables/export-accord.js";
+export { exportCouplingsLatex } from "./tables/export-couplings-latex.js";
+export { exportCouplingsCsv, exportDecaysCsv } from "./tables/export-csv.js";
+export { exportDecaysLatex } from "./tables/export-latex.js";
+export type { OwnNumbers } from "./tables/export-numbers.js";
 export { chainWeights, type ReplicaWeights, replicaWeights } from "./tables/replica-weights.js";
-export { checkSeal, digestOf, type TableKind } from "./tables/sealed-bytes.js";
+export { checkSeal, digestOf, sealedPieces, type TableKind } from "./tables/sealed-bytes.js";
+export { type DecayFile, openDecays } from "./tables/stream-decays.js";
+export { type WholeFile, writeAllWhole, writeWhole, writeWholePieces } from "./tables/whole-file.js";
 export { packageVersion } from "./version.js";
 // Width models and two-body kinematics, in MeV.
 export { allowedWaves, type Wave as AllowedWave } from "./widths/allowed-waves.js";

@@ -62,18 +62,21 @@ export function describeComparison(
   const come = items
     .filter(({ status }) => status !== "changed")
     .map((item) => `  ${item.status} ${item.kind}: ${item.name}\n`);
-  const values = items.map(itemText).filter((text) => text !== "");
+  const exact = kind === "couplet.v1.FactorTable";
+  const values = exact
+    ? firstOf(items.flatMap(coefficientText), COEFFICIENTS)
+    : items.map(itemText).filter((text) => text !== "");
   const section = (title: string, lines: readonly string[]) =>
     lines.length === 0 ? "" : `\n${title}\n${lines.join("")}`;
   const sum =
     changed === 0
       ? "No value differs."
-      : `${changed} values differ, ${counted} of them count: new, gone, or beyond ${limits.join(" or ")}.`;
+      : `${changed} values differ, ${counted} of them count${exact ? "" : `: new, gone, or beyond ${limits.join(" or ")}`}.`;
   return [
     `from ${first}\nto   ${second}\n${kind}\n`,
     section("Conventions, models, editions", made),
     section("New and vanished", come),
-    section("Changed beyond the thresholds", values),
+    section(exact ? "Changed coefficients" : "Changed beyond the thresholds", values),
     `\n${sum}\n`,
   ].join("");
 }
@@ -101,8 +104,21 @@ function madeLines(items: readonly ItemChange[]): string[] {
   return [...counts].map(([line, count]) => `${line}${count === 1 ? "" : ` (${count} times)`}\n`);
 }
 
-/** Most lines of a study that are shown; `--json` has them all. */
+/** Most lines of a study, and coefficients, that are shown; `--json` has them all. */
 const STUDY_LINES = 12;
+const COEFFICIENTS = 100;
+
+function firstOf(lines: readonly string[], most: number): string[] {
+  const more = lines.length > most ? [`  and ${lines.length - most} more; --json has them all\n`] : [];
+  return [...lines.slice(0, most), ...more];
+}
+
+/** `  factor <...>: sqrt(1/20) -> -sqrt(1/20)`. */
+function coefficientText(item: ItemChange): string[] {
+  return item.changes
+    .filter((change) => !isReading(item, change))
+    .map(({ from, to }) => `  ${item.kind} ${item.name}: ${leafText(from)} -> ${leafText(to)}\n`);
+}
 
 function studyDifference({ vanished, added }: Comparison["studyLines"]): string[] {
   const lines = [...vanished.map((line) => `    - ${line}\n`), ...added.map((line) => `    + ${line}\n`)];

@@ -3,7 +3,7 @@ import { minimaToTabulate } from "../completion/mirrors.js";
 import { couplingTable } from "../completion/tabulate-couplings.js";
 import { canonicalJson } from "../tables/canonical-json.js";
 import { couplingsMessage, encodeCouplings } from "../tables/encode-couplings.js";
-import { writeWhole } from "../tables/whole-file.js";
+import { writeAllWhole } from "../tables/whole-file.js";
 import { describeCouplings } from "./describe-couplings.js";
 import { fitStudyFile } from "./run-study.js";
 
@@ -11,19 +11,23 @@ import { fitStudyFile } from "./run-study.js";
 export function runCouplings(path: string, options: { json?: true; out?: string }): void {
   const fit = fitStudyFile(path);
   const tables = minimaToTabulate(fit).map((minimum) => couplingTable(fit, minimum));
-  if (options.out !== undefined) {
-    for (const table of tables) {
-      const file = tables.length === 1 ? options.out : minimumFile(options.out, table.minimum);
-      const bytes = encodeCouplings(table);
-      writeWhole(file, bytes);
-      if (!options.json) process.stdout.write(`wrote ${file} (${bytes.length} bytes)\n`);
+  const { out } = options;
+  if (out !== undefined) {
+    const files = tables.map((table) => ({
+      path: tables.length === 1 ? out : minimumFile(out, table.minimum),
+      bytes: encodeCouplings(table),
+    }));
+    writeAllWhole(files);
+    if (!options.json) {
+      for (const { path: file, bytes } of files)
+        process.stdout.write(`wrote ${file} (${bytes.length} bytes)\n`);
     }
   }
   const messages = tables.map((table) => couplingsMessage(table));
   if (options.json) {
     const shown = messages.map((message) => canonicalJson("couplet.v1.CouplingTables", message));
     process.stdout.write(`${JSON.stringify(shown.length === 1 ? shown[0] : shown, null, 2)}\n`);
-  } else if (options.out === undefined) {
+  } else if (out === undefined) {
     process.stdout.write(messages.map((message) => describeCouplings(message, path)).join("\n"));
   }
 }

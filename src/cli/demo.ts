@@ -8,7 +8,7 @@ import { DEMO_STUDY } from "./demo-study.js";
 import { describePulls } from "./fit.js";
 import { readInput } from "./read-input.js";
 import { fitStudyFile } from "./run-study.js";
-import { describeParent } from "./show.js";
+import { describeParent, ERROR_WORDS } from "./show.js";
 import { writeTables } from "./tables.js";
 
 /** Charge state whose table the demo prints. */
@@ -33,6 +33,7 @@ export function runDemo({ out }: { out: string }): void {
         .filter(({ chi2 }) => chi2 - best.chi2 < LISTED_DELTA_CHI2)
         .map((minimum) => otherMinimum(best, minimum)),
       describeParent(shown),
+      `  ${ERROR_WORDS}\n`,
       `\nWritten:\n  ${study}  the study, to be edited\n  ${file}  ${parents} decay tables, ${rows} rows, ${bytes} bytes of Protocol Buffers\n  ${couplings.file}  the couplings of ${couplings.vertices} vertices\n`,
       ...CAUTIONS.map((caution) => `Caution: ${caution}\n`),
       `\nTry next:\n  couplet show ${file}\n  couplet fit ${study}\n  couplet couplings ${study}\n  edit the study, then: couplet tables ${study} -o ${out}\n  couplet factors 10 8 --into 8\n`,

@@ -1,6 +1,6 @@
-import { equalRoots, formatRoot, ONE_ROOT } from "../exact/signed-root.js";
+import { formatRoot } from "../exact/signed-root.js";
 import { couplet } from "../gen/couplet.js";
-import { rootOfExact } from "../tables/exact-message.js";
+import { dAndFSum, dAndFText, formText, type SumStyle, sumText } from "../tables/coupling-sums.js";
 import { significant, withError } from "../tables/rounding.js";
 import { fractionText } from "./labels.js";
 import { textTable } from "./text-table.js";
@@ -8,6 +8,13 @@ import { textTable } from "./text-table.js";
 import v1 = couplet.v1;
 
 type Maybe<T> = T | null | undefined;
+
+/** Sums as a terminal shows them. */
+const PLAIN: SumStyle = {
+  factor: (size) => `${formatRoot(size)} `,
+  name: (name) => name,
+  weight: (size) => `${significant(size, 4)} `,
+};
 
 /**
  * A coupling table in words: reduced couplings, isospin channels, charge states, isospin Lagrangian.
@@ -51,7 +58,10 @@ function matrixText({ symbol, entries }: v1.Matrix.$Properties): string {
   const cells = [1, 2, 3].map((row) =>
     [1, 2, 3].map((column) => {
       const entry = (entries ?? []).find((e) => e.row === row && e.column === column);
-      return sumText((entry?.parts ?? []).map(({ times, hadron }) => [times, hadron ?? ""]));
+      return sumText(
+        (entry?.parts ?? []).map(({ times, hadron }) => [times, hadron ?? ""]),
+        PLAIN,
+      );
     }),
   );
   return textTable(
@@ -75,8 +85,8 @@ function describeIsospin(rows: readonly v1.Coupling.$Properties[]): string {
   const cells = rows.map((row) => [
     row.id ?? "",
     waveText(row.twoL, row.twoS),
-    formText(row, "coefficient"),
-    dAndFText(row, "dAndF"),
+    formText(row, "coefficient", PLAIN),
+    dAndFText(row, "dAndF", PLAIN),
     estimateText(row.value, row.unit),
     row.isospinConstant == null ? "" : `~ g(${row.isospinConstant})`,
   ]);
@@ -89,9 +99,9 @@ function describeCharged(rows: readonly v1.Coupling.$Properties[]): string {
   const cells = rows.map((row) => [
     row.id ?? "",
     waveText(row.twoL, row.twoS),
-    formText(row, "coefficient"),
+    formText(row, "coefficient", PLAIN),
     estimateText(row.value, row.unit),
-    dAndFText(row, "matrixDAndF") || formText(row, "matrixCoefficient"),
+    dAndFText(row, "matrixDAndF", PLAIN) || formText(row, "matrixCoefficient", PLAIN),
     row.matrixValue == null ? "not defined" : estimateText(row.matrixValue, row.unit),
   ]);
   return `\nBy charge state\n${textTable(withoutEmptyColumns(head, cells), { indent: 2 })}`;
@@ -107,58 +117,11 @@ function describeLagrangian(lagrangian: v1.IsospinLagrangian.$Properties): strin
   const { convention, multiplets, from, to, constants, unit, twoL, twoS } = lagrangian;
   const rows = (constants ?? []).map(({ name, vertex, dAndF, value }) => [
     `g(${name})`,
-    sumText([
-      [dAndF?.d, "D"],
-      [dAndF?.f, "F"],
-    ]),
+    dAndFSum(dAndF, PLAIN),
     estimateText(value, unit),
     vertex ?? "",
   ]);
   return `\nIsospin Lagrangian (${convention}) of ${from} -> ${(to ?? []).join(" ")}, ${waveText(twoL, twoS)}\n  ${multiplets}\n${textTable(rows, { indent: 2 })}`;
-}
-
-/** The coupling in reduced couplings: `sqrt(9/20) g(8_1) + 1/2 g(8_2)`; `0` for an exact zero. */
-function formText(row: v1.Coupling.$Properties, field: "coefficient" | "matrixCoefficient"): string {
-  if (field === "matrixCoefficient" && row.matrixValue == null) return "";
-  return weighted(row, ({ terms }) =>
-    sumText((terms ?? []).map((term) => [term[field], term.reduced ?? ""])),
-  );
-}
-
-function dAndFText(row: v1.Coupling.$Properties, field: "dAndF" | "matrixDAndF"): string {
-  if (!(row.components ?? []).every((component) => component[field] != null)) return "";
-  return weighted(row, ({ [field]: form }) =>
-    sumText([
-      [form?.d, "D"],
-      [form?.f, "F"],
-    ]),
-  );
-}
-
-/** The texts of a row's components, each times its mixing weight where that is not 1. */
-function weighted(
-  { components }: v1.Coupling.$Properties,
-  text: (component: v1.CouplingComponent.$Properties) => string,
-): string {
-  const parts = (components ?? []).map((component) => {
-    const weight = component.weight ?? 1;
-    return weight === 1 ? text(component) : `${significant(weight, 4)} (${text(component)})`;
-  });
-  return parts.join(" + ");
-}
-
-/** A sum of exact multiples of names, without those that are zero. */
-function sumText(parts: readonly (readonly [Maybe<v1.Exact.$Properties>, string])[]): string {
-  let text = "";
-  for (const [exact, name] of parts) {
-    const root = rootOfExact(exact);
-    if (root.sign === 0) continue;
-    const size = { ...root, sign: 1 as const };
-    const factor = equalRoots(size, ONE_ROOT) ? "" : `${formatRoot(size)} `;
-    const sign = root.sign < 0 ? (text === "" ? "-" : " - ") : text === "" ? "" : " + ";
-    text += `${sign}${factor}${name}`;
-  }
-  return text === "" ? "0" : text;
 }
 
 function estimateText(estimate: Maybe<v1.Estimate.$Properties>, unit: Maybe<string>): string {

@@ -231,10 +231,16 @@ function fitLines({ fit, header }: v1.DecayTables, row: v1.Row.$Properties): str
     couplings.join(", "),
     ...pulls.map(
       ({ quantity, measured, plus, minus, unit, fitted, pull, source }) =>
-        `datum on this channel: ${quantity} = ${asGiven(measured ?? 0, plus ?? 0, minus ?? 0)}${unitOf(unit)}, fitted ${number(fitted)}, pull ${(pull ?? 0).toFixed(2)} (${source})`,
+        `datum on this channel: ${quantity} = ${datumText(measured ?? 0, plus ?? 0, minus ?? 0)}${unitOf(unit)}, fitted ${number(fitted)}, pull ${(pull ?? 0).toFixed(2)} (${source})`,
     ),
     `breaking of the symmetry for errors: ${number((header?.breaking ?? 0) * 100, 3)} % in amplitude, relative to the coupling strength`,
   ];
+}
+
+/** A datum of the fit without an error is a sign alone. */
+function datumText(measured: number, plus: number, minus: number): string {
+  if (plus === 0 && minus === 0) return measured < 0 ? "-" : "+";
+  return asGiven(measured, plus, minus);
 }
 
 function unitOf(unit: Maybe<string>): string {

@@ -4,8 +4,9 @@ import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
 import { decodeFactors } from "../tables/decode-factors.js";
 import { exportAccord } from "../tables/export-accord.js";
+import { exportCouplingsLatex } from "../tables/export-couplings-latex.js";
 import { exportCouplingsCsv, exportDecaysCsv } from "../tables/export-csv.js";
-import { exportLatex } from "../tables/export-latex.js";
+import { exportDecaysLatex } from "../tables/export-latex.js";
 import { parseOwnNumbers } from "../tables/export-numbers.js";
 import { checkSeal, type TableKind } from "../tables/sealed-bytes.js";
 import { writeWhole } from "../tables/whole-file.js";
@@ -54,7 +55,7 @@ function exported(
   if (kind === "couplet.v1.DecayTables") {
     const tables = decodeDecays(bytes, path);
     if (format === "csv") return exportDecaysCsv(tables);
-    if (format === "latex") return exportLatex(tables);
+    if (format === "latex") return exportDecaysLatex(tables);
     if (format === "json") return jsonText(kind, tables);
     const numbers = parseOwnNumbers(options.number ?? []);
     return exportAccord(tables, path, { numbers, rescale: options.rescale === true });
@@ -62,10 +63,11 @@ function exported(
   if (kind === "couplet.v1.CouplingTables") {
     const tables = decodeCouplings(bytes, path);
     if (format === "csv") return exportCouplingsCsv(tables);
+    if (format === "latex") return exportCouplingsLatex(tables);
     if (format === "json") return jsonText(kind, tables);
   } else if (format === "json") return jsonText(kind, decodeFactors(bytes, path));
   const what =
-    kind === "couplet.v1.CouplingTables" ? "coupling tables go to csv or json" : "factors go to json";
+    kind === "couplet.v1.CouplingTables" ? "coupling tables go to csv, latex or json" : "factors go to json";
   throw new InputError(`${path}: expected decay tables for --to ${format}, got ${kind}; ${what}.`);
 }
 

@@ -1,5 +1,11 @@
-import { scaleFactor } from "../fit/chi-square.js";
-import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
+import { gaussianDeviations, scaleFactor } from "../fit/chi-square.js";
+import {
+  type Fit,
+  type FittedParameter,
+  LISTED_DELTA_CHI2,
+  type Pull,
+  type StudyMinimum,
+} from "../model/fit-model.js";
 import { validityWarnings } from "../model/validity.js";
 import { asGiven, significant, withError } from "../tables/rounding.js";
 import { describeUncertainties } from "./describe-uncertainty.js";
@@ -145,20 +151,41 @@ function describeVerdicts({ verdicts, parameters }: StudyMinimum): string {
   return lines.map((line) => `  WARNING: ${line}\n`).join("");
 }
 
-/** Measurements against the fit, the largest pulls marked. */
-export function describePulls({ pulls }: StudyMinimum): string {
-  const rows = pulls.map(({ observable, fitted, pull }) => {
-    const { value, plus, minus, unit } = observable.measured;
-    const mark = Math.abs(pull) >= 2 ? "<- contradicts the others" : "";
-    return [
-      observable.label,
-      observable.signOnly ? (value > 0 ? "+" : "-") : asGiven(value, plus, minus),
-      unit === "1" ? "" : unit,
-      fitted.toPrecision(4),
-      pull.toFixed(2),
-      mark,
-    ];
-  });
+/** A smaller pull of a given mass or total width is not worth a line. */
+const LISTED_PULL = 1;
+
+/**
+ * Measurements against the fit, the largest pulls marked; after them what the fit moved of the masses, total widths and
+ * angles that were given with errors, which are terms of chi2 as well.
+ */
+export function describePulls({ pulls, parameters }: StudyMinimum): string {
+  const measured = pulls.map(({ observable, fitted, pull }) =>
+    pullLine(observable.label, measuredText(observable), observable.measured.unit, fitted, pull),
+  );
+  const given = parameters.flatMap(({ name, kind, unit, value, given: prior }) =>
+    prior === undefined || kind === "breaking" ? [] : [{ name, unit, fitted: value, ...prior }],
+  );
+  const moved = given
+    .filter(({ pull }) => Math.abs(pull) >= LISTED_PULL)
+    .map(({ name, unit, fitted, value, plus, minus, pull }) =>
+      pullLine(name, asGiven(value, plus, minus), unit, fitted, pull),
+    );
+  const rest = given.length - moved.length;
   const head = ["quantity", "measured", "", "fitted", "pull", ""];
-  return `\n${textTable([head, ...rows], { indent: 2, right: [1, 3, 4] })}`;
+  return `\n${textTable([head, ...measured, ...moved], { indent: 2, right: [1, 3, 4] })}${
+    rest === 0 ? "" : `  pulls of ${rest} given masses, total widths or angles are below ${LISTED_PULL}\n`
+  }`;
+}
+
+/** A measurement as it was written: a value, a sign alone, or a limit, which chi2 takes as a half-Gaussian at 0. */
+function measuredText({ measured: { value, plus, minus, limit }, signOnly }: Pull["observable"]): string {
+  if (signOnly) return value > 0 ? "+" : "-";
+  if (limit === undefined) return asGiven(value, plus, minus);
+  const upper = plus * gaussianDeviations(limit.confidence);
+  return `< ${asGiven(upper, 0, 0)} at ${asGiven(100 * limit.confidence, 0, 0)} %`;
+}
+
+function pullLine(label: string, measured: string, unit: string, fitted: number, pull: number): string[] {
+  const mark = Math.abs(pull) >= 2 ? "<- contradicts the others" : "";
+  return [label, measured, unit === "1" ? "" : unit, fitted.toPrecision(4), pull.toFixed(2), mark];
 }

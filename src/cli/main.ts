@@ -108,7 +108,7 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 1 a comparison 
   root
     .command("compare")
     .description("what changed between two table files, by row, in percent and in sigma")
-    .argument("<first>", "a decay or coupling table file")
+    .argument("<first>", "a decay, coupling or factor table file")
     .argument("<second>", "another of the same kind")
     .option("--percent <x>", "a change of more than x percent counts; 1 where neither is given")
     .option("--sigma <y>", "one of more than y standard deviations of both counts; 1 where neither is given")

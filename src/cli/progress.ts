@@ -19,8 +19,9 @@ const STANDARD_ERROR = 2;
  *
  * @param what - a word or two before the bar
  * @param quietOutput - whether the command prints nothing on standard output until the bar has ended
+ * @param afterMs - how long the work may take before the bar is drawn, at its next report
  */
-export function progressBar(what: string, quietOutput: boolean): ProgressBar {
+export function progressBar(what: string, quietOutput: boolean, afterMs = 0): ProgressBar {
   // A thread's own streams are no terminals; the descriptors behind them may be.
   const drawn = isatty(STANDARD_ERROR) && (quietOutput || !isatty(STANDARD_OUTPUT));
   if (!drawn) return { report: () => {}, end: () => {} };
@@ -34,11 +35,14 @@ export function progressBar(what: string, quietOutput: boolean): ProgressBar {
     linewrap: true,
     etaBuffer: 50,
   });
-  bar.start(1, 0);
+  const begin = performance.now() + afterMs;
+  if (afterMs === 0) bar.start(1, 0);
   return {
     report: (done, total) => {
-      bar.setTotal(total);
-      bar.update(done);
+      if (bar.isActive) {
+        bar.setTotal(total);
+        bar.update(done);
+      } else if (performance.now() >= begin) bar.start(total, done);
     },
     end: () => bar.stop(),
   };

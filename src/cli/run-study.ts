@@ -5,6 +5,7 @@ import { resolveStudy } from "../model/resolve-study.js";
 import { listProblems } from "../study/list-problems.js";
 import { draftStudy } from "../study/read-study.js";
 import { MAX_STUDY_BYTES } from "../study/syntax.js";
+import { progressBar } from "./progress.js";
 import { readInput } from "./read-input.js";
 
 /**
@@ -18,7 +19,16 @@ export function resolveStudyFile(path: string): Model {
   return resolveStudy(study, problems);
 }
 
+/** A fit that takes longer than this, in milliseconds, shows how far it has come. */
+const LONG_FIT_MS = 1000;
+
 /** The fit of the study in a file. */
 export function fitStudyFile(path: string): Fit {
-  return fitModel(resolveStudyFile(path));
+  const model = resolveStudyFile(path);
+  const bar = progressBar("fit", true, LONG_FIT_MS);
+  try {
+    return fitModel(model, { onProgress: bar.report });
+  } finally {
+    bar.end();
+  }
 }

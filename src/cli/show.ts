@@ -5,7 +5,7 @@ import { canonicalJson } from "../tables/canonical-json.js";
 import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
 import { decodeFactors } from "../tables/decode-factors.js";
-import { significant, withError } from "../tables/rounding.js";
+import { roundedValue, significant, withError } from "../tables/rounding.js";
 import { checkSeal, digestOf, type TableKind } from "../tables/sealed-bytes.js";
 import { describeCouplings } from "./describe-couplings.js";
 import { describeRow, rowNamed } from "./describe-row.js";
@@ -82,11 +82,16 @@ function describeHeader(
         `  ${name}  ${withError(value ?? 0, error ?? 0)}${unit === "1" ? "" : ` ${unit}`}`,
     ),
     ...replicaLines(replicas),
+    ERROR_WORDS,
     ...header.cautions.map((caution) => `caution: ${caution}`),
     ...header.notes.map((note) => `note: ${note}`),
   ];
   return `${lines.join("\n")}\n`;
 }
+
+/** What the errors in the parents' tables are. */
+export const ERROR_WORDS =
+  "errors of fractions, in percent of the total width, each another question: +- of the data; br. breaking of the symmetry; min. to another minimum; mod. between width models";
 
 /** How many replicas of which kind there are; nothing for a table without. */
 function replicaLines(replicas: readonly v1.Replica.$Properties[]): string[] {
@@ -146,7 +151,6 @@ export function describeParent(parent: v1.Parent): string {
   const rows = parent.rows.map((row) => {
     const { fraction } = row;
     const percent = (x: number | null | undefined) => 100 * (x ?? 0);
-    const statistical = (percent(fraction?.plus) + percent(fraction?.minus)) / 2;
     const closed = row.kinematics === v1.Kinematics.KINEMATICS_CLOSED;
     const parts = [
       ["br.", fraction?.breaking],
@@ -156,7 +160,9 @@ export function describeParent(parent: v1.Parent): string {
     const integrated = row.integratedFraction;
     return [
       row.id,
-      closed ? "closed" : withError(percent(fraction?.value), statistical),
+      closed
+        ? "closed"
+        : withErrors(percent(fraction?.value), percent(fraction?.plus), percent(fraction?.minus)),
       integrated === undefined || integrated === null ? "" : significant(percent(integrated), 3),
       parts
         .flatMap(([name, part]) => (closed || !part ? [] : [`${name} ${significant(percent(part), 2)}`]))
@@ -173,6 +179,14 @@ export function describeParent(parent: v1.Parent): string {
     textTable([titles, ...rows], { indent: 2, right: [1, 2, 4, 5] }) +
     (parent.warnings ?? []).map((w) => `  WARNING: ${w}\n`).join("")
   );
+}
+
+/** A value with its errors, or with one where rounding makes them equal. */
+function withErrors(value: number, plus: number, minus: number): string {
+  const rounded = roundedValue(value, plus, minus);
+  return rounded.plus === rounded.minus
+    ? withError(value, plus)
+    : `${rounded.value} +${rounded.plus} -${rounded.minus}`;
 }
 
 function describeFactorFile(table: v1.FactorTable, path: string, digest: string): string {

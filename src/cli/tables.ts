@@ -7,7 +7,7 @@ import type { Fit } from "../model/fit-model.js";
 import { encodeCouplings } from "../tables/encode-couplings.js";
 import { encodeDecays } from "../tables/encode-decays.js";
 import { digestOf } from "../tables/sealed-bytes.js";
-import { writeWhole } from "../tables/whole-file.js";
+import { writeAllWhole } from "../tables/whole-file.js";
 import { describeMinimum, describePulls, describeWarnings } from "./fit.js";
 import { fitStudyFile } from "./run-study.js";
 
@@ -40,36 +40,34 @@ export function runTables(path: string, options: { out: string; json?: true }): 
 
 /**
  * Writes the decay table of a fit and the coupling table beside it: one pair, or one for each minimum where the study
- * asks for that.
+ * asks for that. A conflict, or a place that cannot be written, leaves all files as they were.
  */
 export function writeTables(fit: Fit, studyPath: string, folder: string): Written[] {
   const minima = minimaToTabulate(fit);
-  // All tables are made before the first is written, so that a conflict leaves nothing behind.
-  const tables = minima.map((minimum) => ({
-    decays: complete(fit, minimum),
-    couplings: couplingTable(fit, minimum),
-  }));
-  const stem = basename(studyPath, extname(studyPath));
-  return tables.map(({ decays, couplings }) => {
-    const suffix = minima.length === 1 ? "" : `.minimum-${decays.minimum + 1}`;
-    const decayFile = writeSealed(join(folder, `${stem}${suffix}.decays.pb`), encodeDecays(decays));
-    const couplingFile = writeSealed(
-      join(folder, `${stem}${suffix}.couplings.pb`),
-      encodeCouplings(couplings),
-    );
-    return {
-      ...decayFile,
-      minimum: decays.minimum,
-      parents: decays.parents.length,
-      rows: rowCount(decays),
-      couplings: { ...couplingFile, vertices: couplings.charged.length },
-    };
+  const stem = join(folder, basename(studyPath, extname(studyPath)));
+  const tables = minima.map((minimum) => {
+    const suffix = minima.length === 1 ? "" : `.minimum-${minimum + 1}`;
+    const [decays, couplings] = [complete(fit, minimum), couplingTable(fit, minimum)];
+    const decayFile = { path: `${stem}${suffix}.decays.pb`, bytes: encodeDecays(decays) };
+    const couplingFile = { path: `${stem}${suffix}.couplings.pb`, bytes: encodeCouplings(couplings) };
+    return { decays, couplings, decayFile, couplingFile };
   });
+  writeAllWhole(tables.flatMap(({ decayFile, couplingFile }) => [decayFile, couplingFile]));
+  return tables.map(({ decays, couplings, decayFile, couplingFile }) => ({
+    ...described(decayFile),
+    minimum: decays.minimum,
+    parents: decays.parents.length,
+    rows: rowCount(decays),
+    couplings: { ...described(couplingFile), vertices: couplings.charged.length },
+  }));
 }
 
-function writeSealed(file: string, bytes: Uint8Array): { file: string; bytes: number; sha256: string } {
-  writeWhole(file, bytes);
-  return { file, bytes: bytes.length, sha256: digestOf(bytes) };
+function described({ path, bytes }: { path: string; bytes: Uint8Array }): {
+  file: string;
+  bytes: number;
+  sha256: string;
+} {
+  return { file: path, bytes: bytes.length, sha256: digestOf(bytes) };
 }
 
 function rowCount({ parents }: Tables): number {

@@ -195,7 +195,8 @@ function projectedRow(
   const { grid, unadjusted, integratedFraction, measurement, amplitude: _, ...rest } = row;
   const daughters = replaced(row.daughters, names);
   const identicalFactor = names.length === 2 && names[0] === names[1] ? 0.5 : row.identicalFactor;
-  const root = Math.sqrt(share);
+  // Of one flavour the amplitude is the flavour's times its projection, with its sign.
+  const root = Math.sqrt(share) * (kaonFlavours.length === 1 ? Math.sign(kaonFlavours[0]!.projection) : 1);
   const scaledWave = (wave: RowWave): RowWave => ({
     ...wave,
     re: root * wave.re,

@@ -176,7 +176,7 @@ function flagsOf(channel: Channel, entry: Entry, relativeStrength: number): Flag
 /** Amplitudes whose squares add up to the row's width: the fit's at nominal masses, scaled to it. */
 function wavesOf({ fit, evaluation, channels }: Predictions, index: number, rowWidthMeV: number): RowWave[] {
   const channel = fit.model.channels[index]!;
-  const { amplitudes } = channels[index]!;
+  const { amplitudes, phasesKnown } = channels[index]!;
   const fitted = channel.waves.map(
     ({ kinematicFactor }, w) => amplitudes[w]! * Math.sqrt(channel.identicalFactor * kinematicFactor),
   );
@@ -188,6 +188,7 @@ function wavesOf({ fit, evaluation, channels }: Predictions, index: number, rowW
       twoS,
       re: part * Math.sqrt(rowWidthMeV),
       im: 0,
+      phase: phasesKnown ? "known" : "assumed",
       model,
       flavourAmplitude: amplitudes[w]!,
       unit: amplitudeUnit(kinematics),

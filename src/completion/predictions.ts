@@ -1,5 +1,6 @@
 import { Evaluation, evaluator } from "../model/evaluate.js";
 import type { Fit, StudyMinimum } from "../model/fit-model.js";
+import { wavePhasesKnown } from "../model/wave-phases.js";
 import { widthBreakingMeV } from "../model/width-breaking.js";
 import { breakingGroups } from "./breaking-groups.js";
 
@@ -13,6 +14,8 @@ export interface Prediction {
   readonly breakingMeV: number;
   /** Flavour amplitude of each wave, in the coupling's unit. */
   readonly amplitudes: readonly number[];
+  /** Whether the data fix the signs of the waves against each other; see `wavePhasesKnown`. */
+  readonly phasesKnown: boolean;
   /** Largest |amplitude| over its wave's coupling strength, in the isospin channel; small means near a zero. */
   readonly relativeStrength: number;
   /** What breaking of the symmetry moves together; see `breakingGroups`. */
@@ -33,15 +36,23 @@ export function predict(fit: Fit, minimumIndex: number): Predictions {
   const minimum = fit.minima[minimumIndex]!;
   const evaluation = new Evaluation(evaluator(fit.model), minimum.vector);
   const groups = breakingGroups(fit.model);
+  const known = wavePhasesKnown(fit, minimum);
   return {
     fit,
     minimum,
     evaluation,
-    channels: fit.model.channels.map((_, index) => predictChannel(evaluation, index, groups[index]!)),
+    channels: fit.model.channels.map((_, index) => ({
+      ...predictChannel(evaluation, index, groups[index]!),
+      phasesKnown: known[index]!,
+    })),
   };
 }
 
-function predictChannel(evaluation: Evaluation, index: number, group: string): Prediction {
+function predictChannel(
+  evaluation: Evaluation,
+  index: number,
+  group: string,
+): Omit<Prediction, "phasesKnown"> {
   const channel = evaluation.model.channels[index]!;
   const amplitudes = channel.waves.map((_, w) => evaluation.amplitude(index, w).value);
   const { value, gradient } = evaluation.width(index);

@@ -51,6 +51,8 @@ export interface RowWave {
   /** sqrt(MeV); real here, since couplings are. */
   readonly re: number;
   readonly im: number;
+  /** Whether the data fix the signs of the row's waves against each other; `known` for a single wave. */
+  readonly phase: "known" | "assumed";
   readonly model: WidthModelChoice;
   /** Of the fit, in the coupling's unit. */
   readonly flavourAmplitude: number;

@@ -242,6 +242,6 @@ function conflictText(
   return [
     `${name}: expected fractions that add up to at most 1, got ${total} of the total width ${totalMeV} MeV:`,
     ...listed,
-    `  Mend a value, give the member \`width: sum\`, or keep a measurement out of the table with \`use: fit\`.`,
+    `  Mend a value, give the member \`width: sum\`, keep a measurement out of the table with \`use: fit\`, or have all of them moved within their errors: \`tables: { conflicts: constrained }\`.`,
   ].join("\n");
 }

@@ -9,7 +9,7 @@ import { type DistinctMinimum, distinctPhysics } from "./distinct-physics.js";
 import { decayHasFAndD, Evaluation, type Evaluator, evaluator } from "./evaluate.js";
 import { signProblem } from "./linear-forms.js";
 import type { Model, Observable, Parameter } from "./model.js";
-import { comparisons, reactionSigns } from "./residuals.js";
+import { comparisons, priorResidual, reactionSigns } from "./residuals.js";
 
 /** A parameter after the fit, or a number computed from fitted ones. */
 export interface FittedParameter {
@@ -19,6 +19,13 @@ export interface FittedParameter {
   readonly error: number;
   readonly unit: string;
   readonly kind: Parameter["kind"] | "derived";
+  /** What was given of it beforehand, with the pull of the fit against that; absent for what the data alone fix. */
+  readonly given?: {
+    readonly value: number;
+    readonly plus: number;
+    readonly minus: number;
+    readonly pull: number;
+  };
 }
 
 /** A measurement against the fit. */
@@ -215,15 +222,19 @@ function studyMinimum(
   const { model } = ready;
   const evaluation = new Evaluation(ready, minimum.parameters);
   const ndf = degreesOfFreedom(minimum, fitted);
-  const direct = model.parameters.map(
-    ({ name, unit, kind }, k): FittedParameter => ({
+  const direct = model.parameters.map((parameter, k): FittedParameter => {
+    const { name, unit, kind, prior } = parameter;
+    return {
       name,
       value: minimum.parameters[k]!,
       error: Math.sqrt(Math.max(0, minimum.covariance[k]?.[k] ?? 0)),
       unit,
       kind,
-    }),
-  );
+      ...(prior === undefined
+        ? {}
+        : { given: { ...prior, pull: priorResidual(parameter, k, minimum.parameters).residual } }),
+    };
+  });
   return {
     chi2: minimum.chi2,
     ndf,

@@ -182,10 +182,15 @@ function reactionOf([entrance, exit]: readonly [WidthSum, WidthSum], { channels 
     const { isospinChannel, waves: all, parent } = channels[channel]!;
     const { L, twoS } = all[waves?.[0] ?? 0]!;
     const members = isospinChannel.split(" -> ")[1]!;
-    return { text: `${members} L=${L} 2S=${twoS}`, twoI: parent.content[0]!.leg.state.twoI };
+    return { text: `${members} L=${L} S=${half(twoS)}`, twoI: parent.content[0]!.leg.state.twoI };
   };
   const [from, to] = [side(entrance), side(exit)];
-  return `${from.text} -> ${to.text}, 2I=${from.twoI}`;
+  return `${from.text} -> ${to.text}, I=${half(from.twoI)}`;
+}
+
+/** Half an integer as people write it. */
+function half(twice: number): string {
+  return twice % 2 === 0 ? String(twice / 2) : `${twice}/2`;
 }
 
 /** All channels of a parent, averaged over the charge states a name stands for. */

@@ -8,6 +8,7 @@ import { decayHasFAndD } from "./evaluate.js";
 import { type Fit, fittedObservables, MIRROR_DELTA_CHI2, type StudyMinimum } from "./fit-model.js";
 import type { Decay, Model, Observable } from "./model.js";
 import { parentWarnings, type ValidityWarning } from "./parent-validity.js";
+import { wavePhasesKnown } from "./wave-phases.js";
 
 /** Above this chi2 for each degree of freedom, errors that are not scaled mean little. */
 const POOR_CHI2 = 5;
@@ -38,6 +39,7 @@ export function validityWarnings(fit: Fit, index: number): ValidityWarning[] {
         : [],
     ),
     ...notPlain(model),
+    ...freePhases(fit, minimum),
     ...unstableDaughters(model),
     ...averagesNearThreshold(model),
   ];
@@ -229,6 +231,18 @@ function unstableDaughters({ channels }: Model): string[] {
   if (names.size === 0) return [];
   return [
     `channels with an unstable daughter are added as rates, though those that end in the same particles interfere: ${[...names].join(", ")}.`,
+  ];
+}
+
+/** Channels whose waves interfere with a sign that nothing measured fixes. */
+function freePhases(fit: Fit, minimum: StudyMinimum): string[] {
+  const known = wavePhasesKnown(fit, minimum);
+  const names = fit.model.channels.flatMap(({ isospinChannel, waves }, c) =>
+    !known[c] && waves.some(({ kinematicFactor }) => kinematicFactor > 0) ? [isospinChannel] : [],
+  );
+  if (names.length === 0) return [];
+  return [
+    `no measurement fixes the signs of the waves against each other in ${[...new Set(names)].join(", ")}: their interference, which rules angular distributions, is a choice. Add signed amplitudes of each wave.`,
   ];
 }
 

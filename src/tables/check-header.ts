@@ -14,14 +14,26 @@ export function requireKnownHeader(
   newestMinor: number,
   file: string,
 ): void {
-  const minor = header?.schemaMinor ?? Number.NaN;
-  if (!(minor <= newestMinor)) {
-    throw new TableError(
-      `${file}: expected schema version 1.${newestMinor} or older, got 1.${minor}. Read it with a newer Couplet.`,
-    );
-  }
+  requireKnownVersion(header, newestMinor, file);
   if (header?.convention === CONVENTION) return;
   throw new TableError(
     `${file}: expected phase convention ${CONVENTION}, got ${JSON.stringify(header?.convention)}. Read it with a newer Couplet.`,
+  );
+}
+
+/**
+ * Checks the schema version of a table alone.
+ *
+ * @throws TableError if it is too new
+ */
+export function requireKnownVersion(
+  header: Pick<couplet.v1.Header.$Properties, "schemaMinor"> | null | undefined,
+  newestMinor: number,
+  file: string,
+): void {
+  const minor = header?.schemaMinor ?? Number.NaN;
+  if (minor <= newestMinor) return;
+  throw new TableError(
+    `${file}: expected schema version 1.${newestMinor} or older, got 1.${minor}. Read it with a newer Couplet.`,
   );
 }

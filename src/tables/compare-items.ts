@@ -15,7 +15,12 @@ export const ITEM_KINDS = [
   "isospin channel",
   "vertex",
   "isospin constant",
+  "irrep",
+  "coefficients between states",
+  "factor",
+  "state coefficient",
 ] as const;
+/** What an item of a table is, e.g. `row` or `reduced coupling`. */
 export type ItemKind = (typeof ITEM_KINDS)[number];
 
 /** A part of a table that has a name of its own. */

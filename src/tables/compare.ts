@@ -1,10 +1,12 @@
 import { InputError } from "../errors.js";
 import { canonicalJson } from "./canonical-json.js";
+import { factorItems } from "./compare-factors.js";
 import { couplingItems, decayItems, ITEM_KINDS, type Item, type ItemKind } from "./compare-items.js";
 import { fieldOf, type Leaf } from "./compare-leaves.js";
 import { decodeCouplings } from "./decode-couplings.js";
 import { decodeDecays } from "./decode-decays.js";
-import { checkSeal } from "./sealed-bytes.js";
+import { factorsOfAnyRule } from "./decode-factors.js";
+import { checkSeal, type TableKind } from "./sealed-bytes.js";
 
 /** From which size on a change counts; a size that is not given never counts, and at least one is given. */
 export interface Thresholds {
@@ -39,7 +41,7 @@ export interface ItemChange {
 
 /** The differences between two tables, how they were made first. */
 export interface Comparison {
-  readonly kind: string;
+  readonly kind: TableKind;
   readonly items: readonly ItemChange[];
   /** Lines of the study that only the first, or only the second table has. */
   readonly studyLines: { readonly vanished: readonly string[]; readonly added: readonly string[] };
@@ -61,8 +63,9 @@ const QUALITIES = ["pull", "chi2", "probability", "fitted"];
 /**
  * Compares two tables of one kind, item by item, whatever the order they stand in: every field of both, the digest apart.
  *
- * @param thresholds - from where on a change counts
- * @throws InputError if the tables are of different kinds, or of one that cannot be compared; as the decoders do
+ * Factor tables are compared exactly, and may be of any phase convention or multiplicity rule: a change of these is told.
+ * @param thresholds - from where on a change counts; one of an exact coefficient always does
+ * @throws InputError if the tables are of different kinds, or factors of different products; as the decoders do
  */
 export function compareTables(
   first: { readonly bytes: Uint8Array; readonly file: string },
@@ -70,20 +73,22 @@ export function compareTables(
   thresholds: Thresholds = DEFAULT_THRESHOLDS,
 ): Comparison {
   const kinds = [first, second].map(({ bytes, file }) => checkSeal(bytes, file));
-  const [kind] = kinds;
-  if (kind !== kinds[1] || kind === "couplet.v1.FactorTable") {
-    throw new InputError(
-      `${second.file}: expected two decay tables or two coupling tables, got ${kinds.join(" and ")}.`,
-    );
+  const [kind] = kinds as [TableKind, TableKind];
+  if (kind !== kinds[1]) {
+    throw new InputError(`${second.file}: expected two tables of one kind, got ${kinds.join(" and ")}.`);
   }
-  const [a, b] = [first, second].map(({ bytes, file }) => {
-    const message =
-      kind === "couplet.v1.DecayTables" ? decodeDecays(bytes, file) : decodeCouplings(bytes, file);
-    return canonicalJson(kind!, message) as Record<string, unknown>;
-  });
-  const itemsOf = kind === "couplet.v1.DecayTables" ? decayItems : couplingItems;
+  if (kind === "couplet.v1.FactorTable") {
+    const [a, b] = [first, second].map(({ bytes, file }) => factorsOfAnyRule(bytes, file));
+    const items = compareItems(...factorItems(a!, b!, second.file), thresholds);
+    return { kind, items, studyLines: { vanished: [], added: [] }, ...counts(items) };
+  }
+  const [decode, itemsOf] =
+    kind === "couplet.v1.DecayTables" ? [decodeDecays, decayItems] : [decodeCouplings, couplingItems];
+  const [a, b] = [first, second].map(
+    ({ bytes, file }) => canonicalJson(kind, decode(bytes, file)) as Record<string, unknown>,
+  );
   const items = compareItems(itemsOf(a!), itemsOf(b!), thresholds);
-  return { kind: kind!, items, studyLines: studyLines(a!, b!), ...counts(items) };
+  return { kind, items, studyLines: studyLines(a!, b!), ...counts(items) };
 }
 
 function counts(items: readonly ItemChange[]): { changed: number; counted: number } {

@@ -288,12 +288,12 @@ export function estimateMessage({ branch, model, ...always }: Estimate): v1.Esti
   return { ...always, branch: branch ?? null, model: model ?? null };
 }
 
-function waveMessage({ L, twoS, model, ...numbers }: RowWave): v1.Wave.$Properties {
+function waveMessage({ L, twoS, model, phase, ...numbers }: RowWave): v1.Wave.$Properties {
   return {
     twoL: 2 * L,
     twoS,
     ...numbers,
-    phase: v1.Phase.PHASE_KNOWN,
+    phase: phase === "known" ? v1.Phase.PHASE_KNOWN : v1.Phase.PHASE_ASSUMED,
     model: model.id,
     options: optionMessages(model),
   };

@@ -55,7 +55,8 @@ function errorDecimals(error: number): number {
 }
 
 function fixed(value: number, decimals: number): string {
-  if (decimals >= 0) return value.toFixed(Math.min(decimals, 100));
+  // A small negative value rounds to zero, which has no sign.
+  if (decimals >= 0) return value.toFixed(Math.min(decimals, 100)).replace(/^-(?=[0.]+$)/, "");
   const unit = 10 ** -decimals;
   return String(Math.round(value / unit) * unit);
 }

@@ -1,8 +1,11 @@
 import {
+  chmodSync,
+  chownSync,
   closeSync,
   fsyncSync,
   mkdirSync,
   openSync,
+  realpathSync,
   renameSync,
   rmdirSync,
   rmSync,
@@ -35,9 +38,62 @@ export function writeWhole(path: string, bytes: Uint8Array | string): void {
   inItsPlace(path, () => writeFileAtomic.sync(path, Buffer.from(bytes as Uint8Array), { fsync: true }));
 }
 
+/** A file to be written: its place, and all of it. */
+export interface WholeFile {
+  readonly path: string;
+  readonly bytes: Uint8Array | string;
+}
+
 /**
- * The same for a file too large to hold, from its pieces; returns its length. Whatever ends the pieces early, an error of
- * theirs included, leaves nothing.
+ * Writes several files, all of them or none: every one beside its place first, and only when all are synced each is
+ * renamed. Between two renames a reader may see new files with old ones.
+ *
+ * @throws InputError as `writeWhole`, with nothing changed; or, where the system refuses a rename after others, with the
+ * names of the files that are new
+ */
+export function writeAllWhole(files: readonly WholeFile[]): void {
+  besideEach(files, [], (besides) => {
+    for (const [k, { beside, place, path }] of besides.entries()) {
+      try {
+        renameSync(beside, place);
+      } catch (cause) {
+        const names = besides.map((each) => each.path);
+        const [renamed, left] = [names.slice(0, k), names.slice(k)].map((list) => list.join(", "));
+        throw k === 0
+          ? unwritten(path, cause)
+          : unwritten(path, cause, `New are ${renamed}; as before: ${left}.`);
+      }
+    }
+  });
+}
+
+/** A file that is written, but not in its place yet. */
+interface Beside {
+  readonly path: string;
+  readonly beside: string;
+  readonly place: string;
+}
+
+/** Writes each file beside its place, then calls `then`; whatever throws, no file beside is left, and no folder made. */
+function besideEach(
+  [file, ...others]: readonly WholeFile[],
+  written: readonly Beside[],
+  then: (besides: readonly Beside[]) => void,
+): void {
+  if (file === undefined) {
+    then(written);
+    return;
+  }
+  inItsPlace(file.path, () =>
+    withBeside(file.path, [Buffer.from(file.bytes as Uint8Array)], ({ beside, place }) =>
+      besideEach(others, [...written, { path: file.path, beside, place }], then),
+    ),
+  );
+}
+
+/**
+ * As `writeWhole` for a file too large to hold, from its pieces; returns its length. Whatever ends the pieces early, an
+ * error of theirs included, leaves nothing.
  *
  * @param temporary - told the name of the file beside before it is made, and `undefined` once it is gone: a process that
  * is about to be stopped can remove it
@@ -48,20 +104,45 @@ export function writeWholePieces(
   pieces: Iterable<Uint8Array>,
   temporary: (name: string | undefined) => void = () => {},
 ): number {
-  return inItsPlace(path, () => {
-    const beside = join(dirname(path), `.${basename(path)}.${process.pid}`);
-    temporary(beside);
-    try {
-      const length = writePieces(beside, pieces);
-      renameSync(beside, path);
-      return length;
-    } catch (error) {
-      attempt(() => rmSync(beside, { force: true }));
-      throw error;
-    } finally {
-      temporary(undefined);
+  return inItsPlace(path, () =>
+    withBeside(
+      path,
+      pieces,
+      ({ beside, place, length }) => {
+        renameSync(beside, place);
+        return length;
+      },
+      temporary,
+    ),
+  );
+}
+
+/** Writes pieces beside a place, synced, with owner and mode of an old file there; removes them if `then` throws. */
+function withBeside<T>(
+  path: string,
+  pieces: Iterable<Uint8Array>,
+  then: (file: { beside: string; place: string; length: number }) => T,
+  temporary: (name: string | undefined) => void = () => {},
+): T {
+  const old = statSync(path, { throwIfNoEntry: false });
+  // Behind a link, the file it points to is the one to replace.
+  const place = old === undefined ? path : realpathSync(path);
+  const beside = join(dirname(place), `.${basename(place)}.${process.pid}`);
+  temporary(beside);
+  try {
+    const length = writePieces(beside, pieces);
+    if (old !== undefined) {
+      // Only some may give a file away; the new file is then the writer's own.
+      attempt(() => chownSync(beside, old.uid, old.gid));
+      chmodSync(beside, old.mode);
     }
-  });
+    return then({ beside, place, length });
+  } catch (error) {
+    attempt(() => rmSync(beside, { force: true }));
+    throw error;
+  } finally {
+    temporary(undefined);
+  }
 }
 
 function writePieces(path: string, pieces: Iterable<Uint8Array>): number {
@@ -90,17 +171,19 @@ function inItsPlace<T>(path: string, write: () => T): T {
   } catch (cause) {
     // Deepest first; a folder that someone else has filled meanwhile stays.
     for (const folder of made.reverse()) attempt(() => rmdirSync(folder));
-    const { code, message } = cause as NodeJS.ErrnoException;
+    const { code } = cause as NodeJS.ErrnoException;
     // Only the operating system's errors carry such a code; ours, and bugs, pass as they are.
     if (cause instanceof CoupletError || code === undefined) throw cause;
-    const mend = MENDS[code] ?? "Choose another folder";
-    throw new InputError(
-      `${path}: could not be written: ${reasonOf(message)}. ${mend}. Nothing was changed.`,
-      {
-        cause,
-      },
-    );
+    throw unwritten(path, cause);
   }
+}
+
+function unwritten(path: string, cause: unknown, outcome = "Nothing was changed."): InputError {
+  const { code, message } = cause as NodeJS.ErrnoException;
+  const mend = MENDS[code ?? ""] ?? "Choose another folder";
+  return new InputError(`${path}: could not be written: ${reasonOf(message)}. ${mend}. ${outcome}`, {
+    cause,
+  });
 }
 
 /** Renaming would replace a device such as /dev/null, or a pipe, by an ordinary file. */

@@ -126,7 +126,7 @@ describe("signs", () => {
     expect(amplitude).toBeLessThan(0);
     const [minimum] = fitOf(plantedStudy([...BASE, line(key, written)])).minima;
     expect(minimum!.chi2).toBeLessThan(1e-12);
-    expect(minimum!.reactionSigns).toEqual({ "N Kbar L=2 2S=1 -> Lambda pi L=2 2S=1, 2I=2": -1 });
+    expect(minimum!.reactionSigns).toEqual({ "N Kbar L=2 S=1/2 -> Lambda pi L=2 S=1/2, I=1": -1 });
   });
 
   test("two resonances of one reaction share its sign", () => {

@@ -1,4 +1,6 @@
 import { describe, expect, test } from "vitest";
+import { complete } from "../../src/completion/complete.js";
+import { studyWarnings } from "../../src/model/validity.js";
 import { fitOf, parameterValue, studyText, tablesOf } from "./run.js";
 
 describe("N(1520) -> Delta pi", () => {
@@ -25,6 +27,52 @@ describe("N(1520) -> Delta pi", () => {
       expect(Math.abs(rows[k]!.fraction.value / sum / share - 1)).toBeLessThan(0.06);
     }
     expect(rows.every(({ flags }) => flags.includes("folded"))).toBe(true);
+  });
+});
+
+describe("signs of the waves against each other", () => {
+  const study = (signs: string) =>
+    studyText("n1520-delta-pi")
+      .replace(
+        "measurements:",
+        "  - { name: o, from: octet, to: [baryon-octet, pseudoscalar-octet], L: 2, model: a, masses: charge }\nmeasurements:",
+      )
+      .replace(
+        "measurements:",
+        `measurements:\n  - { width: N(1520) -> N pi, value: 66 +- 6 MeV, use: fit, source: invented }\n  - { width: N(1520) -> N eta, value: 0.08 +- 0.02 MeV, use: fit, source: invented }\n${signs}`,
+      );
+  const sign = (L: number, value: string, reaction: string) =>
+    `  - { amplitude: [N(1520) -> N pi, N(1520) -> Delta(1232) pi L=${L}], value: "${value}"${reaction}, source: invented }\n`;
+  const result = (signs: string) => {
+    const fit = fitOf(study(signs));
+    const waves = complete(fit, 0).parents[0]!.rows.find(({ id }) => id.includes("Delta(1232)++"))!.waves;
+    return {
+      phases: waves.map(({ phase }) => phase),
+      relative: Math.sign(waves[0]!.re * waves[1]!.re),
+      warned: studyWarnings(fit, 0).some((text) =>
+        text.startsWith("no measurement fixes the signs of the waves"),
+      ),
+    };
+  };
+  const fixed = ', sign: "+"';
+
+  test("are assumed where only widths are measured, and said to be", () => {
+    expect(result("")).toMatchObject({ phases: ["assumed", "assumed"], warned: true });
+  });
+
+  test("are known where signed amplitudes of both waves are, and follow them", () => {
+    for (const [value, relative] of [
+      ["+", 1],
+      ["-", -1],
+    ] as const) {
+      const same = result(sign(0, "+", fixed) + sign(2, value, fixed));
+      expect(same).toEqual({ phases: ["known", "known"], relative, warned: false });
+    }
+  });
+
+  test("are assumed where one wave has no sign, or a reaction's own sign is free", () => {
+    expect(result(sign(0, "+", fixed))).toMatchObject({ phases: ["assumed", "assumed"], warned: true });
+    expect(result(sign(0, "+", "") + sign(2, "-", ""))).toMatchObject({ phases: ["assumed", "assumed"] });
   });
 });
 

@@ -3,8 +3,14 @@ import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import { couplet } from "../../src/gen/couplet.js";
+import { isoscalarTable, MULTIPLICITY_RULE } from "../../src/su3/isoscalar-factors.js";
 import { encodeDecays } from "../../src/tables/encode-decays.js";
+import { factorsMessage } from "../../src/tables/encode-factors.js";
+import { sealBytes } from "../../src/tables/sealed-bytes.js";
 import { studyText, tablesOf } from "../chain/run.js";
+
+import v1 = couplet.v1;
 
 const command = join(__dirname, "..", "..", "dist", "cli", "main.js");
 const folder = mkdtempSync(join(tmpdir(), "couplet-compare-"));
@@ -65,5 +71,57 @@ describe("couplet compare", () => {
   test("refuses a threshold that is none, with exit code 2", () => {
     const { status, stderr } = run("compare", first, second, "--percent", "-1");
     expect([status, stderr]).toEqual([2, 'couplet: --percent: expected a number >= 0, got "-1".\n']);
+  });
+});
+
+describe("couplet compare of factor tables", () => {
+  const [a, b] = [join(folder, "a.factors.pb"), join(folder, "b.factors.pb")];
+  beforeAll(() => {
+    const table = factorsMessage(isoscalarTable({ p: 1, q: 1 }, { p: 1, q: 1 }), { states: false });
+    const write = (file: string) => writeFileSync(file, sealBytes(v1.FactorTable.encode(table).finish()));
+    write(a);
+    table.factors![0]!.value!.sign! *= -1;
+    table.factors = table.factors!.filter(({ irrep }) => irrep!.p !== 3);
+    table.multiplicityRule = "another-rule";
+    write(b);
+  });
+
+  test("tells the rule first, what is gone, then each coefficient on a line; ends with 1", () => {
+    const { status, stdout, stderr } = run("compare", a, b);
+    expect([status, stderr]).toEqual([1, ""]);
+    expect(stdout).toBe(
+      [
+        `from ${a}`,
+        `to   ${b}`,
+        "couplet.v1.FactorTable",
+        "",
+        "Conventions, models, editions",
+        `  header multiplicityRule: ${MULTIPLICITY_RULE} -> another-rule`,
+        "",
+        "New and vanished",
+        "  vanished irrep: 10",
+        "",
+        "Changed coefficients",
+        "  factor <Y1=1 I1=1/2; Y2=-1 I2=1/2 | 1 Y=0 I=0>: 1/2 -> -1/2",
+        "",
+        "3 values differ, 3 of them count.",
+        "",
+      ].join("\n"),
+    );
+    expect(run("compare", a, a).status).toBe(0);
+  });
+
+  test("shows the first hundred of many, and has all as JSON", () => {
+    const table = factorsMessage(isoscalarTable({ p: 2, q: 2 }, { p: 1, q: 1 }), { states: false });
+    const many = [join(folder, "m.factors.pb"), join(folder, "n.factors.pb")] as const;
+    for (const file of many) {
+      writeFileSync(file, sealBytes(v1.FactorTable.encode(table).finish()));
+      for (const { value } of table.factors!) value!.sign! *= -1;
+    }
+    const count = table.factors!.length;
+    const lines = run("compare", ...many).stdout.split("\n");
+    expect(lines.filter((line) => line.startsWith("  factor"))).toHaveLength(100);
+    expect(lines).toContain(`  and ${count - 100} more; --json has them all`);
+    expect(JSON.parse(run("compare", ...many, "--json").stdout).items).toHaveLength(count);
   });
 });

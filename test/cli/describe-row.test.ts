@@ -5,7 +5,7 @@ import { WHOLE } from "../../src/completion/parts-per-billion.js";
 import { InputError } from "../../src/errors.js";
 import { couplet } from "../../src/gen/couplet.js";
 import { decaysMessage } from "../../src/tables/encode-decays.js";
-import { tablesOf } from "../chain/run.js";
+import { studyText, tablesOf } from "../chain/run.js";
 
 import v1 = couplet.v1;
 
@@ -134,6 +134,21 @@ describe("a ledger in words", () => {
     const text = describeRow({ tables: v1.DecayTables.create({ ...tables, header }), parent, row });
     expect(text).toContain("\n  width Sigma(1731) -> N Kbar = 2 +0.7 -0.5 MeV\n");
     expect(text).not.toContain("of the study:");
+  });
+
+  test("a sign alone is told as a sign, and a number of size 1 as a number", () => {
+    const whole = tablesOfStudy(studyText("octet-5-2-whole"));
+    const text = (id: string) => describeRow(rowNamed(whole, id, "a.pb"));
+    const quantity = (exit: string) => `amplitude Sigma(1775) -> N Kbar, Sigma(1775) -> ${exit}`;
+    expect(text("Sigma(1775)0 -> Lambda pi0")).toContain(
+      `\n  datum on this channel: ${quantity("Lambda pi")} = -, fitted -0.`,
+    );
+    expect(text("Sigma(1775)+ -> Sigma0 pi+")).toContain(
+      `\n  datum on this channel: ${quantity("Sigma pi")} = +, fitted 0.`,
+    );
+    expect(text("Sigma(1775)0 -> Lambda pi0")).toMatch(
+      /datum on this channel: fraction Sigma\(1775\) -> Lambda pi = 0\.17 \+- 0\.03, /,
+    );
   });
 
   test("an unknown row is refused with the nearest", () => {

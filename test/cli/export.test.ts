@@ -3,8 +3,10 @@ import { mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import { couplingTable } from "../../src/completion/tabulate-couplings.js";
+import { encodeCouplings } from "../../src/tables/encode-couplings.js";
 import { encodeDecays } from "../../src/tables/encode-decays.js";
-import { studyText, tablesOf } from "../chain/run.js";
+import { fitOf, studyText, tablesOf } from "../chain/run.js";
 
 const command = join(__dirname, "..", "..", "dist", "cli", "main.js");
 const folder = mkdtempSync(join(tmpdir(), "couplet-export-"));
@@ -29,6 +31,19 @@ describe("couplet export", () => {
 
   test("JSON is that of `couplet show --json`", () => {
     expect(run("export", first, "--to", "json").stdout).toBe(run("show", first, "--json").stdout);
+  });
+
+  test("LaTeX of coupling tables is their tabulars, each in its environment", () => {
+    const couplings = join(folder, "first.couplings.pb");
+    writeFileSync(couplings, encodeCouplings(couplingTable(fitOf(studyText("decuplet")), 0)));
+    const { status, stdout, stderr } = run("export", couplings, "--to", "latex");
+    expect([status, stderr]).toEqual([0, ""]);
+    expect(stdout.match(/^\\begin\{tabular\}/gm)).toHaveLength(3);
+    expect(stdout).toContain("\n$\\Delta(1232)^{+} \\to p\\,\\pi^{0}$ & $-\\sqrt{1/3}\\,g(10)$ & ");
+    expect(run("export", couplings, "--to", "accord")).toMatchObject({
+      status: 2,
+      stderr: `couplet: ${couplings}: expected decay tables for --to accord, got couplet.v1.CouplingTables; coupling tables go to csv, latex or json.\n`,
+    });
   });
 
   test("refuses what does not go together, with exit code 2", () => {

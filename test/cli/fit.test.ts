@@ -19,6 +19,28 @@ describe("couplet fit", () => {
     expect(stdout).toMatch(/g\(10\) +5\.35 \+- 0\.05 +\(\+- 0\.10\)/);
   });
 
+  test("says what it moved of given masses and total widths, which are terms of chi2 too", () => {
+    const { stdout } = run(study("decuplet-whole"));
+    const lines = stdout.replaceAll(/ {2,}/g, "  ").split("\n");
+    const start = lines.findIndex((line) => line.startsWith("  quantity"));
+    const shown = lines
+      .slice(start + 1, start + 6)
+      .map((line) => Number(/(\S+)(?: {2}<-.*)?$/.exec(line)![1]));
+    expect(lines[start + 5]).toMatch(
+      /^ {2}total width Delta\(1232\).* 117 \+- 3 .*<- contradicts the others$/,
+    );
+    expect(lines[start + 6]).toBe("  pulls of 2 given masses, total widths or angles are below 1");
+    const [minimum] = JSON.parse(run(study("decuplet-whole"), "--json").stdout).minima;
+    const given = minimum.parameters.flatMap((p: { given?: { pull: number } }) =>
+      p.given ? [p.given.pull] : [],
+    );
+    const measured = minimum.pulls.map(({ pull }: { pull: number }) => pull);
+    const squares = [...measured, ...given].reduce((sum: number, pull: number) => sum + pull ** 2, 0);
+    expect(squares).toBeCloseTo(minimum.chi2, 8);
+    const listed = shown.reduce((sum, pull) => sum + pull ** 2, 0);
+    expect(Math.abs(listed - minimum.chi2)).toBeLessThan(0.5);
+  });
+
   test("prints intervals, pseudo-experiments, leave-one-out and models, and the same as JSON", () => {
     const options = ["--profile", "--toys", "40", "--seed", "3", "--leave-one-out", "--models"];
     const { status, stdout, stderr } = run(study("decuplet"), ...options, "--workers", "2");

@@ -61,6 +61,12 @@ describe("neutral kaons as K_S0 and K_L0", () => {
         },
       ]);
       expect(half.waves[0]!.re ** 2).toBeCloseTo(half.widthMeV.value, 12);
+      // The row's amplitude is that of the flavour times its projection, with its sign.
+      expect(half.waves[0]!.re).toBeCloseTo(sign * Math.SQRT1_2 * whole.waves[0]!.re, 12);
+      expect(half.waves[0]!.flavourAmplitude).toBeCloseTo(
+        sign * Math.SQRT1_2 * whole.waves[0]!.flavourAmplitude,
+        12,
+      );
       expect(half.grid!.logWidths[5]).toBeCloseTo(whole.grid!.logWidths[5]! - Math.LN2, 5);
     }
   });

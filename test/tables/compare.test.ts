@@ -2,11 +2,9 @@ import { describe, expect, test } from "vitest";
 import { couplingTable } from "../../src/completion/tabulate-couplings.js";
 import { InputError } from "../../src/errors.js";
 import { couplet } from "../../src/gen/couplet.js";
-import { isoscalarTable } from "../../src/su3/isoscalar-factors.js";
 import { type Comparison, compareTables, type Thresholds } from "../../src/tables/compare.js";
 import { couplingsMessage } from "../../src/tables/encode-couplings.js";
 import { decaysMessage } from "../../src/tables/encode-decays.js";
-import { encodeFactors } from "../../src/tables/encode-factors.js";
 import { sealBytes } from "../../src/tables/sealed-bytes.js";
 import { fitOf, studyText, tablesOf } from "../chain/run.js";
 
@@ -220,19 +218,12 @@ describe("comparison of coupling tables", () => {
   });
 });
 
-test("tables of different kinds, and factor tables, are refused in words", () => {
+test("tables of different kinds are refused in words", () => {
   const a = { bytes: sealed(ORIGINAL), file: "a.pb" };
   const b = { bytes: sealedCouplings(couplings), file: "b.pb" };
   expect(() => compareTables(a, b)).toThrow(
     new InputError(
-      "b.pb: expected two decay tables or two coupling tables, got couplet.v1.DecayTables and couplet.v1.CouplingTables.",
-    ),
-  );
-  const factors = encodeFactors(isoscalarTable({ p: 1, q: 0 }, { p: 1, q: 0 }), { states: false });
-  const c = { bytes: factors, file: "c.pb" };
-  expect(() => compareTables(c, c)).toThrow(
-    new InputError(
-      "c.pb: expected two decay tables or two coupling tables, got couplet.v1.FactorTable and couplet.v1.FactorTable.",
+      "b.pb: expected two tables of one kind, got couplet.v1.DecayTables and couplet.v1.CouplingTables.",
     ),
   );
 });

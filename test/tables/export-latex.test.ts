@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import { couplet } from "../../src/gen/couplet.js";
 import { decaysMessage } from "../../src/tables/encode-decays.js";
-import { exportLatex } from "../../src/tables/export-latex.js";
+import { exportDecaysLatex } from "../../src/tables/export-latex.js";
 import { studyText, tablesOf } from "../chain/run.js";
 import { HALF, madeDecays } from "./made-decays.js";
 
@@ -24,7 +24,7 @@ function readValue(cell: string): number[] {
 
 describe("decay tables as LaTeX", () => {
   const tables = v1.DecayTables.create(decaysMessage(tablesOf(studyText("octet-5-2"))));
-  const text = exportLatex(tables);
+  const text = exportDecaysLatex(tables);
 
   test("every row is read back, value and errors within half of the error's last digit", () => {
     const read = readRows(text);
@@ -61,7 +61,7 @@ describe("decay tables as LaTeX", () => {
   });
 
   test("a title of two lines stays a comment, and a remainder has its name", () => {
-    const made = exportLatex(madeDecays([HALF]));
+    const made = exportDecaysLatex(madeDecays([HALF]));
     expect(made.split("\n")[0]).toBe("% made up (couplet 9.9.9)");
     expect(made).toContain("\nremainder & ");
   });

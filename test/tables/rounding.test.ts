@@ -17,6 +17,13 @@ describe("values rounded by the trade's rule", () => {
     });
   });
 
+  test("a negative value far below its error is 0 without a sign", () => {
+    expect(withError(-0.0005, 0.6)).toBe("0.0 +- 0.6");
+    expect(withError(-3, 41)).toBe("0 +- 40");
+    expect(withError(-0.06, 0.6)).toBe("-0.1 +- 0.6");
+    expect(roundedValue(-0.0004, 0.12, 0.12).value).toBe("0.00");
+  });
+
   test("of two errors the smaller decides, and without errors four digits stay", () => {
     expect(roundedValue(2.04, 0.7, 0.12)).toEqual({ value: "2.04", plus: "0.70", minus: "0.12" });
     expect(roundedValue(12.3456, 0, 0)).toEqual({ value: "12.35", plus: "", minus: "" });

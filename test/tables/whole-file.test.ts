@@ -13,7 +13,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { InputError } from "../../src/errors.js";
-import { writeWhole } from "../../src/tables/whole-file.js";
+import { type WholeFile, writeAllWhole, writeWhole, writeWholePieces } from "../../src/tables/whole-file.js";
 
 let folder = "";
 beforeEach(() => {
@@ -102,4 +102,75 @@ describe("a place is refused in words, and stays as it was", () => {
     );
     expect(existsSync("/proc/t.pb")).toBe(false);
   });
+});
+
+describe("several files are written", () => {
+  const files = (...names: string[]) =>
+    names.map((name) => ({ path: join(folder, name), bytes: Buffer.from(`new ${name}`) }));
+  const text = (name: string) => readFileSync(join(folder, name), "utf8");
+  /** A file at whose place a folder is made once its bytes are asked for. */
+  const whosePlaceChanges = ({ path, bytes }: WholeFile): WholeFile => ({
+    path,
+    get bytes() {
+      mkdirSync(path);
+      return bytes;
+    },
+  });
+  const refusalOfAll = (list: readonly WholeFile[]) => {
+    try {
+      writeAllWhole(list);
+    } catch (error) {
+      if (error instanceof InputError) return error.message.replaceAll(folder, "");
+      throw error;
+    }
+    throw new Error("all were written");
+  };
+
+  test("with nothing left beside them, in folders that are made on the way, keeping modes and links", () => {
+    writeFileSync(join(folder, "old"), "old", { mode: 0o640 });
+    symlinkSync(join(folder, "old"), join(folder, "link"));
+    writeAllWhole(files("link", "a/b/t", "a/u"));
+    expect([text("old"), text("a/b/t"), text("a/u")]).toEqual(["new link", "new a/b/t", "new a/u"]);
+    expect(lstatSync(join(folder, "link")).isSymbolicLink()).toBe(true);
+    expect(lstatSync(join(folder, "old")).mode & 0o777).toBe(0o640);
+    expect(readdirSync(folder).sort()).toEqual(["a", "link", "old"]);
+    expect(readdirSync(join(folder, "a"), { recursive: true }).sort()).toEqual(["b", "b/t", "u"]);
+  });
+
+  test("none of them where the last place is a folder: old files are intact, and no folder is made", () => {
+    writeFileSync(join(folder, "1"), "old 1");
+    mkdirSync(join(folder, "3"));
+    expect(refusalOfAll(files("1", "made/2", "3"))).toBe(
+      "/3: expected a place for a file, got a folder. Name a file in it.",
+    );
+    expect(text("1")).toBe("old 1");
+    expect(readdirSync(folder).sort()).toEqual(["1", "3"]);
+    expect(refusalOfAll(files("1", "made/2", `made/${"n".repeat(300)}`))).toMatch(/Nothing was changed\.$/);
+    expect(readdirSync(folder).sort()).toEqual(["1", "3"]);
+  });
+
+  test("as far as the system lets them: a place that changes meanwhile is told, with what is new", () => {
+    // After the second file's place was looked at, and before anything is renamed.
+    expect(refusalOfAll([...files("1"), ...files("2").map(whosePlaceChanges)])).toBe(
+      "/2: could not be written: EISDIR: illegal operation on a directory. Choose another folder. New are /1; as before: /2.",
+    );
+    expect([text("1"), readdirSync(join(folder, "2"))]).toEqual(["new 1", []]);
+    expect(readdirSync(folder).sort()).toEqual(["1", "2"]);
+  });
+
+  test("not at all where already the first cannot be renamed", () => {
+    expect(refusalOfAll([...files("1").map(whosePlaceChanges), ...files("2")])).toMatch(
+      /^\/1: .*EISDIR.* Nothing was changed\.$/,
+    );
+    expect(readdirSync(folder)).toEqual(["1"]);
+  });
+});
+
+test("a file in pieces replaces what a link points to, and keeps its mode", () => {
+  const old = join(folder, "old");
+  writeFileSync(old, "old", { mode: 0o640 });
+  symlinkSync(old, join(folder, "link"));
+  expect(writeWholePieces(join(folder, "link"), [Buffer.from("ne"), Buffer.from("w")])).toBe(3);
+  expect(lstatSync(join(folder, "link")).isSymbolicLink()).toBe(true);
+  expect([readFileSync(old, "utf8"), lstatSync(old).mode & 0o777]).toEqual(["new", 0o640]);
 });
