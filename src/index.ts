@@ -47,6 +47,18 @@ export {
   symmetricCouplingOfD,
 } from "./couplings/f-and-d.js";
 export {
+  ISOSPIN_LAGRANGIAN,
+  type IsospinConstant,
+  isospinConstantName,
+  isospinConstants,
+} from "./couplings/isospin-lagrangian.js";
+export {
+  MATRIX_CONVENTION,
+  MatrixConvention,
+  type MatrixEntry,
+  OCTET_LAGRANGIAN,
+} from "./couplings/matrix-convention.js";
+export {
   CoupletError,
   InputError,
   InternalError,
@@ -83,6 +95,14 @@ export {
   signedRoot,
   signedSquare,
 } from "./exact/signed-root.js";
+export {
+  type GradedFunction,
+  type ProfiledMinimum,
+  type ProfileEnd,
+  type ProfileInterval,
+  type ProfileOptions,
+  profileInterval,
+} from "./fit/profile-interval.js";
 export type { couplet } from "./gen/couplet.js";
 // Hadrons: the catalogue, and multiplets of one's own.
 export {
@@ -141,7 +161,19 @@ export type {
 } from "./study/study.js";
 // SU(2) and SU(3): irreps, products, Clebsch-Gordan coefficients and isoscalar factors in convention `deswart-v1`.
 export { clebschGordan } from "./su2/clebsch-gordan.js";
+export { sixJ } from "./su2/six-j.js";
+export { CasimirCoupling, casimirEigenvalue } from "./su3/casimir-coupling.js";
 export { su3ClebschGordan } from "./su3/clebsch-gordan.js";
+export {
+  type CouplingTree,
+  type TreePath,
+  type TreeTerm,
+  type TreeTransformation,
+  treePaths,
+  treeStates,
+  treeTransformation,
+} from "./su3/coupling-trees.js";
+export { type ChainTerm, chainState, chainTransformation, type FlavourChain } from "./su3/flavour-chains.js";
 export {
   casimir,
   conjugate,
@@ -163,6 +195,7 @@ export {
   isoscalarTable,
   MULTIPLICITY_RULE,
 } from "./su3/isoscalar-factors.js";
+export { antisymmetricPower, symmetricPower } from "./su3/powers.js";
 export {
   type CouplingPath,
   type CouplingStep,
@@ -171,7 +204,11 @@ export {
   irrepMultiplicities,
   type SeriesEntry,
 } from "./su3/product.js";
+export { type PairPath, type Recoupling, recouplingMatrix } from "./su3/recoupling.js";
 export { conjugateState, type State, sameState, states, threeCharge } from "./su3/state.js";
+export { structureD, structureF } from "./su3/structure-constants.js";
+export { type CopyMatrix, conjugationMatrix, exchangeMatrix, transferMatrix } from "./su3/symmetries.js";
+export { type TensorComponent, type TensorState, tensorOverlap, tensorStates } from "./su3/tensor-form.js";
 // Tables as sealed Protocol Buffers files, and what must go with them.
 export { canonicalJson } from "./tables/canonical-json.js";
 export { CAUTIONS } from "./tables/cautions.js";
@@ -192,7 +229,13 @@ export { type CascadeDrawer, type CascadeParticle, cascadeDrawer } from "./table
 export { encodeCouplings } from "./tables/encode-couplings.js";
 export { decayPieces, encodeDecays, type StreamedTables } from "./tables/encode-decays.js";
 export { encodeFactors } from "./tables/encode-factors.js";
-export { type HadronsByName, tableHadrons } from "./tables/evaluate-rows.js";
+export {
+  fractionsAt,
+  type HadronsByName,
+  type RowsEvaluator,
+  rowsEvaluator,
+  tableHadrons,
+} from "./tables/evaluate-rows.js";
 export { type AccordOptions, exportAccord } from "./tables/export-accord.js";
 export { exportCouplingsLatex } from "./tables/export-couplings-latex.js";
 export { exportCouplingsCsv, exportDecaysCsv } from "./tables/export-csv.js";
@@ -201,12 +244,64 @@ export type { OwnNumbers } from "./tables/export-numbers.js";
 export { chainWeights, type ReplicaWeights, replicaWeights } from "./tables/replica-weights.js";
 export { checkSeal, digestOf, sealedPieces, type TableKind } from "./tables/sealed-bytes.js";
 export { type DecayFile, openDecays } from "./tables/stream-decays.js";
-export { type WholeFile, writeAllWhole, writeWhole, writeWholePieces } from "./tables/whole-file.js";
+export {
+  type WatchBeside,
+  type WholeFile,
+  writeAllWhole,
+  writeWhole,
+  writeWholePieces,
+} from "./tables/whole-file.js";
+// How sure a fit is: profiles, pseudo-experiments, leaving one out, other width models, errors in parts.
+export { type ErrorParts, type ErrorPartsOptions, errorParts } from "./uncertainty/error-parts.js";
+export {
+  type LeaveOneOutOptions,
+  type LeftOut,
+  leaveOneOut,
+  type ShiftedParameter,
+} from "./uncertainty/leave-one-out.js";
+export { type ModelSpread, modelSpread, type SkippedModel } from "./uncertainty/model-spread.js";
+export {
+  PROFILE_LEVELS,
+  type ProfileFitOptions,
+  profileQuantities,
+  type QuantityProfile,
+} from "./uncertainty/profile.js";
+export {
+  type PseudoExperimentOptions,
+  type PseudoExperiments,
+  type PseudoQuantity,
+  pseudoExperiments,
+} from "./uncertainty/pseudo-experiments.js";
+export {
+  channelWidths,
+  isospinWidths,
+  parameterQuantities,
+  type StudyQuantity,
+} from "./uncertainty/quantities.js";
 export { packageVersion } from "./version.js";
 // Width models and two-body kinematics, in MeV.
 export { allowedWaves, type Wave as AllowedWave } from "./widths/allowed-waves.js";
 export { breakupMomentumMeV } from "./widths/breakup-momentum.js";
+export { drawChannel, drawDaughterMasses, drawMassesJointly, type MassSource } from "./widths/draw-decay.js";
+export { type DrawGrid, drawGrid, drawMass } from "./widths/draw-mass.js";
+export { type Daughter, foldedFactor, foldedWidth, type TwoBodyChannel } from "./widths/folded-width.js";
+export { type LineShape, type LineShapeOptions, lineShape } from "./widths/line-shape.js";
+export {
+  gridWidth,
+  gridWidthMeV,
+  type MassGrid,
+  type MassGridOptions,
+  massGrid,
+} from "./widths/mass-grid.js";
+export { channelFractions, type ParentLineShape, parentLineShape } from "./widths/parent-line-shape.js";
 export { partialWidthMeV, type TwoBodyDecay } from "./widths/partial-width.js";
+export {
+  couplingWidth,
+  powerWidth,
+  type RunningWidth,
+  totalWidth,
+  widthThrough,
+} from "./widths/running-width.js";
 export { type WidthModel, widthModel, widthModelDefinitions } from "./widths/width-model.js";
 export type {
   SpinParity,

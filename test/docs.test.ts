@@ -59,5 +59,14 @@ describe("what README says", () => {
         for (const name of names!.split(",").map((part) => part.trim())) expect(library).toHaveProperty(name);
       }
     }
+    // What paragraphs name for programs: functions begin in lower case, classes in upper.
+    const paragraphs = README.split(/\n\n/).filter((text) =>
+      /^From a program|^- `.*`|^In TypeScript:/.test(text),
+    );
+    const names = paragraphs
+      .flatMap((text) => [...text.matchAll(/`([A-Za-z]+)(?:\(|`)/g)].map((match) => match[1]!))
+      .filter((name) => /^[a-z]+[A-Z0-9]|^[A-Z][a-z]+[A-Z]/.test(name));
+    expect(names.length).toBeGreaterThan(20);
+    expect(names.filter((name) => !(name in library))).toEqual([]);
   });
 });

@@ -4,8 +4,8 @@ import { type Baseline, meantChanges } from "../audit/baseline.js";
 import { type AuditCheck, allHold } from "../audit/check.js";
 import { plannedChecks } from "../audit/plan.js";
 import storedBaseline from "../published/baseline.json";
-import { requireInteger } from "../require.js";
 import { producerName } from "../version.js";
+import { integerOption } from "./integer-option.js";
 import { progressBar } from "./progress.js";
 
 /** What `couplet audit` was asked for. */
@@ -20,8 +20,8 @@ const SHOWN_DIFFERENCES = 10;
 
 /** `couplet audit`: coefficients against published tables, identities and the last baseline. Exit code 1 on differences. */
 export function runAudit(options: AuditOptions): void {
-  const largestSum = Number(options.grid);
-  requireInteger("couplet audit: --grid", largestSum, 0, "It bounds p + q of both factors.", LARGEST_GRID);
+  const mend = "It bounds p + q of both factors.";
+  const largestSum = integerOption("couplet audit: --grid", options.grid, 0, LARGEST_GRID, mend);
   const bar = progressBar("audit", true);
   let checks: AuditCheck[];
   try {

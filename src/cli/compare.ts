@@ -85,11 +85,13 @@ export function describeComparison(
 const READINGS = ["model", "convention", "matrixConvention", "unit"];
 
 /** Whether a change is one of how the tables are made or read. */
-function isReading({ kind }: ItemChange, { path }: Change): boolean {
+function isReading({ kind }: ItemChange, { path, from, to }: Change): boolean {
   const ofTable = kind === "header" || kind === "conventions of matrices";
   const ofFit = kind === "fit" && ["used", "mirrors"].includes(path);
   if (kind === "other minimum") return false;
-  return ofTable || ofFit || READINGS.includes(fieldOf(path)) || path.includes("options[");
+  // The error of an estimate from the width model is called `model` too, and is a number.
+  const isText = from?.kind === "text" || to?.kind === "text";
+  return ofTable || ofFit || (isText && READINGS.includes(fieldOf(path))) || path.includes("options[");
 }
 
 /** Changes of conventions, models and editions, the same change in many rows once. */
@@ -97,11 +99,20 @@ function madeLines(items: readonly ItemChange[]): string[] {
   const counts = new Map<string, number>();
   for (const item of items) {
     for (const change of item.changes.filter((each) => isReading(item, each))) {
-      const line = `  ${item.kind} ${change.path}: ${leafText(change.from)} -> ${leafText(change.to)}`;
-      counts.set(line, (counts.get(line) ?? 0) + 1);
+      for (const line of changeLines(change))
+        counts.set(`  ${item.kind} ${line}`, (counts.get(`  ${item.kind} ${line}`) ?? 0) + 1);
     }
   }
   return [...counts].map(([line, count]) => `${line}${count === 1 ? "" : ` (${count} times)`}\n`);
+}
+
+/** A change of a text in a line; of a list of texts, such as notes, a line for each that is gone or new. */
+function changeLines({ path, from, to }: Change): string[] {
+  const [before, after] = [from, to].map((leaf) => (leaf?.kind === "text" ? leaf.entries : undefined));
+  if (before === undefined && after === undefined) return [`${path}: ${leafText(from)} -> ${leafText(to)}`];
+  const gone = (before ?? []).filter((text) => !after?.includes(text));
+  const added = (after ?? []).filter((text) => !before?.includes(text));
+  return [...gone.map((text) => `${path}, gone: ${text}`), ...added.map((text) => `${path}, new: ${text}`)];
 }
 
 /** Most lines of a study, and coefficients, that are shown; `--json` has them all. */
@@ -128,14 +139,18 @@ function studyDifference({ vanished, added }: Comparison["studyLines"]): string[
 }
 
 /** Parts of a row that follow from its numbers; they are told in one line. */
-const DETAILS = /^(waves|grid|hadron\.lineShape|lineShape|partsPerBillion|error of )/;
+const DETAILS = /^(waves|grid|hadron\.lineShape|lineShape|partsPerBillion)/;
+
+/** Errors of a row's numbers, told in one line too: of the data, to another minimum, between width models. */
+const ERRORS = /^error of |\.(branch|model)$/;
 
 /** The changes of an item that count, its main numbers one by one. */
 function itemText(item: ItemChange): string {
   const told = item.changes.filter((change) => change.counts && !isReading(item, change));
   if (told.length === 0) return "";
-  const main = told.filter(({ path }) => !DETAILS.test(path));
-  const details = told.filter(({ path }) => DETAILS.test(path));
+  const errors = told.filter(({ path }) => ERRORS.test(path));
+  const details = told.filter(({ path }) => DETAILS.test(path) && !ERRORS.test(path));
+  const main = told.filter((change) => !errors.includes(change) && !details.includes(change));
   const rows = main.map(({ path, from, to, percent, sigma }) => [
     path,
     leafText(from),
@@ -144,13 +159,17 @@ function itemText(item: ItemChange): string {
     percent === undefined ? "" : percentText(percent),
     sigma === undefined ? "" : `${signed(sigma, 2)} sigma`,
   ]);
-  const largest = details.reduce((most, { percent }) => Math.max(most, Math.abs(percent ?? 0)), 0);
-  const also =
-    details.length === 0
-      ? ""
-      : `    also ${[...new Set(details.map(({ path }) => path.split(/[.[]/)[0]))].join(", ")}, by up to ${percentText(largest)}\n`;
+  const also = alsoText(details, (path) => path.split(/[.[]/)[0]!) + alsoText(errors, (path) => path);
   const title = item.kind === item.name ? item.kind : `${item.kind} ${item.name}`;
   return `  ${title}\n${textTable(rows, { indent: 4, right: [4, 5] })}${also}`;
+}
+
+/** Several changes by their names and the largest of them; one that has no first value has no size. */
+function alsoText(changes: readonly Change[], nameOf: (path: string) => string): string {
+  if (changes.length === 0) return "";
+  const sizes = changes.flatMap(({ percent }) => (percent === undefined ? [] : [Math.abs(percent)]));
+  const size = sizes.length === 0 ? "" : `, by up to ${percentText(Math.max(...sizes))}`;
+  return `    also ${[...new Set(changes.map(({ path }) => nameOf(path)))].join(", ")}${size}\n`;
 }
 
 function percentText(percent: number): string {

@@ -5,6 +5,7 @@ import { canonicalJson } from "../tables/canonical-json.js";
 import { couplingsMessage, encodeCouplings } from "../tables/encode-couplings.js";
 import { writeAllWhole } from "../tables/whole-file.js";
 import { describeCouplings } from "./describe-couplings.js";
+import { announceUnfinished } from "./own-thread.js";
 import { fitStudyFile } from "./run-study.js";
 
 /** `couplet couplings`: the coupling of every vertex of a study, for people, as JSON or into a file. */
@@ -17,7 +18,7 @@ export function runCouplings(path: string, options: { json?: true; out?: string 
       path: tables.length === 1 ? out : minimumFile(out, table.minimum),
       bytes: encodeCouplings(table),
     }));
-    writeAllWhole(files);
+    writeAllWhole(files, announceUnfinished);
     if (!options.json) {
       for (const { path: file, bytes } of files)
         process.stdout.write(`wrote ${file} (${bytes.length} bytes)\n`);

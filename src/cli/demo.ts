@@ -6,6 +6,7 @@ import { withError } from "../tables/rounding.js";
 import { writeWhole } from "../tables/whole-file.js";
 import { DEMO_STUDY } from "./demo-study.js";
 import { describePulls } from "./fit.js";
+import { degreesText } from "./labels.js";
 import { readInput } from "./read-input.js";
 import { fitStudyFile } from "./run-study.js";
 import { describeParent, ERROR_WORDS } from "./show.js";
@@ -28,7 +29,7 @@ export function runDemo({ out }: { out: string }): void {
     [
       `${fit.model.study.title}\nEvery number in it is invented.\n`,
       describePulls(best),
-      `\nF/D = ${parameter(best, "F/D")}   (alpha_F = ${parameter(best, "alpha_F")}, chi2 ${best.chi2.toFixed(1)} with ${best.ndf} degrees of freedom)\n`,
+      `\nF/D = ${parameter(best, "F/D")}   (alpha_F = ${parameter(best, "alpha_F")}, chi2 ${best.chi2.toFixed(1)} with ${degreesText(best.ndf)})\n`,
       ...others
         .filter(({ chi2 }) => chi2 - best.chi2 < LISTED_DELTA_CHI2)
         .map((minimum) => otherMinimum(best, minimum)),

@@ -7,6 +7,8 @@ import { textTable } from "./text-table.js";
 
 import v1 = couplet.v1;
 
+import { degreesText } from "./labels.js";
+
 type Maybe<T> = T | null | undefined;
 
 /** Sums as a terminal shows them. */
@@ -44,7 +46,7 @@ function describeHead(
   return [
     `${source}: ${header?.title}`,
     `couplings by ${header?.producer}, schema 1.${header?.schemaMinor}`,
-    `fit: minimum ${used + 1} of ${fit?.minima?.length ?? 0} (mirrors: ${fit?.mirrors}), chi2 ${minimum?.chi2?.toFixed(2)} with ${minimum?.ndf} degrees of freedom`,
+    `fit: minimum ${used + 1} of ${fit?.minima?.length ?? 0} (mirrors: ${fit?.mirrors}), chi2 ${minimum?.chi2?.toFixed(2)} with ${degreesText(minimum?.ndf)}`,
     `phases of states: ${header?.convention}; phases of matrices: ${matrixConvention?.id}, with`,
     `  ${matrixConvention?.lagrangian}`,
     ...octets,

@@ -10,6 +10,9 @@ import { textTable } from "./text-table.js";
 
 import v1 = couplet.v1;
 
+import { degreesText } from "./labels.js";
+import { totalWidthText } from "./parent-words.js";
+
 type Maybe<T> = T | null | undefined;
 
 /** A row with all its file says about it. */
@@ -44,6 +47,7 @@ export function describeRow(found: RowOfTable): string {
     ["The number", numberLines(found)],
     ["Before a policy moved it", adjustmentLines(found)],
     ["Errors of the fraction, of which each answers another question", errorLines(row)],
+    ["Over the parent's line shape", integratedLines(found)],
     ["Total width", totalLines(parent, quotes)],
     ["Measurement", measurementLines(row, quotes)],
     ["Split into charge states", splitLines(found)],
@@ -87,13 +91,9 @@ function numberLines({ parent, row }: RowOfTable): string[] {
   const fraction = row.fraction?.value ?? 0;
   const rounded = Math.round(fraction * WHOLE);
   const residue = parts - rounded;
-  const { integratedFraction } = row;
   return [
     `${parts} parts per 10^9 = ${rounded} (the fraction rounded)${residue === 0 ? "" : ` ${signedText(residue)} (what rounding left over in all rows, put here)`}`,
     `fraction ${number(fraction)} = partial width ${number(row.width?.value)} MeV / total width ${number(parent.totalWidth)} MeV`,
-    ...(integratedFraction == null
-      ? []
-      : [`over the parent's line shape the fraction is ${number(integratedFraction)}`]),
     `threshold ${number(row.threshold)} MeV, parent's mass ${number(parent.hadron?.mass)} MeV, momentum ${number(row.momentum)} MeV`,
     ...(row.power == null
       ? []
@@ -140,16 +140,31 @@ function errorLines({ fraction, origin }: v1.Row.$Properties): string[] {
   ];
 }
 
-function totalLines(
-  { hadron, multiplet, totalWidth, totalWidthError, totalOrigin }: v1.Parent.$Properties,
-  quotes: StudyQuotes,
-): string[] {
-  const text = `${withError(totalWidth ?? 0, totalWidthError ?? 0)} MeV`;
+/** The fraction integrated over the line shape with the same parts of its error, which are other numbers. */
+function integratedLines({ parent, row }: RowOfTable): string[] {
+  const { integrated, integratedFraction } = row;
+  if (integratedFraction == null) return [];
+  const { low, high } = parent.hadron?.lineShape ?? {};
+  const { plus, minus, breaking, branch, model } = integrated ?? {};
+  const size = (error: Maybe<number>) => number(error, 3);
+  return [
+    `fraction ${number(integratedFraction)}, integrated from ${number(low, 5)} to ${number(high, 5)} MeV`,
+    ...(integrated == null
+      ? []
+      : [
+          `data +${size(plus)} -${size(minus)}, breaking ${size(breaking)}${branch == null ? "" : `, branch ${size(branch)}`}${model == null ? "" : `, model ${size(model)}`}: those of all widths, at the same distribution of the mass`,
+        ]),
+  ];
+}
+
+function totalLines(parent: v1.Parent.$Properties, quotes: StudyQuotes): string[] {
+  const { hadron, multiplet, totalOrigin, totalSource } = parent;
+  const text = `${totalWidthText(parent)} MeV`;
   if (totalOrigin === v1.TotalOrigin.TOTAL_ORIGIN_SUM)
     return [`${text}, the sum of the rows of ${hadron?.name}`];
   const quote = quotes.width(multiplet ?? "", hadron?.name ?? "");
   return quote === undefined
-    ? [`${text}, of the catalogue`]
+    ? [`${text}, of the catalogue${totalSource ? ` (${totalSource})` : ""}`]
     : [`${text}, given in the study, line ${quote.line}:`, `  ${quote.text}`];
 }
 
@@ -182,10 +197,11 @@ function splitLines({ parent, row }: RowOfTable): string[] {
     const factors = (waves ?? []).map(({ kinematicFactor }) => number(kinematicFactor, 5)).join(", ");
     return [number((c ?? 0) ** 2, 5), number(s, 2), factors];
   });
+  const whole = sum(rows.map(({ width }) => width?.value ?? 0));
   const cells = rows.map((each, k) => [
     each.id ?? "",
     ...weights[k]!,
-    number((each.width?.value ?? 0) / sum(rows.map(({ width }) => width?.value ?? 0)), 5),
+    number(whole > 0 ? (each.width?.value ?? 0) / whole : 0, 5),
   ]);
   const head = ["charge state", "isospin", "identical", "K of each wave", "share of the width"];
   return [
@@ -227,7 +243,7 @@ function fitLines({ fit, header }: v1.DecayTables, row: v1.Row.$Properties): str
     names.some((name) => quantity?.includes(name!)),
   );
   return [
-    `minimum ${used + 1} of ${fit?.minima?.length}, chi2 ${minimum?.chi2?.toFixed(2)} with ${minimum?.ndf} degrees of freedom, ${minimum?.pulls?.length} data; convention ${header?.convention}`,
+    `minimum ${used + 1} of ${fit?.minima?.length}, chi2 ${minimum?.chi2?.toFixed(2)} with ${degreesText(minimum?.ndf)}, ${minimum?.pulls?.length} data; convention ${header?.convention}`,
     couplings.join(", "),
     ...pulls.map(
       ({ quantity, measured, plus, minus, unit, fitted, pull, source }) =>

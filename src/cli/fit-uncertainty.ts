@@ -1,13 +1,13 @@
 import { availableParallelism } from "node:os";
 import { InputError } from "../errors.js";
 import type { Fit } from "../model/fit-model.js";
-import { requireInteger } from "../require.js";
 import { type ErrorParts, errorParts } from "../uncertainty/error-parts.js";
 import { type LeftOut, leaveOneOut } from "../uncertainty/leave-one-out.js";
 import { type ModelSpread, modelSpread } from "../uncertainty/model-spread.js";
 import { profileQuantities, type QuantityProfile } from "../uncertainty/profile.js";
 import { type PseudoExperiments, pseudoExperiments } from "../uncertainty/pseudo-experiments.js";
 import { isospinWidths, parameterQuantities } from "../uncertainty/quantities.js";
+import { integerOption } from "./integer-option.js";
 import { type Progress, progressBar } from "./progress.js";
 
 /** What `couplet fit` was asked for beyond the fit itself, as written on the command line. */
@@ -43,15 +43,10 @@ export function toyOptions({ toys, seed, workers }: UncertaintyOptions) {
       `couplet fit: --${lonely[0]} belongs to --toys, which is not there. Add --toys <n>, or leave it out.`,
     );
   }
-  const integer = (name: string, text: string, minimum: number, maximum: number): number => {
-    const value = text.trim() === "" ? Number.NaN : Number(text);
-    requireInteger(`couplet fit: --${name}`, value, minimum, "", maximum);
-    return value;
-  };
   return {
-    count: integer("toys", toys, 1, 1e8),
-    seed: integer("seed", seed ?? "1", 0, 2 ** 32 - 1),
-    workers: integer("workers", workers ?? String(availableParallelism()), 1, 256),
+    count: integerOption("couplet fit: --toys", toys, 1, 1e8),
+    seed: integerOption("couplet fit: --seed", seed ?? "1", 0, 2 ** 32 - 1),
+    workers: integerOption("couplet fit: --workers", workers ?? String(availableParallelism()), 1, 256),
   };
 }
 

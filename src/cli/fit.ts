@@ -6,6 +6,7 @@ import {
   type Pull,
   type StudyMinimum,
 } from "../model/fit-model.js";
+import { notesOfOpenChannels } from "../model/notes.js";
 import { validityWarnings } from "../model/validity.js";
 import { asGiven, significant, withError } from "../tables/rounding.js";
 import { describeUncertainties } from "./describe-uncertainty.js";
@@ -15,6 +16,7 @@ import {
   uncertaintiesJson,
   uncertaintiesOf,
 } from "./fit-uncertainty.js";
+import { degreesText } from "./labels.js";
 import { fitStudyFile } from "./run-study.js";
 import { textTable } from "./text-table.js";
 
@@ -60,7 +62,7 @@ export function fitJson(fit: Fit) {
       reactionSigns: minimum.reactionSigns,
       equivalents: minimum.equivalents,
     })),
-    notes: fit.model.notes,
+    notes: notesOfOpenChannels(fit.model),
     warnings: validityWarnings(fit, 0),
   };
 }
@@ -77,7 +79,7 @@ export function describeFit(fit: Fit): string {
     );
   }
   if (fit.minima.length === 1) parts.push("\nThere is no other minimum.\n");
-  parts.push(...fit.model.notes.map((note) => `\nNote: ${note}\n`), describeWarnings(fit, 0));
+  parts.push(...notesOfOpenChannels(fit.model).map((note) => `\nNote: ${note}\n`), describeWarnings(fit, 0));
   return parts.join("");
 }
 
@@ -102,7 +104,7 @@ const MAIN_KINDS: readonly FittedParameter["kind"][] = ["coupling", "derived", "
 export function describeMinimum(minimum: StudyMinimum, title: string): string {
   const chance =
     minimum.probability === undefined ? "" : `, probability ${minimum.probability.toPrecision(3)}`;
-  const head = `\n${title}: chi2 ${minimum.chi2.toFixed(2)} with ${minimum.ndf} degrees of freedom${chance}\n`;
+  const head = `\n${title}: chi2 ${minimum.chi2.toFixed(2)} with ${degreesText(minimum.ndf)}${chance}\n`;
   const scale = scaleFactor(minimum.chi2, minimum.ndf) ?? 1;
   const isScaled = scale >= 1.005;
   const scaled = isScaled
@@ -110,7 +112,13 @@ export function describeMinimum(minimum: StudyMinimum, title: string): string {
     : "";
   const rank = ({ kind }: FittedParameter) =>
     (MAIN_KINDS.indexOf(kind) + MAIN_KINDS.length + 1) % (MAIN_KINDS.length + 1);
-  const rows = [...minimum.parameters]
+  const idle = minimum.parameters.filter((parameter) => !isMeasured(parameter));
+  const rest =
+    idle.length === 0
+      ? ""
+      : `  not listed, since no measurement depends on ${idle.length === 1 ? "it" : "them"}: ${idle.map(({ name }) => name).join("; ")}\n`;
+  const rows = minimum.parameters
+    .filter(isMeasured)
     .sort((x, y) => rank(x) - rank(y))
     .map(({ name, value, error, unit }) => [
       name,
@@ -125,10 +133,21 @@ export function describeMinimum(minimum: StudyMinimum, title: string): string {
   const equivalents =
     minimum.equivalents === 0
       ? ""
-      : `  ${minimum.equivalents} other sets of parameters predict exactly the same; they are not listed\n`;
+      : `  ${minimum.equivalents === 1 ? "1 other set of parameters predicts exactly the same; it is" : `${minimum.equivalents} other sets of parameters predict exactly the same; they are`} not listed\n`;
   return (
-    head + textTable(rows, { indent: 2 }) + scaled + signs.join("") + equivalents + describeVerdicts(minimum)
+    head +
+    textTable(rows, { indent: 2 }) +
+    rest +
+    scaled +
+    signs.join("") +
+    equivalents +
+    describeVerdicts(minimum)
   );
+}
+
+/** Whether the fit says more of a parameter than was given of it. */
+function isMeasured({ given }: FittedParameter): boolean {
+  return given === undefined || given.measured;
 }
 
 function inDegrees(value: number, error: number, unit: string): string {
@@ -163,7 +182,9 @@ export function describePulls({ pulls, parameters }: StudyMinimum): string {
     pullLine(observable.label, measuredText(observable), observable.measured.unit, fitted, pull),
   );
   const given = parameters.flatMap(({ name, kind, unit, value, given: prior }) =>
-    prior === undefined || kind === "breaking" ? [] : [{ name, unit, fitted: value, ...prior }],
+    prior === undefined || !prior.measured || kind === "breaking"
+      ? []
+      : [{ name, unit, fitted: value, ...prior }],
   );
   const moved = given
     .filter(({ pull }) => Math.abs(pull) >= LISTED_PULL)
@@ -173,7 +194,9 @@ export function describePulls({ pulls, parameters }: StudyMinimum): string {
   const rest = given.length - moved.length;
   const head = ["quantity", "measured", "", "fitted", "pull", ""];
   return `\n${textTable([head, ...measured, ...moved], { indent: 2, right: [1, 3, 4] })}${
-    rest === 0 ? "" : `  pulls of ${rest} given masses, total widths or angles are below ${LISTED_PULL}\n`
+    rest === 0
+      ? ""
+      : `  ${rest === 1 ? "the pull of 1 given mass, total width or angle is" : `pulls of ${rest} given masses, total widths or angles are`} below ${LISTED_PULL}\n`
   }`;
 }
 

@@ -24,6 +24,16 @@ const MESON_NAMES: Readonly<Record<string, string>> = {
   "-3,1": "Kbar",
 };
 
+/** `1 parent`, `2 parents`; with a plural that is not regular where it is given. */
+export function counted(count: number, noun: string, plural = `${noun}s`): string {
+  return `${count} ${count === 1 ? noun : plural}`;
+}
+
+/** `1 degree of freedom`. */
+export function degreesText(ndf: number | null | undefined): string {
+  return counted(ndf ?? 0, "degree of freedom", "degrees of freedom");
+}
+
 /** A quantum number given as a multiple of 1/`unit`, e.g. `1/2`. */
 export function fractionText(multiple: number, unit: number): string {
   return multiple % unit === 0 ? String(multiple / unit) : `${multiple}/${unit}`;

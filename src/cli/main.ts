@@ -25,7 +25,7 @@ function program(): Command {
     .addHelpText(
       "after",
       `
-An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 1 a comparison found differences; 2 wrong input; 3 a damaged or newer table file;
+An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 1 a comparison or audit found differences; 2 wrong input; 3 a damaged or newer table file;
 4 a request too large; 70 a bug of ours; 130 stopped by the user.`,
     );
   root
@@ -103,7 +103,7 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 1 a comparison 
     .argument("<file>", "a .pb file written by Couplet")
     .option("--parent <name>", "only this hadron, by name or Monte Carlo number")
     .option("--row <id>", "one row's number from its source on, e.g. 'Delta(1232)+ -> p pi0'")
-    .option("--json", "canonical JSON of the message in the file")
+    .option("--json", "canonical JSON of the message in the file, or of that parent or row")
     .action(async (file: string, options: ShowOptions) => (await import("./show.js")).runShow(file, options));
   root
     .command("compare")
@@ -179,10 +179,14 @@ function report(error: unknown): number {
 function run(): void {
   if (isMainThread) {
     process.on("SIGINT", () => process.exit(130));
-    // A reader such as `head` may close the pipe early; that is no error.
-    process.stdout.on("error", (error: NodeJS.ErrnoException) =>
-      process.exit(error.code === "EPIPE" ? 0 : 70),
-    );
+    process.stdout.on("error", (error: NodeJS.ErrnoException) => {
+      // A reader such as `head` may close the pipe early; that is no error.
+      if (error.code === "EPIPE") process.exit(0);
+      process.stderr.write(
+        `couplet: standard output: could not be written: ${error.message}. Free space, or send it elsewhere.\n`,
+      );
+      process.exit(2);
+    });
   }
   if (isMainThread && needsOwnThread(process.argv.slice(2))) {
     runInOwnThread(__filename);

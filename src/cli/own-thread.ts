@@ -17,9 +17,10 @@ export function needsOwnThread([command]: readonly string[]): boolean {
  */
 export function runInOwnThread(script: string): void {
   const thread = new Worker(script, { argv: process.argv.slice(2) });
-  let unfinished: string | undefined;
-  thread.on("message", (message: Unfinished) => {
-    unfinished = message.unfinished;
+  const unfinished = new Set<string>();
+  thread.on("message", ({ beside, exists }: Unfinished) => {
+    if (exists) unfinished.add(beside);
+    else unfinished.delete(beside);
   });
   for (const [signal, code] of [
     ["SIGTERM", 143],
@@ -28,7 +29,7 @@ export function runInOwnThread(script: string): void {
     process.on(signal, () => process.exit(code));
   }
   process.on("exit", () => {
-    if (unfinished !== undefined) rmSync(unfinished, { force: true });
+    for (const beside of unfinished) rmSync(beside, { force: true });
   });
   thread.on("error", (error) => {
     process.stderr.write(`couplet: ${error.stack ?? error.message}\n`);
@@ -39,13 +40,14 @@ export function runInOwnThread(script: string): void {
   });
 }
 
-/** What a thread tells the main one about the file it is writing. */
+/** What a thread tells the main one about a file it is writing. */
 interface Unfinished {
-  readonly unfinished: string | undefined;
+  readonly beside: string;
+  readonly exists: boolean;
 }
 
-/** Names a file that must go if the process is stopped now, or none; from any thread, heard in that of `runInOwnThread`. */
-export function announceUnfinished(name: string | undefined): void {
-  const message: Unfinished = { unfinished: name };
+/** Names a file that must go if the process is stopped, or need not any more; heard in the thread of `runInOwnThread`. */
+export function announceUnfinished(beside: string, exists: boolean): void {
+  const message: Unfinished = { beside, exists };
   parentPort?.postMessage(message);
 }

@@ -1,8 +1,9 @@
 import pino from "pino";
-import { refuse, requireInteger } from "../require.js";
+import { refuse } from "../require.js";
 import { parseAddress } from "../sidecar/address.js";
 import type { TlsFiles } from "../sidecar/credentials.js";
 import { type Sidecar, startSidecar } from "../sidecar/sidecar.js";
+import { integerOption } from "./integer-option.js";
 
 /** Options of `couplet serve` as the command line gives them. */
 export interface ServeOptions {
@@ -20,8 +21,7 @@ const LOG_LEVELS = ["debug", "info", "warn", "error"];
 
 /** `couplet serve`: runs the sidecar until it is told to stop. */
 export async function runServe(files: readonly string[], options: ServeOptions): Promise<void> {
-  const drainSeconds = Number(options.drainSeconds);
-  requireInteger("--drain-seconds", drainSeconds, 0, "", 3600);
+  const drainSeconds = integerOption("--drain-seconds", options.drainSeconds, 0, 3600);
   if (!LOG_LEVELS.includes(options.logLevel))
     refuse("--log-level", `one of ${LOG_LEVELS.join(", ")}`, options.logLevel);
   const log = pino({ level: options.logLevel, base: null }, pino.destination({ fd: 2, sync: true }));

@@ -5,10 +5,12 @@ import { canonicalJson } from "../tables/canonical-json.js";
 import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
 import { decodeFactors } from "../tables/decode-factors.js";
-import { roundedValue, significant, withError } from "../tables/rounding.js";
+import { significant, withError } from "../tables/rounding.js";
 import { checkSeal, digestOf, type TableKind } from "../tables/sealed-bytes.js";
 import { describeCouplings } from "./describe-couplings.js";
 import { describeRow, rowNamed } from "./describe-row.js";
+import { counted, degreesText } from "./labels.js";
+import { totalWidthText, totalWords, withErrors } from "./parent-words.js";
 import { readInput } from "./read-input.js";
 import { textTable } from "./text-table.js";
 
@@ -32,14 +34,20 @@ export function runShow(path: string, options: ShowOptions): void {
         ? `${JSON.stringify(canonicalJson("couplet.v1.Row", found.row), null, 2)}\n`
         : describeRow(found),
     );
+  } else if (options.parent !== undefined) {
+    const tables = decodeDecays(bytes, path);
+    const parent = parentNamed(tables, options.parent, path);
+    process.stdout.write(
+      options.json
+        ? `${JSON.stringify(canonicalJson("couplet.v1.Parent", parent), null, 2)}\n`
+        : describeHeader(tables, path, digestOf(bytes)) + describeParent(parent),
+    );
   } else if (options.json) {
     process.stdout.write(`${JSON.stringify(canonicalJson(kind, decoded(kind, bytes, path)), null, 2)}\n`);
   } else if (kind === "couplet.v1.DecayTables") {
     const tables = decodeDecays(bytes, path);
-    const parents =
-      options.parent === undefined ? tables.parents : [parentNamed(tables, options.parent, path)];
     process.stdout.write(
-      describeHeader(tables, path, digestOf(bytes)) + parents.map(describeParent).join(""),
+      describeHeader(tables, path, digestOf(bytes)) + tables.parents.map(describeParent).join(""),
     );
   } else if (kind === "couplet.v1.CouplingTables") {
     const tables = decodeCouplings(bytes, path);
@@ -60,9 +68,9 @@ function parentNamed({ parents }: v1.DecayTables, name: string, path: string): v
     parents.find(({ hadron }) => hadron?.mcAliases?.includes(number));
   if (found !== undefined) return found;
   const names = parents.map(({ hadron }) => hadron?.name ?? "");
-  throw new InputError(
-    `${path}: expected a parent of this table, got ${JSON.stringify(name)}. Nearest: ${nearestNames(name, names).join(", ")}.`,
-  );
+  const near = nearestNames(name, names);
+  const mend = near.length > 0 ? `Nearest: ${near.join(", ")}` : `There are: ${names.join(", ")}`;
+  throw new InputError(`${path}: expected a parent of this table, got ${JSON.stringify(name)}. ${mend}.`);
 }
 
 function describeHeader(
@@ -74,9 +82,9 @@ function describeHeader(
   const lines = [
     `${path}: ${header.title}`,
     `decay tables by ${header.producer}, schema 1.${header.schemaMinor}, sha256 ${digest.slice(0, 16)}..., masses and widths in ${header.unit}`,
-    `convention ${header.convention}; ${parents.length} parents; daughters to be known elsewhere: ${externals.map(({ name }) => name).join(", ")}`,
+    `convention ${header.convention}; ${counted(parents.length, "parent")}; daughters to be known elsewhere: ${externalNames(externals, parents)}`,
     closureText(leftOpen, parents),
-    `fit: minimum ${(fit?.used ?? 0) + 1} of ${fit?.minima?.length ?? 0} (mirrors: ${fit?.mirrors}), chi2 ${best?.chi2?.toFixed(2)} with ${best?.ndf} degrees of freedom`,
+    `fit: minimum ${(fit?.used ?? 0) + 1} of ${fit?.minima?.length ?? 0} (mirrors: ${fit?.mirrors}), chi2 ${best?.chi2?.toFixed(2)} with ${degreesText(best?.ndf)}`,
     ...(best?.parameters ?? []).map(
       ({ name, value, error, unit }) =>
         `  ${name}  ${withError(value ?? 0, error ?? 0)}${unit === "1" ? "" : ` ${unit}`}`,
@@ -87,6 +95,15 @@ function describeHeader(
     ...header.notes.map((note) => `note: ${note}`),
   ];
   return `${lines.join("\n")}\n`;
+}
+
+/** Daughters that are no parents here, of rows that can happen: open ones, and those that the line shape opens. */
+function externalNames(externals: readonly v1.Hadron.$Properties[], parents: readonly v1.Parent[]): string {
+  const happening = parents.flatMap(({ rows }) =>
+    rows.filter((row) => row.kinematics !== v1.Kinematics.KINEMATICS_CLOSED || row.integratedFraction),
+  );
+  const names = new Set(happening.flatMap(({ daughters }) => (daughters ?? []).map(({ name }) => name)));
+  return externals.flatMap(({ name }) => (name != null && names.has(name) ? [name] : [])).join(", ");
 }
 
 /** What the errors in the parents' tables are. */
@@ -102,7 +119,7 @@ function replicaLines(replicas: readonly v1.Replica.$Properties[]): string[] {
   const unreachable = replicas.filter(({ unreachableRows }) => unreachableRows).length;
   const seed = replicas.find((replica) => replica.seed != null)?.seed;
   return [
-    `${replicas.length} replicas: ${count(REPLICA_PART_DATA)} of the data and ${count(REPLICA_PART_BREAKING)} of breaking (seed ${seed}), ${count(REPLICA_PART_BRANCH)} of other minima, ${count(REPLICA_PART_MODEL)} of other width models${unreachable === 0 ? "" : `; ${unreachable} of them open rows that have no width here, which no weight can bring in`}`,
+    `${counted(replicas.length, "replica")}: ${count(REPLICA_PART_DATA)} of the data and ${count(REPLICA_PART_BREAKING)} of breaking (seed ${seed}), ${count(REPLICA_PART_BRANCH)} of other minima, ${count(REPLICA_PART_MODEL)} of other width models${unreachable === 0 ? "" : `; ${unreachable} of them open rows that have no width here, which no weight can bring in`}`,
   ];
 }
 
@@ -145,29 +162,25 @@ export function describeParent(parent: v1.Parent): string {
     hadron?.mcNumber == null
       ? "no Monte Carlo number"
       : `Monte Carlo number ${hadron.mcNumber}${aliasText(hadron.mcAliases ?? [])}`;
-  const width = withError(parent.totalWidth ?? 0, parent.totalWidthError ?? 0);
-  const origin = parent.totalOrigin === v1.TotalOrigin.TOTAL_ORIGIN_SUM ? "sum of rows" : "measured";
-  const head = `\n${hadron?.name}  mass ${significant(hadron?.mass ?? 0, 6)} MeV, width ${width} MeV (${origin}), ${mc}\n`;
+  const head = `\n${hadron?.name}  mass ${significant(hadron?.mass ?? 0, 6)} MeV, width ${totalWidthText(parent)} MeV (${totalWords(parent)})${windowText(hadron)}, ${mc}\n`;
   const rows = parent.rows.map((row) => {
     const { fraction } = row;
-    const percent = (x: number | null | undefined) => 100 * (x ?? 0);
     const closed = row.kinematics === v1.Kinematics.KINEMATICS_CLOSED;
     const parts = [
       ["br.", fraction?.breaking],
       ["min.", fraction?.branch],
       ["mod.", fraction?.model],
     ] as const;
-    const integrated = row.integratedFraction;
     return [
       row.id,
       closed
         ? "closed"
         : withErrors(percent(fraction?.value), percent(fraction?.plus), percent(fraction?.minus)),
-      integrated === undefined || integrated === null ? "" : significant(percent(integrated), 3),
+      integratedText(row),
       parts
         .flatMap(([name, part]) => (closed || !part ? [] : [`${name} ${significant(percent(part), 2)}`]))
         .join("  "),
-      significant(row.width?.value ?? 0, 4),
+      significant(withoutRoundingZero(fraction?.value ?? 0) === 0 ? 0 : (row.width?.value ?? 0), 4),
       String(row.partsPerBillion),
       ORIGIN_WORDS[row.origin ?? 0]!,
       (row.flags ?? []).map((flag) => FLAG_WORDS[flag]).join(", "),
@@ -181,12 +194,27 @@ export function describeParent(parent: v1.Parent): string {
   );
 }
 
-/** A value with its errors, or with one where rounding makes them equal. */
-function withErrors(value: number, plus: number, minus: number): string {
-  const rounded = roundedValue(value, plus, minus);
-  return rounded.plus === rounded.minus
-    ? withError(value, plus)
-    : `${rounded.value} +${rounded.plus} -${rounded.minus}`;
+/** The fraction over the line shape in percent, with its errors from data; empty for a parent without line shape. */
+function integratedText({ integratedFraction: value, integrated }: v1.Row.$Properties): string {
+  if (value == null) return "";
+  if (integrated == null) return significant(percent(value), 3);
+  return withErrors(percent(value), percent(integrated.plus), percent(integrated.minus));
+}
+
+function windowText(hadron: v1.Hadron.$Properties | null | undefined): string {
+  const { low, high } = hadron?.lineShape ?? {};
+  return low == null || high == null ? "" : `, line shape from ${low.toFixed(0)} to ${high.toFixed(0)} MeV`;
+}
+
+function percent(fraction: number | null | undefined): number {
+  return 100 * withoutRoundingZero(fraction ?? 0);
+}
+
+/** Of the total width, what is no more than the rounding of a zero. */
+const ROUNDING_ZERO = 1e-12;
+
+function withoutRoundingZero(fraction: number): number {
+  return Math.abs(fraction) < ROUNDING_ZERO ? 0 : fraction;
 }
 
 function describeFactorFile(table: v1.FactorTable, path: string, digest: string): string {

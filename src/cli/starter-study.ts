@@ -48,7 +48,8 @@ measurements:
 # Where the data allow several solutions: refuse (the default), best, or each (one file for each).
 fit: { mirrors: refuse }
 
-# Breaking of the symmetry in amplitude, relative to the coupling: it gives predicted rows their second error.
+# Breaking of the symmetry in amplitude, as a part of the coupling strength |g|: it gives predicted rows their second error.
+# 0.2 is 20 % of |g|; in a channel that takes a quarter of |g|^2 that is 40 % of the amplitude.
 # With \`widthModels: compared\` rows also quote the error from the width model; the fit is then made once for each.
 tables: { breaking: 0.2, widthModels: own }
 `;

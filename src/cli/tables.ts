@@ -9,6 +9,8 @@ import { encodeDecays } from "../tables/encode-decays.js";
 import { digestOf } from "../tables/sealed-bytes.js";
 import { writeAllWhole } from "../tables/whole-file.js";
 import { describeMinimum, describePulls, describeWarnings } from "./fit.js";
+import { counted } from "./labels.js";
+import { announceUnfinished } from "./own-thread.js";
 import { fitStudyFile } from "./run-study.js";
 
 /** A decay table file that was written. */
@@ -52,7 +54,10 @@ export function writeTables(fit: Fit, studyPath: string, folder: string): Writte
     const couplingFile = { path: `${stem}${suffix}.couplings.pb`, bytes: encodeCouplings(couplings) };
     return { decays, couplings, decayFile, couplingFile };
   });
-  writeAllWhole(tables.flatMap(({ decayFile, couplingFile }) => [decayFile, couplingFile]));
+  writeAllWhole(
+    tables.flatMap(({ decayFile, couplingFile }) => [decayFile, couplingFile]),
+    announceUnfinished,
+  );
   return tables.map(({ decays, couplings, decayFile, couplingFile }) => ({
     ...described(decayFile),
     minimum: decays.minimum,
@@ -81,8 +86,8 @@ function describeWritten(fit: Fit, written: readonly Written[]): string {
       describeMinimum(fit.minima[minimum]!, title) +
       describePulls(fit.minima[minimum]!) +
       describeWarnings(fit, minimum) +
-      `\nwrote ${file}: ${parents} parents, ${rows} rows, sha256 ${sha256.slice(0, 16)}...\n` +
-      `wrote ${couplings.file}: ${couplings.vertices} vertices, sha256 ${couplings.sha256.slice(0, 16)}...\n`
+      `\nwrote ${file}: ${counted(parents, "parent")}, ${counted(rows, "row")}, sha256 ${sha256.slice(0, 16)}...\n` +
+      `wrote ${couplings.file}: ${counted(couplings.vertices, "vertex", "vertices")}, sha256 ${couplings.sha256.slice(0, 16)}...\n`
     );
   });
   return `${fit.model.study.title}\n${parts.join("")}\nLook into it with: couplet show ${written[0]!.file}\n`;

@@ -11,9 +11,10 @@ import { entriesOf, measuredWidths } from "./entries.js";
 import { withShortAndLongKaons } from "./neutral-kaons.js";
 import { parentTable } from "./parent-table.js";
 import { predict } from "./predictions.js";
-import { ReplicaRows } from "./replica-rows.js";
-import { worlds } from "./replicas.js";
+import { ReplicaRows, worldRatios } from "./replica-rows.js";
+import { alternativeWorld, worlds } from "./replicas.js";
 import type { ParentTable, Tables } from "./tables.js";
+import { withTailWarning } from "./tail-warning.js";
 import { completeParent } from "./total-width.js";
 
 /**
@@ -53,14 +54,26 @@ export function complete(fit: Fit, minimum: number): Tables {
     if ("conflict" in completed) problems.push(`${file}: ${completed.conflict}`);
     else {
       const judged = withErrorParts(completed, parent, index, alternatives);
-      const table = withWarnings(parentTable(predictions, parent, entries, judged, shapes), warnings);
+      const others = alternatives.map((alternative) => ({
+        part: alternative.part,
+        ratios: worldRatios(
+          predictions,
+          alternativeWorld(predictions, alternative),
+          parent,
+          index,
+          entries,
+          completed,
+        ).map((ratio) => ratio ?? 1),
+      }));
+      const table = withWarnings(parentTable(predictions, parent, entries, judged, shapes, others), warnings);
       plain.push(replicas.withRatios(table, index, entries, completed));
     }
   }
   if (problems.length > 0) throw new InputError(problems.join("\n"));
   checkRows(plain);
   const own = policies.antiparticles === "rows" ? withAntiparticles(plain) : plain;
-  const parents = policies.neutralKaons === "short-long" ? withShortAndLongKaons(own, file) : own;
+  const final = policies.neutralKaons === "short-long" ? withShortAndLongKaons(own, file) : own;
+  const parents = final.map(withTailWarning);
   return {
     fit,
     minimum,

@@ -104,9 +104,12 @@ export function entriesOf(predictions: Predictions, parent: Parent, measured: Me
 
 function entryOf(model: Model, predictions: Predictions, index: number, measured: Measured): Entry {
   const { id } = model.channels[index]!;
-  const { widthMeV, gradient, breakingMeV, group } = predictions.channels[index]!;
+  const { widthMeV, gradient, breakingMeV, closed, group } = predictions.channels[index]!;
   const found = measured.byChannel.get(index);
-  if (found === undefined) return { id, kind: "predicted", widthMeV, gradient, breakingMeV, group };
+  if (found === undefined) {
+    const change = closed === undefined ? {} : { closed };
+    return { id, kind: "predicted", widthMeV, gradient, breakingMeV, ...change, group };
+  }
   const { quantum, measured: quantity } = measured.observables[found.observable]!;
   return {
     id,

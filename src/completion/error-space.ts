@@ -22,6 +22,11 @@ export class ErrorSpace {
     return new Array<number>(this.size).fill(0);
   }
 
+  /** A gradient over the model's parameters alone. */
+  ofParameters(gradient: readonly number[]): Gradient {
+    return [...gradient, ...this.zero().slice(this.parameterCount)];
+  }
+
   /** Gradient of the part of an entry's width that does not scale with the total. */
   private width(entry: Entry): number[] {
     const gradient = this.zero();
@@ -85,12 +90,12 @@ export class ErrorSpace {
   }
 
   private estimate(value: number, gradient: Gradient, breaking: number): Estimate {
-    return { value, plus: this.side(gradient, 1), minus: this.side(gradient, -1), breaking };
+    return { value, ...this.errors(gradient), breaking };
   }
 
-  /** Mean standard deviation of what has this gradient. */
-  sigma(gradient: Gradient): number {
-    return (this.side(gradient, 1) + this.side(gradient, -1)) / 2;
+  /** Standard deviations upwards and downwards of what has this gradient. */
+  errors(gradient: Gradient): { plus: number; minus: number } {
+    return { plus: this.side(gradient, 1), minus: this.side(gradient, -1) };
   }
 
   /** Covariance of two quantities; of errors with two sides the one counts that lowers a fraction. */

@@ -104,9 +104,9 @@ function singleRows(parent: string, row: Row, other: Row | undefined, file: stri
     ...row,
     fraction: added(row.fraction, other.fraction),
     widthMeV: added(row.widthMeV, other.widthMeV),
-    ...(row.integratedFraction === undefined
+    ...(row.integrated === undefined || other.integrated === undefined
       ? {}
-      : { integratedFraction: row.integratedFraction + (other.integratedFraction ?? 0) }),
+      : { integrated: added(row.integrated, other.integrated) }),
     partsPerBillion: row.partsPerBillion + other.partsPerBillion,
     sources: [...new Set([...row.sources, ...other.sources])],
   };
@@ -192,7 +192,7 @@ function projectedRow(
   share: number,
   kaonFlavours: readonly FlavourAmplitude[],
 ): Row {
-  const { grid, unadjusted, integratedFraction, measurement, amplitude: _, ...rest } = row;
+  const { grid, unadjusted, integrated, measurement, amplitude: _, ...rest } = row;
   const daughters = replaced(row.daughters, names);
   const identicalFactor = names.length === 2 && names[0] === names[1] ? 0.5 : row.identicalFactor;
   // Of one flavour the amplitude is the flavour's times its projection, with its sign.
@@ -212,7 +212,7 @@ function projectedRow(
     daughters,
     fraction: part(row.fraction, share),
     widthMeV: part(row.widthMeV, share),
-    ...(integratedFraction === undefined ? {} : { integratedFraction: share * integratedFraction }),
+    ...(integrated === undefined ? {} : { integrated: part(integrated, share) }),
     ...(measurement === undefined
       ? {}
       : { measurement: { ...measurement, share: share * measurement.share } }),

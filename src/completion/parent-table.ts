@@ -2,6 +2,7 @@ import type { DaughterShapes } from "../model/daughter-shapes.js";
 import type { WaveKinematics } from "../model/kinematics.js";
 import type { Channel, Mode, Parent, TableValue } from "../model/model.js";
 import { widthModel } from "../widths/width-model.js";
+import { integratedEstimates, type OtherAnswer } from "./integrated-fractions.js";
 import { leftovers, measuredModes, modeFlags, modeRow, modeRunning } from "./mode-rows.js";
 import { partsPerBillion } from "./parts-per-billion.js";
 import type { Predictions } from "./predictions.js";
@@ -15,19 +16,25 @@ const NEAR_THRESHOLD_MOMENTUM_MEV = 100;
 /** Below this part of the coupling strength, breaking may dominate an amplitude. */
 const SMALL_AMPLITUDE = 0.2;
 
-/** The decay table of one parent: a row for each channel, the remainder last, and the line shape they give. */
+/**
+ * The decay table of one parent: a row for each channel, the remainder last, and the line shape they give.
+ *
+ * @param others - other answers, of which fractions over the line shape have errors
+ */
 export function parentTable(
   predictions: Predictions,
   parent: Parent,
   entries: readonly Entry[],
   completed: Completed,
   shapes: DaughterShapes,
+  others: readonly OtherAnswer[],
 ): ParentTable {
   const { model } = predictions.fit;
   const { estimates } = completed;
   const modes = measuredModes(parent);
   const left = leftovers(parent, completed.remainder);
-  const fractions = [...estimates, ...left].map(({ fraction }) => fraction.value);
+  const nominal = [...estimates, ...left].map(({ fraction }) => fraction);
+  const fractions = nominal.map(({ value }) => value);
   const parts = partsPerBillion(fractions, residueRow(entries, fractions));
   const waves = parent.channels.map((index, k) => wavesOf(predictions, index, estimates[k]!.widthMeV.value));
   const ofMode = (k: number) => estimates[parent.channels.length + k]!;
@@ -46,12 +53,16 @@ export function parentTable(
     left.find(({ mode }) => mode === undefined)?.widthMeV.value ?? 0,
     shapes,
   );
+  const integrated =
+    running === undefined
+      ? undefined
+      : integratedEstimates(nominal, running.integratedFractions, running.slices, completed.changes, others);
   /** What the place of a row among all rows decides. */
-  const placed = (k: number): Pick<Row, "partsPerBillion" | "integratedFraction" | "grid"> => {
+  const placed = (k: number): Pick<Row, "partsPerBillion" | "integrated" | "grid"> => {
     const grid = running?.grids[k];
     return {
       partsPerBillion: parts[k]!,
-      ...(running === undefined ? {} : { integratedFraction: running.integratedFractions[k]! }),
+      ...(integrated === undefined ? {} : { integrated: integrated[k]! }),
       ...(grid === undefined ? {} : { grid }),
     };
   };
@@ -93,7 +104,7 @@ export function parentTable(
   return {
     parent,
     totalWidthMeV: completed.totalMeV,
-    totalWidthErrorMeV: completed.totalErrorMeV,
+    totalWidthErrorsMeV: completed.totalErrorsMeV,
     rows,
     ...(running === undefined
       ? {}
@@ -227,6 +238,10 @@ function leftoverRow(
 
 function warningsOf(parent: Parent, { remainder }: Completed): string[] {
   const isNamed = parent.modes.some(({ origin }) => origin.kind === "remainder");
+  if (remainder === undefined && isNamed)
+    return [
+      `${parent.hadron.name}: the other rows leave nothing of the total width to the modes that take the remainder; these have no rows.`,
+    ];
   if (remainder === undefined || isNamed || remainder.fraction.value <= 0.5) return [];
   const percent = (100 * remainder.fraction.value).toFixed(1);
   return [

@@ -1,5 +1,6 @@
 import { Evaluation, evaluator } from "../model/evaluate.js";
 import type { Fit, StudyMinimum } from "../model/fit-model.js";
+import type { Channel } from "../model/model.js";
 import { wavePhasesKnown } from "../model/wave-phases.js";
 import { widthBreakingMeV } from "../model/width-breaking.js";
 import { breakingGroups } from "./breaking-groups.js";
@@ -12,6 +13,8 @@ export interface Prediction {
   readonly gradient: readonly number[];
   /** Standard deviation in MeV that breaking of the symmetry adds. */
   readonly breakingMeV: number;
+  /** Of a closed channel with an amplitude: relative change of the square of that of its least L. */
+  readonly closed?: { readonly gradient: readonly number[]; readonly breaking: number };
   /** Flavour amplitude of each wave, in the coupling's unit. */
   readonly amplitudes: readonly number[];
   /** Whether the data fix the signs of the waves against each other; see `wavePhasesKnown`. */
@@ -63,5 +66,38 @@ function predictChannel(
       relativeStrength = Math.max(relativeStrength, Math.abs(amplitudes[w]!) / isospinLength);
   }
   const breakingMeV = widthBreakingMeV(evaluation, index);
-  return { widthMeV: value, gradient, breakingMeV, amplitudes, relativeStrength, group };
+  const closed = value === 0 ? closedChange(evaluation, index, amplitudes) : undefined;
+  return {
+    widthMeV: value,
+    gradient,
+    breakingMeV,
+    ...(closed === undefined ? {} : { closed }),
+    amplitudes,
+    relativeStrength,
+    group,
+  };
+}
+
+/** As `widthBreakingMeV` has it, for A^2 alone: with r = s/|A| the relative error from breaking is sqrt(4 r^2 + 2 r^4). */
+function closedChange(
+  evaluation: Evaluation,
+  index: number,
+  amplitudes: readonly number[],
+): Prediction["closed"] {
+  const { model } = evaluation;
+  const { waves, isospinCoefficient } = model.channels[index]!;
+  const wave = leadingWave(waves, amplitudes);
+  const { value, gradient } = evaluation.amplitude(index, wave);
+  if (value === 0) return undefined;
+  const strength = evaluation.couplingStrength(index, wave).value;
+  const r = (model.study.breaking * Math.abs(isospinCoefficient) * strength) / Math.abs(value);
+  return { gradient: gradient.map((d) => (2 * d) / value), breaking: Math.sqrt(4 * r ** 2 + 2 * r ** 4) };
+}
+
+/** The wave of least L that has an amplitude, which is the largest near threshold. */
+export function leadingWave(waves: Channel["waves"], amplitudes: readonly number[]): number {
+  return [...waves.keys()].reduce((best, w) => {
+    if (amplitudes[w] === 0) return best;
+    return amplitudes[best] === 0 || waves[w]!.L < waves[best]!.L ? w : best;
+  }, 0);
 }

@@ -3,7 +3,7 @@ import { normalNumbers } from "../fit/random-normal.js";
 import { Evaluation, type Evaluator, evaluator } from "../model/evaluate.js";
 import type { Parent, TableValue } from "../model/model.js";
 import { type Alternative, alternativeEntries } from "./alternatives.js";
-import type { Predictions } from "./predictions.js";
+import { leadingWave, type Predictions } from "./predictions.js";
 import type { Replica } from "./tables.js";
 import type { Entry } from "./total-width.js";
 
@@ -85,7 +85,7 @@ function dataWorld(
           : { ...entry, value: measured[entry.observable]! * entry.share },
       ),
     totalMeV: (parent) => totals.get(totalKey(parent))!,
-    closedSquare: (channel) => evaluation.amplitude(channel, leadingWave(predictions, channel)).value ** 2,
+    closedSquare: (channel) => evaluation.amplitude(channel, leadingWaveOf(predictions, channel)).value ** 2,
   };
 }
 
@@ -134,11 +134,12 @@ function breakingWorld({ predictions, seed }: WorldOptions, draw: number): World
         entry.kind === "predicted" ? { ...entry, widthMeV: widthMeV(parent.channels[k]!) } : entry,
       ),
     totalMeV: ({ total }) => total.widthMeV,
-    closedSquare: (channel) => amplitudes[channel]![leadingWave(predictions, channel)]! ** 2,
+    closedSquare: (channel) => amplitudes[channel]![leadingWaveOf(predictions, channel)]! ** 2,
   };
 }
 
-function alternativeWorld(own: Predictions, alternative: Alternative): World {
+/** An alternative as the whole answer that it is. */
+export function alternativeWorld(own: Predictions, alternative: Alternative): World {
   const { part, minimum, model, predictions } = alternative;
   const { chi2 } = predictions.minimum;
   return {
@@ -149,7 +150,7 @@ function alternativeWorld(own: Predictions, alternative: Alternative): World {
     closedSquare: (channel) =>
       part === "model"
         ? undefined
-        : predictions.channels[channel]!.amplitudes[leadingWave(own, channel)]! ** 2,
+        : predictions.channels[channel]!.amplitudes[leadingWaveOf(own, channel)]! ** 2,
   };
 }
 
@@ -157,14 +158,9 @@ function ownReplica({ fit, minimum }: Predictions): Pick<Replica, "minimum" | "c
   return { minimum: fit.minima.indexOf(minimum), chi2: minimum.chi2 };
 }
 
-/** The wave of least L that has an amplitude, which is the largest near threshold. */
-export function leadingWave({ fit, channels }: Predictions, channel: number): number {
-  const { waves } = fit.model.channels[channel]!;
-  const { amplitudes } = channels[channel]!;
-  return [...waves.keys()].reduce((best, w) => {
-    if (amplitudes[w] === 0) return best;
-    return amplitudes[best] === 0 || waves[w]!.L < waves[best]!.L ? w : best;
-  }, 0);
+/** The leading wave of a channel as predictions have it. */
+export function leadingWaveOf({ fit, channels }: Predictions, channel: number): number {
+  return leadingWave(fit.model.channels[channel]!.waves, channels[channel]!.amplitudes);
 }
 
 /** A matrix R with R R^T the covariance, which may be singular; the scales of the parameters do not matter. */

@@ -1,11 +1,17 @@
 import type { DaughterShapes } from "../model/daughter-shapes.js";
 import { isFolded, twoBodyChannel } from "../model/kinematics.js";
 import type { Channel } from "../model/model.js";
-import { type DrawGrid, drawGrid } from "../widths/draw-mass.js";
+import { type DrawGrid, drawGrid, drawMass } from "../widths/draw-mass.js";
 import { channelThresholdMeV, foldedWidth } from "../widths/folded-width.js";
 import { gridWidth, type MassGrid, massGrid } from "../widths/mass-grid.js";
-import { parentLineShape } from "../widths/parent-line-shape.js";
+import { channelFractions, parentLineShape } from "../widths/parent-line-shape.js";
 import { powerWidth, type RunningWidth, totalWidth } from "../widths/running-width.js";
+
+/** A narrow part of a line shape: the chance of its masses, and the fraction of each row in its middle. */
+export interface Slice {
+  readonly chance: number;
+  readonly fractions: readonly number[];
+}
 
 /** A parent's line shape and what follows from it for its rows. */
 export interface RunningRows {
@@ -15,6 +21,8 @@ export interface RunningRows {
   readonly draw: DrawGrid;
   /** Fraction of each row integrated over the line shape, the remainder's last where there is one; they add up to 1. */
   readonly integratedFractions: readonly number[];
+  /** The line shape in slices, with the fractions in the order of `integratedFractions`. */
+  readonly slices: readonly Slice[];
   /** Partial width of each row against mass; undefined for rows without one. */
   readonly grids: readonly (MassGrid | undefined)[];
 }
@@ -65,14 +73,27 @@ export function runningRows(
     relativeError: 1e-8,
   });
   let next = 0;
-  const fractions = widths.map((width) => (width === undefined ? 0 : line.integratedFractions[next++]!));
+  const places = widths.map((width) => (width === undefined ? undefined : next++));
+  if (remainder.length > 0) places.push(next);
+  const byRow = (fractions: readonly number[]) =>
+    places.map((place) => (place === undefined ? 0 : fractions[place]!));
+  const draw = drawGrid(line.shape);
   return {
     windowMeV: line.shape.windowMeV,
     normalisation: line.shape.normalisation,
-    draw: drawGrid(line.shape),
-    integratedFractions: remainder.length > 0 ? [...fractions, line.integratedFractions.at(-1)!] : fractions,
+    draw,
+    integratedFractions: byRow(line.integratedFractions),
+    slices: slicesOf(draw, (massMeV) => byRow(channelFractions(line.channels, massMeV))),
     grids: widths.map((width) => width?.grid),
   };
+}
+
+/** A line shape cut where its grid to draw from has points. */
+function slicesOf(draw: DrawGrid, fractionsAt: (massMeV: number) => number[]): Slice[] {
+  return draw.cumulative.map((end, k) => {
+    const start = k === 0 ? 0 : draw.cumulative[k - 1]!;
+    return { chance: end - start, fractions: fractionsAt(drawMass(draw, (start + end) / 2)) };
+  });
 }
 
 /** A row's width against mass and its grid; undefined where it vanishes or opens above the window. */

@@ -68,7 +68,7 @@ export interface Row {
   readonly partsPerBillion: number;
   readonly fraction: Estimate;
   /** Fraction integrated over the parent's line shape; absent for a parent that has none. */
-  readonly integratedFraction?: number;
+  readonly integrated?: Estimate;
   readonly widthMeV: Estimate;
   readonly origin: Origin;
   readonly flags: readonly Flag[];
@@ -122,7 +122,7 @@ export interface MassShape {
 export interface ParentTable {
   readonly parent: Parent;
   readonly totalWidthMeV: number;
-  readonly totalWidthErrorMeV: number;
+  readonly totalWidthErrorsMeV: { readonly plus: number; readonly minus: number };
   readonly rows: readonly Row[];
   /** Absent for a parent that is narrow or has no open row: it has its nominal mass. */
   readonly lineShape?: MassShape;

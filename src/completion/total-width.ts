@@ -1,6 +1,7 @@
 import type { Parent, TableValue } from "../model/model.js";
 import { constrainedFractions, smallestConflict } from "./constrained-fractions.js";
 import { ErrorSpace, type Gradient } from "./error-space.js";
+import { groupOf, type LinearFraction, RelativeChanges } from "./relative-changes.js";
 import type { Estimate } from "./tables.js";
 
 /** A row before its fraction is known. Gradients are with respect to the model's parameters. */
@@ -11,6 +12,8 @@ export type Entry =
       readonly widthMeV: number;
       readonly gradient: readonly number[];
       readonly breakingMeV: number;
+      /** Of a width that is 0 since the channel is closed: relative change of the squared leading amplitude. */
+      readonly closed?: { readonly gradient: readonly number[]; readonly breaking: number };
       /** What breaking moves together: the charge states of an isospin channel. */
       readonly group: string;
     }
@@ -36,12 +39,14 @@ export interface CompletedRow {
 /** A parent's fractions and widths, with errors, and what is left of its total width. */
 export interface Completed {
   readonly totalMeV: number;
-  readonly totalErrorMeV: number;
+  readonly totalErrorsMeV: { readonly plus: number; readonly minus: number };
   readonly estimates: readonly CompletedRow[];
   readonly remainder?: { readonly fraction: Estimate; readonly widthMeV: Estimate };
   readonly values: readonly TableValue[];
   /** Covariance of the fractions before they were moved to add up to 1; absent where they stand as they were. */
   readonly movedBy?: readonly (readonly number[])[];
+  /** How errors move the entries' fractions and the remainder's, relative to themselves. */
+  readonly changes: RelativeChanges;
 }
 
 /** How a parent is completed. */
@@ -95,35 +100,57 @@ export function completeParent(
   const broken = (weights: readonly number[]) => brokenError(entries, breaking, weights);
   // Breaking moves a total that is the sum of the rows, by 1/(1 - sum of measured fractions) for each predicted width.
   const share = isSum ? 1 / (1 - fractionTotal) : 0;
-  const plain = entries.map((entry, k) => {
-    const ofTotal = (part: number) => entries.map((_, j) => (j === k ? 1 : 0) - part * share);
-    const withTotal = entry.kind === "measured fraction" ? 0 : fractions[k]!;
-    return space.estimates(
+  const lessTotal = (k: number, part: number) => entries.map((_, j) => (j === k ? 1 : 0) - part * share);
+  const withTotal = entries.map((entry, k) => (entry.kind === "measured fraction" ? 0 : fractions[k]!));
+  const plain = entries.map((_, k) =>
+    space.estimates(
       fractions[k]!,
       gradients[k]!,
       {
-        fraction: broken(ofTotal(withTotal)),
-        widthMeV: totalMeV * broken(ofTotal(withTotal - fractions[k]!)),
+        fraction: broken(lessTotal(k, withTotal[k]!)),
+        widthMeV: totalMeV * broken(lessTotal(k, withTotal[k]! - fractions[k]!)),
       },
       totalMeV,
       total,
-    );
-  });
-  const totalErrorMeV = isSum ? space.sigma(total) : (parent.total.plusMeV + parent.total.minusMeV) / 2;
-  const base = { totalMeV, totalErrorMeV, values };
-  if (isConflict)
-    return adjusted({ parent, entries, fractions, gradients, breaking, plain, space, total, base });
-  const left = 1 - sumOf(fractions);
-  if (isSum || left < ROUNDING / 2) return { ...base, estimates: plain };
-  const remainder = space.combination(
-    entries.map(() => -1),
-    gradients,
+    ),
   );
-  const unknown = broken(entries.map(() => -1));
+  const { plusMeV: plus, minusMeV: minus } = parent.total;
+  const totalErrorsMeV = isSum ? space.errors(total) : { plus, minus };
+  const relativeTotal = {
+    gradient: total.map((d) => d / totalMeV),
+    broken: entries.map(() => share),
+  };
+  const changesOf = (linear: readonly LinearFraction[]) =>
+    new RelativeChanges(space, entries, breaking, linear, relativeTotal);
+  const base = { totalMeV, totalErrorsMeV, values };
+  if (isConflict)
+    return adjusted({
+      parent,
+      entries,
+      fractions,
+      gradients,
+      breaking,
+      plain,
+      space,
+      total,
+      base,
+      changesOf,
+    });
+  const linear = entries.map((_, k) => ({
+    value: fractions[k]!,
+    gradient: gradients[k]!,
+    broken: lessTotal(k, withTotal[k]!),
+  }));
+  const left = 1 - sumOf(fractions);
+  if (isSum || left < ROUNDING / 2) return { ...base, estimates: plain, changes: changesOf(linear) };
+  const fromAll = entries.map(() => -1);
+  const remainder = space.combination(fromAll, gradients);
+  const unknown = broken(fromAll);
   return {
     ...base,
     estimates: plain,
     remainder: space.estimates(left, remainder, brokenAt(unknown, totalMeV), totalMeV, total),
+    changes: changesOf([...linear, { value: left, gradient: remainder, broken: fromAll }]),
   };
 }
 
@@ -161,12 +188,13 @@ interface Conflict {
   readonly plain: readonly CompletedRow[];
   readonly space: ErrorSpace;
   readonly total: Gradient;
-  readonly base: Omit<Completed, "estimates">;
+  readonly base: Omit<Completed, "estimates" | "changes">;
+  readonly changesOf: (linear: readonly LinearFraction[]) => RelativeChanges;
 }
 
 /** Fractions moved to add up to 1 within their errors, or the smallest set of entries that does not allow it. */
 function adjusted(conflict: Conflict): Completed | { conflict: string } {
-  const { entries, fractions, gradients, breaking, plain, space, total, base } = conflict;
+  const { entries, fractions, gradients, breaking, plain, space, total, base, changesOf } = conflict;
   const together = (i: number, j: number) => i === j || groupOf(entries[i]!) === groupOf(entries[j]!);
   const broken = breaking.map((a, i) => breaking.map((b, j) => (together(i, j) ? a * b : 0)));
   const covariance = gradients.map((a, i) =>
@@ -174,21 +202,21 @@ function adjusted(conflict: Conflict): Completed | { conflict: string } {
   );
   const { fractions: moved, chi2, projection } = constrainedFractions(fractions, covariance);
   if (!(chi2 <= CONSTRAINED_SIGMAS ** 2)) return { conflict: beyondText(conflict, covariance, chi2) };
+  const linear = projection.map((row, k) => ({
+    value: moved[k]!,
+    gradient: space.combination(row, gradients),
+    broken: row,
+  }));
   const estimates = entries.map((_, k): CompletedRow => {
     const row = projection[k]!;
     const variance = sumOf(row.map((a, i) => sumOf(row.map((b, j) => a * b * broken[i]![j]!))));
-    const gradient = space.combination(row, gradients);
+    const { gradient } = linear[k]!;
     const unknown = brokenAt(Math.sqrt(Math.max(0, variance)), base.totalMeV);
     const now = space.estimates(moved[k]!, gradient, unknown, base.totalMeV, total);
     const hasMoved = Math.abs(moved[k]! - fractions[k]!) > ROUNDING * fractions[k]!;
     return hasMoved ? { ...now, unadjusted: plain[k]! } : plain[k]!;
   });
-  return { ...base, estimates, movedBy: covariance };
-}
-
-/** What moves together, and is named together: the rows of one measurement, or of one predicted isospin channel. */
-function groupOf(entry: Entry): string {
-  return entry.kind === "predicted" ? entry.group : `value ${entry.observable}`;
+  return { ...base, estimates, movedBy: covariance, changes: changesOf(linear) };
 }
 
 function beyondText(

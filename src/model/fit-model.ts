@@ -1,12 +1,12 @@
-import { fAndD } from "../couplings/f-and-d.js";
 import { InputError } from "../errors.js";
 import { chiSquareProbability } from "../fit/chi-square.js";
 import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
 import { findMinima, type MinimaProblem, type Minimum, minimumNear } from "../fit/minima.js";
 import { sumsOf } from "./breaking.js";
 import { chiSquareProblem } from "./chi-square-problem.js";
+import { derivedNumbers } from "./derived-numbers.js";
 import { type DistinctMinimum, distinctPhysics } from "./distinct-physics.js";
-import { decayHasFAndD, Evaluation, type Evaluator, evaluator } from "./evaluate.js";
+import { Evaluation, type Evaluator, evaluator } from "./evaluate.js";
 import { signProblem } from "./linear-forms.js";
 import type { Model, Observable, Parameter } from "./model.js";
 import { comparisons, priorResidual, reactionSigns } from "./residuals.js";
@@ -25,6 +25,8 @@ export interface FittedParameter {
     readonly plus: number;
     readonly minus: number;
     readonly pull: number;
+    /** Whether any fitted measurement depends on it; else the fit leaves it as it was given. */
+    readonly measured: boolean;
   };
 }
 
@@ -222,6 +224,7 @@ function studyMinimum(
   const { model } = ready;
   const evaluation = new Evaluation(ready, minimum.parameters);
   const ndf = degreesOfFreedom(minimum, fitted);
+  const compared = comparisons(evaluation, fitted);
   const direct = model.parameters.map((parameter, k): FittedParameter => {
     const { name, unit, kind, prior } = parameter;
     return {
@@ -232,17 +235,26 @@ function studyMinimum(
       kind,
       ...(prior === undefined
         ? {}
-        : { given: { ...prior, pull: priorResidual(parameter, k, minimum.parameters).residual } }),
+        : {
+            given: {
+              ...prior,
+              pull: priorResidual(parameter, k, minimum.parameters).residual,
+              measured: compared.some(({ gradient }) => gradient[k] !== 0),
+            },
+          }),
     };
   });
   return {
     chi2: minimum.chi2,
     ndf,
     probability: ndf > 0 ? chiSquareProbability(minimum.chi2, ndf) : undefined,
-    parameters: [...direct, ...model.decays.flatMap((_, index) => derivedParameters(model, index, minimum))],
+    parameters: [
+      ...direct,
+      ...derivedNumbers(model, minimum).map((number) => ({ ...number, kind: "derived" as const })),
+    ],
     vector: minimum.parameters,
     covariance: minimum.covariance,
-    pulls: comparisons(evaluation, fitted).map(({ observable, fitted: value, residual }) => ({
+    pulls: compared.map(({ observable, fitted: value, residual }) => ({
       observable,
       fitted: value,
       pull: residual,
@@ -251,31 +263,4 @@ function studyMinimum(
     reactionSigns: Object.fromEntries(reactionSigns(evaluation, fitted)),
     equivalents,
   };
-}
-
-/** F, D and what is made of them, for a strong decay of an octet into two octets. */
-function derivedParameters(model: Model, index: number, minimum: Minimum): FittedParameter[] {
-  const decay = model.decays[index]!;
-  if (!decayHasFAndD(decay)) return [];
-  const value = (row: readonly number[]) => row.reduce((sum, c, k) => sum + c * minimum.parameters[k]!, 0);
-  const covariance = (a: readonly number[], b: readonly number[]) =>
-    a.reduce(
-      (sum, x, i) => sum + b.reduce((inner, y, j) => inner + x * minimum.covariance[i]![j]! * y, 0),
-      0,
-    );
-  const rows = decay.couplingRows;
-  const block = rows.map((a) => rows.map((b) => covariance(a, b)));
-  const { D, F, fOverD, alphaF, alphaD } = fAndD(value(rows[0]!), value(rows[1]!), block);
-  const unit = model.parameters[rows[0]!.findIndex((c) => c !== 0)]!.unit;
-  const prefix = decay.name === "" ? "" : `${decay.name}.`;
-  const named = {
-    D: [D, unit],
-    F: [F, unit],
-    "F/D": [fOverD, "1"],
-    alpha_F: [alphaF, "1"],
-    alpha_D: [alphaD, "1"],
-  } as const;
-  return Object.entries(named).flatMap(([name, [estimate, ofUnit]]) =>
-    estimate === null ? [] : [{ name: `${prefix}${name}`, ...estimate, unit: ofUnit, kind: "derived" }],
-  );
 }

@@ -215,6 +215,8 @@ export interface TotalWidth {
   readonly widthMeV: number;
   readonly plusMeV: number;
   readonly minusMeV: number;
+  /** "study", or the edition of the catalogue; empty if the kind is `sum`. */
+  readonly source: string;
 }
 
 /** A parent of the table: one charge state of a member of a decaying multiplet, or a hadron that has modes only. */

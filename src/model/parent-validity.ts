@@ -42,9 +42,11 @@ interface IsospinChannel {
 export function parentWarnings(model: Model, minimum: StudyMinimum): ValidityWarning[] {
   const families = familiesOf(model, new Evaluation(evaluator(model), minimum.vector));
   const fitted = fittedObservables(model);
+  // A limit says how small a width is, not how large a coupling: it none is a fitted momentum.
+  const sized = fitted.filter(({ measured }) => measured.limit === undefined);
   const momenta = families
     .flatMap(({ channels }) => channels)
-    .filter(({ indices, momentumMeV }) => momentumMeV > 0 && indices.some((k) => isIn(k, fitted)));
+    .filter(({ indices, momentumMeV }) => momentumMeV > 0 && indices.some((k) => isIn(k, sized)));
   return families.flatMap((family) =>
     [...broad(family, fitted), ...farMomenta(family, momenta, model)].map((text) => ({
       parents: family.hadrons,
@@ -143,7 +145,8 @@ function broad({ massMeV, widthMeV, channels }: Family, fitted: readonly Observa
 /** Predicted channels whose momenta lie far from all fitted ones of the same decays, or very high. */
 function farMomenta({ channels }: Family, fitted: readonly IsospinChannel[], model: Model): string[] {
   const settled = model.observables.filter(
-    ({ use, quantum }) => use !== "fit" && quantum.kind !== "parameter",
+    ({ use, quantum, measured }) =>
+      use !== "fit" && quantum.kind !== "parameter" && measured.limit === undefined,
   );
   const far = channels.flatMap(({ name, indices, decays, momentumMeV, widthMeV }) => {
     const known = fitted.filter((other) => [...other.decays].some((decay) => decays.has(decay)));

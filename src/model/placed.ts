@@ -1,7 +1,7 @@
 import type { Hadron } from "../hadrons/hadron.js";
 import { isospinAveragedMassMeV, type Member, type Multiplet } from "../hadrons/multiplet.js";
 import type { State } from "../su3/state.js";
-import type { MixingElement } from "./model.js";
+import type { Decay, MixingElement } from "./model.js";
 import type { MixedStates } from "./resolve-mixing.js";
 
 /** A hadron at its place in a multiplet: as the pure state itself, or as one that contains it through mixing. */
@@ -36,6 +36,14 @@ export function placedIn(multiplet: Multiplet, groups: readonly MixedStates[]): 
     ),
   );
   return [...own, ...mixed];
+}
+
+/** Everything that is placed in a multiplet of the decays, each multiplet once. */
+export function placedInDecays(decays: readonly Decay[], groups: readonly MixedStates[]): Placed[] {
+  const multiplets = new Map<string, Multiplet>();
+  for (const { from, to } of decays)
+    for (const multiplet of [from, ...to]) multiplets.set(multiplet.id, multiplet);
+  return [...multiplets.values()].flatMap((multiplet) => placedIn(multiplet, groups));
 }
 
 function samePlace(a: { threeY: number; twoI: number }, b: { threeY: number; twoI: number }): boolean {

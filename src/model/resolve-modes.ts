@@ -12,6 +12,7 @@ import { parseMode } from "./mode-names.js";
 import type { Channel, Mode, ModeOrigin, Parent, TableValue } from "./model.js";
 import type { Placed } from "./placed.js";
 import type { Problems } from "./problems.js";
+import { totalSource } from "./total-source.js";
 
 /** Parents with their modes, and the measured values behind these. */
 export interface ResolvedModes {
@@ -46,7 +47,7 @@ export function resolveModes(
   const growing = new Map<string, Growing>(
     plain.map((parent) => [parent.hadron.name, { parent, modes: [] }]),
   );
-  const resolver = new ModeResolver(particles, growing, problems);
+  const resolver = new ModeResolver(study, particles, growing, problems);
   for (const written of study.modes) problems.attempt(written.path, () => resolver.add(written));
   const builtIn = study.tables.daughters === "decayed" ? resolver.decayDaughters(channels) : false;
   for (const each of growing.values()) checkTogether(each, channels, growing, placed, problems);
@@ -59,11 +60,13 @@ export function resolveModes(
 
 class ModeResolver {
   readonly values: TableValue[] = [];
+  readonly #study: Study;
   readonly #particles: KnownParticles;
   readonly #growing: Map<string, Growing>;
   readonly #problems: Problems;
 
-  constructor(particles: KnownParticles, growing: Map<string, Growing>, problems: Problems) {
+  constructor(study: Study, particles: KnownParticles, growing: Map<string, Growing>, problems: Problems) {
+    this.#study = study;
     this.#particles = particles;
     this.#growing = growing;
     this.#problems = problems;
@@ -133,7 +136,13 @@ class ModeResolver {
       parent: {
         hadron,
         multiplet: hadron.content[0]?.leg.multiplet ?? "",
-        total: { kind: "measured", widthMeV: hadron.widthMeV, plusMeV: plus, minusMeV: minus },
+        total: {
+          kind: "measured",
+          widthMeV: hadron.widthMeV,
+          plusMeV: plus,
+          minusMeV: minus,
+          source: totalSource(this.#study, hadron.name),
+        },
         channels: [],
         modes: [],
       },

@@ -140,7 +140,9 @@ export function memberParticles(
   for (const name of Object.keys(member.chargeStates)) {
     if (!names.includes(name)) refuse(`${member.name}: charge state`, `one of ${names.join(", ")}`, name);
   }
-  const particles = states.map((state) => particleOf(state, member, member.chargeStates[state.name] ?? { mcAliases: [] }));
+  const particles = states.map((state) =>
+    particleOf(state, member, member.chargeStates[state.name] ?? { mcAliases: [] }),
+  );
   return { name: member.name, particles };
 }
 

@@ -1,15 +1,14 @@
 import { InternalError } from "../errors.js";
 import { catalogueEdition } from "../hadrons/catalogue.js";
 import type { Hadron } from "../hadrons/hadron.js";
-import type { Multiplet } from "../hadrons/multiplet.js";
 import type { Study, StudyProblem } from "../study/study.js";
 import { withBreaking } from "./breaking.js";
 import { channelsOf } from "./channels.js";
 import { checkMeasurements } from "./check-measurements.js";
 import { massParameters } from "./masses.js";
-import { mixingMatrix } from "./mixing-matrix.js";
 import type { Channel, Decay, Model, Parameter, Parent, TotalWidth } from "./model.js";
-import { type Placed, placedIn } from "./placed.js";
+import { notesOf } from "./notes.js";
+import { placedIn, placedInDecays } from "./placed.js";
 import { Problems } from "./problems.js";
 import { resolveDecays } from "./resolve-decays.js";
 import { resolveMeasurements } from "./resolve-measurements.js";
@@ -17,6 +16,7 @@ import { type MixedStates, resolveMixing } from "./resolve-mixing.js";
 import { resolveModes } from "./resolve-modes.js";
 import { type StudyBoundMultiplet, studyMultiplet } from "./resolve-multiplets.js";
 import { resolvePriors } from "./resolve-priors.js";
+import { totalSource } from "./total-source.js";
 import type { NamedMember } from "./width-sums.js";
 
 /**
@@ -38,7 +38,7 @@ export function resolveStudy(study: Study, earlier: readonly StudyProblem[] = []
   const parameters: Parameter[] = [...couplings, ...angles];
   const masses = massParameters(study, decays, groups, own, parameters);
   const plain = problems.attempt("decays", () => channelsOf(decays, groups, masses)) ?? [];
-  const parents = parentsOf(decays, groups, plain, own, problems);
+  const parents = parentsOf(decays, groups, plain, own, study, problems);
   if (problems.has()) refuseWithMeasurements(study, problems);
   const context = { study, decays, channels: plain, parents, members: membersOf(decays, groups), parameters };
   const observables = [
@@ -58,7 +58,7 @@ export function resolveStudy(study: Study, earlier: readonly StudyProblem[] = []
     channels,
     observables,
     modeValues: modes.values,
-    notes: notesOf(decays, groups),
+    notes: notesOf(decays, groups, masses),
     editions: [`hadrons: ${catalogueEdition().edition}, ${catalogueEdition().source}`, ...modes.editions],
   };
 }
@@ -75,6 +75,7 @@ function parentsOf(
   groups: readonly MixedStates[],
   channels: readonly Channel[],
   own: ReadonlyMap<string, StudyBoundMultiplet>,
+  study: Study,
   problems: Problems,
 ): Parent[] {
   const summed = new Set([...own.values(), ...groups].flatMap((source) => [...source.summed]));
@@ -82,7 +83,7 @@ function parentsOf(
   for (const [k, { from }] of decays.entries()) {
     for (const { hadron } of placedIn(from, groups)) {
       if (parents.some((parent) => parent.hadron.name === hadron.name)) continue;
-      const total = totalOf(hadron, summed);
+      const total = totalOf(hadron, summed, study);
       if (total === undefined) {
         problems.add(
           `decays/${k}/from`,
@@ -97,19 +98,12 @@ function parentsOf(
   return parents;
 }
 
-function totalOf(hadron: Hadron, summed: ReadonlySet<string>): TotalWidth | undefined {
-  if (summed.has(hadron.name)) return { kind: "sum", widthMeV: 0, plusMeV: 0, minusMeV: 0 };
+function totalOf(hadron: Hadron, summed: ReadonlySet<string>, study: Study): TotalWidth | undefined {
+  if (summed.has(hadron.name)) return { kind: "sum", widthMeV: 0, plusMeV: 0, minusMeV: 0, source: "" };
   if (hadron.widthMeV === null) return undefined;
   const { plus, minus } = hadron.widthErrorMeV ?? { plus: 0, minus: 0 };
-  return { kind: "measured", widthMeV: hadron.widthMeV, plusMeV: plus, minusMeV: minus };
-}
-
-/** Everything that is placed in a multiplet of the decays, each multiplet once. */
-function placedInDecays(decays: readonly Decay[], groups: readonly MixedStates[]): Placed[] {
-  const multiplets = new Map<string, Multiplet>();
-  for (const { from, to } of decays)
-    for (const multiplet of [from, ...to]) multiplets.set(multiplet.id, multiplet);
-  return [...multiplets.values()].flatMap((multiplet) => placedIn(multiplet, groups));
+  const source = totalSource(study, hadron.name);
+  return { kind: "measured", widthMeV: hadron.widthMeV, plusMeV: plus, minusMeV: minus, source };
 }
 
 function membersOf(decays: readonly Decay[], groups: readonly MixedStates[]): NamedMember[] {
@@ -118,27 +112,4 @@ function membersOf(decays: readonly Decay[], groups: readonly MixedStates[]): Na
     hadrons.set(member, (hadrons.get(member) ?? new Set()).add(hadron.name));
   }
   return [...hadrons].map(([name, names]) => ({ name, hadrons: [...names] }));
-}
-
-function notesOf(decays: readonly Decay[], groups: readonly MixedStates[]): string[] {
-  const notes = placedInDecays(decays, groups).flatMap(({ hadron }) => hadron.notes);
-  const used = new Set(decays.flatMap(({ from, to }) => [from.id, ...to.map(({ id }) => id)]));
-  for (const { mixing, bare } of groups) {
-    for (const { multiplet } of bare) {
-      if (used.has(multiplet.id)) continue;
-      notes.push(
-        `${mixing.states.join(", ")} have a component in ${multiplet.id}, for which no decay is declared; it counts as 0.`,
-      );
-    }
-    const weights = mixingMatrix(
-      { ...mixing, rotations: mixing.rotations.map(({ parameter: _, ...fixed }) => fixed) },
-      [],
-    ).value;
-    const fixed = mixing.rotations.every(({ parameter }) => parameter === undefined);
-    for (const [k, name] of mixing.states.entries()) {
-      const terms = weights[k]!.map((w, r) => `${w.toFixed(4)} ${mixing.bare[r]}`).join(" + ");
-      if (fixed) notes.push(`${name} = ${terms}.`.replaceAll("+ -", "- "));
-    }
-  }
-  return [...new Set(notes)];
 }

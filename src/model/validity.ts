@@ -31,6 +31,8 @@ export function validityWarnings(fit: Fit, index: number): ValidityWarning[] {
     ...singleRatios(model),
     ...ranges(model),
     ...anglesFromMasses(model),
+    ...axialAlone(model),
+    ...phasesAsSigns(model),
     ...octetAlone(model),
     ...quarkLine(model),
     ...model.decays.flatMap(({ from }, k) =>
@@ -54,7 +56,7 @@ export function studyWarnings(fit: Fit, index: number): string[] {
 function poorFit({ chi2, ndf }: StudyMinimum): string[] {
   if (ndf === 0 || chi2 / ndf <= POOR_CHI2) return [];
   return [
-    `chi2 is ${chi2.toFixed(1)} with ${ndf} degrees of freedom, ${(chi2 / ndf).toFixed(1)} for each: errors that are not scaled mean little. See which pulls are large, or let breaking into the fit (\`fit: { theoryError: 0.2 }\`).`,
+    `chi2 is ${chi2.toFixed(1)} with ${ndf} degree${ndf === 1 ? "" : "s"} of freedom, ${(chi2 / ndf).toFixed(1)} for each: errors that are not scaled mean little. See which pulls are large, or let breaking into the fit (\`fit: { theoryError: 0.2 }\`).`,
   ];
 }
 
@@ -129,6 +131,35 @@ function anglesFromMasses({ study, mixing }: Model): string[] {
       ];
     }),
   );
+}
+
+/** Decays of whose channels nothing is fitted, and whose couplings are fixed by axial measurements. */
+function axialAlone(model: Model): string[] {
+  const fitted = fittedObservables(model);
+  const rows = fitted.flatMap(({ quantum }) => (quantum.kind === "axial" ? [quantum.row] : []));
+  const channels = new Set(fitted.flatMap((observable) => channelsIn(observable, model)));
+  const alone = model.decays.filter((decay, index) => {
+    const isAxial = rows.some((row) =>
+      row.some((c, k) => c !== 0 && decay.couplingRows.some((own) => own[k] !== 0)),
+    );
+    return isAxial && ![...channels].some((name) => isOf(name, index, model));
+  });
+  return alone.map(
+    ({ from, to }) =>
+      `the couplings of ${from.id} to ${to.map(({ id }) => id).join(" and ")} are fixed by axial measurements alone: they are axial couplings, in units of g1/f1, not those of a width model. Widths and fractions made of them mean nothing: use \`couplet couplings\`, not \`couplet tables\`.`,
+  );
+}
+
+/** Phases of residues are given with errors, of which the fit makes no use. */
+function phasesAsSigns({ study }: Model): string[] {
+  const phases = study.measurements.filter(
+    ({ kind, use, phase }) => kind === "residue" && use !== "table" && phase !== undefined && phase.plus > 0,
+  );
+  if (phases.length === 0) return [];
+  const names = phases.map(({ channels }) => channels.join(" and ")).join("; ");
+  return [
+    `phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: ${names}.`,
+  ];
 }
 
 /** States of which most is in a multiplet that no decay is declared for: the octet's coupling predicts nothing there. */

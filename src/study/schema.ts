@@ -128,7 +128,9 @@ export const studySchema = mapping({
       .min(0)
       .max(1)
       .default(0)
-      .describe("Breaking of the symmetry in amplitude that enters the fit; 0 leaves it out"),
+      .describe(
+        "Breaking of the symmetry that enters the fit, as a part of the coupling strength |g| like `tables: breaking`; 0 leaves it out",
+      ),
     masses: z
       .enum(["fixed", "vary"])
       .default("vary")
@@ -142,7 +144,9 @@ export const studySchema = mapping({
       .min(0)
       .max(1)
       .default(0.2)
-      .describe("Breaking of the symmetry in amplitude, for the errors of predicted rows"),
+      .describe(
+        "Breaking of the symmetry in amplitude, for the errors of predicted rows: A -> A + breaking |g| z with one normal number z for each isospin channel. It is a part of the coupling strength |g|, not of the channel's amplitude: 0.2 is 40 % of the amplitude of a channel that takes a quarter of |g|^2",
+      ),
     conflicts: z
       .enum(["refuse", "constrained"])
       .default("refuse")

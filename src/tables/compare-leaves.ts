@@ -1,10 +1,10 @@
 import { formatExact } from "./exact-message.js";
 
-/** What two tables can differ in: a number with its errors, a list of numbers, or a text. */
+/** What two tables can differ in: a number with its errors, a list of numbers, or a text; a list of texts is one text. */
 export type Leaf =
   | { readonly kind: "number"; readonly value: number; readonly plus: number; readonly minus: number }
   | { readonly kind: "list"; readonly values: readonly number[] }
-  | { readonly kind: "text"; readonly text: string };
+  | { readonly kind: "text"; readonly text: string; readonly entries?: readonly string[] };
 
 /** Leaves by their path within an item, e.g. `fraction`, `waves[L=2 S=1/2].re`. */
 export type Leaves = ReadonlyMap<string, Leaf>;
@@ -60,7 +60,8 @@ function collectList(list: readonly Json[], path: string, leaves: Map<string, Le
     const values = path.endsWith("logWidths") ? list.map(Math.exp) : list;
     leaves.set(path, { kind: "list", values });
   } else if (list.every((entry) => typeof entry === "string")) {
-    leaves.set(path, { kind: "text", text: [...list].sort().join("; ") });
+    const entries = [...list].sort();
+    leaves.set(path, { kind: "text", text: entries.join("; "), entries });
   } else {
     const keys = distinct(list.map((entry) => keyOf(entry)));
     for (const [k, entry] of list.entries()) collect(entry, `${path}[${keys[k]}]`, leaves);

@@ -141,15 +141,19 @@ function minimumMessage(minimum: StudyMinimum): v1.Minimum.$Properties {
 
 function parentMessage(table: ParentTable): v1.Parent.$Properties {
   const { hadron, multiplet, total } = table.parent;
+  const { plus, minus } = table.totalWidthErrorsMeV;
   return {
     hadron: hadronMessage(hadron, table.lineShape),
     multiplet,
     totalWidth: table.totalWidthMeV,
-    totalWidthError: table.totalWidthErrorMeV,
+    totalWidthError: (plus + minus) / 2,
+    totalWidthPlus: plus,
+    totalWidthMinus: minus,
     totalOrigin:
       total.kind === "sum" ? v1.TotalOrigin.TOTAL_ORIGIN_SUM : v1.TotalOrigin.TOTAL_ORIGIN_MEASURED,
     rows: table.rows.map(rowMessage),
     warnings: [...table.warnings],
+    totalSource: total.source,
   };
 }
 
@@ -162,6 +166,8 @@ function hadronMessage(hadron: Hadron, lineShape: MassShape | undefined): v1.Had
     mcAliases: [...hadron.mcAliases],
     mass: hadron.massMeV,
     massError: mean(hadron.massErrorMeV),
+    massPlus: hadron.massErrorMeV.plus,
+    massMinus: hadron.massErrorMeV.minus,
     width: hadron.widthMeV,
     widthError: mean(hadron.widthErrorMeV),
     twoJ: hadron.twoJ,
@@ -235,7 +241,8 @@ function rowMessage(row: Row): v1.Row.$Properties {
     momentum: row.momentumMeV,
     identicalFactor: row.identicalFactor,
     waves: row.waves.map(waveMessage),
-    integratedFraction: row.integratedFraction ?? null,
+    integratedFraction: row.integrated?.value ?? null,
+    ...(row.integrated === undefined ? {} : { integrated: estimateMessage(row.integrated) }),
     ...(row.grid === undefined ? {} : { grid: gridMessage(row.grid) }),
     ...(row.isospin === undefined
       ? {}

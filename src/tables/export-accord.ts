@@ -68,11 +68,12 @@ function headLines({ header }: couplet.v1.DecayTables): string[] {
 /** One entry for each particle; an antiparticle has the mass of its particle. */
 function massLines(names: readonly string[], numbers: HadronNumbers): string[] {
   const entries = new Map<number, string>();
-  // Particles last, so that theirs is the name that stays.
+  // Particles last, so that theirs is the mass that stays.
   const byNumber = [...new Set(names)].sort((a, b) => numbers.of(a)! - numbers.of(b)!);
   for (const name of byNumber) {
     const id = Math.abs(numbers.of(name)!);
-    entries.set(id, massLine(id, numbers.massMeV(name) * GEV_PER_MEV, name));
+    const particle = numbers.of(name)! < 0 ? numbers.conjugateName(name) : name;
+    entries.set(id, massLine(id, numbers.massMeV(name) * GEV_PER_MEV, particle));
   }
   const sorted = [...entries].sort(([a], [b]) => a - b).map(([, line]) => line);
   return ["BLOCK MASS   # in GeV", ...sorted];

@@ -5,11 +5,11 @@ type Maybe<T> = T | null | undefined;
 /** A value with its errors rounded for math mode, `12.6 \pm 3.0` or `2.0^{+0.7}_{-0.5}`. */
 export function latexWithErrors(value: Maybe<number>, plus: Maybe<number>, minus: Maybe<number>): string {
   const rounded = roundedValue(value ?? 0, plus ?? 0, minus ?? 0);
-  const text = latexNumber(rounded.value);
-  if (rounded.plus === "") return text;
-  return rounded.plus === rounded.minus
-    ? `${text} \\pm ${rounded.plus}`
-    : `${text}^{+${rounded.plus}}_{-${rounded.minus}}`;
+  if (rounded.plus === "") return latexNumber(rounded.value);
+  const [text, upper, lower] = [rounded.value, rounded.plus, rounded.minus].map((part) => part.split("e")[0]);
+  const errors = upper === lower ? `${text} \\pm ${upper}` : `${text}^{+${upper}}_{-${lower}}`;
+  const exponent = rounded.value.split("e")[1];
+  return exponent === undefined ? errors : `(${errors}) \\times 10^{${Number(exponent)}}`;
 }
 
 /** `1.4e-29` as `1.4 \times 10^{-29}`, for math mode. */

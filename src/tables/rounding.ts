@@ -3,12 +3,12 @@
  * digits, between 355 and 949 one, above that it is rounded up to 1000 and keeps two; the value follows.
  *
  * Source: Particle Data Group, Review of Particle Physics, introduction, "Rounding". Provenance: memory.
- * @returns e.g. `-0.240 +- 0.033`; without an error (0 or not finite) four significant digits
+ * @returns e.g. `-0.240 +- 0.033`, or `7.493e-25 +- 0.003e-25` below 1e-4 and from 1e7 on; without an error (0 or not
+ * finite) four significant digits
  */
 export function withError(value: number, error: number): string {
-  if (!isError(value, error)) return significant(value, 4);
-  const decimals = errorDecimals(error);
-  return `${fixed(value, decimals)} +- ${fixed(error, decimals)}`;
+  const rounded = roundedValue(value, error, error);
+  return rounded.plus === "" ? rounded.value : `${rounded.value} +- ${rounded.plus}`;
 }
 
 /** A value with its upper and lower error, rounded as `withError`; the smaller error decides. */
@@ -19,12 +19,16 @@ export interface RoundedValue {
   readonly minus: string;
 }
 
-/** A value and two errors rounded by the same rule, as parts for a typesetter. */
+/** A value and two errors rounded by the same rule, as parts for a typesetter; in exponent form all have one exponent. */
 export function roundedValue(value: number, plus: number, minus: number): RoundedValue {
   const errors = [plus, minus].filter((error) => isError(value, error));
   if (errors.length === 0) return { value: significant(value, 4), plus: "", minus: "" };
-  const decimals = errorDecimals(Math.min(...errors));
-  return { value: fixed(value, decimals), plus: fixed(plus, decimals), minus: fixed(minus, decimals) };
+  const largest = Math.max(Math.abs(value), ...errors);
+  const exponent = needsExponent(largest) ? Math.floor(Math.log10(largest)) : 0;
+  const unit = 10 ** exponent;
+  const decimals = errorDecimals(Math.min(...errors) / unit);
+  const text = (x: number) => `${fixed(x / unit, decimals)}${exponent === 0 ? "" : `e${exponent}`}`;
+  return { value: text(value), plus: text(plus), minus: text(minus) };
 }
 
 /** An error lost in the digits of a double is none. */
@@ -43,8 +47,12 @@ export function asGiven(value: number, plus: number, minus: number): string {
 export function significant(value: number, digits: number): string {
   if (value === 0) return "0";
   const size = Math.abs(value);
-  if (size < 1e-4 || size >= 1e7) return value.toExponential(digits - 1);
+  if (needsExponent(size)) return value.toExponential(digits - 1);
   return fixed(value, Math.max(0, digits - 1 - Math.floor(Math.log10(size))));
+}
+
+function needsExponent(size: number): boolean {
+  return size < 1e-4 || size >= 1e7;
 }
 
 /** Decimal places the error keeps; negative where it is rounded to tens or more. */

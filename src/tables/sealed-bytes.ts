@@ -81,7 +81,7 @@ export function requireSealed(
  * The message in a sealed table of a given kind.
  *
  * @param decode - the message's decoder
- * @throws InputError if the file is not one of ours at all; TableError if it is damaged, or of another kind
+ * @throws InputError if the file is not one of ours, or of another kind; TableError if it is damaged
  */
 export function openSealed<T>(
   bytes: Uint8Array,
@@ -91,7 +91,7 @@ export function openSealed<T>(
 ): T {
   const kind = checkSeal(bytes, file);
   if (kind !== wanted)
-    throw new TableError(`${file}: expected ${wanted}, got ${kind}. Use \`couplet show\` on it.`);
+    throw new InputError(`${file}: expected ${wanted}, got ${kind}. Give a file of the kind expected.`);
   try {
     return decode(bytes);
   } catch (cause) {

@@ -42,7 +42,9 @@ export function openDecays(path: string): DecayFile {
     const size = fstatSync(file).size;
     requireDecays(file, size, path);
     const fields = fieldsOf(file, size, path);
-    const others = fields.filter(({ number }) => number !== PARENTS).map((field) => bytesAt(file, field));
+    const others = fields
+      .filter(({ number }) => number !== PARENTS)
+      .map((field) => bytesAt(file, field, path));
     const head = decoded(path, () => v1.DecayTables.decode(Buffer.concat(others)));
     requireKnownHeader(head.header, DECAYS_SCHEMA_MINOR, path);
     return {
@@ -50,7 +52,8 @@ export function openDecays(path: string): DecayFile {
       *parents() {
         for (const field of fields) {
           if (field.number !== PARENTS) continue;
-          const [parent] = decoded(path, () => v1.DecayTables.decode(bytesAt(file, field)).parents);
+          const bytes = bytesAt(file, field, path);
+          const [parent] = decoded(path, () => v1.DecayTables.decode(bytes).parents);
           requireWhole(parent!, path);
           yield parent!;
         }
@@ -87,20 +90,22 @@ function requireDecays(file: number, size: number, path: string): void {
   const hash = createHash("sha256");
   const body = Math.max(0, size - SEAL_LENGTH);
   for (let at = 0; at < body; at += CHUNK) {
-    hash.update(bytesAt(file, { start: at, end: Math.min(body, at + CHUNK) }));
+    hash.update(bytesAt(file, { start: at, end: Math.min(body, at + CHUNK) }, path));
   }
-  const seal = bytesAt(file, { start: body, end: size });
+  const seal = bytesAt(file, { start: body, end: size }, path);
   const sealed = Buffer.from(sealOf(hash.digest())).equals(seal);
-  const start = bytesAt(file, { start: 0, end: Math.min(size, 64) });
+  const start = bytesAt(file, { start: 0, end: Math.min(size, 64) }, path);
   const kind = requireSealed({ start, length: size, sealed }, path);
   if (kind === "couplet.v1.DecayTables") return;
-  throw new TableError(`${path}: expected couplet.v1.DecayTables, got ${kind}. Use \`couplet show\` on it.`);
+  throw new InputError(
+    `${path}: expected couplet.v1.DecayTables, got ${kind}. Give a file of the kind expected.`,
+  );
 }
 
 function fieldsOf(file: number, size: number, path: string): Field[] {
   const fields: Field[] = [];
   for (let start = 0; start < size; ) {
-    const reader = Reader.create(bytesAt(file, { start, end: Math.min(size, start + LONGEST_HEAD) }));
+    const reader = Reader.create(bytesAt(file, { start, end: Math.min(size, start + LONGEST_HEAD) }, path));
     const field = decoded(path, () => {
       const tag = reader.uint32();
       // Every field of the message is a text, a message or bytes.
@@ -116,12 +121,19 @@ function fieldsOf(file: number, size: number, path: string): Field[] {
   return fields;
 }
 
-function bytesAt(file: number, { start, end }: { readonly start: number; readonly end: number }): Buffer {
+function bytesAt(
+  file: number,
+  { start, end }: { readonly start: number; readonly end: number },
+  path: string,
+): Buffer {
   const bytes = Buffer.allocUnsafe(end - start);
   let done = 0;
   while (done < bytes.length) {
     const count = readSync(file, bytes, done, bytes.length - done, start + done);
-    if (count === 0) throw new TableError("the file became shorter while it was read. Read it again.");
+    if (count === 0)
+      throw new TableError(
+        `${path}: expected ${end} bytes or more, got ${start + done}: the file became shorter while it was read. Read it again.`,
+      );
     done += count;
   }
   return bytes;

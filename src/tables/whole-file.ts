@@ -38,6 +38,9 @@ export function writeWhole(path: string, bytes: Uint8Array | string): void {
   inItsPlace(path, () => writeFileAtomic.sync(path, Buffer.from(bytes as Uint8Array), { fsync: true }));
 }
 
+/** Told the name of a file beside before it is made, and again once it is gone: a process that is stopped can remove it. */
+export type WatchBeside = (beside: string, exists: boolean) => void;
+
 /** A file to be written: its place, and all of it. */
 export interface WholeFile {
   readonly path: string;
@@ -51,8 +54,8 @@ export interface WholeFile {
  * @throws InputError as `writeWhole`, with nothing changed; or, where the system refuses a rename after others, with the
  * names of the files that are new
  */
-export function writeAllWhole(files: readonly WholeFile[]): void {
-  besideEach(files, [], (besides) => {
+export function writeAllWhole(files: readonly WholeFile[], watch: WatchBeside = () => {}): void {
+  besideEach(files, [], watch, (besides) => {
     for (const [k, { beside, place, path }] of besides.entries()) {
       try {
         renameSync(beside, place);
@@ -78,6 +81,7 @@ interface Beside {
 function besideEach(
   [file, ...others]: readonly WholeFile[],
   written: readonly Beside[],
+  watch: WatchBeside,
   then: (besides: readonly Beside[]) => void,
 ): void {
   if (file === undefined) {
@@ -85,8 +89,12 @@ function besideEach(
     return;
   }
   inItsPlace(file.path, () =>
-    withBeside(file.path, [Buffer.from(file.bytes as Uint8Array)], ({ beside, place }) =>
-      besideEach(others, [...written, { path: file.path, beside, place }], then),
+    withBeside(
+      file.path,
+      [Buffer.from(file.bytes as Uint8Array)],
+      ({ beside, place }) =>
+        besideEach(others, [...written, { path: file.path, beside, place }], watch, then),
+      watch,
     ),
   );
 }
@@ -95,14 +103,13 @@ function besideEach(
  * As `writeWhole` for a file too large to hold, from its pieces; returns its length. Whatever ends the pieces early, an
  * error of theirs included, leaves nothing.
  *
- * @param temporary - told the name of the file beside before it is made, and `undefined` once it is gone: a process that
- * is about to be stopped can remove it
+ * @param watch - see `WatchBeside`
  * @throws InputError as `writeWhole`
  */
 export function writeWholePieces(
   path: string,
   pieces: Iterable<Uint8Array>,
-  temporary: (name: string | undefined) => void = () => {},
+  watch: WatchBeside = () => {},
 ): number {
   return inItsPlace(path, () =>
     withBeside(
@@ -112,7 +119,7 @@ export function writeWholePieces(
         renameSync(beside, place);
         return length;
       },
-      temporary,
+      watch,
     ),
   );
 }
@@ -122,13 +129,13 @@ function withBeside<T>(
   path: string,
   pieces: Iterable<Uint8Array>,
   then: (file: { beside: string; place: string; length: number }) => T,
-  temporary: (name: string | undefined) => void = () => {},
+  watch: WatchBeside = () => {},
 ): T {
   const old = statSync(path, { throwIfNoEntry: false });
   // Behind a link, the file it points to is the one to replace.
   const place = old === undefined ? path : realpathSync(path);
   const beside = join(dirname(place), `.${basename(place)}.${process.pid}`);
-  temporary(beside);
+  watch(beside, true);
   try {
     const length = writePieces(beside, pieces);
     if (old !== undefined) {
@@ -141,7 +148,7 @@ function withBeside<T>(
     attempt(() => rmSync(beside, { force: true }));
     throw error;
   } finally {
-    temporary(undefined);
+    watch(beside, false);
   }
 }
 

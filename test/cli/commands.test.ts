@@ -189,6 +189,23 @@ describe("couplet tables and couplet show", () => {
         'out/short.decays.pb: expected a parent of this table, got "Xi(1530)". Nearest: Xi(1530)0, Xi(1530)-.',
       ),
     );
+    const { error } = run("show", "out/short.decays.pb", "--parent", "?");
+    expect(error).toMatch(
+      /expected a parent of this table, got "\?"\. There are: Delta\(1232\)\+\+, .*, Omega-\.\n$/,
+    );
+  });
+
+  test("show --parent --json is that parent's message, and a table without parents is refused", () => {
+    const { hadron, rows } = JSON.parse(
+      run("show", "out/short.decays.pb", "--parent", "Xi(1530)-", "--json").out,
+    );
+    expect(hadron.name).toBe("Xi(1530)-");
+    expect(rows[0].id).toMatch(/^Xi\(1530\)- -> /);
+    expect(run("show", "out/short.couplings.pb", "--parent", "Xi(1530)-")).toEqual(
+      refusal(
+        "out/short.couplings.pb: expected couplet.v1.DecayTables, got couplet.v1.CouplingTables. Give a file of the kind expected.",
+      ),
+    );
   });
 
   test("show --json is the message, zeros printed", () => {

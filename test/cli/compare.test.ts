@@ -3,9 +3,11 @@ import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import { describeComparison } from "../../src/cli/compare.js";
 import { couplet } from "../../src/gen/couplet.js";
 import { isoscalarTable, MULTIPLICITY_RULE } from "../../src/su3/isoscalar-factors.js";
-import { encodeDecays } from "../../src/tables/encode-decays.js";
+import { compareTables, DEFAULT_THRESHOLDS } from "../../src/tables/compare.js";
+import { decaysMessage, encodeDecays } from "../../src/tables/encode-decays.js";
 import { factorsMessage } from "../../src/tables/encode-factors.js";
 import { sealBytes } from "../../src/tables/sealed-bytes.js";
 import { studyText, tablesOf } from "../chain/run.js";
@@ -71,6 +73,48 @@ describe("couplet compare", () => {
   test("refuses a threshold that is none, with exit code 2", () => {
     const { status, stderr } = run("compare", first, second, "--percent", "-1");
     expect([status, stderr]).toEqual([2, 'couplet: --percent: expected a number >= 0, got "-1".\n']);
+  });
+});
+
+describe("couplet compare in words", () => {
+  const tables = decaysMessage(tablesOf(`${studyText("octet-5-2")}tables: { widthModels: compared }\n`));
+  const text = (change: (tables: v1.DecayTables.$Properties) => void) => {
+    const changed = structuredClone(tables);
+    change(changed);
+    const [a, b] = [tables, changed].map((each) => sealBytes(v1.DecayTables.encode(each).finish()));
+    const comparison = compareTables({ bytes: a!, file: "a" }, { bytes: b!, file: "b" });
+    return describeComparison(comparison, "a", "b", DEFAULT_THRESHOLDS);
+  };
+  const MADE = "Conventions, models, editions";
+
+  test("errors from the width model are numbers of their rows, not models", () => {
+    const told = text(({ parents }) => {
+      const rows = parents!
+        .flatMap(({ rows }) => rows!)
+        .filter(({ fraction, waves }) => fraction!.model! > 0 && waves!.length > 0);
+      expect(rows.length).toBeGreaterThan(3);
+      for (const { fraction } of rows) fraction!.model! *= 1.5;
+      rows[0]!.fraction!.plus! *= 2;
+      delete rows[1]!.fraction!.model;
+      rows[2]!.waves![0]!.model = "b";
+    });
+    const [head, values] = told.split("Changed beyond the thresholds");
+    expect(head!.split(MADE)[1]).toBe("\n  row waves[2L=4 2S=1].model: a -> b\n\n");
+    expect(values).toMatch(/\n {4}also error of fraction, fraction\.model, by up to \+[\d.]+ %\n/);
+    expect(values).toContain("\n    also fraction.model\n");
+    expect(values).toContain("\n    also fraction.model, by up to +50.0 %\n");
+  });
+
+  test("notes are told one by one", () => {
+    const told = text(({ header }) => {
+      header!.notes = [...header!.notes!.slice(1), "a new note; with a semicolon", "another"];
+    });
+    expect(tables.header!.notes!.length).toBeGreaterThan(1);
+    expect(told.split(MADE)[1]!.split("\n\n")[0]!.split("\n").slice(1)).toEqual([
+      `  header notes, gone: ${tables.header!.notes![0]}`,
+      "  header notes, new: a new note; with a semicolon",
+      "  header notes, new: another",
+    ]);
   });
 });
 

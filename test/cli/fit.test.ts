@@ -29,8 +29,18 @@ describe("couplet fit", () => {
     expect(lines[start + 5]).toMatch(
       /^ {2}total width Delta\(1232\).* 117 \+- 3 .*<- contradicts the others$/,
     );
-    expect(lines[start + 6]).toBe("  pulls of 2 given masses, total widths or angles are below 1");
+    expect(lines[start + 6]).toBe("  the pull of 1 given mass, total width or angle is below 1");
+    // No decay of Xi(1530) is measured.
+    expect(lines).toContain("  not listed, since no measurement depends on it: mass Xi(1530)");
+    expect(lines.filter((line) => line.startsWith("  mass Xi(1530)"))).toEqual([]);
+    expect(lines).toContain(
+      "Note: `mass Sigma(1385)` has value and error of Sigma(1385)+, `mass Xi(1530)` has value and error of Xi(1530)0; the other charge states move by as much with it.",
+    );
     const [minimum] = JSON.parse(run(study("decuplet-whole"), "--json").stdout).minima;
+    const idle = minimum.parameters.filter(
+      (p: { given?: { measured: boolean } }) => p.given?.measured === false,
+    );
+    expect(idle.map(({ name }: { name: string }) => name)).toEqual(["mass Xi(1530)"]);
     const given = minimum.parameters.flatMap((p: { given?: { pull: number } }) =>
       p.given ? [p.given.pull] : [],
     );
@@ -78,7 +88,7 @@ describe("couplet fit", () => {
     },
     {
       options: ["--toys", "many"],
-      message: "couplet: couplet fit: --toys: expected an integer from 1 to 100000000, got NaN.\n",
+      message: 'couplet: couplet fit: --toys: expected an integer from 1 to 100000000, got "many".\n',
     },
     {
       options: ["--toys", "5", "--workers", "0"],

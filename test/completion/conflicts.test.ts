@@ -50,6 +50,19 @@ describe("fractions that add up to more than 1", () => {
     expect(p!.fraction.value / n!.fraction.value).toBeCloseTo(before, 9);
   });
 
+  test("modes that would take what is left have no rows then, and the parent says so", () => {
+    const mode = "  - { mode: N(1675)+ -> p gamma, remainder: 1, source: invented }\ntables:";
+    const named = (delta: string) => tablesOf(study(delta, "constrained").replace("tables:", mode));
+    const warning =
+      "N(1675)+: the other rows leave nothing of the total width to the modes that take the remainder; these have no rows.";
+    const full = parentOf(named("0.50 +- 0.06"), "N(1675)+");
+    expect(full.rows.some(({ id }) => id === "N(1675)+ -> p gamma")).toBe(false);
+    expect(full.warnings).toContain(warning);
+    const open = parentOf(named("0.10 +- 0.06"), "N(1675)+");
+    expect(open.rows.some(({ id }) => id === "N(1675)+ -> p gamma")).toBe(true);
+    expect(open.warnings).not.toContain(warning);
+  });
+
   test("old values are in the file", () => {
     const read = decodeDecays(encodeDecays(tables), "made.pb");
     const row = read.parents[0]!.rows.find(({ id }) => id === "N(1675)+ -> Delta(1232)+ pi0")!;

@@ -65,7 +65,7 @@ describe("a mode outside the symmetry is a row", () => {
     const others = rows.slice(0, -1).reduce((sum, { fraction }) => sum + fraction.value, 0);
     expect(rows.at(-1)!.flags).toEqual(["undecayable"]);
     expect(rows.at(-1)!.fraction.value).toBeCloseTo(1 - others, 12);
-    const integrated = rows.reduce((sum, row) => sum + row.integratedFraction!, 0);
+    const integrated = rows.reduce((sum, row) => sum + row.integrated!.value, 0);
     expect(integrated).toBeCloseTo(1, 6);
   });
 });

@@ -4,10 +4,12 @@ import { describeFit, fitJson } from "../../src/cli/fit.js";
 import { describeParent } from "../../src/cli/show.js";
 import { complete } from "../../src/completion/complete.js";
 import type { Flag } from "../../src/completion/tables.js";
+import { couplingTable } from "../../src/completion/tabulate-couplings.js";
 import { whyNoPlainMember } from "../../src/hadrons/no-plain-members.js";
 import { validityWarnings } from "../../src/model/validity.js";
 import { decodeDecays } from "../../src/tables/decode-decays.js";
-import { encodeDecays } from "../../src/tables/encode-decays.js";
+import { couplingsMessage } from "../../src/tables/encode-couplings.js";
+import { decaysMessage, encodeDecays } from "../../src/tables/encode-decays.js";
 import { modelSpread } from "../../src/uncertainty/model-spread.js";
 import { BASE, plantedStudy, widthMeV } from "../chain/planted-octet.js";
 import { fitOf, studyText, tablesOf, withMeasurements } from "../chain/run.js";
@@ -188,6 +190,47 @@ describe("warnings of a study as a whole", () => {
   });
 });
 
+describe("measurements that say less than their numbers", () => {
+  const AXIAL =
+    "the couplings of baryon-octet to baryon-octet and pseudoscalar-octet are fixed by axial measurements alone: they are axial couplings, in units of g1/f1, not those of a width model. Widths and fractions made of them mean nothing: use `couplet couplings`, not `couplet tables`.";
+
+  test("couplings from axial measurements alone are no couplings of a width model; tables say so", () => {
+    const semileptonic = studyText("semileptonic-1993");
+    expect(texts(semileptonic)).toContain(AXIAL);
+    const fit = fitOf(semileptonic);
+    for (const { header } of [decaysMessage(complete(fit, 0)), couplingsMessage(couplingTable(fit, 0))])
+      expect(header!.notes).toContain(AXIAL);
+    // A strong width that the same couplings predict makes them couplings of its model; another decay's does not.
+    const other = `  - { name: d, from: baryon-decuplet, to: [baryon-octet, pseudoscalar-octet], L: 1, model: a }
+measurements:
+  - { width: Delta(1232) -> N pi, value: 117 +- 3 MeV, source: invented }`;
+    expect(texts(semileptonic.replace("measurements:", other))).toContain(AXIAL);
+    expect(texts(studyText("octet-5-2"))).not.toContain(AXIAL);
+  });
+
+  test("the note on a meson that no open channel has is not printed with a fit, and stays with its couplings", () => {
+    const fit = fitOf(studyText("semileptonic-1993"));
+    const note = "eta is taken as a pure octet member; eta-eta' mixing is ignored.";
+    expect(fitJson(fit).notes).toEqual([]);
+    expect(describeFit(fit)).not.toContain("eta-eta'");
+    expect(couplingsMessage(couplingTable(fit, 0)).header!.notes).toContain(note);
+    expect(fitJson(fitOf(studyText("octet-5-2"))).notes).toContain(note);
+  });
+
+  test("phases of residues with errors enter as signs", () => {
+    const residue = (phase: string) =>
+      `{ residue: [N(1700) -> N pi, N(1700) -> N pi], value: 30 +- 3 MeV, ${phase}source: invented }`;
+    const said = texts(study({ measurements: residue("phase: -20 +- 5 deg, ") }));
+    expect(said).toContain(
+      "phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: N(1700) -> N pi and N(1700) -> N pi.",
+    );
+    for (const phase of ["", "phase: 0 deg, "])
+      expect(
+        texts(study({ measurements: residue(phase) })).filter((text) => text.startsWith("phases")),
+      ).toEqual([]);
+  });
+});
+
 describe("warnings of parents, once an isospin multiplet", () => {
   const N_STATES = ["X(2000)+", "X(2000)0"];
   const wide = (width: number, measurements: string) =>
@@ -239,6 +282,20 @@ describe("warnings of parents, once an isospin multiplet", () => {
     expect(said[0]!.text).toBe(
       "N(1675): momenta far from the fitted ones (by more than a factor 2, or above 1000 MeV), where no width model is reliable: Lambda K at 212 MeV, fitted at 472 to 563 MeV.",
     );
+  });
+
+  test("an upper limit is no fitted momentum, and its channel a predicted one", () => {
+    const members = "{ name: N(1730), place: N, mass: 1730 MeV, width: 150 MeV }";
+    const pion = "{ width: N(1730) -> N pi, value: 60 +- 6 MeV, source: invented }";
+    const sigma = (value: string) => `{ width: N(1730) -> Sigma K, value: ${value}, source: invented }`;
+    const far = (...measurements: string[]) =>
+      texts(study({ members, measurements: measurements.join() })).flatMap((text) =>
+        text.includes("far from") ? [text.split("reliable: ")[1]] : [],
+      );
+    const both = ["Sigma K at 172 MeV, fitted at 600 MeV; Lambda K at 294 MeV, fitted at 600 MeV."];
+    expect(far(pion)).toEqual(both);
+    expect(far(pion, sigma('"< 50 MeV at 90 %"'))).toEqual(both);
+    expect(far(pion, sigma("5 +- 2 MeV"))).toEqual([]);
   });
 
   test("or above 1 GeV, however near", () => {

@@ -122,8 +122,8 @@ describe("coupling table files", () => {
     expect(() => decodeCouplings(bytes.subarray(0, 100), "a.pb")).toThrow(TableError);
     const factors = encodeFactors(isoscalarTable({ p: 1, q: 0 }, { p: 1, q: 0 }), { states: false });
     expect(() => decodeCouplings(factors, "a.pb")).toThrow(
-      new TableError(
-        "a.pb: expected couplet.v1.CouplingTables, got couplet.v1.FactorTable. Use `couplet show` on it.",
+      new InputError(
+        "a.pb: expected couplet.v1.CouplingTables, got couplet.v1.FactorTable. Give a file of the kind expected.",
       ),
     );
     expect(() => decodeCouplings(Buffer.from("couplet: 1"), "a.pb")).toThrow(InputError);

@@ -135,8 +135,8 @@ describe("a reader refuses", () => {
 
   test("another table than the one it was asked for", () => {
     expect(thrown(() => decodeDecays(factors, "t.pb"))).toEqual(
-      new TableError(
-        "t.pb: expected couplet.v1.DecayTables, got couplet.v1.FactorTable. Use `couplet show` on it.",
+      new InputError(
+        "t.pb: expected couplet.v1.DecayTables, got couplet.v1.FactorTable. Give a file of the kind expected.",
       ),
     );
   });

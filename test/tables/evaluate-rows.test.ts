@@ -4,7 +4,8 @@ import { couplet } from "../../src/gen/couplet.js";
 import { decodeDecays } from "../../src/tables/decode-decays.js";
 import { encodeDecays } from "../../src/tables/encode-decays.js";
 import { fractionsAt, rowsEvaluator, tableHadrons } from "../../src/tables/evaluate-rows.js";
-import { partialWidthMeV, widthModel } from "../../src/widths/index.js";
+import { partialWidthMeV } from "../../src/widths/partial-width.js";
+import { widthModel } from "../../src/widths/width-model.js";
 import { studyText, tablesOf } from "../chain/run.js";
 
 const tablesOfText = (text: string) => decodeDecays(encodeDecays(tablesOf(text)), "test.pb");

@@ -1,4 +1,5 @@
 import { describe, expect, test } from "vitest";
+import { DEMO_STUDY } from "../../src/cli/demo-study.js";
 import { couplet } from "../../src/gen/couplet.js";
 import { decaysMessage } from "../../src/tables/encode-decays.js";
 import { exportDecaysLatex } from "../../src/tables/export-latex.js";
@@ -58,6 +59,48 @@ describe("decay tables as LaTeX", () => {
       "\\multicolumn{5}{l}{$\\Sigma(1775)^{0}$, mass $1775$~MeV, width $120.0$~MeV (measured)} \\\\",
     );
     expect(text).toContain("\n$n\\,\\overline{K^{0}}$ & ");
+  });
+
+  test("branch and model errors have columns where a row has them, with two digits", () => {
+    expect(text).toContain("\\begin{tabular}{lrrrl}");
+    const compared = v1.DecayTables.create(
+      decaysMessage(tablesOf(DEMO_STUDY.replace("daughters: decayed", "widthModels: compared"))),
+    );
+    const typeset = exportDecaysLatex(compared);
+    expect(typeset).toContain("\\begin{tabular}{lrrrrrl}");
+    expect(typeset).toContain(
+      "Channel & Fraction [\\%] & Breaking [\\%] & Branch [\\%] & Model [\\%] & Partial",
+    );
+    const read = readRows(typeset);
+    let seen = 0;
+    for (const { id, fraction, kinematics } of compared.parents.flatMap(({ rows }) => rows!)) {
+      const [, , ...errors] = read.get(id!)!;
+      for (const [k, part] of [fraction!.breaking!, fraction!.branch!, fraction!.model!].entries()) {
+        if (kinematics === v1.Kinematics.KINEMATICS_CLOSED || part === 0) expect(errors[k]).toBe("");
+        else {
+          // Two digits: half a unit of the second is at most 5 % of the number.
+          expect(Math.abs(readValue(errors[k]!)[0]! / (100 * part) - 1)).toBeLessThan(0.051);
+          seen++;
+        }
+      }
+    }
+    expect(seen).toBeGreaterThan(30);
+  });
+
+  test("masses and total widths have two sides where they differ", () => {
+    const sided = exportDecaysLatex(
+      v1.DecayTables.create(
+        decaysMessage(
+          tablesOf(
+            studyText("octet-5-2").replace(
+              /mass: 1775 MeV, width: 120[^,}]*/,
+              "mass: 1775 +6 -4 MeV, width: 120 +20 -12 MeV",
+            ),
+          ),
+        ),
+      ),
+    );
+    expect(sided).toContain("mass $1775^{+6}_{-4}$~MeV, width $120^{+20}_{-12}$~MeV (measured)");
   });
 
   test("a title of two lines stays a comment, and a remainder has its name", () => {

@@ -74,12 +74,12 @@ describe("a file written in pieces", () => {
 
   test("stands whole in its place, and its temporary name is told before and after", () => {
     const path = join(folder, "new", "a.txt");
-    const told: (string | undefined)[] = [];
-    expect(writeWholePieces(path, pieces, (name) => told.push(name))).toBe(7);
+    const told: [string, boolean][] = [];
+    expect(writeWholePieces(path, pieces, (beside, exists) => told.push([beside, exists]))).toBe(7);
     expect(readFileSync(path, "utf8")).toBe("one two");
-    expect(told.length).toBe(2);
-    expect(told[0]).toContain("a.txt");
-    expect(told[1]).toBeUndefined();
+    expect(told.map(([, exists]) => exists)).toEqual([true, false]);
+    expect(told[0]![0]).toContain("a.txt");
+    expect(told[1]![0]).toBe(told[0]![0]);
     expect(readdirSync(join(folder, "new"))).toEqual(["a.txt"]);
   });
 

@@ -1,4 +1,5 @@
 import { describe, expect, test } from "vitest";
+import { latexWithErrors } from "../../src/tables/export-latex-numbers.js";
 import { asGiven, roundedValue, significant, withError } from "../../src/tables/rounding.js";
 
 describe("values rounded by the trade's rule", () => {
@@ -28,6 +29,22 @@ describe("values rounded by the trade's rule", () => {
     expect(roundedValue(2.04, 0.7, 0.12)).toEqual({ value: "2.04", plus: "0.70", minus: "0.12" });
     expect(roundedValue(12.3456, 0, 0)).toEqual({ value: "12.35", plus: "", minus: "" });
   });
+});
+
+test("numbers below 1e-4 and from 1e7 on have an exponent, one for value and errors", () => {
+  // The neutron's width in MeV, hbar/(878.4 +- 0.5 s).
+  expect(withError(7.4933e-25, 4.3e-28)).toBe("7.493e-25 +- 0.004e-25");
+  expect(withError(2e-6, 3e-5)).toBe("0.2e-5 +- 3.0e-5");
+  expect(withError(0, 3e-5)).toBe("0.0e-5 +- 3.0e-5");
+  expect(withError(2.5e7, 1.1e6)).toBe("2.50e7 +- 0.11e7");
+  expect(withError(2e-6, 0.03)).toBe("0.000 +- 0.030");
+  expect(roundedValue(-4.2e-7, 1.2e-8, 3e-8)).toEqual({
+    value: "-4.20e-7",
+    plus: "0.12e-7",
+    minus: "0.30e-7",
+  });
+  expect(latexWithErrors(7.4933e-25, 4.3e-28, 4.3e-28)).toBe("(7.493 \\pm 0.004) \\times 10^{-25}");
+  expect(latexWithErrors(-4.2e-7, 1.2e-8, 3e-8)).toBe("(-4.20^{+0.12}_{-0.30}) \\times 10^{-7}");
 });
 
 test("text keeps what its reader needs: rounded with its error, as given, or to a count of digits", () => {

@@ -97,8 +97,8 @@ describe("opening a file refuses", () => {
     const eight = parseIrrep("8");
     const factors = fileOf(encodeFactors(isoscalarTable(eight, eight), { states: false }), "f.pb");
     expect(() => openDecays(factors)).toThrow(
-      new TableError(
-        `${factors}: expected couplet.v1.DecayTables, got couplet.v1.FactorTable. Use \`couplet show\` on it.`,
+      new InputError(
+        `${factors}: expected couplet.v1.DecayTables, got couplet.v1.FactorTable. Give a file of the kind expected.`,
       ),
     );
     const head = couplet.v1.DecayTables.encode({ kind: "couplet.v1.DecayTables" }).finish();

@@ -84,6 +84,8 @@ inline Hadron hadron(const v1::Hadron& m) {
   if (m.has_line_shape()) h.line_shape = line_shape(m.line_shape());
   h.lifetime = maybe(m.has_lifetime(), m.lifetime());
   h.mc_aliases = list<std::int32_t>(m.mc_aliases());
+  h.mass_plus = maybe(m.has_mass_plus(), m.mass_plus());
+  h.mass_minus = maybe(m.has_mass_minus(), m.mass_minus());
   return h;
 }
 
@@ -144,6 +146,7 @@ inline Row row(const v1::Row& m) {
   if (m.has_unadjusted_width()) r.unadjusted_width = estimate(m.unadjusted_width());
   r.kaon_flavours = list<FlavourAmplitude>(m.kaon_flavours(), flavour_amplitude);
   r.replica_ratios = list<float>(m.replica_ratios());
+  if (m.has_integrated()) r.integrated = estimate(m.integrated());
   return r;
 }
 
@@ -169,6 +172,9 @@ inline Parent parent(const v1::Parent& m) {
   p.total_origin = static_cast<TotalOrigin>(m.total_origin());
   p.rows = list<Row>(m.rows(), row);
   p.warnings = list<std::string>(m.warnings());
+  p.total_width_plus = maybe(m.has_total_width_plus(), m.total_width_plus());
+  p.total_width_minus = maybe(m.has_total_width_minus(), m.total_width_minus());
+  p.total_source = m.total_source();
   return p;
 }
 

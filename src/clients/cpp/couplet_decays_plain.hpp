@@ -254,6 +254,8 @@ inline void read(Hadron& h, Wire wire) {
       case 16: wire.get(h.line_shape); break;
       case 17: wire.get(h.lifetime); break;
       case 18: wire.zigzag(h.mc_aliases); break;
+      case 19: wire.get(h.mass_plus); break;
+      case 20: wire.get(h.mass_minus); break;
       default: wire.skip();
     }
   }
@@ -361,6 +363,7 @@ inline void read(Row& r, Wire wire) {
       case 21: wire.get(r.unadjusted_width); break;
       case 22: wire.get(r.kaon_flavours); break;
       case 23: wire.get(r.replica_ratios); break;
+      case 24: wire.get(r.integrated); break;
       default: wire.skip();
     }
   }
@@ -376,6 +379,9 @@ inline void read(Parent& p, Wire wire) {
       case 5: wire.get(p.total_origin); break;
       case 6: wire.get(p.rows); break;
       case 7: wire.get(p.warnings); break;
+      case 8: wire.get(p.total_width_plus); break;
+      case 9: wire.get(p.total_width_minus); break;
+      case 10: wire.get(p.total_source); break;
       default: wire.skip();
     }
   }

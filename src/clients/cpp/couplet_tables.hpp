@@ -99,6 +99,8 @@ struct Hadron {
   std::optional<LineShape> line_shape;
   // Mean life in seconds.
   std::optional<double> lifetime;
+  // Upper and lower error of the mass.
+  std::optional<double> mass_plus, mass_minus;
 };
 
 struct Daughter {
@@ -162,6 +164,8 @@ struct Row {
   std::vector<FlavourAmplitude> kaon_flavours;
   // By replica: its partial width over this row's; empty where all are 1.
   std::vector<float> replica_ratios;
+  // The integrated fraction with its errors.
+  std::optional<Estimate> integrated;
 };
 
 struct Parent {
@@ -171,6 +175,10 @@ struct Parent {
   TotalOrigin total_origin = TotalOrigin::unspecified;
   std::vector<Row> rows;
   std::vector<std::string> warnings;
+  // Upper and lower error of the total width.
+  std::optional<double> total_width_plus, total_width_minus;
+  // Where the total width comes from: "study", or the edition of the catalogue; empty for the sum of the rows.
+  std::string total_source;
 };
 
 // One alternative to the numbers of the tables; ReplicaWeights weights decays by it.

@@ -64,8 +64,8 @@ class Dump {
     all(a, b, c, d, e, f, g, h, i, j, k, l);
   }
   void add(const couplet::Hadron& hadron) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q] = hadron;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s] = hadron;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s);
   }
   void add(const couplet::Daughter& daughter) {
     const auto& [a, b] = daughter;
@@ -92,12 +92,12 @@ class Dump {
     all(a, b, c, d, e, f);
   }
   void add(const couplet::Row& row) {
-    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u, v] = row;
-    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u, v);
+    const auto& [a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u, v, w] = row;
+    all(a, b, c, d, e, f, g, h, i, j, k, l, m, n, o, p, q, r, s, t, u, v, w);
   }
   void add(const couplet::Parent& parent) {
-    const auto& [a, b, c, d, e, f, g] = parent;
-    all(a, b, c, d, e, f, g);
+    const auto& [a, b, c, d, e, f, g, h, i, j] = parent;
+    all(a, b, c, d, e, f, g, h, i, j);
   }
   void add(const couplet::Replica& replica) {
     const auto& [a, b, c, d, e, f, g, h] = replica;

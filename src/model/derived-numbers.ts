@@ -1,0 +1,125 @@
+import { fAndD } from "../couplings/f-and-d.js";
+import type { Minimum } from "../fit/minima.js";
+import { decayHasFAndD } from "./evaluate.js";
+import type { Decay, Mixing, Model } from "./model.js";
+
+/** A number computed from fitted parameters. */
+export interface DerivedNumber {
+  readonly name: string;
+  readonly value: number;
+  /** Standard deviation, by linear propagation of the fit's covariance. */
+  readonly error: number;
+  readonly unit: string;
+}
+
+type Fitted = Pick<Minimum, "parameters" | "covariance">;
+
+/** F, D and their ratios for each decay that has them, then what does not depend on free signs for each mixed pair. */
+export function derivedNumbers(model: Model, minimum: Fitted): DerivedNumber[] {
+  return [
+    ...model.decays.flatMap((decay) => fAndDOf(decay, model, minimum)),
+    ...model.mixing.flatMap((mixing) => mixedRatios(mixing, model, minimum)),
+  ];
+}
+
+/** F, D and what is made of them, for a strong decay of an octet into two octets. */
+function fAndDOf(decay: Decay, model: Model, minimum: Fitted): DerivedNumber[] {
+  if (!decayHasFAndD(decay)) return [];
+  const rows = decay.couplingRows;
+  const block = rows.map((a) => rows.map((b) => covarianceOf(a, b, minimum)));
+  const { D, F, fOverD, alphaF, alphaD } = fAndD(
+    dot(rows[0]!, minimum.parameters),
+    dot(rows[1]!, minimum.parameters),
+    block,
+  );
+  const unit = unitOf(rows[0]!, model);
+  const prefix = decay.name === "" ? "" : `${decay.name}.`;
+  const named = {
+    D: [D, unit],
+    F: [F, unit],
+    "F/D": [fOverD, "1"],
+    alpha_F: [alphaF, "1"],
+    alpha_D: [alphaD, "1"],
+  } as const;
+  return Object.entries(named).flatMap(([name, [estimate, ofUnit]]) =>
+    estimate === null ? [] : [{ name: `${prefix}${name}`, ...estimate, unit: ofUnit }],
+  );
+}
+
+/**
+ * (g_b/g_a) tan theta of two mixed states, for every coupling of |b> against every one of |a> in the same decay.
+ *
+ * The sign of |b> is free, and turns the signs of theta and of all g_b; the product is what measurements fix. theta is the
+ * angle between |a> and |b> in the sense of the study's convention: |1> = cos theta |a> + sin theta |b> or, for mesons,
+ * |1> = cos theta |a> - sin theta |b>; where the study writes an angle in the quark basis it is theta too, not that angle.
+ * Only pairs of decays that differ in |a> and |b> alone, with couplings of one unit, are compared.
+ */
+function mixedRatios({ states, bare, rotations }: Mixing, model: Model, minimum: Fitted): DerivedNumber[] {
+  const [rotation, ...others] = rotations;
+  if (rotation === undefined || others.length > 0) return [];
+  const { angle, sign, offset, parameter } = rotation;
+  const theta = (parameter === undefined ? angle : minimum.parameters[parameter]!) + sign * offset;
+  const [a, b] = bare.map((text) => text.split("/")[0]!) as [string, string];
+  const pairs = model.decays.flatMap((first) =>
+    model.decays
+      .filter((second) => isExchanged(first, second, a, b))
+      .map((second) => [first, second] as const),
+  );
+  return pairs.flatMap(([ofA, ofB]) =>
+    ofB.couplingRows.flatMap((rowB, j) =>
+      ofA.couplingRows.flatMap((rowA, i) => {
+        const [gA, gB] = [dot(rowA, minimum.parameters), dot(rowB, minimum.parameters)];
+        if (gA === 0 || unitOf(rowA, model) !== unitOf(rowB, model)) return [];
+        const ratio = gB / gA;
+        const tangent = Math.tan(theta);
+        const gradient = minimum.parameters.map(
+          (_, k) =>
+            (((rowB[k] ?? 0) - ratio * (rowA[k] ?? 0)) / gA) * tangent +
+            (k === parameter ? ratio / Math.cos(theta) ** 2 : 0),
+        );
+        return [
+          {
+            name: `${ofB.reduced[j]!.name}/${ofA.reduced[i]!.name} tan theta(${states.join(", ")})`,
+            value: ratio * tangent,
+            error: Math.sqrt(Math.max(0, covarianceOf(gradient, gradient, minimum))),
+            unit: "1",
+          },
+        ];
+      }),
+    ),
+  );
+}
+
+/** Whether two decays are one but for a multiplet, `a` in the first and `b` in the second. */
+function isExchanged(first: Decay, second: Decay, a: string, b: string): boolean {
+  const legs = ({ from, to }: Decay) => [from, ...to].map(({ id }) => id);
+  const [x, y] = [legs(first), legs(second)];
+  const differing = x.flatMap((id, k) => (id === y[k] ? [] : [k]));
+  const [place] = differing;
+  return (
+    first.L === second.L &&
+    first.twoS === second.twoS &&
+    differing.length === 1 &&
+    x[place!] === a &&
+    y[place!] === b
+  );
+}
+
+/** Unit of a coupling that is a combination of the model's. */
+function unitOf(row: readonly number[], model: Model): string {
+  return model.parameters[row.findIndex((c) => c !== 0)]!.unit;
+}
+
+function covarianceOf(a: readonly number[], b: readonly number[], { covariance }: Fitted): number {
+  let sum = 0;
+  for (let i = 0; i < a.length; i++)
+    for (let j = 0; j < b.length; j++)
+      if (a[i] !== 0 && b[j] !== 0) sum += a[i]! * covariance[i]![j]! * b[j]!;
+  return sum;
+}
+
+function dot(row: readonly number[], parameters: readonly number[]): number {
+  let sum = 0;
+  for (let k = 0; k < row.length; k++) sum += row[k]! * parameters[k]!;
+  return sum;
+}

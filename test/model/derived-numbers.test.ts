@@ -1,0 +1,72 @@
+import { describe, expect, test } from "vitest";
+import { describeFit, fitJson } from "../../src/cli/fit.js";
+import { type Fit, type FittedParameter, fitModel } from "../../src/model/fit-model.js";
+import { type Case, ETA, planted, resolved, SINGLET, THREE, TWO_OCTETS, VECTORS } from "./mixing-cases.js";
+
+const ratiosOf = ({ minima }: Fit): FittedParameter[] =>
+  minima[0]!.parameters.filter(({ name }) => name.includes(" tan theta("));
+const ratios = (text: string) => ratiosOf(fitModel(resolved(text)));
+const planting = (one: Case) => fitModel(resolved(planted(one)));
+
+describe("what mixing leaves free of the choice of signs", () => {
+  const pair = "tan theta(Lambda(1850), Lambda(1650))";
+
+  test("octet and singlet: the planted ratios, whatever signs the fit chose; in text and JSON", () => {
+    const fit = planting(SINGLET);
+    const found = ratiosOf(fit);
+    expect(found.map(({ name, unit, kind }) => [name, unit, kind])).toEqual([
+      [`s.g(1)/o.g(8_1) ${pair}`, "1", "derived"],
+      [`s.g(1)/o.g(8_2) ${pair}`, "1", "derived"],
+    ]);
+    expect(found[0]!.value).toBeCloseTo((1.7 / 2) * Math.tan(0.4), 4);
+    expect(found[1]!.value).toBeCloseTo((1.7 / 1.1) * Math.tan(0.4), 4);
+    expect(describeFit(fit)).toContain(`  s.g(1)/o.g(8_1) ${pair}  `);
+    expect(fitJson(fit).minima[0]!.parameters).toContainEqual(found[0]);
+  });
+
+  test("the relative error is that of ln g_b - ln g_a + ln tan theta", () => {
+    const fit = planting(SINGLET);
+    const [minimum] = fit.minima;
+    const index = (name: string) => fit.model.parameters.findIndex((parameter) => parameter.name === name);
+    const [a, b, t] = ["o.g(8_1)", "s.g(1)", "angle(Lambda(1850), Lambda(1650))"].map(index) as [
+      number,
+      number,
+      number,
+    ];
+    const angle = minimum!.vector[t]!;
+    const slopes = [
+      [a, -1 / minimum!.vector[a]!],
+      [b, 1 / minimum!.vector[b]!],
+      [t, 1 / (Math.sin(angle) * Math.cos(angle))],
+    ] as const;
+    const square = slopes
+      .flatMap(([i, x]) => slopes.map(([j, y]) => x * minimum!.covariance[i]![j]! * y))
+      .reduce((sum, part) => sum + part, 0);
+    const [ratio] = ratiosOf(fit);
+    expect(ratio!.error / Math.abs(ratio!.value)).toBeCloseTo(Math.sqrt(square), 10);
+  });
+
+  test("mesons as daughters: theta of the meson convention, also where the quark basis is written", () => {
+    const names = ["e.g(8)/o.g(8_1)", "e.g(8)/o.g(8_2)"].map((text) => `${text} tan theta(eta, eta'(958))`);
+    const expected = [0.5 / 1.2, 0.5 / 0.6].map((ratio) => ratio * Math.tan(-0.25));
+    const text = planted(ETA);
+    const quark = text.replace(
+      "convention: meson, angle: free",
+      `convention: quark, angle: ${-0.25 + Math.atan(Math.SQRT2)} rad`,
+    );
+    expect(quark).not.toBe(text);
+    for (const written of [text, quark]) {
+      const found = ratios(written);
+      expect(found.map(({ name }) => name)).toEqual(names);
+      for (const [k, { value }] of found.entries()) expect(value).toBeCloseTo(expected[k]!, 4);
+    }
+  });
+
+  test("two octets have four; one that does not decay and three states have none", () => {
+    const found = planting(TWO_OCTETS);
+    const expected = [-0.7 / 2, -0.7 / 1.1, 1.6 / 2, 1.6 / 1.1].map((ratio) => ratio * Math.tan(0.5));
+    for (const [k, { value }] of ratiosOf(found).entries()) expect(value).toBeCloseTo(expected[k]!, 3);
+    expect(ratiosOf(found)).toHaveLength(4);
+    for (const one of [VECTORS, THREE]) expect(ratiosOf(planting(one))).toEqual([]);
+  });
+});
