@@ -96,7 +96,7 @@ function againstPlainProtobuf(pattern: Pattern): void {
     decode: () => Message.decode(bytes),
   };
   const least = { write: Infinity, encode: Infinity, read: Infinity, decode: Infinity };
-  for (let round = 0; round < 8; round++) {
+  for (let round = 0; round < 25; round++) {
     for (const name of ["write", "encode", "read", "decode"] as const) {
       least[name] = Math.min(least[name], processorSeconds(actions[name]));
     }

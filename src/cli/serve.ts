@@ -19,8 +19,12 @@ export interface ServeOptions {
 
 const LOG_LEVELS = ["debug", "info", "warn", "error"];
 
+/** Answers are cut from blocks of this size, below what the C library maps anew for each: fewer of them to collect. */
+const BUFFER_BLOCK_BYTES = 64 * 1024;
+
 /** `couplet serve`: runs the sidecar until it is told to stop. */
 export async function runServe(files: readonly string[], options: ServeOptions): Promise<void> {
+  Buffer.poolSize = BUFFER_BLOCK_BYTES;
   const drainSeconds = integerOption("--drain-seconds", options.drainSeconds, 0, 3600);
   if (!LOG_LEVELS.includes(options.logLevel))
     refuse("--log-level", `one of ${LOG_LEVELS.join(", ")}`, options.logLevel);
