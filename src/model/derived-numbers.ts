@@ -1,6 +1,6 @@
 import { fAndD } from "../couplings/f-and-d.js";
 import type { Minimum } from "../fit/minima.js";
-import { decayHasFAndD } from "./evaluate.js";
+import { decayHasFAndD, type Graded } from "./evaluate.js";
 import type { Decay, Mixing, Model } from "./model.js";
 
 /** A number computed from fitted parameters. */
@@ -12,13 +12,24 @@ export interface DerivedNumber {
   readonly unit: string;
 }
 
+/** One of the ratios of `mixedRatios`; it has no unit, and is not finite where g_a is 0. */
+export interface MixedRatio {
+  readonly name: string;
+  at(parameters: readonly number[]): Graded;
+}
+
 type Fitted = Pick<Minimum, "parameters" | "covariance">;
 
 /** F, D and their ratios for each decay that has them, then what does not depend on free signs for each mixed pair. */
 export function derivedNumbers(model: Model, minimum: Fitted): DerivedNumber[] {
   return [
     ...model.decays.flatMap((decay) => fAndDOf(decay, model, minimum)),
-    ...model.mixing.flatMap((mixing) => mixedRatios(mixing, model, minimum)),
+    ...mixedRatios(model).flatMap(({ name, at }) => {
+      const { value, gradient } = at(minimum.parameters);
+      if (!Number.isFinite(value)) return [];
+      const error = Math.sqrt(Math.max(0, covarianceOf(gradient, gradient, minimum)));
+      return [{ name, value, error, unit: "1" }];
+    }),
   ];
 }
 
@@ -54,11 +65,14 @@ function fAndDOf(decay: Decay, model: Model, minimum: Fitted): DerivedNumber[] {
  * |1> = cos theta |a> - sin theta |b>; where the study writes an angle in the quark basis it is theta too, not that angle.
  * Only pairs of decays that differ in |a> and |b> alone, with couplings of one unit, are compared.
  */
-function mixedRatios({ states, bare, rotations }: Mixing, model: Model, minimum: Fitted): DerivedNumber[] {
+export function mixedRatios(model: Model): MixedRatio[] {
+  return model.mixing.flatMap((mixing) => ratiosOf(mixing, model));
+}
+
+function ratiosOf({ states, bare, rotations }: Mixing, model: Model): MixedRatio[] {
   const [rotation, ...others] = rotations;
   if (rotation === undefined || others.length > 0) return [];
   const { angle, sign, offset, parameter } = rotation;
-  const theta = (parameter === undefined ? angle : minimum.parameters[parameter]!) + sign * offset;
   const [a, b] = bare.map((text) => text.split("/")[0]!) as [string, string];
   const pairs = model.decays.flatMap((first) =>
     model.decays
@@ -67,22 +81,23 @@ function mixedRatios({ states, bare, rotations }: Mixing, model: Model, minimum:
   );
   return pairs.flatMap(([ofA, ofB]) =>
     ofB.couplingRows.flatMap((rowB, j) =>
-      ofA.couplingRows.flatMap((rowA, i) => {
-        const [gA, gB] = [dot(rowA, minimum.parameters), dot(rowB, minimum.parameters)];
-        if (gA === 0 || unitOf(rowA, model) !== unitOf(rowB, model)) return [];
-        const ratio = gB / gA;
-        const tangent = Math.tan(theta);
-        const gradient = minimum.parameters.map(
-          (_, k) =>
-            (((rowB[k] ?? 0) - ratio * (rowA[k] ?? 0)) / gA) * tangent +
-            (k === parameter ? ratio / Math.cos(theta) ** 2 : 0),
-        );
+      ofA.couplingRows.flatMap((rowA, i): MixedRatio[] => {
+        if (unitOf(rowA, model) !== unitOf(rowB, model)) return [];
         return [
           {
             name: `${ofB.reduced[j]!.name}/${ofA.reduced[i]!.name} tan theta(${states.join(", ")})`,
-            value: ratio * tangent,
-            error: Math.sqrt(Math.max(0, covarianceOf(gradient, gradient, minimum))),
-            unit: "1",
+            at: (parameters) => {
+              const theta = (parameter === undefined ? angle : parameters[parameter]!) + sign * offset;
+              const gA = dot(rowA, parameters);
+              const ratio = dot(rowB, parameters) / gA;
+              const tangent = Math.tan(theta);
+              const gradient = parameters.map(
+                (_, k) =>
+                  (((rowB[k] ?? 0) - ratio * (rowA[k] ?? 0)) / gA) * tangent +
+                  (k === parameter ? ratio / Math.cos(theta) ** 2 : 0),
+              );
+              return { value: ratio * tangent, gradient };
+            },
           },
         ];
       }),

@@ -1,3 +1,4 @@
+import { mixedRatios } from "../model/derived-numbers.js";
 import { decayHasFAndD, type Evaluation, type Graded } from "../model/evaluate.js";
 import type { FittedParameter, StudyMinimum } from "../model/fit-model.js";
 import type { Model, PriorTarget, WidthSum } from "../model/model.js";
@@ -14,7 +15,7 @@ export interface StudyQuantity {
 
 const DERIVED = ["D", "F", "F/D", "alpha_F", "alpha_D"] as const;
 
-/** Every parameter of a model, then F, D and their ratios for each decay that has them. */
+/** Every parameter of a model, then F, D and their ratios for each decay that has them, and ratios of mixed pairs. */
 export function parameterQuantities(model: Model): StudyQuantity[] {
   const quantity = (
     name: string,
@@ -33,7 +34,15 @@ export function parameterQuantities(model: Model): StudyQuantity[] {
       quantity(`${prefix}${name}`, name === "D" || name === "F" ? unit : "1", "derived", { decay, name }),
     );
   });
-  return [...direct, ...derived];
+  const ratios = mixedRatios(model).map(
+    ({ name, at }): StudyQuantity => ({
+      name,
+      unit: "1",
+      kind: "derived",
+      of: ({ parameters }) => at(parameters),
+    }),
+  );
+  return [...direct, ...derived, ...ratios];
 }
 
 /** The partial width of every charge channel, in the order of `model.channels`. */
