@@ -5,5 +5,7 @@ export default defineConfig({
     include: ["test/**/*.test.ts"],
     testTimeout: 60_000,
     hookTimeout: 60_000,
+    // The default leaves one core idle, which on two is half of them.
+    maxWorkers: "100%",
   },
 });
