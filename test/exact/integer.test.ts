@@ -58,6 +58,8 @@ describe("greatest common divisors", () => {
   test("gcd(0, 0) is 0 and gcd(0, n) is |n|", () => {
     expect([gcd(0n, 0n), gcd(0n, -7n), gcd(-7n, 0n)]).toEqual([0n, 7n, 7n]);
     expect([gcdOfNumbers(0, 0), gcdOfNumbers(0, 7), gcdOfNumbers(7, 0)]).toEqual([0, 7, 7]);
+    // 2^31 is the first number that 32-bit arithmetic would take for a negative one.
+    expect([gcdOfNumbers(2 ** 31, 2 ** 31), gcdOfNumbers(2 ** 31, 0)]).toEqual([2 ** 31, 2 ** 31]);
   });
 });
 
