@@ -23,8 +23,8 @@ import { tenObservables } from "./ten-observables.js";
  * 1. A fit of ten observables against the bare linear solves it contains: one least-squares solution by ml-matrix for
  *    each linearised problem it solves, of a matrix of the same size. Goal: within 5 times.
  * 2. 1,000 pseudo-experiments against 1,000 fits of the same data from the same start. Goal: within 1.2 times on one
- *    core (processor time), 0.65 times on two (time by the clock, which needs two idle cores to mean anything).
- *
+ *    core (processor time), 0.65 times on two (time by the clock, which needs two idle cores to mean anything). Warm as
+ *    the fits are; the first call with two threads is told beside.
  * 3. The factor of a channel averaged over the line shape of an unstable daughter against the same factor at one mass,
  *    and against as many plain factors as the average takes.
  */
@@ -97,6 +97,7 @@ async function againstFits(fit: Fit): Promise<void> {
   const threadFile = join(__dirname, "..", "dist", "uncertainty", "refit-thread.js");
   const toys = (workers: number) => pseudoExperiments(fit, { count: COUNT, seed: 1, workers, threadFile });
   await toys(1);
+  const { clock: first } = await timed(() => toys(2));
   const rounds: Record<"fits" | "one" | "two", { processor: number; clock: number }>[] = [];
   for (let round = 0; round < ROUNDS; round++) {
     rounds.push({
@@ -113,7 +114,8 @@ async function againstFits(fit: Fit): Promise<void> {
   );
   const clock = [least(({ fits }) => fits.clock), least(({ two }) => two.clock)] as const;
   console.log(
-    `  with two threads            ${timeText(clock[1])} by the clock, ${(clock[1] / clock[0]).toFixed(2)} times 1000 fits in one (${timeText(clock[0])}); goal 0.65`,
+    `  with two threads            ${timeText(clock[1])} by the clock, ${(clock[1] / clock[0]).toFixed(2)} times 1000 fits in one (${timeText(clock[0])}); goal 0.65; ` +
+      `${timeText(first)} in the first call, which compiles for the new thread`,
   );
 }
 

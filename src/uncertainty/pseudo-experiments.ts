@@ -1,6 +1,6 @@
 import { join } from "node:path";
 import { setImmediate } from "node:timers/promises";
-import { Worker } from "node:worker_threads";
+import { Tinypool } from "tinypool";
 import { LimitError } from "../errors.js";
 import { quantile } from "../fit/quantile.js";
 import { Evaluation, evaluator } from "../model/evaluate.js";
@@ -53,6 +53,12 @@ export interface PseudoExperiments {
   readonly quantities: readonly PseudoQuantity[];
 }
 
+/** Threads that fit at the same time, at most. */
+const MOST_THREADS = 256;
+
+/** How long a thread waits for the next experiments. */
+const IDLE_MILLISECONDS = 10_000;
+
 /** Bytes of results above which a request is refused. */
 const MAXIMUM_BYTES = 2 ** 30;
 
@@ -70,7 +76,7 @@ export async function pseudoExperiments(
   const { count, seed, workers = 1, signal } = options;
   requireInteger("pseudoExperiments: count", count, 1);
   requireInteger("pseudoExperiments: seed", seed, 0, "", 2 ** 32 - 1);
-  requireInteger("pseudoExperiments: workers", workers, 1, "", 256);
+  requireInteger("pseudoExperiments: workers", workers, 1, "", MOST_THREADS);
   signal?.throwIfAborted();
   const chosen = options.minimum ?? 0;
   const listed = fit.minima
@@ -105,24 +111,33 @@ export async function pseudoExperiments(
   );
 }
 
-/** Fills all rows, here and in other threads, all of which have ended when this does. */
+let pool: Tinypool | undefined;
+
+/** The other threads. They stay for a while, since a new one is slow until its code is compiled; a process ends all the same. */
+function otherThreads(): Tinypool {
+  pool ??= new Tinypool({
+    minThreads: 0,
+    maxThreads: MOST_THREADS,
+    idleTimeout: IDLE_MILLISECONDS,
+    isolateWorkers: false,
+  });
+  return pool;
+}
+
+/** Fills all rows, here and in other threads, none of which works on them when this ends. */
 async function fill(
   rows: SharedRows,
   refitter: Refitter,
   task: PseudoExperimentTask,
   { workers = 1, signal, onProgress, threadFile }: PseudoExperimentOptions,
 ): Promise<void> {
-  const file = threadFile ?? join(__dirname, "refit-thread.js");
-  const workerData: RefitThreadData = { task, rows };
-  const threads = Array.from({ length: workers - 1 }, () => new Worker(file, { workerData }));
-  const ended = threads.map(
-    (thread) =>
-      new Promise<void>((resolve, reject) => {
-        thread.once("error", reject);
-        thread.once("exit", () => resolve());
-      }),
+  const filename = threadFile ?? join(__dirname, "refit-thread.js");
+  const data: RefitThreadData = { task, rows };
+  const stop = new AbortController();
+  const threads = Array.from({ length: workers - 1 }, () =>
+    otherThreads().run(data, { filename, name: "fillRows", signal: stop.signal }),
   );
-  const all = Promise.all(ended);
+  const all = Promise.all(threads);
   // A failure is seen when `all` is awaited; until then it must not count as unhandled.
   all.catch(() => {});
   try {
@@ -135,7 +150,8 @@ async function fill(
     signal?.throwIfAborted();
     onProgress?.(rows.count, rows.count);
   } finally {
-    await Promise.all(threads.map((thread) => thread.terminate()));
+    stop.abort();
+    await Promise.allSettled(threads);
   }
 }
 
