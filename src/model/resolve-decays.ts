@@ -4,7 +4,7 @@ import type { Multiplet } from "../hadrons/multiplet.js";
 import { refuse } from "../require.js";
 import type { Quantity, Study, StudyDecay } from "../study/study.js";
 import { allowedWaves } from "../widths/allowed-waves.js";
-import { widthModel } from "../widths/width-model.js";
+import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
 import type { Decay, Parameter } from "./model.js";
 import type { Problems } from "./problems.js";
 import { quarkLineCouplings } from "./quark-line.js";
@@ -103,7 +103,7 @@ function resolveDecay(
   const first = resolveMultiplet(written.to[0], `${path}/to/0`, own, problems)?.multiplet;
   const second = resolveMultiplet(written.to[1], `${path}/to/1`, own, problems)?.multiplet;
   const model = problems.attempt(`${path}/model`, () =>
-    widthModel(written.model.id, plainOptions(written.model.options)),
+    widthModel(written.model.id, plainOptions(written.model)),
   );
   if (from === undefined || first === undefined || second === undefined || model === undefined)
     return undefined;
@@ -129,11 +129,22 @@ function resolveDecay(
   });
 }
 
-/** Options as plain numbers; a quantity with its unit is in MeV, as are the options it can stand for. */
-function plainOptions(options: Readonly<Record<string, number | Quantity>>): Record<string, number> {
-  return Object.fromEntries(
-    Object.entries(options).map(([name, value]) => [name, typeof value === "number" ? value : value.value]),
-  );
+/** Options as plain numbers. A quantity is an energy in MeV by now: refused where the option is none, or with an error. */
+function plainOptions({ id, options }: StudyDecay["model"]): Record<string, number> {
+  const known = widthModelDefinitions().find((definition) => definition.id === id)?.options ?? [];
+  const plain = (name: string, value: number | Quantity): number => {
+    if (typeof value === "number") return value;
+    const unit = known.find((option) => option.name === name)?.unit ?? "MeV";
+    const isPlain = value.plus === 0 && value.minus === 0 && value.limit === undefined;
+    if (unit === "MeV" && isPlain) return value.value;
+    const got = isPlain ? `${value.value} MeV` : `${value.value} +${value.plus} -${value.minus} MeV`;
+    return refuse(
+      name,
+      unit === "MeV" ? "an energy without an error" : `a number without a unit (it is in ${unit})`,
+      got,
+    );
+  };
+  return Object.fromEntries(Object.entries(options).map(([name, value]) => [name, plain(name, value)]));
 }
 
 function requireBaryonFirst(from: Multiplet, first: Multiplet, second: Multiplet): void {

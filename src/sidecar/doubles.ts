@@ -6,17 +6,21 @@ export type DoubleLists = readonly (readonly [field: number, values: Float64Arra
 /** Whether doubles lie in memory as they go over the wire. */
 const IS_LITTLE_ENDIAN = endianness() === "LE";
 
+let space = Buffer.alloc(0);
+
 /**
  * A message with packed `repeated double` fields after its others: the bytes the generated encoder would write, which takes
  * each number by itself and is ten times slower. Nothing is written for an empty list.
  *
  * @param head - the encoded other fields
  * @param lists - fields from 1 to 15
+ * @returns bytes of a space that the next message takes again: new ones for each would cost more than writing them
  */
 export function withDoubles(head: Uint8Array, lists: DoubleLists): Uint8Array {
   const filled = lists.filter(([, values]) => values.length > 0);
   const size = filled.reduce((sum, [, { byteLength }]) => sum + 1 + varintSize(byteLength) + byteLength, 0);
-  const bytes = Buffer.allocUnsafe(head.length + size);
+  if (space.length < head.length + size) space = Buffer.alloc(head.length + size);
+  const bytes = space.subarray(0, head.length + size);
   bytes.set(head);
   let at = head.length;
   for (const [field, values] of filled) {

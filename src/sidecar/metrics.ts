@@ -23,8 +23,9 @@ export class SidecarMetrics {
     "couplet_uncaught_errors_total",
     "Errors that no call caught; each is a bug",
   );
-  readonly #rows = this.#counter("couplet_rows_evaluated_total", "Rows evaluated at a mass");
-  readonly #draws = this.#counter("couplet_draws_total", "Decay channels drawn");
+  // Counted with every answer, told when they are asked for.
+  #rows = 0;
+  #draws = 0;
   readonly #replacements = new Counter({
     name: "couplet_replacements_total",
     help: "Replacements of the tables, by whether they were taken",
@@ -50,6 +51,8 @@ export class SidecarMetrics {
 
   constructor() {
     collectDefaultMetrics({ register: this.registry });
+    this.#told("couplet_rows_evaluated_total", "Rows evaluated at a mass", () => this.#rows);
+    this.#told("couplet_draws_total", "Decay channels drawn", () => this.#draws);
   }
 
   /** Notes that a call ended. */
@@ -71,8 +74,8 @@ export class SidecarMetrics {
 
   /** Notes the work of an answer. */
   worked(rows: number, draws: number): void {
-    if (rows > 0) this.#rows.inc(rows);
-    if (draws > 0) this.#draws.inc(draws);
+    this.#rows += rows;
+    this.#draws += draws;
   }
 
   /** Notes a replacement of the tables. */
@@ -97,6 +100,14 @@ export class SidecarMetrics {
 
   #gauge(name: string, help: string): Gauge {
     return new Gauge({ name, help, registers: [this.registry] });
+  }
+
+  #told(name: string, help: string, value: () => number): void {
+    const collect = function (this: Counter) {
+      this.reset();
+      this.inc(value());
+    };
+    new Counter({ name, help, registers: [this.registry], collect });
   }
 
   #counter(name: string, help: string): Counter {

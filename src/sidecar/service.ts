@@ -16,8 +16,11 @@ import { type CallStatus, statusOf } from "./status.js";
 /** Full name of the service. */
 export const SERVICE_NAME = "couplet.v1.SidecarService";
 
-/** Answers of one stream that may wait for its client before the server stops reading its requests. */
-const STREAM_WINDOW_BYTES = 256 * 1024;
+/** Requests of one stream that may wait for their turn before the server stops reading more. */
+const STREAM_WINDOW_BYTES = 64 * 1024;
+
+/** What a waiting request takes beside its bytes, so that empty ones count too. */
+const REQUEST_OVERHEAD_BYTES = 64;
 
 /** What the calls share. */
 export interface ServiceContext {
@@ -32,6 +35,10 @@ export interface ServiceContext {
 export function sidecarService(context: ServiceContext): [ServiceDefinition, UntypedServiceImplementation] {
   const methods = context.methods ?? METHODS;
   const same = (bytes: Buffer) => bytes;
+  const framed = (answer: Outgoing) => {
+    answer.framed = true;
+    return answer.bytes as Buffer;
+  };
   const definition = methods.map(({ name, streaming }) => [
     name,
     {
@@ -40,7 +47,7 @@ export function sidecarService(context: ServiceContext): [ServiceDefinition, Unt
       responseStream: streaming,
       requestSerialize: same,
       requestDeserialize: same,
-      responseSerialize: same,
+      responseSerialize: framed,
       responseDeserialize: same,
     },
   ]);
@@ -56,7 +63,23 @@ function isOver(call: { readonly cancelled: boolean; getDeadline(): Date | numbe
   return call.cancelled || Number(call.getDeadline()) <= Date.now();
 }
 
-function unaryHandler(method: Method, context: ServiceContext): handleUnaryCall<Buffer, Uint8Array> {
+/** An answer handed to the transport, which copies it into a frame when it asks for its bytes. */
+interface Outgoing {
+  bytes: Uint8Array;
+  framed: boolean;
+}
+
+/**
+ * Hands an answer over. The next answer may take the space of its bytes again, so that those not copied at once, as grpc-js
+ * does when nothing waits before them, are copied here.
+ */
+function send(bytes: Uint8Array, write: (answer: Outgoing) => void): void {
+  const answer = { bytes, framed: false };
+  write(answer);
+  if (!answer.framed) answer.bytes = Buffer.from(bytes);
+}
+
+function unaryHandler(method: Method, context: ServiceContext): handleUnaryCall<Buffer, Outgoing> {
   const { clients, metrics } = context;
   return (call, respond) => {
     const started = performance.now();
@@ -73,7 +96,7 @@ function unaryHandler(method: Method, context: ServiceContext): handleUnaryCall<
       call.once("cancelled", () => client.taken(bytes.length));
       metrics.worked(rowsEvaluated, draws);
       metrics.ended(method.name, status.OK, performance.now() - started);
-      respond(null, bytes);
+      send(bytes, (answer) => respond(null, answer));
     } catch (error) {
       const refusal = refusalOf(error, method, context);
       metrics.ended(method.name, refusal.code, performance.now() - started);
@@ -82,13 +105,18 @@ function unaryHandler(method: Method, context: ServiceContext): handleUnaryCall<
   };
 }
 
-function streamHandler(method: Method, context: ServiceContext): handleBidiStreamingCall<Buffer, Uint8Array> {
+function streamHandler(method: Method, context: ServiceContext): handleBidiStreamingCall<Buffer, Outgoing> {
   const { clients, metrics } = context;
   return (call) => {
     const started = performance.now();
     const client = clients.of(call.getPeer());
     const snapshot = context.snapshot();
-    let waitingBytes = 0;
+    // Requests wait here and not as answers, which are twenty times as long: the next is answered when one is taken.
+    let requests: Buffer[] = [];
+    let requestBytes = 0;
+    let answering = false;
+    let answerBytes = 0;
+    let ended = false;
     let code = status.OK;
     const refuse = (error: unknown) => {
       const refusal = refusalOf(error, method, context);
@@ -107,36 +135,54 @@ function streamHandler(method: Method, context: ServiceContext): handleBidiStrea
       client.closeStream();
       metrics.streams.dec();
       // A client that leaves looks like one that ends its requests, unless answers were still on their way to it.
-      const lost = waitingBytes > 0 || !call.writableFinished;
+      const lost = answering || requests.length > 0 || !call.writableFinished;
       metrics.ended(
         method.name,
         code === status.OK && lost ? status.CANCELLED : code,
         performance.now() - started,
       );
-      client.taken(waitingBytes);
-      waitingBytes = 0;
+      client.taken(answerBytes);
+      answerBytes = 0;
+      requests = [];
     });
-    call.on("data", (request: Buffer) => {
-      if (code !== status.OK || isOver(call)) return;
+    const taken = () => {
+      client.taken(answerBytes);
+      answerBytes = 0;
+      answering = false;
+      answerNext();
+    };
+    const answerNext = () => {
+      if (answering || code !== status.OK || isOver(call)) return;
+      const request = requests.shift();
+      if (request === undefined) {
+        if (ended) call.end();
+        return;
+      }
+      requestBytes -= request.length + REQUEST_OVERHEAD_BYTES;
+      if (requestBytes <= STREAM_WINDOW_BYTES / 2 && call.isPaused()) call.resume();
       try {
         client.requireRoom();
         const { bytes, rowsEvaluated, draws } = method.answer(snapshot, request);
         metrics.worked(rowsEvaluated, draws);
-        client.leave(bytes.length);
-        waitingBytes += bytes.length;
-        call.write(bytes, () => {
-          // After the end of the call everything has been taken off already.
-          const taken = Math.min(bytes.length, waitingBytes);
-          waitingBytes -= taken;
-          client.taken(taken);
-          if (waitingBytes <= STREAM_WINDOW_BYTES / 2 && call.isPaused()) call.resume();
-        });
-        if (waitingBytes > STREAM_WINDOW_BYTES) call.pause();
+        answering = true;
+        answerBytes = bytes.length;
+        client.leave(answerBytes);
+        send(bytes, (answer) => call.write(answer, taken));
       } catch (error) {
         refuse(error);
       }
+    };
+    call.on("data", (request: Buffer) => {
+      if (code !== status.OK) return;
+      requests.push(request);
+      requestBytes += request.length + REQUEST_OVERHEAD_BYTES;
+      if (requestBytes > STREAM_WINDOW_BYTES) call.pause();
+      answerNext();
     });
-    call.on("end", () => call.end());
+    call.on("end", () => {
+      ended = true;
+      answerNext();
+    });
   };
 }
 

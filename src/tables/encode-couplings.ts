@@ -18,9 +18,10 @@ import { parseChannel } from "../model/channel-names.js";
 import type { Model } from "../model/model.js";
 import { studyWarnings } from "../model/validity.js";
 import { CONVENTION } from "../su3/isoscalar-factors.js";
-import { estimateMessage, fitMessage, headerMessage, optionMessages } from "./encode-decays.js";
+import { estimateMessage, fitMessage, headerMessage } from "./encode-decays.js";
 import { exactMessage } from "./exact-message.js";
 import { sealBytes } from "./sealed-bytes.js";
+import { optionMessages } from "./wave-options.js";
 
 import v1 = couplet.v1;
 

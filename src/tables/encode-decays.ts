@@ -14,15 +14,16 @@ import type {
 import { couplet } from "../gen/couplet.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
-import type { Model, WidthModelChoice } from "../model/model.js";
+import type { Model } from "../model/model.js";
 import { studyWarnings } from "../model/validity.js";
 import type { StudyTableOptions } from "../study/study.js";
 import { CONVENTION, MULTIPLICITY_RULE } from "../su3/isoscalar-factors.js";
 import { producerName } from "../version.js";
 import type { MassGrid } from "../widths/mass-grid.js";
-import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
+import { widthModel } from "../widths/width-model.js";
 import { CAUTIONS } from "./cautions.js";
 import { sealedPieces } from "./sealed-bytes.js";
+import { optionMessages } from "./wave-options.js";
 
 import v1 = couplet.v1;
 
@@ -315,10 +316,4 @@ function waveMessage(wave: RowWave): v1.Wave.$Properties {
     model: model.id,
     options: optionMessages(model),
   };
-}
-
-/** Every option of a width model with its unit and value. */
-export function optionMessages({ id, options }: WidthModelChoice): v1.Option.$Properties[] {
-  const definition = widthModelDefinitions().find((model) => model.id === id)!;
-  return definition.options.map(({ name, unit }) => ({ name, unit, value: options[name]! }));
 }

@@ -2,9 +2,10 @@ import { InputError, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { refuse, requirePositive } from "../require.js";
 import { breakupMomentumMeV, momentumOfMeV } from "../widths/breakup-momentum.js";
-import { gridWidthMeV } from "../widths/mass-grid.js";
+import { gridWidth } from "../widths/mass-grid.js";
 import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
 import type { Kinematics, Vertex } from "../widths/width-model-definition.js";
+import { optionValues } from "./wave-options.js";
 
 import v1 = couplet.v1;
 
@@ -55,21 +56,26 @@ export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByN
   return {
     rowCount: rows.length,
     manyInto(massesMeV, widths, totals) {
-      for (let k = 0; k < massesMeV.length; k++)
+      const count = massesMeV.length;
+      let largestMeV = 0;
+      for (let k = 0; k < count; k++) {
         requirePositive("mass of the parent", massesMeV[k]!, "Give the mass in MeV.");
+        largestMeV = Math.max(largestMeV, massesMeV[k]!);
+      }
+      widths.fill(0, 0, count * rows.length);
+      totals.fill(0, 0, count);
       for (let row = 0; row < rows.length; row++) {
         const { thresholdMeV, widthMeV } = rows[row]!;
-        for (let k = 0, at = row; k < massesMeV.length; k++, at += rows.length) {
+        if (!(largestMeV > thresholdMeV)) continue;
+        for (let k = 0, at = row; k < count; k++, at += rows.length) {
           const massMeV = massesMeV[k]!;
-          widths[at] = massMeV > thresholdMeV ? widthMeV(massMeV) : 0;
+          if (!(massMeV > thresholdMeV)) continue;
+          const width = widthMeV(massMeV);
+          widths[at] = width;
+          totals[k]! += width;
         }
       }
-      for (let k = 0, at = 0; k < massesMeV.length; k++) {
-        let total = 0;
-        for (const end = at + rows.length; at < end; at++) total += widths[at]!;
-        requireFinite(total, massesMeV[k]!);
-        totals[k] = total;
-      }
+      for (let k = 0; k < count; k++) requireFinite(totals[k]!, massesMeV[k]!);
     },
     widthsInto(massMeV, widths, offset) {
       requirePositive("mass of the parent", massMeV, "Give the mass in MeV.");
@@ -176,7 +182,7 @@ function gridOf(row: v1.Row.$Properties): RowWidth {
   const sizes = x.length >= 2 && grid.logWidths.length === x.length && grid.slopes.length === x.length;
   const ascending = x.every((distance, k) => distance > (k === 0 ? 0 : x[k - 1]!));
   if (sizes && ascending && Number.isFinite(threshold)) {
-    return { thresholdMeV: grid.thresholdMeV, widthMeV: (massMeV) => gridWidthMeV(grid, massMeV) };
+    return { thresholdMeV: grid.thresholdMeV, widthMeV: gridWidth(grid).widthMeV };
   }
   throw new TableError(`${row.id}: expected a grid of two points or more in ascending order, got another`);
 }
@@ -244,17 +250,10 @@ export function factorOf(
     const known = widthModelDefinitions().map(({ id }) => id);
     refuseWave(row, `a width model among ${known.join(", ")}`, JSON.stringify(wave.model));
   }
-  const wanted = definition.options.map(({ name, unit }) => `${name} in ${unit}`);
-  const given = (wave.options ?? []).map(({ name, unit }) => `${name} in ${unit}`);
-  if (wanted.length !== given.length || !wanted.every((option) => given.includes(option))) {
-    const expected = `width model ${definition.id} with the options [${wanted.join(", ")}]`;
-    refuseWave(row, expected, `[${given.join(", ")}]`);
-  }
+  const options = optionValues(row.id ?? "", definition, wave.options ?? []);
   const vertex = vertexOf(wave, spins);
   try {
-    const options = (wave.options ?? []).map(({ name, value }) => [name, value ?? Number.NaN]);
-    const model = widthModel(definition.id, Object.fromEntries(options));
-    return model.factorMeV(vertex);
+    return widthModel(definition.id, options).factorMeV(vertex);
   } catch (cause) {
     if (cause instanceof InputError) throw new TableError(`${row.id}: ${cause.message}`, { cause });
     throw cause;

@@ -8,9 +8,9 @@ import {
   LISTED_DELTA_CHI2,
   type StudyMinimum,
 } from "../model/fit-model.js";
-import type { Model, WidthModelChoice } from "../model/model.js";
+import type { Decay, Model, WidthModelChoice } from "../model/model.js";
 import { resolveStudy } from "../model/resolve-study.js";
-import { widthModel } from "../widths/width-model.js";
+import { isSameModel, widthModel } from "../widths/width-model.js";
 
 /** 1/GeV as a radius in fm: hbar c / 1 GeV, fixed by the SI of 2019. */
 const INVERSE_GEV_FM = 0.1973269804;
@@ -23,6 +23,7 @@ const CHOICES: readonly WidthModelChoice[] = [
   { id: "c", options: { radiusFm: INVERSE_GEV_FM } },
   { id: "c", options: { radiusFm: 5 * INVERSE_GEV_FM } },
   { id: "d", options: {} },
+  { id: "d", options: { derivativeForm: 1 } },
   { id: "e", options: {} },
 ];
 
@@ -98,7 +99,7 @@ export function modelRefits(
   const reference = amplitudes(fit.model, fit.minima[minimum]!);
   const fits: ModelRefit[] = [];
   const skipped: SkippedModel[] = [];
-  const others = CHOICES.filter((choice) => !isOwnModel(choice, fit.model));
+  const others = otherModels(fit.model);
   for (const [done, choice] of others.entries()) {
     const reason = couplingsAreFixed(fit.model) ?? missingFormula(choice, fit.model);
     const result = reason === undefined ? refitted(fit.model, choice, options) : reason;
@@ -117,12 +118,18 @@ export function modelErrorsMeV({ own, fits }: ModelSpread): number[] {
   });
 }
 
-function isOwnModel({ id, options }: WidthModelChoice, { decays }: Model): boolean {
-  const full = widthModel(id, options).options;
-  return decays.every(
-    ({ model }) =>
-      model.id === id && Object.entries(full).every(([name, value]) => model.options[name] === value),
-  );
+/** The choices that differ from the study's own models and from each other in the decays of the study. */
+function otherModels({ decays }: Model): WidthModelChoice[] {
+  const isSame = (of: (decay: Decay) => WidthModelChoice, choice: WidthModelChoice) =>
+    decays.every((decay) => {
+      const { id, options } = of(decay);
+      const vertex = { L: decay.L, parent: decay.from, daughters: decay.to };
+      return isSameModel(widthModel(id, options), widthModel(choice.id, choice.options), vertex);
+    });
+  return CHOICES.filter((choice, k) => {
+    const isOwn = isSame(({ model }) => model, choice);
+    return !isOwn && !CHOICES.slice(0, k).some((earlier) => isSame(() => earlier, choice));
+  });
 }
 
 /** Why another model's couplings would contradict what the study says of their size; undefined if it says nothing. */

@@ -32,6 +32,13 @@ export interface WidthModelOption {
   readonly maximum: number;
   readonly integer: boolean;
   readonly meaning: string;
+  /**
+   * What a table means that does not have the option: how the model was before it had it. Undefined where a table must
+   * have it. It never changes, unlike the default.
+   */
+  readonly absent?: number;
+  /** Whether K of a vertex depends on the option; left out where it always does. */
+  concerns?(vertex: Vertex): boolean;
 }
 
 /** Values of a model's options, by name. */

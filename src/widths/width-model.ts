@@ -97,6 +97,15 @@ export function widthModel(id: string, options: WidthModelOptions = {}): WidthMo
   };
 }
 
+/** Whether two models are the same for a vertex: one id, and one value of every option that K of the vertex depends on. */
+export function isSameModel(one: WidthModel, other: WidthModel, vertex: Vertex): boolean {
+  if (one.id !== other.id) return false;
+  return MODELS.find(({ id }) => id === one.id)!.options.every(
+    ({ name, concerns }) =>
+      one.options[name] === other.options[name] || (concerns !== undefined && !concerns(vertex)),
+  );
+}
+
 function checkVertex(definition: WidthModelDefinition, vertex: Vertex): void {
   requireInteger(
     `width model ${definition.id}: L`,

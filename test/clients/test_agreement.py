@@ -81,10 +81,11 @@ def every_model():
         "a": [{"n": n, "referenceMomentumMeV": 1000, "referenceMassMeV": 900} for n in (0, 1, 2)],
         "b": [{"rangeMeV": 350, "nucleonMassMeV": 938.9}, {"rangeMeV": 80, "nucleonMassMeV": 1000}],
         "c": [{"radiusFm": 1, "referenceMassMeV": 1000}, {"radiusFm": 0.25, "referenceMassMeV": 938}],
-        "d": [{"scaleMeV": 139.57}],
+        # Without the option it is 0, as in tables from before there was one.
+        "d": [{"scaleMeV": 139.57}, {"scaleMeV": 139.57, "derivativeForm": 0}, {"scaleMeV": 250, "derivativeForm": 1}],
         "e": [{}],
     }
-    units = {"n": "1", "radiusFm": "fm"}
+    units = {"n": "1", "radiusFm": "fm", "derivativeForm": "1"}
 
     def parent(name, mass, two_j):
         made = tables.parents.add(multiplet="made", total_width=1)
@@ -143,6 +144,77 @@ def every_model():
     row(parent("light meson", 600.0, 0), [heavy[0], light[0]], "a", 0)
     for made in tables.parents:
         made.rows.add(id="remainder", threshold=0 if made.hadron.mass < 900 else 100, parts_per_billion=couplet_decays.WHOLE).width.value = 7.5
+    return seal(tables)
+
+
+def forms_of_model_d(widths):
+    """What is wrong with rows of model d by their option derivativeForm, for the widths of one reader.
+
+    Missing is 0; 1 makes a width at m0 grow by ((m -+ m1)/(m0 -+ m1))^2 more for spin 1/2, - in an S and + in a P wave,
+    and a row that is closed at m0 by ((m -+ m1)/m_s)^2; nothing for higher spins.
+    """
+    wrong, grown = [], 0
+    for (parent, shift, row), width in widths.items():
+        if not row.startswith("d 0 "):
+            continue
+        written_out = widths[parent, shift, row.replace("d 0", "d 1")]
+        derivative = widths[parent, shift, row.replace("d 0", "d 2")]
+        if written_out != width:
+            wrong.append(f"{parent} {row} at {shift}: absent and 0 differ")
+        # Scales of 139.57 and 250 MeV: they cancel where the amplitude is that at the nominal mass.
+        is_open = "heavy" not in row
+        nominal, first = 1900.0, 938.5 + 5000 * (not is_open)
+        if parent == "baryon 1/2":
+            mass, sign = max(nominal + float(shift), 1e-3), -1 if " L0 " in row else 1
+            scale = nominal + sign * first if is_open else 250
+            expected = width * ((mass + sign * first) / scale) ** 2
+            grown += width > 0 and float(shift) != 0
+        else:
+            n = (int(parent[7]) - 1) // 2
+            expected = width * (1 if is_open else (139.57 / 250) ** (2 * n))
+        if abs(derivative - expected) > 1e-12 * expected:
+            wrong.append(f"{parent} {row} at {shift}: {derivative} instead of {expected}")
+    return wrong if grown > 10 else [*wrong, f"only {grown} widths of the derivative form off the nominal mass"]
+
+
+def refusals(kind):
+    """Tables with one option of model d that no reader may accept, by what is wrong with it."""
+    changes = {
+        "an unknown option": ("mixing", 1, "1"),
+        "a known option in another unit": ("derivativeForm", 1, "MeV"),
+        "derivativeForm = 0.5": ("derivativeForm", 0.5, "1"),
+        "derivativeForm = nan": ("derivativeForm", float("nan"), "1"),
+        "derivativeForm twice": ("derivativeForm", 1, "1"),
+    }
+    for what, (name, value, unit) in changes.items():
+        tables = couplet_decays.tables_from_bytes(kind, "made")
+        wave = next(
+            wave
+            for row in tables.parents[0].rows
+            for wave in row.waves
+            if wave.model == "d" and len(wave.options) == (2 if what.endswith("twice") else 1)
+        )
+        wave.options.add(name=name, value=value, unit=unit)
+        yield what, seal(tables)
+
+
+def refused_by(path, cpp_evaluate, dist):
+    """The readers that refuse a file as damaged or too new, in words."""
+    found = []
+    try:
+        python_widths(path)
+    except couplet_decays.Damaged:
+        found.append("Python")
+    for language, command in [("C++", [cpp_evaluate, path]), ("TypeScript", ["node", "-e", NODE, dist, path])]:
+        done = subprocess.run(command + SHIFTS, capture_output=True, text=True)
+        if done.returncode != 0 and "width model d" in done.stderr:
+            found.append(language)
+    return found
+
+
+def seal(tables):
+    """A message as the bytes of a sealed file."""
+    tables.ClearField("sha256")
     body = tables.SerializeToString()
     return body + couplet_decays.SEAL_HEAD + hashlib.sha256(body).digest()
 
@@ -163,6 +235,19 @@ def main(table, cpp_evaluate, dist):
                     f"{'ok' if ok else 'FAILED'}  Python and {language} agree on {len(ours)} widths of {what}, "
                     f"{positive} of them positive: largest relative difference {largest:.1e}"
                 )
+    wrong = forms_of_model_d(ours)
+    passed, failed = passed + (not wrong), failed + bool(wrong)
+    print(f"{'FAILED' if wrong else 'ok'}  model d: without derivativeForm it is 0, with 1 its width grows by another law")
+    for line in wrong[:5]:
+        print("        " + line)
+    for what, content in refusals(every_model()):
+        with tempfile.NamedTemporaryFile(suffix=".decays.pb") as made:
+            made.write(content)
+            made.flush()
+            found = refused_by(made.name, cpp_evaluate, dist)
+        ok = found == ["Python", "C++", "TypeScript"]
+        passed, failed = passed + ok, failed + (not ok)
+        print(f"{'ok' if ok else 'FAILED'}  {what} of model d is refused by {', '.join(found)}")
     key = max(ours, key=ours.get)
     ok = difference(ours, {**ours, key: ours[key] * (1 + 1e-11)}) > TOLERANCE
     passed, failed = passed + ok, failed + (not ok)

@@ -89,6 +89,35 @@ test("a batch and a stream of batches give what single queries give, in order", 
   stream.end();
 });
 
+test("answers under way at the same time, of streams and single batches, do not mix", async () => {
+  const name = "Sigma(1385)0";
+  const parent = client.key(name);
+  const batch = (stream: number, k: number) =>
+    Array.from({ length: 1 + ((7 * stream + 13 * k) % 200) }, (_, j) => 1300 + stream + k / 64 + j);
+  const streams = Array.from({ length: 6 }, () => client.widthsStream());
+  const asked = streams.flatMap((stream, s) =>
+    Array.from({ length: 40 }, (_, k) => {
+      const masses = batch(s, k);
+      return [
+        masses,
+        k % 8 === 7 ? client.widthsBatch(name, masses) : stream.ask({ parent, masses }),
+      ] as const;
+    }),
+  );
+  for (const [masses, answer] of asked) {
+    const { totalWidths, widths, fractions } = await answer;
+    expect(totalWidths).toHaveLength(masses.length);
+    for (const k of [0, masses.length - 1]) {
+      const single = await client.widths(name, masses[k]!);
+      const rows = single.widths.length;
+      expect(totalWidths[k]).toBe(single.totalWidth);
+      expect(widths.slice(k * rows, (k + 1) * rows)).toEqual(single.widths);
+      expect(fractions.slice(k * rows, (k + 1) * rows)).toEqual(single.fractions);
+    }
+  }
+  for (const stream of streams) stream.end();
+});
+
 test("GetIsoscalarFactors gives the table and the digest of the file of the same product", async () => {
   const { table, tableSha256 } = await client.isoscalarFactors({
     left: { p: 3, q: 0 },

@@ -1,7 +1,7 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { InputError } from "../../src/errors.js";
-import { widthModel, widthModelDefinitions } from "../../src/widths/width-model.js";
+import { isSameModel, widthModel, widthModelDefinitions } from "../../src/widths/width-model.js";
 
 const SEED = 11;
 const BARYON = {
@@ -93,6 +93,26 @@ describe("width models", () => {
         "width model a: n: expected an integer from 0 to 2, got 1.5. It is power of M_ref/M; the default is 2.",
       ),
     );
+  });
+
+  test("two models are the same for a vertex where every option that concerns it is", () => {
+    const d = (options: Record<string, number>) => widthModel("d", options);
+    const octet = { ...BARYON, parent: { twoJ: 1, parity: 1 } } as const;
+    const same = (one: Record<string, number>, other: Record<string, number>, of: object) =>
+      isSameModel(d(one), d(other), { L: 1, ...of });
+    expect(same({}, { derivativeForm: 0, scaleMeV: 139.57 }, octet)).toBe(true);
+    expect(same({}, { derivativeForm: 1 }, octet)).toBe(false);
+    expect(same({}, { derivativeForm: 1 }, BARYON)).toBe(true);
+    expect(same({ derivativeForm: 1 }, { derivativeForm: 1, scaleMeV: 1000 }, octet)).toBe(false);
+    const [baryon, meson] = BARYON.daughters;
+    const vector = { ...meson, twoJ: 2 };
+    for (const daughters of [
+      [baryon, vector],
+      [{ ...baryon, twoJ: 3 }, meson],
+    ])
+      expect(same({}, { derivativeForm: 1 }, { ...octet, daughters })).toBe(true);
+    expect(isSameModel(widthModel("b"), widthModel("c"), { L: 1 })).toBe(false);
+    expect(isSameModel(widthModel("a"), widthModel("a", { n: 2 }), { L: 1 })).toBe(true);
   });
 
   test("a wave that is no wave is refused", () => {

@@ -20,6 +20,7 @@
 #include <cmath>
 #include <functional>
 #include <initializer_list>
+#include <sstream>
 #include <utility>
 
 #include "couplet_tables.hpp"
@@ -65,21 +66,37 @@ inline double power(double base, unsigned exponent) { return std::pow(base, stat
   throw Damaged(row + ": expected " + expected + ", got " + got + ". Read the table with a newer reader.");
 }
 
+// An option of a model; one that joined its model later has the value that a table without it means.
+struct WantedOption {
+  const char* name;
+  const char* unit;
+  std::optional<double> absent = std::nullopt;
+};
+
 // The values of a model's options in the order asked for; refuses others, missing ones and other units, since a model
 // with a constant of unknown meaning is another model.
 inline std::vector<double> option_values(const Wave& wave, const Vertex& vertex,
-                                         std::initializer_list<std::pair<const char*, const char*>> wanted) {
+                                         std::initializer_list<WantedOption> wanted) {
   std::string expected;
-  for (const auto& [name, unit] : wanted) expected += std::string(expected.empty() ? "" : ", ") + name + " in " + unit;
+  for (const auto& [name, unit, absent] : wanted) {
+    expected += std::string(expected.empty() ? "" : ", ") + name + " in " + unit + (absent ? " or none" : "");
+  }
   std::string got;
   for (const Option& option : wave.options) got += (got.empty() ? "" : ", ") + option.name + " in " + option.unit;
   std::vector<double> values;
-  for (const auto& [name, unit] : wanted) {
+  std::size_t known = 0;
+  for (const auto& [name, unit, absent] : wanted) {
+    std::optional<double> value = absent;
     for (const Option& option : wave.options) {
-      if (option.name == name && option.unit == unit && std::isfinite(option.value)) values.push_back(option.value);
+      if (option.name != name || option.unit != unit || !std::isfinite(option.value)) continue;
+      value = option.value;
+      ++known;
+      // A second one of the name is one too many below.
+      break;
     }
+    if (value) values.push_back(*value);
   }
-  if (values.size() != wanted.size() || wave.options.size() != wanted.size()) {
+  if (values.size() != wanted.size() || wave.options.size() != known) {
     refuse_wave(vertex.row, "width model " + wave.model + " with the options [" + expected + "]", "[" + got + "]");
   }
   return values;
@@ -122,7 +139,13 @@ inline WidthModel barrier_model(unsigned l, double radius, double m_ref) {
 }
 
 // Model d: K = n!/((2n+1)!! 4 pi) q (q/m_s)^2n (E +- m)/M for spin J = n + 1/2 into 1/2 and 0, + for L = n, - for n + 1.
-inline WidthModel effective_baryon(unsigned l, double scale, const Vertex& vertex) {
+// With the derivative form times ((M -+ m)/m_s)^2 for J = 1/2, with no effect for higher spins.
+inline WidthModel effective_baryon(unsigned l, double scale, double derivative_form, const Vertex& vertex) {
+  if (derivative_form != 0 && derivative_form != 1) {
+    std::ostringstream got;
+    got << derivative_form;
+    refuse_wave(vertex.row, "derivativeForm 0 or 1 of width model d", got.str());
+  }
   const unsigned n = vertex.parent.value_or(0) / 2;
   const bool spins = vertex.parent.value_or(0) % 2 == 1 && vertex.first == 1u && vertex.second == 0u;
   if (!spins || (l != n && l != n + 1)) {
@@ -134,7 +157,10 @@ inline WidthModel effective_baryon(unsigned l, double scale, const Vertex& verte
     const double sum = std::hypot(of.first, of.momentum) + of.first;
     // E - m without the cancellation of the plain difference.
     const double energy = l == n ? sum : of.momentum / sum * of.momentum;
-    return prefactor * of.momentum * power(of.momentum / scale, 2 * n) * (energy / of.parent);
+    const double factor = prefactor * of.momentum * power(of.momentum / scale, 2 * n) * (energy / of.parent);
+    if (n > 0 || derivative_form == 0) return factor;
+    const double ratio = (l == 0 ? of.parent - of.first : of.parent + of.first) / scale;
+    return factor * ratio * ratio;
   };
 }
 
@@ -189,7 +215,10 @@ inline WidthModel width_model(const Wave& wave, const Vertex& vertex) {
     const auto o = option_values(wave, vertex, {{"radiusFm", "fm"}, {"referenceMassMeV", "MeV"}});
     return barrier_model(l, o[0], o[1]);
   }
-  if (wave.model == "d") return effective_baryon(l, option_values(wave, vertex, {{"scaleMeV", "MeV"}})[0], vertex);
+  if (wave.model == "d") {
+    const auto o = option_values(wave, vertex, {{"scaleMeV", "MeV"}, {"derivativeForm", "1", 0.0}});
+    return effective_baryon(l, o[0], o[1], vertex);
+  }
   if (wave.model == "e") return option_values(wave, vertex, {}), effective_meson(l, vertex);
   refuse_wave(vertex.row, "a width model among a, b, c, d, e", '"' + wave.model + '"');
 }

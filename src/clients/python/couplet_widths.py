@@ -30,9 +30,11 @@ OPTIONS = {
     "a": [("n", "1"), ("referenceMomentumMeV", "MeV"), ("referenceMassMeV", "MeV")],
     "b": [("rangeMeV", "MeV"), ("nucleonMassMeV", "MeV")],
     "c": [("radiusFm", "fm"), ("referenceMassMeV", "MeV")],
-    "d": [("scaleMeV", "MeV")],
+    "d": [("scaleMeV", "MeV"), ("derivativeForm", "1")],
     "e": [],
 }
+# Options that joined their model later, with the value that a table without them means.
+ABSENT = {("derivativeForm", "1"): 0}
 
 
 class Damaged(Exception):
@@ -87,8 +89,11 @@ def barrier_polynomial(l, z):
     return theta.real**2 + theta.imag**2
 
 
-def effective_baryon(l, scale, spins):
-    """Model d: K = n!/((2n+1)!! 4 pi) q (q/m_s)^2n (E +- m)/M, J = n + 1/2 into 1/2 and 0, + for L = n, - for n + 1."""
+def effective_baryon(l, scale, derivative_form, spins):
+    """Model d: K = n!/((2n+1)!! 4 pi) q (q/m_s)^2n (E +- m)/M, J = n + 1/2 into 1/2 and 0, + for L = n, - for n + 1.
+
+    With the derivative form times ((M -+ m)/m_s)^2 for J = 1/2, with no effect for higher spins.
+    """
     parent_spin, first_spin, second_spin = spins
     if parent_spin is None or parent_spin % 2 != 1 or (first_spin, second_spin) != (1, 0):
         return None
@@ -103,7 +108,10 @@ def effective_baryon(l, scale, spins):
         total = math.hypot(first, q) + first
         # E - m without the cancellation of the plain difference.
         energy = total if l == n else q / total * q
-        return prefactor * q * (q / scale) ** (2 * n) * (energy / parent)
+        factor = prefactor * q * (q / scale) ** (2 * n) * (energy / parent)
+        if n > 0 or derivative_form == 0:
+            return factor
+        return factor * (((parent - first) if l == 0 else (parent + first)) / scale) ** 2
 
     return k
 
@@ -151,11 +159,13 @@ def width_model(wave, row_id, spins):
         refuse(row_id, "a width model among " + ", ".join(OPTIONS), f'"{wave.model}"')
     wanted = OPTIONS[wave.model]
     given = {(option.name, option.unit): option.value for option in wave.options if math.isfinite(option.value)}
-    if set(given) != set(wanted) or len(wave.options) != len(wanted):
-        listed = lambda pairs: "[" + ", ".join(f"{name} in {unit}" for name, unit in pairs) + "]"
-        got = listed((option.name, option.unit) for option in wave.options)
-        refuse(row_id, f"width model {wave.model} with the options {listed(wanted)}", got)
-    values = [given[pair] for pair in wanted]
+    required = {pair for pair in wanted if pair not in ABSENT}
+    if not required <= set(given) <= set(wanted) or len(wave.options) != len(given):
+        listed = lambda texts: "[" + ", ".join(texts) + "]"
+        expected = listed(f"{name} in {unit}" + " or none" * ((name, unit) in ABSENT) for name, unit in wanted)
+        got = listed(f"{option.name} in {option.unit}" for option in wave.options)
+        refuse(row_id, f"width model {wave.model} with the options {expected}", got)
+    values = [given[pair] if pair in given else ABSENT[pair] for pair in wanted]
     if wave.model == "a":
         return power_law(l, *values)
     if wave.model == "b":
@@ -163,6 +173,8 @@ def width_model(wave, row_id, spins):
     if wave.model == "c":
         return barrier_model(l, *values)
     if wave.model == "d":
+        if values[1] not in (0, 1):
+            refuse(row_id, "derivativeForm 0 or 1 of width model d", f"{values[1]:g}")
         k = effective_baryon(l, *values, spins)
         vertex = "spin n + 1/2 into 1/2 and 0 with L = n or n + 1 for width model d"
         return k or refuse(row_id, vertex, "another vertex")

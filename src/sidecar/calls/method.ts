@@ -22,6 +22,7 @@ export interface Method {
 
 /** An encoded answer, and the work it took, for the metrics. */
 export interface Answer {
+  /** Perhaps in a space that the next answer takes again. */
   readonly bytes: Uint8Array;
   readonly rowsEvaluated: number;
   readonly draws: number;

@@ -424,6 +424,18 @@ void width_refusals(Checks& check, const couplet::v1::DecayTables& small) {
   refuses(wrong, ": expected width model b with the options [rangeMeV in MeV, nucleonMassMeV in MeV], got [rangeMeV in "
                  "GeV, nucleonMassMeV in MeV]. Read the table with a newer reader.",
           "an option in another unit is refused");
+  wrong.parents[0].rows[0].waves[0].model = "d";
+  options = {{"scaleMeV", 139.57, "MeV"}, {"mixing", 1, "1"}};
+  refuses(wrong, ": expected width model d with the options [scaleMeV in MeV, derivativeForm in 1 or none], got [scaleMeV "
+                 "in MeV, mixing in 1]. Read the table with a newer reader.",
+          "an unknown option is refused beside one that may be missing");
+  options = {{"derivativeForm", 1, "1"}};
+  refuses(wrong, ": expected width model d with the options [scaleMeV in MeV, derivativeForm in 1 or none], got "
+                 "[derivativeForm in 1]. Read the table with a newer reader.",
+          "an option that may be missing does not stand for one that may not");
+  options = {{"scaleMeV", 139.57, "MeV"}, {"derivativeForm", 2, "1"}};
+  refuses(wrong, ": expected derivativeForm 0 or 1 of width model d, got 2. Read the table with a newer reader.",
+          "a derivative form that is neither 0 nor 1 is refused");
   wrong = good;
   wrong.parents[0].rows[0].waves[0].two_l = 3;
   refuses(wrong, ": expected an even 2L up to 24, got 3. Read the table with a newer reader.", "an odd 2L is refused");
