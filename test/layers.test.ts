@@ -23,7 +23,7 @@ const ROOMS = [
   "sidecar",
   "cli",
 ];
-const PLAIN = ["errors.ts", "require.ts"];
+const PLAIN = ["errors.ts", "require.ts", "nearest-names.ts"];
 const LEAVES = ["widths", "fit", "study"];
 /** Generated messages and the version: for those who write and read files, or talk to others. */
 const OUTER = ["gen", "version.ts"];

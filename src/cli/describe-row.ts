@@ -1,7 +1,7 @@
 import { WHOLE } from "../completion/parts-per-billion.js";
 import { InputError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
+import { nearestNames } from "../nearest-names.js";
 import { asGiven, significant, withError } from "../tables/rounding.js";
 import { widthModelDefinitions } from "../widths/width-model.js";
 import { fractionText } from "./labels.js";

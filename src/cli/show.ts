@@ -1,6 +1,6 @@
 import { InputError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
+import { nearestNames } from "../nearest-names.js";
 import { canonicalJson } from "../tables/canonical-json.js";
 import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";

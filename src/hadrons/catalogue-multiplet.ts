@@ -1,8 +1,8 @@
+import { nearestNames } from "../nearest-names.js";
 import { refuse } from "../require.js";
 import { catalogueParticle } from "./catalogue.js";
 import assignments from "./data/multiplets.json";
 import { assembleMultiplet, type Multiplet } from "./multiplet.js";
-import { nearestNames } from "./nearest-names.js";
 
 /** Ids of the multiplets of ground states that the catalogue fills: `pseudoscalar-octet`, `baryon-octet`, ... */
 export function catalogueMultipletIds(): string[] {

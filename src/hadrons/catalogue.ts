@@ -1,6 +1,6 @@
+import { nearestNames } from "../nearest-names.js";
 import { refuse } from "../require.js";
 import edition2024 from "./data/particles-2024.json";
-import { nearestNames } from "./nearest-names.js";
 import { antiparticle, antiparticleName, type Particle } from "./particle.js";
 
 /** Where the numbers of the catalogue come from, for the header of a table. */

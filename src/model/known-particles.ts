@@ -2,8 +2,8 @@ import { canonicalName, catalogueParticles, findParticle } from "../hadrons/cata
 import { catalogueMultiplet, catalogueMultipletIds } from "../hadrons/catalogue-multiplet.js";
 import type { Hadron } from "../hadrons/hadron.js";
 import { findLightParticle, lightParticleNames } from "../hadrons/light-particles.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
 import { antiparticle, antiparticleName, type Particle } from "../hadrons/particle.js";
+import { nearestNames } from "../nearest-names.js";
 import { refuse } from "../require.js";
 import type { StudyParticle } from "../study/study.js";
 import type { Placed } from "./placed.js";

@@ -8,9 +8,9 @@ import {
   type Multiplet,
   type MultipletQuantumNumbers,
 } from "../hadrons/multiplet.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
 import { antiparticleName, type Particle } from "../hadrons/particle.js";
 import { placeOf } from "../hadrons/place.js";
+import { nearestNames } from "../nearest-names.js";
 import { refuse } from "../require.js";
 import type { StudyChargeState, StudyMember, StudyMultiplet, StudyState } from "../study/study.js";
 import { type IsospinMultiplet, parseIrrep } from "../su3/irrep.js";

@@ -1,6 +1,6 @@
 import { canonicalName } from "../hadrons/catalogue.js";
 import type { Hadron } from "../hadrons/hadron.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
+import { nearestNames } from "../nearest-names.js";
 import { parseChannel, type WrittenChannel } from "./channel-names.js";
 import type { Channel, Parent, WidthSum } from "./model.js";
 import type { Problems } from "./problems.js";

@@ -1,6 +1,6 @@
 import { InputError, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
+import { nearestNames } from "../nearest-names.js";
 import { type RowsEvaluator, rowsEvaluator, tableHadrons } from "../tables/evaluate-rows.js";
 
 import v1 = couplet.v1;

@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { nearestNames } from "../nearest-names.js";
 import { parseQuantity, type QuantityProblem, quantityForm } from "./quantity.js";
 import type { Quantity } from "./study.js";
 
@@ -13,8 +14,12 @@ export function mapping<T extends z.core.$ZodLooseShape>(shape: T) {
   return z.strictObject(shape, {
     error: (issue) => {
       if (issue.code !== "unrecognized_keys") return undefined;
-      const unknown = issue.keys.map((key: string) => `\`${key}\``).join(", ");
-      return `expected keys among ${Object.keys(shape).join(", ")}, got ${unknown}`;
+      const known = Object.keys(shape);
+      const unknown = issue.keys.map((key: string) => {
+        const [nearest] = nearestNames(key, known, 1);
+        return `\`${key}\`${nearest === undefined ? "" : ` (did you mean \`${nearest}\`?)`}`;
+      });
+      return `expected keys among ${known.join(", ")}, got ${unknown.join(", ")}`;
     },
   });
 }

@@ -1,6 +1,6 @@
 import { InputError } from "../errors.js";
 import type { couplet } from "../gen/couplet.js";
-import { nearestNames } from "../hadrons/nearest-names.js";
+import { nearestNames } from "../nearest-names.js";
 import { LARGEST_ID } from "./export-accord-lines.js";
 
 type Hadron = couplet.v1.Hadron.$Properties;

@@ -217,7 +217,7 @@ measurements:
   expect(couplet(folder, "fit", "s.yaml")).toEqual(
     refusal(
       [
-        `s.yaml:2:1: study: expected keys among ${KEYS}, got \`titel\`.`,
+        `s.yaml:2:1: study: expected keys among ${KEYS}, got \`titel\` (did you mean \`title\`?).`,
         "s.yaml:4:1: not valid YAML: expected each key once, got it again. Take one of them out.",
         's.yaml:10:42: multiplets/octet/members/0/mass: expected a unit such as MeV or GeV, got none in "1675".',
         's.yaml:11:69: multiplets/octet/members/1/width: expected a width > 0, got "-90 MeV".',
@@ -233,7 +233,7 @@ measurements:
         "s.yaml:26:49: measurements/3/value: expected an error, since the value enters the fit. Write `value +- error`, or give it `use: table`.",
         's.yaml:27:17: measurements/4/fraction: expected a channel such as `N(1675) -> N pi`, got "Lambda(1830) N Kbar".',
         "s.yaml:28:5: measurements/5/width: expected a text, got nothing.",
-        "s.yaml:28:7: measurements/5: expected keys among width, value, normalisation, source, use, got `widht`.",
+        "s.yaml:28:7: measurements/5: expected keys among width, value, normalisation, source, use, got `widht` (did you mean `width`?).",
         's.yaml:28:45: measurements/5/value: expected a number that fits a double, got "1e999 MeV".',
       ].join("\n"),
     ),

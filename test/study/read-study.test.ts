@@ -183,7 +183,7 @@ describe("a study with a fault of form says where, what was expected, what came 
   test("a misspelled key is named with those that there are", () => {
     expect(refusal(SHORT.replace("title:", "titel:"))).toEqual([
       "s.yaml:1:1: title: expected a text, got nothing.",
-      `s.yaml:2:1: study: expected keys among ${Object.keys(studySchema.shape).join(", ")}, got \`titel\`.`,
+      `s.yaml:2:1: study: expected keys among ${Object.keys(studySchema.shape).join(", ")}, got \`titel\` (did you mean \`title\`?).`,
     ]);
   });
 
