@@ -34,3 +34,8 @@ export class LimitError extends CoupletError {
 export class InternalError extends CoupletError {
   override readonly exitCode = 70;
 }
+
+/** What the system says of a file, `ENOENT: no such file or directory`, without the call and the path that it adds. */
+export function systemReason(cause: unknown): string {
+  return (cause as Error).message.replace(/, \w+( '.*)?$/, "");
+}

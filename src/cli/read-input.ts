@@ -1,5 +1,5 @@
 import { closeSync, openSync, readSync } from "node:fs";
-import { InputError } from "../errors.js";
+import { InputError, systemReason } from "../errors.js";
 
 /** Largest file read, in bytes; far above any table. */
 const MAX_FILE_BYTES = 2 ** 30;
@@ -40,9 +40,7 @@ function readAtMost(path: string, limit: number): Uint8Array {
       closeSync(file);
     }
   } catch (cause) {
-    // `ENOENT: no such file or directory` without the name of the system call.
-    const reason = (cause as Error).message.replace(/, \w+( '.*)?$/, "");
-    throw new InputError(`${path}: could not be read: ${reason}. Check the path.`, { cause });
+    throw new InputError(`${path}: could not be read: ${systemReason(cause)}. Check the path.`, { cause });
   }
   return Buffer.concat(chunks);
 }

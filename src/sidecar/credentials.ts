@@ -2,7 +2,7 @@ import { X509Certificate } from "node:crypto";
 import { readFileSync } from "node:fs";
 import { createSecureContext } from "node:tls";
 import { ServerCredentials } from "@grpc/grpc-js";
-import { InputError } from "../errors.js";
+import { InputError, systemReason } from "../errors.js";
 
 /** Files for TLS, in PEM. */
 export interface TlsFiles {
@@ -57,11 +57,8 @@ function readPem(option: string, file: string): Buffer {
   try {
     return readFileSync(file);
   } catch (cause) {
-    throw new InputError(
-      `${option}: ${file} could not be read: ${(cause as Error).message}. Check the path.`,
-      {
-        cause,
-      },
-    );
+    throw new InputError(`${option}: ${file} could not be read: ${systemReason(cause)}. Check the path.`, {
+      cause,
+    });
   }
 }

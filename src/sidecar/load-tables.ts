@@ -1,5 +1,5 @@
 import { readFileSync } from "node:fs";
-import { InputError } from "../errors.js";
+import { InputError, systemReason } from "../errors.js";
 import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
 import { checkSeal } from "../tables/sealed-bytes.js";
@@ -51,7 +51,7 @@ function read(file: string): Uint8Array {
   try {
     return readFileSync(file);
   } catch (cause) {
-    throw new InputError(`${file}: could not be read: ${(cause as Error).message}. Check the path.`, {
+    throw new InputError(`${file}: could not be read: ${systemReason(cause)}. Check the path.`, {
       cause,
     });
   }

@@ -1,7 +1,7 @@
 import { createHash } from "node:crypto";
 import { closeSync, fstatSync, openSync, readSync } from "node:fs";
 import { Reader } from "protobufjs/minimal";
-import { InputError, TableError } from "../errors.js";
+import { InputError, systemReason, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { requireKnownHeader } from "./check-header.js";
 import { requireWhole } from "./decode-decays.js";
@@ -79,7 +79,7 @@ function opened(path: string): number {
     if (fstatSync(file).isFile()) return file;
     closeSync(file);
   } catch (cause) {
-    throw new InputError(`${path}: could not be read: ${(cause as Error).message}. Check the path.`, {
+    throw new InputError(`${path}: could not be read: ${systemReason(cause)}. Check the path.`, {
       cause,
     });
   }

@@ -5,39 +5,10 @@
 set -uo pipefail
 dist=$(realpath "$1") proto=$(realpath "$2") work=$3
 here=$(cd "$(dirname "$0")" && pwd)
+. "$here/../../support/checks.sh"
 root=$(cd "$here/../../.." && pwd)
 source=$root/src/clients/cpp
 mkdir -p "$work/gen" "$work/python"
-passed=0
-failed=0
-
-check() {
-  local name=$1
-  shift
-  if "$@"; then
-    passed=$((passed + 1))
-    echo "ok  $name"
-  else
-    failed=$((failed + 1))
-    echo "FAILED  $name"
-  fi
-}
-
-finish() {
-  echo "$passed passed, $failed failed"
-  [ "$failed" -eq 0 ] && [ "$passed" -gt 0 ]
-  exit
-}
-
-# Tests that print `ok  ...` and `FAILED  ...` count one by one; the check itself stands for the exit code.
-counted() {
-  "$@" >"$work/log.txt"
-  local status=$?
-  grep -vE '^[0-9]+ passed, [0-9]+ failed$' "$work/log.txt"
-  passed=$((passed + $(grep -c '^ok  ' "$work/log.txt")))
-  failed=$((failed + $(grep -c '^FAILED  ' "$work/log.txt")))
-  return "$status"
-}
 
 tools() {
   local tool

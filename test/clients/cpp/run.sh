@@ -5,28 +5,9 @@
 set -uo pipefail
 table=$(realpath "$1") proto=$(realpath "$2") work=$3
 here=$(cd "$(dirname "$0")" && pwd)
+. "$here/../../support/checks.sh"
 source=$(cd "$here/../../../src/clients/cpp" && pwd)
 mkdir -p "$work/gen"
-passed=0
-failed=0
-
-check() {
-  local name=$1
-  shift
-  if "$@"; then
-    passed=$((passed + 1))
-    echo "ok  $name"
-  else
-    failed=$((failed + 1))
-    echo "FAILED  $name"
-  fi
-}
-
-finish() {
-  echo "$passed passed, $failed failed"
-  [ "$failed" -eq 0 ] && [ "$passed" -gt 0 ]
-  exit
-}
 
 tools() {
   local tool
@@ -87,16 +68,6 @@ digests_agree() {
   "$work/decays_test" prefixes "$table" | cmp - "$work/sha256sum.txt"
 }
 
-tests() {
-  "$work/decays_test" "$table" >"$work/tests.txt"
-  local status=$?
-  grep -vE '^[0-9]+ passed, [0-9]+ failed$' "$work/tests.txt"
-  # They count one by one; the check itself stands for the exit code.
-  passed=$((passed + $(grep -c '^ok  ' "$work/tests.txt")))
-  failed=$((failed + $(grep -c '^FAILED  ' "$work/tests.txt")))
-  return "$status"
-}
-
 check "tools" tools
 [ "$failed" -eq 0 ] || finish
 check "C++ classes of the schema" compile_schema
@@ -111,5 +82,5 @@ check "the plain reader needs no protobuf library" needs_no_protobuf
 check "both variants of the example print the same" examples_agree
 check "exit codes of the example" exit_codes
 check "SHA-256 of 0 to 300 bytes as sha256sum gives it" digests_agree
-check "tests run without an error of the sanitizers" tests
+check "tests run without an error of the sanitizers" counted "$work/decays_test" "$table"
 finish

@@ -3,31 +3,14 @@
 # real server. Usage: run.sh WORK_DIR. Needs `npm run build`. Last line: N passed, N failed.
 set -uo pipefail
 here=$(cd "$(dirname "$0")" && pwd)
+. "$here/../../support/checks.sh"
 root=$(cd "$here/../../.." && pwd)
 mkdir -p "$1/cpp" "$1/python"
 work=$(cd "$1" && pwd)
-passed=0
-failed=0
 server=
 
-check() {
-  local name=$1
-  shift
-  if "$@"; then
-    passed=$((passed + 1))
-    echo "ok  $name"
-  else
-    failed=$((failed + 1))
-    echo "FAILED  $name"
-  fi
-}
-
-finish() {
-  [ -n "$server" ] && kill "$server" 2>/dev/null && wait "$server" 2>/dev/null
-  echo "$passed passed, $failed failed"
-  [ "$failed" -eq 0 ] && [ "$passed" -gt 0 ]
-  exit
-}
+stop_server() { [ -z "$server" ] || { kill "$server" && wait "$server"; } 2>/dev/null; }
+trap stop_server EXIT
 
 tools() {
   local tool
@@ -75,16 +58,6 @@ start_server() {
   return 1
 }
 
-# Counts of a test program are added one by one; the check itself stands for its exit code.
-tests() {
-  "$@" >"$work/tests.txt"
-  local status=$?
-  grep -vE '^[0-9]+ passed, [0-9]+ failed$' "$work/tests.txt"
-  passed=$((passed + $(grep -c '^ok  ' "$work/tests.txt")))
-  failed=$((failed + $(grep -c '^FAILED  ' "$work/tests.txt")))
-  return "$status"
-}
-
 python() { PYTHONPATH="$work/python:$root/src/clients/python:$here:$here/.." /usr/bin/python3 "$@"; }
 
 address="unix:$work/sidecar.sock"
@@ -122,8 +95,8 @@ check "C++ example" cpp_program "$root/src/clients/cpp/sidecar_example.cpp" "$wo
 check "C++ tests" cpp_program "$here/sidecar_test.cpp" "$work/sidecar_test"
 check "a server with the built-in tables" start_server
 [ "$failed" -eq 0 ] || finish
-check "Python client" tests python "$here/test_sidecar.py" "$address" "$digest"
-check "C++ client" tests "$work/sidecar_test" "$address" "$digest"
+check "Python client" counted python "$here/test_sidecar.py" "$address" "$digest"
+check "C++ client" counted "$work/sidecar_test" "$address" "$digest"
 check "the examples in C++ and Python print the same" examples_agree
 check "exit codes of the examples" exit_codes
 check "clients of a server that was killed end by themselves" server_killed
