@@ -1,6 +1,7 @@
 import { fAndD } from "../couplings/f-and-d.js";
 import type { Minimum } from "../fit/minima.js";
 import { decayHasFAndD, type Graded } from "./evaluate.js";
+import { rotationAngle } from "./mixing-matrix.js";
 import type { Decay, Mixing, Model } from "./model.js";
 
 /** A number computed from fitted parameters. */
@@ -20,10 +21,11 @@ export interface MixedRatio {
 
 type Fitted = Pick<Minimum, "parameters" | "covariance">;
 
-/** F, D and their ratios for each decay that has them, then what does not depend on free signs for each mixed pair. */
+/** F, D and their ratios for each decay that has them, tied mixing angles, then what does not depend on free signs for each mixed pair. */
 export function derivedNumbers(model: Model, minimum: Fitted): DerivedNumber[] {
   return [
     ...model.decays.flatMap((decay) => fAndDOf(decay, model, minimum)),
+    ...tiedAngles(model, minimum),
     ...mixedRatios(model).flatMap(({ name, at }) => {
       const { value, gradient } = at(minimum.parameters);
       if (!Number.isFinite(value)) return [];
@@ -31,6 +33,20 @@ export function derivedNumbers(model: Model, minimum: Fitted): DerivedNumber[] {
       return [{ name, value, error, unit: "1" }];
     }),
   ];
+}
+
+/** Mixing angles that follow another pair's, in the study's convention. */
+function tiedAngles({ mixing }: Model, minimum: Fitted): DerivedNumber[] {
+  return mixing.flatMap(({ states, rotations }) =>
+    rotations.flatMap((rotation): DerivedNumber[] => {
+      const { sign, offset, parameter, tiedBy } = rotation;
+      if (tiedBy === undefined) return [];
+      const { value, slope } = rotationAngle(rotation, minimum.parameters);
+      const error =
+        parameter === undefined ? 0 : Math.abs(slope) * Math.sqrt(minimum.covariance[parameter]![parameter]!);
+      return [{ name: `angle(${states.join(", ")})`, value: sign * (value - offset), error, unit: "rad" }];
+    }),
+  );
 }
 
 /** F, D and what is made of them, for a strong decay of an octet into two octets. */
@@ -72,7 +88,7 @@ export function mixedRatios(model: Model): MixedRatio[] {
 function ratiosOf({ states, bare, rotations }: Mixing, model: Model): MixedRatio[] {
   const [rotation, ...others] = rotations;
   if (rotation === undefined || others.length > 0) return [];
-  const { angle, sign, offset, parameter } = rotation;
+  const { sign, parameter } = rotation;
   const [a, b] = bare.map((text) => text.split("/")[0]!) as [string, string];
   const pairs = model.decays.flatMap((first) =>
     model.decays
@@ -87,14 +103,15 @@ function ratiosOf({ states, bare, rotations }: Mixing, model: Model): MixedRatio
           {
             name: `${ofB.reduced[j]!.name}/${ofA.reduced[i]!.name} tan theta(${states.join(", ")})`,
             at: (parameters) => {
-              const theta = (parameter === undefined ? angle : parameters[parameter]!) + sign * offset;
+              const t = rotationAngle(rotation, parameters);
+              const [theta, slope] = [sign * t.value, sign * t.slope];
               const gA = dot(rowA, parameters);
               const ratio = dot(rowB, parameters) / gA;
               const tangent = Math.tan(theta);
               const gradient = parameters.map(
                 (_, k) =>
                   (((rowB[k] ?? 0) - ratio * (rowA[k] ?? 0)) / gA) * tangent +
-                  (k === parameter ? ratio / Math.cos(theta) ** 2 : 0),
+                  (k === parameter ? (slope * ratio) / Math.cos(theta) ** 2 : 0),
               );
               return { value: ratio * tangent, gradient };
             },

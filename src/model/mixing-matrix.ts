@@ -1,4 +1,4 @@
-import type { Mixing } from "./model.js";
+import type { Mixing, Rotation } from "./model.js";
 
 /** An orthogonal matrix and its derivatives with respect to the parameters among its angles. */
 export interface MixingMatrix {
@@ -18,23 +18,38 @@ export interface MixingMatrix {
  */
 export function mixingMatrix(mixing: Mixing, parameters: readonly number[]): MixingMatrix {
   const n = mixing.states.length;
-  const angles = mixing.rotations.map(
-    ({ angle, sign, offset, parameter }) =>
-      sign * (parameter === undefined ? angle : parameters[parameter]!) + offset,
-  );
+  const angles = mixing.rotations.map((rotation) => rotationAngle(rotation, parameters));
   const product = (derived: number): number[][] =>
     mixing.rotations.reduce(
-      (matrix, { first, second }, k) => rotated(matrix, first, second, angles[k]!, k === derived),
+      (matrix, { first, second }, k) => rotated(matrix, first, second, angles[k]!.value, k === derived),
       identity(n),
     );
   return {
     value: product(-1),
-    derivatives: mixing.rotations.flatMap(({ parameter, sign }, k) =>
+    derivatives: mixing.rotations.flatMap(({ parameter }, k) =>
       parameter === undefined
         ? []
-        : [{ parameter, value: product(k).map((row) => row.map((d) => sign * d)) }],
+        : [{ parameter, value: product(k).map((row) => row.map((d) => angles[k]!.slope * d)) }],
     ),
   };
+}
+
+/**
+ * The angle of a rotation in radians, and its derivative with respect to the rotation's parameter.
+ *
+ * A tied one would have to exceed sin 2t' = 1 where the other pair mixes more than its own masses allow: it stays at
+ * 45 deg there.
+ */
+export function rotationAngle(
+  { angle, sign, offset, parameter, tiedBy }: Rotation,
+  parameters: readonly number[],
+): { readonly value: number; readonly slope: number } {
+  const t = sign * (parameter === undefined ? angle : parameters[parameter]!) + offset;
+  if (tiedBy === undefined) return { value: t, slope: sign };
+  const [sine, cosine] = [tiedBy * Math.sin(2 * t), Math.cos(2 * t)];
+  const tiedCosine = Math.sign(cosine) * Math.sqrt(Math.max(0, 1 - sine * sine));
+  const slope = tiedCosine === 0 ? 0 : (sign * tiedBy * cosine) / tiedCosine;
+  return { value: Math.atan2(Math.max(-1, Math.min(sine, 1)), tiedCosine) / 2, slope };
 }
 
 function identity(n: number): number[][] {

@@ -52,6 +52,8 @@ export interface Rotation {
   readonly sign: 1 | -1;
   readonly offset: number;
   readonly parameter?: number;
+  /** The angle t' of the rotation is that of sin 2t' = this times sin 2t, and cos 2t' has the sign of cos 2t. */
+  readonly tiedBy?: number;
 }
 
 /**

@@ -5,12 +5,14 @@ import {
   type Multiplet,
 } from "../hadrons/multiplet.js";
 import { placeOf } from "../hadrons/place.js";
+import { nearestNames } from "../nearest-names.js";
 import { refuse } from "../require.js";
 import type { Quantity, StudyAngle, StudyMixing, StudyState } from "../study/study.js";
 import { mixingMatrix } from "./mixing-matrix.js";
 import type { Mixing, Parameter, Rotation } from "./model.js";
 import type { Problems } from "./problems.js";
 import { memberParticles, resolveMultiplet, type StudyBoundMultiplet } from "./resolve-multiplets.js";
+import { tiedRatio } from "./tied-mixing.js";
 
 /** Place of a bare state: an isospin multiplet of an irrep. */
 export interface BareState {
@@ -36,14 +38,16 @@ export function resolveMixing(
   problems: Problems,
 ): { groups: MixedStates[]; angles: Parameter[] } {
   const angles: Parameter[] = [];
-  const groups = written.map((group) => {
+  const earlier: MixedStates[] = [];
+  for (const group of written) {
     const { path } = group;
     const bare = group.bare.map((text, j) => bareState(text, `${path}/bare/${j}`, own, problems));
     const known = bare.filter((state) => state !== undefined);
-    if (known.length < bare.length) return undefined;
-    return problems.attempt(path, () => mixedStates(group, known, firstParameter, angles));
-  });
-  return { groups: groups.filter((group) => group !== undefined), angles };
+    if (known.length < bare.length) continue;
+    const resolved = problems.attempt(path, () => mixedStates(group, known, firstParameter, angles, earlier));
+    if (resolved !== undefined) earlier.push(resolved);
+  }
+  return { groups: earlier, angles };
 }
 
 function bareState(
@@ -70,6 +74,7 @@ function mixedStates(
   bare: readonly BareState[],
   firstIndex: number,
   angles: Parameter[],
+  earlier: readonly MixedStates[],
 ): MixedStates {
   const n = bare.length;
   if (group.states.length !== n)
@@ -88,7 +93,10 @@ function mixedStates(
     refuse("convention", "rotation, for more than two states", group.convention);
   const name = group.states.map((state) => state.name).join(", ");
   const rotations = pairs.map(([first, second], k): Rotation => {
-    const angle = angleOf(group.angles[k]!, bare, members);
+    const written = group.angles[k]!;
+    if (typeof written === "object" && "tiedTo" in written)
+      return tiedRotation(written.tiedTo, { bare, members }, group.convention, earlier);
+    const angle = angleOf(written, bare, members);
     const plane = { first, second, ...conventionOf(group.convention), angle: angle.start };
     if (angle.fixed) return plane;
     const parameter = firstIndex + angles.length;
@@ -178,7 +186,34 @@ interface Angle {
 /** Where a free angle starts; the search covers the whole circle. */
 const FREE_START = 0.3;
 
-function angleOf(angle: StudyAngle, bare: readonly BareState[], members: readonly Member[]): Angle {
+/** The rotation of a pair that follows the angle of an earlier pair. */
+function tiedRotation(
+  name: string,
+  pair: Pick<MixedStates, "bare" | "members">,
+  convention: StudyMixing["convention"],
+  earlier: readonly MixedStates[],
+): Rotation {
+  const pairs = earlier.filter(({ mixing }) => mixing.states.length === 2);
+  const leader = pairs.find(({ mixing }) => mixing.states.includes(name));
+  if (leader === undefined || pair.members.length !== 2) {
+    const known = pairs.flatMap(({ mixing }) => mixing.states);
+    const near = nearestNames(name, known).join(", ") || "none";
+    return refuse("angle", "tied to a state of a pair that stands above", name, `Nearest: ${near}.`);
+  }
+  const [rotation] = leader.mixing.rotations;
+  const { sign, offset } = conventionOf(convention);
+  if (rotation!.tiedBy !== undefined)
+    refuse("angle", "tied to a pair with an angle of its own", name, "Tie both to that one.");
+  if (rotation!.sign !== sign || rotation!.offset !== offset)
+    refuse("convention", `that of ${name}, which the angle is tied to`, convention);
+  return { ...rotation!, tiedBy: tiedRatio(pair, leader) };
+}
+
+function angleOf(
+  angle: Exclude<StudyAngle, { tiedTo: string }>,
+  bare: readonly BareState[],
+  members: readonly Member[],
+): Angle {
   if (angle === "free") return { start: FREE_START, fixed: false };
   if (angle === "quadratic masses" || angle === "linear masses") {
     return { start: massFormulaAngle(angle === "quadratic masses" ? 2 : 1, bare, members), fixed: true };

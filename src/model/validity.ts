@@ -6,6 +6,7 @@ import { irrepName, isospinMultiplets, sameIrrep } from "../su3/irrep.js";
 import { sumsOf } from "./breaking.js";
 import { decayHasFAndD } from "./evaluate.js";
 import { type Fit, fittedObservables, MIRROR_DELTA_CHI2, type StudyMinimum } from "./fit-model.js";
+import { anglesFromMasses, tiedAngles } from "./mixing-validity.js";
 import type { Decay, Model, Observable } from "./model.js";
 import { parentWarnings, type ValidityWarning } from "./parent-validity.js";
 import { wavePhasesKnown } from "./wave-phases.js";
@@ -31,6 +32,7 @@ export function validityWarnings(fit: Fit, index: number): ValidityWarning[] {
     ...singleRatios(model),
     ...ranges(model),
     ...anglesFromMasses(model),
+    ...tiedAngles(model, minimum),
     ...axialAlone(model),
     ...phasesAsSigns(model),
     ...octetAlone(model),
@@ -118,19 +120,6 @@ function ranges(model: Model): string[] {
   return [
     `${soft.length} of ${measured.length} fitted measurements are ranges, whose half-widths are no standard deviations: take chi2 and errors as rough.`,
   ];
-}
-
-function anglesFromMasses({ study, mixing }: Model): string[] {
-  return study.mixing.flatMap(({ angles, states }, k) =>
-    angles.flatMap((angle, j) => {
-      if (typeof angle !== "string" || angle === "free") return [];
-      const degrees = (mixing[k]!.rotations[j]!.angle * 180) / Math.PI;
-      const names = states.map(({ name }) => name).join(" and ");
-      return [
-        `the mixing angle of ${names}, ${degrees.toFixed(1)} deg, is from ${angle} alone, and squares of masses give another than masses: measure a decay of each state.`,
-      ];
-    }),
-  );
 }
 
 /** Decays of whose channels nothing is fitted, and whose couplings are fixed by axial measurements. */

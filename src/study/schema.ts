@@ -51,11 +51,19 @@ const decay = mapping({
     .describe("Unstable daughters averaged over their line shapes, or at their nominal masses"),
 });
 
+const TIED = "tied to ";
+const tied = z
+  .string()
+  .startsWith(TIED)
+  .transform((text) => ({ tiedTo: text.slice(TIED.length).trim() }));
+
 const angle = z
-  .union([z.enum(["free", "quadratic masses", "linear masses"]), quantity("rad")], {
-    error: `expected \`free\`, \`quadratic masses\`, \`linear masses\`, or ${quantityForm("rad")}`,
+  .union([z.enum(["free", "quadratic masses", "linear masses"]), tied, quantity("rad")], {
+    error: `expected \`free\`, \`quadratic masses\`, \`linear masses\`, \`tied to\` a state of another pair, or ${quantityForm("rad")}`,
   })
-  .describe("A mixing angle: fitted, from the masses of a meson octet and its singlet, or given");
+  .describe(
+    "A mixing angle: fitted, from the masses of a meson octet and its singlet, from another pair of the same multiplets, or given",
+  );
 
 const mixing = mapping({
   bare: z

@@ -85,8 +85,16 @@ export interface StudyMixing {
   readonly convention: "rotation" | "meson" | "quark";
 }
 
-/** A mixing angle: fitted freely, given in radians (with an error: fitted under it), or from the states' masses. */
-export type StudyAngle = "free" | "quadratic masses" | "linear masses" | Quantity;
+/**
+ * A mixing angle: fitted freely, given in radians (with an error: fitted under it), from the states' masses, or from the
+ * angle of the pair that the state named is in.
+ */
+export type StudyAngle =
+  | "free"
+  | "quadratic masses"
+  | "linear masses"
+  | { readonly tiedTo: string }
+  | Quantity;
 
 /** What a measurement is of. */
 export type MeasuredKind =

@@ -104,6 +104,23 @@ ${decay("o")}${decay("d")}`,
   ],
 };
 
+/** The Xi follow the Sigma, with nothing measured of them: sin 2t' = 150/170 sin 2t. */
+export const TIED: Case = {
+  ...DECUPLET,
+  name: "Sigma of an octet and a decuplet, and the Xi tied to them",
+  study: DECUPLET.study.replace(
+    "decays:",
+    mix(
+      ["o/Xi", "d/Xi"],
+      [
+        ["Xi(1950)", 1950],
+        ["Xi(2120)", 2120],
+      ],
+      'angle: "tied to Sigma(1900)"',
+    ) + "decays:",
+  ),
+};
+
 export const ANTIDECUPLET: Case = {
   name: "N of an octet and an antidecuplet",
   study: `multiplets:
@@ -292,6 +309,7 @@ export const VECTORS: Case = {
 export const CASES = [
   SINGLET,
   DECUPLET,
+  TIED,
   ANTIDECUPLET,
   TWENTY_SEVEN,
   TWO_OCTETS,
