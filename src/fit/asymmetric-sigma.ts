@@ -25,3 +25,12 @@ export function asymmetricSigma(value: number, below: number, above: number, pre
 export function drawnMeasurement(predicted: number, below: number, above: number, z: number): number {
   return predicted + z * (z < 0 ? above : below);
 }
+
+/**
+ * Where the residual (predicted - measured)/sigma gets steeper at once: on the side of the larger error, at +1 or -1,
+ * where the sliding ends; undefined for equal errors. `innerSlope` is the slope inside in units of that outside.
+ */
+export function asymmetricKink(below: number, above: number): { at: 1 | -1; innerSlope: number } | undefined {
+  if (below === above) return undefined;
+  return { at: above > below ? 1 : -1, innerSlope: (2 * Math.min(below, above)) / (below + above) };
+}

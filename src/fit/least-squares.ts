@@ -7,6 +7,18 @@ export interface LeastSquaresProblem {
   /** Rows = residuals, columns = parameters; numerical derivatives stand in where it is absent. */
   jacobian?(parameters: readonly number[]): readonly (readonly number[])[];
   readonly bounds?: readonly Bound[] | undefined;
+  /** Where residuals get steeper at once; they matter only with a Jacobian. */
+  readonly kinks?: readonly Kink[] | undefined;
+}
+
+/** A residual whose slope jumps up, away from 0, where it has the value `at`: there can be a minimum. */
+export interface Kink {
+  /** Index of the residual. */
+  readonly residual: number;
+  /** Not 0. */
+  readonly at: number;
+  /** Slope before the kink in units of that beyond, 0 to 1. */
+  readonly innerSlope: number;
 }
 
 /** Choices for one fit; every default is stated. */
@@ -29,12 +41,13 @@ export interface FitOptions {
   readonly refine?: boolean;
 }
 
-/** The test that ended a fit; the last two mean that it did not converge. */
+/** The test that ended a fit; `kink` is a minimum where the slope of a residual jumps; the last two mean that it did not converge. */
 export type StoppingRule =
   | "zero residuals"
   | "relative offset"
   | "relative step"
   | "newton step"
+  | "kink"
   | "iteration limit"
   | "no descent";
 

@@ -1,6 +1,7 @@
 import { refuse } from "../require.js";
 import { curvatureAt, newtonStep } from "./curvature.js";
 import { type FitEstimate, fitEstimate } from "./fit-estimate.js";
+import { minimumOnKinks } from "./kinks.js";
 import {
   checkArguments,
   checkJacobian,
@@ -54,6 +55,13 @@ export function levenbergMarquardt(
   const search = new Search(problem, start, options);
   search.descend();
   if (options.refine ?? true) search.refine();
+  const { jacobian } = problem;
+  if (search.result().verdicts.stoppedBy === "no descent" && jacobian && !options.allowedPart) {
+    const refit = (other: LeastSquaresProblem, from: readonly number[]) =>
+      levenbergMarquardt(other, from, options);
+    const settled = minimumOnKinks({ ...problem, jacobian }, search.result(), options, refit);
+    if (settled !== undefined) return settled;
+  }
   search.finish();
   return search.result();
 }

@@ -1,4 +1,5 @@
 import { refuse, requirePositive } from "../require.js";
+import type { Kink } from "./least-squares.js";
 
 type Vector = readonly number[];
 
@@ -28,6 +29,8 @@ export interface MinimaProblem {
   residuals(parameters: Vector): number[];
   /** Rows = residuals. */
   jacobian?(parameters: Vector): number[][];
+  /** As in `LeastSquaresProblem`. */
+  readonly kinks?: readonly Kink[];
 }
 
 /** Refuses a problem whose parts do not fit together; throws InputError naming the part. */

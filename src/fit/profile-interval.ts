@@ -238,6 +238,7 @@ class Profile {
     const penalised: LeastSquaresProblem = {
       residuals: (at) => [...problem.residuals(at), (f(at).value - target) / softness],
       bounds: problem.bounds,
+      kinks: problem.kinks,
     };
     if (problem.jacobian) {
       penalised.jacobian = (at) => [

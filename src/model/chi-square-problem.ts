@@ -1,10 +1,11 @@
+import { asymmetricKink } from "../fit/asymmetric-sigma.js";
 import type { MinimaProblem } from "../fit/minima-problem.js";
 import { Evaluation, type Evaluator } from "./evaluate.js";
 import type { Observable, Parameter } from "./model.js";
 import { comparisons, type GradedResidual, priorResidual } from "./residuals.js";
 
 /** Residuals of a model with their derivatives and the parameters' bounds, as a fit takes them. */
-export type ChiSquareProblem = Required<Pick<MinimaProblem, "residuals" | "jacobian" | "bounds">>;
+export type ChiSquareProblem = Required<Pick<MinimaProblem, "residuals" | "jacobian" | "bounds" | "kinks">>;
 
 /**
  * Chi-square of a model: every fitted observable against its measurement, then every parameter against its prior.
@@ -27,7 +28,16 @@ export function chiSquareProblem(ready: Evaluator, fitted: readonly Observable[]
       last = { at: [...at], terms: computed(at) };
     return last.terms;
   };
+  const measured = [
+    ...fitted.map(({ measured, signOnly }) => (signOnly ? undefined : measured)),
+    ...constrained.map(({ parameter }) => parameter.prior),
+  ];
+  const kinks = measured.flatMap((value, residual) => {
+    const kink = value && asymmetricKink(value.minus, value.plus);
+    return kink === undefined ? [] : [{ residual, ...kink }];
+  });
   return {
+    kinks,
     bounds: parameters.map(boundsOf),
     residuals: (at) => terms(at).map((term) => term.residual),
     jacobian: (at) => terms(at).map((term) => [...term.gradient]),
