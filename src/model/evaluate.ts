@@ -228,11 +228,20 @@ export class Evaluation {
       const wave = waves?.[0] ?? 0;
       const coefficient = this.model.channels[channel]!.isospinCoefficient;
       const amplitude = this.amplitude(channel, wave);
-      const phaseSpace = sum.reduce((total, { channel: c, weight }) => {
+      const slopes = this.#zero();
+      let phaseSpace = 0;
+      for (const { channel: c, weight } of sum) {
         const { identicalFactor, isospinCoefficient } = this.model.channels[c]!;
-        return total + weight * identicalFactor * isospinCoefficient ** 2 * this.kinematicFactor(c, wave);
-      }, 0);
-      return scaled(amplitude, Math.sqrt(phaseSpace) / coefficient);
+        const part = weight * identicalFactor * isospinCoefficient ** 2 * this.kinematicFactor(c, wave);
+        phaseSpace += part;
+        for (const { parameter, slope } of this.#wave(c, wave).massSlopes) slopes[parameter]! += part * slope;
+      }
+      const root = Math.sqrt(phaseSpace) / coefficient;
+      const value = amplitude.value * root;
+      const gradient = amplitude.gradient.map((d, k) =>
+        phaseSpace === 0 ? 0 : d * root + (value * slopes[k]!) / (2 * phaseSpace),
+      );
+      return { value, gradient };
     });
     return times(a!, b!);
   }

@@ -15,6 +15,13 @@ const MODELS = {
     studyText("octet-3-2-alone").replace("measurements:", "fit: { theoryError: 0.2 }\nmeasurements:"),
   ),
   decuplet: resolved(studyText("decuplet")),
+  "octet with amplitudes and a residue": resolved(
+    `${studyText("octet-3-2-alone")}
+  - { amplitude: [Lambda(1690) -> N Kbar, Lambda(1690) -> Sigma pi], value: -0.3 +- 0.05, source: invented }
+  - { amplitude: [Sigma(1670) -> N Kbar, Sigma(1670) -> Lambda pi], value: 0.1 +- 0.05, sign: "+", source: invented }
+  - { residue: [N(1520) -> N pi, N(1520) -> N eta], value: 1 +- 0.5 MeV, source: invented }
+`,
+  ),
 };
 
 /** A point where no parameter is at a special value. */
