@@ -59,7 +59,7 @@ function fAndDOf(decay: Decay, model: Model, minimum: Fitted): DerivedNumber[] {
     dot(rows[1]!, minimum.parameters),
     block,
   );
-  const unit = unitOf(rows[0]!, model);
+  const unit = unitOf(rows[0]!, model) ?? unitOf(rows[1]!, model) ?? "1";
   const prefix = decay.name === "" ? "" : `${decay.name}.`;
   const named = {
     D: [D, unit],
@@ -98,7 +98,8 @@ function ratiosOf({ states, bare, rotations }: Mixing, model: Model): MixedRatio
   return pairs.flatMap(([ofA, ofB]) =>
     ofB.couplingRows.flatMap((rowB, j) =>
       ofA.couplingRows.flatMap((rowA, i): MixedRatio[] => {
-        if (unitOf(rowA, model) !== unitOf(rowB, model)) return [];
+        const unit = unitOf(rowA, model);
+        if (unit === undefined || unit !== unitOf(rowB, model)) return [];
         return [
           {
             name: `${ofB.reduced[j]!.name}/${ofA.reduced[i]!.name} tan theta(${states.join(", ")})`,
@@ -137,9 +138,9 @@ function isExchanged(first: Decay, second: Decay, a: string, b: string): boolean
   );
 }
 
-/** Unit of a coupling that is a combination of the model's. */
-function unitOf(row: readonly number[], model: Model): string {
-  return model.parameters[row.findIndex((c) => c !== 0)]!.unit;
+/** Unit of a coupling that is a combination of the model's; undefined for one that a rule makes 0. */
+function unitOf(row: readonly number[], model: Model): string | undefined {
+  return model.parameters[row.findIndex((c) => c !== 0)]?.unit;
 }
 
 function covarianceOf(a: readonly number[], b: readonly number[], { covariance }: Fitted): number {

@@ -29,10 +29,14 @@ function resolveMeasurement(
   problems: Problems,
 ): Observable | undefined {
   const { path, signOnly, source, use } = measurement;
-  const measured = withPhase(withLimit(measurement.value), measurement.phase);
-  if (!requireError(measurement, problems) || !requireSignOfPhase(measurement, problems)) return undefined;
+  if (!requireError(measurement, problems)) return undefined;
   const quantum = quantumOf(measurement, path, context, problems);
   if (quantum === undefined) return undefined;
+  // The amplitude of an elastic reaction is a square: the phase of its residue is that of the background.
+  const phase =
+    quantum.kind === "residue" && isElastic(quantum.pair, context) ? undefined : measurement.phase;
+  if (!requireSignOfPhase(phase, path, problems)) return undefined;
+  const measured = withPhase(withLimit(measurement.value), phase);
   const common = { measured, signOnly, source, use, position: problems.positionOf(path) };
   const observable = {
     ...common,
@@ -114,8 +118,16 @@ function signOf(
   context: Context,
 ): { sign: 1 | -1; reaction?: string } {
   if (sign !== "free") return { sign };
-  const [entrance, exit] = pair.map(([first]) => context.channels[first!.channel]!.isospinChannel);
-  return entrance === exit ? { sign: 1 } : { sign: 1, reaction: reactionOf(pair, context) };
+  return isElastic(pair, context) ? { sign: 1 } : { sign: 1, reaction: reactionOf(pair, context) };
+}
+
+/** Whether a reaction ends as it began, wave included. */
+function isElastic(pair: readonly [WidthSum, WidthSum], { channels }: Known): boolean {
+  const [entrance, exit] = pair.map(([first]) => ({
+    isospinChannel: channels[first!.channel]!.isospinChannel,
+    wave: first!.waves?.[0] ?? 0,
+  }));
+  return entrance!.isospinChannel === exit!.isospinChannel && entrance!.wave === exit!.wave;
 }
 
 /** A residue's modulus with the sign of its phase: couplings are real here, so + up to 90 degrees and - beyond. */
@@ -125,7 +137,7 @@ function withPhase(quantity: Quantity, phase: Quantity | undefined): Quantity {
 }
 
 /** A phase must tell the sign; notes where it is as near to +-90 degrees as its error. */
-function requireSignOfPhase({ path, phase }: StudyMeasurement, problems: Problems): boolean {
+function requireSignOfPhase(phase: Quantity | undefined, path: string, problems: Problems): boolean {
   if (phase === undefined) return true;
   const distance = Math.abs(Math.asin(Math.cos(phase.value)));
   if (distance > Math.max(phase.plus, phase.minus, PHASE_ROUNDING)) return true;

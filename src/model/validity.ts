@@ -2,6 +2,7 @@ import { gellMannOkuboMassMeV, RELATION_ERROR_MEV } from "../hadrons/mass-relati
 import { isospinAveragedMassMeV, type Multiplet } from "../hadrons/multiplet.js";
 import { whyNoPlainMember } from "../hadrons/no-plain-members.js";
 import { placeOf, usualPlaceName } from "../hadrons/place.js";
+import type { StudyMeasurement } from "../study/study.js";
 import { irrepName, isospinMultiplets, sameIrrep } from "../su3/irrep.js";
 import { sumsOf } from "./breaking.js";
 import { decayHasFAndD } from "./evaluate.js";
@@ -144,10 +145,22 @@ function phasesAsSigns({ study }: Model): string[] {
   const phases = study.measurements.filter(
     ({ kind, use, phase }) => kind === "residue" && use !== "table" && phase !== undefined && phase.plus > 0,
   );
-  if (phases.length === 0) return [];
-  const names = phases.map(({ channels }) => channels.join(" and ")).join("; ");
+  const isElastic = ({ channels: [entrance, exit] }: StudyMeasurement) => entrance === exit;
+  const names = (of: readonly StudyMeasurement[]) =>
+    of.map(({ channels }) => channels.join(" and ")).join("; ");
+  const elastic = phases.filter(isElastic);
+  const others = phases.filter((each) => !isElastic(each));
   return [
-    `phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: ${names}.`,
+    ...(others.length === 0
+      ? []
+      : [
+          `phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: ${names(others)}.`,
+        ]),
+    ...(elastic.length === 0
+      ? []
+      : [
+          `phases of elastic residues are not used: the amplitude is a square here, and the phase that of the background: ${names(elastic)}. Where it is large, take the couplings as rough.`,
+        ]),
   ];
 }
 

@@ -46,6 +46,29 @@ describe("what mixing leaves free of the choice of signs", () => {
     expect(ratio!.error / Math.abs(ratio!.value)).toBeCloseTo(Math.sqrt(square), 10);
   });
 
+  test("a coupling that C parity or a rule makes 0 is in no ratio", () => {
+    const text = `couplet: 1
+title: Axial mesons, invented
+multiplets:
+  a: { irrep: 8, spinParity: 1++, members: [{ name: A(1250), place: pi, mass: 1250 MeV, width: 400 MeV }, { name: KA, place: K, mass: 1310 MeV, width: sum }] }
+  b: { irrep: 8, spinParity: 1+-, members: [{ name: B(1240), place: pi, mass: 1240 MeV, width: 150 MeV }, { name: KB, place: K, mass: 1340 MeV, width: sum }] }
+mixing:
+  - { bare: [a/K, b/K], states: [{ name: K(1280), mass: 1280 MeV, width: 90 MeV }, { name: K(1410), mass: 1410 MeV, width: 170 MeV }], angle: free }
+  - { bare: [vector-octet/phi, vector-singlet/omega], states: [{ name: phi(1020) }, { name: omega(782) }], convention: meson, angle: 39 deg }
+decays:
+  - { name: a, from: a, to: [vector-octet, pseudoscalar-octet], L: 0, model: a }
+  - { name: b, from: b, to: [vector-octet, pseudoscalar-octet], L: 0, model: a }
+  - { name: b1, from: b, to: [vector-singlet, pseudoscalar-octet], L: 0, model: a }
+quarkLine: [[b, b1]]
+measurements:
+  - { width: A(1250) -> rho(770) pi, value: 250 +- 60 MeV, source: invented }
+  - { width: B(1240) -> omega(782) pi, value: 130 +- 20 MeV, source: invented }
+  - { fraction: K(1280) -> rho(770) K, value: 0.38 +- 0.13, source: invented }
+  - { fraction: K(1410) -> K*(892) pi, value: 0.9 +- 0.1, source: invented }
+`;
+    expect(ratios(text).map(({ name }) => name)).toEqual(["b.g(8_1)/a.g(8_2) tan theta(K(1280), K(1410))"]);
+  });
+
   test("mesons as daughters: theta of the meson convention, also where the quark basis is written", () => {
     const names = ["e.g(8)/o.g(8_1)", "e.g(8)/o.g(8_2)"].map((text) => `${text} tan theta(eta, eta'(958))`);
     const expected = [0.5 / 1.2, 0.5 / 0.6].map((ratio) => ratio * Math.tan(-0.25));

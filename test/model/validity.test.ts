@@ -217,17 +217,19 @@ measurements:
     expect(fitJson(fitOf(studyText("octet-5-2"))).notes).toContain(note);
   });
 
-  test("phases of residues with errors enter as signs", () => {
-    const residue = (phase: string) =>
-      `{ residue: [N(1700) -> N pi, N(1700) -> N pi], value: 30 +- 3 MeV, ${phase}source: invented }`;
-    const said = texts(study({ measurements: residue("phase: -20 +- 5 deg, ") }));
-    expect(said).toContain(
-      "phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: N(1700) -> N pi and N(1700) -> N pi.",
-    );
-    for (const phase of ["", "phase: 0 deg, "])
-      expect(
-        texts(study({ measurements: residue(phase) })).filter((text) => text.startsWith("phases")),
-      ).toEqual([]);
+  test("phases of residues with errors enter as signs, those of elastic ones not at all", () => {
+    const residue = (exit: string, phase: string) =>
+      `{ residue: [N(1700) -> N pi, N(1700) -> ${exit}], value: 30 +- 3 MeV, ${phase}source: invented }`;
+    const said = (exit: string, phase: string) =>
+      texts(study({ measurements: residue(exit, phase) })).filter((text) => text.startsWith("phases"));
+    expect(said("N eta", "phase: -20 +- 5 deg, ")).toEqual([
+      "phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: N(1700) -> N pi and N(1700) -> N eta.",
+    ]);
+    expect(said("N pi", "phase: -20 +- 5 deg, ")).toEqual([
+      "phases of elastic residues are not used: the amplitude is a square here, and the phase that of the background: N(1700) -> N pi and N(1700) -> N pi. Where it is large, take the couplings as rough.",
+    ]);
+    for (const exit of ["N eta", "N pi"])
+      for (const phase of ["", "phase: 0 deg, "]) expect(said(exit, phase)).toEqual([]);
   });
 });
 
