@@ -75,17 +75,19 @@ function describeLeaveOneOut(left: readonly LeftOut[]): string {
   const shown = (name: string, kind: string) =>
     kind === "coupling" || kind === "mixing angle" || /(^|\.)alpha_F$/.test(name);
   const names = left[0]!.parameters.filter(({ name, kind }) => shown(name, kind)).map(({ name }) => name);
-  const rows = left.map(({ observable, predicted, pull, chi2, verdicts, parameters }) => {
+  const rows = left.map(({ observable, predicted, determined, pull, chi2, verdicts, parameters }) => {
     const { value, plus, minus } = observable.measured;
     const shifts = parameters
       .filter(({ name }) => names.includes(name))
-      .map(({ value: now, error, shift }) => `${withDigitsOf(now, error)} (${signed(shift, error)})`);
+      .map(({ value: now, error, determined: isFixed, shift }) =>
+        isFixed ? `${withDigitsOf(now, error)} (${signed(shift, error)})` : "free",
+      );
     const mark = verdicts.degenerateDirections.length > 0 ? "<- not fixed by the others" : "";
     return [
       observable.label,
       observable.signOnly ? (value > 0 ? "+" : "-") : asGiven(value, plus, minus),
-      significant(predicted, 4),
-      pull.toFixed(2),
+      determined ? significant(predicted, 4) : "free",
+      determined ? pull.toFixed(2) : "",
       chi2.toFixed(2),
       ...shifts,
       mark,

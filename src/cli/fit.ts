@@ -120,13 +120,17 @@ export function describeMinimum(minimum: StudyMinimum, title: string): string {
   const rows = minimum.parameters
     .filter(isMeasured)
     .sort((x, y) => rank(x) - rank(y))
-    .map(({ name, value, error, unit }) => [
-      name,
-      withError(value, error),
-      unit === "1" ? "" : unit,
-      inDegrees(value, error, unit),
-      isScaled ? `(+- ${withError(value, scale * error).split(" +- ")[1] ?? "0"})` : "",
-    ]);
+    .map(({ name, value, error, unit, determined }) =>
+      determined
+        ? [
+            name,
+            withError(value, error),
+            unit === "1" ? "" : unit,
+            inDegrees(value, error, unit),
+            isScaled ? `(+- ${withError(value, scale * error).split(" +- ")[1] ?? "0"})` : "",
+          ]
+        : [name, "not determined"],
+    );
   const signs = Object.entries(minimum.reactionSigns).map(
     ([reaction, sign]) => `  sign ${sign === 1 ? "+" : "-"} for ${reaction}\n`,
   );

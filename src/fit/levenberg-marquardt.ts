@@ -29,6 +29,8 @@ interface Point {
 
 /** Chi-square cannot tell two points apart once a step promises less than this part of it. */
 const CHI2_RESOLUTION = 1e-15;
+/** A change of a residual by less is nothing. */
+const NOTHING = 1e-10;
 const REFINEMENT_STEPS = 40;
 const NEWTON_STEPS = 10;
 /** When so many iterations together lower chi-square by less than 1e-4 of it, Newton steps are tried. */
@@ -220,7 +222,7 @@ class Search {
 
   private judge(): FitResult {
     const estimate = fitEstimate(
-      this.jacobian,
+      this.withoutRounding(),
       this.point.residuals,
       this.heldAtBound(),
       this.options.rankTolerance,
@@ -243,6 +245,15 @@ class Search {
         degenerateDirections: estimate.degenerateDirections,
       },
     };
+  }
+
+  /** The Jacobian with 0 for columns of rounding alone: no residual changes when a parameter moves as far as there is. */
+  private withoutRounding(): number[][] {
+    const length = Math.hypot(...this.point.parameters);
+    const norms = columnNorms(this.jacobian, this.scales.length);
+    const isRounding = norms.map((norm, j) => norm * Math.max(length, this.typicalSizes[j]!) < NOTHING);
+    if (!isRounding.includes(true)) return this.jacobian;
+    return this.jacobian.map((row) => row.map((d, j) => (isRounding[j] ? 0 : d)));
   }
 
   private stoppingRule(estimate: FitEstimate): StoppingRule {

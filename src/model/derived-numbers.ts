@@ -1,4 +1,5 @@
 import { fAndD } from "../couplings/f-and-d.js";
+import { isDetermined } from "../fit/determined.js";
 import type { Minimum } from "../fit/minima.js";
 import { decayHasFAndD, type Graded } from "./evaluate.js";
 import { rotationAngle } from "./mixing-matrix.js";
@@ -10,6 +11,8 @@ export interface DerivedNumber {
   readonly value: number;
   /** Standard deviation, by linear propagation of the fit's covariance. */
   readonly error: number;
+  /** False where the data leave a combination of parameters free that it depends on: value and error mean nothing. */
+  readonly determined: boolean;
   readonly unit: string;
 }
 
@@ -22,7 +25,26 @@ export interface MixedRatio {
 type Fitted = Pick<Minimum, "parameters" | "covariance">;
 
 /** F, D and their ratios for each decay that has them, tied mixing angles, then what does not depend on free signs for each mixed pair. */
-export function derivedNumbers(model: Model, minimum: Fitted): DerivedNumber[] {
+export function derivedNumbers(
+  model: Model,
+  { parameters, covariance, verdicts }: Pick<Minimum, "parameters" | "covariance" | "verdicts">,
+): DerivedNumber[] {
+  // The free directions as a covariance: what it gives an error is not determined.
+  const free = parameters.map((_, i) =>
+    parameters.map((_, j) => verdicts.degenerateDirections.reduce((sum, d) => sum + d[i]! * d[j]!, 0)),
+  );
+  const loose = new Map(
+    numbersOf(model, { parameters, covariance: free }).map(({ name, error }) => [name, error]),
+  );
+  return numbersOf(model, { parameters, covariance }).map((number) => ({
+    ...number,
+    determined: isDetermined(loose.get(number.name)!, number.value, parameters),
+  }));
+}
+
+type PlainNumber = Omit<DerivedNumber, "determined">;
+
+function numbersOf(model: Model, minimum: Fitted): PlainNumber[] {
   return [
     ...model.decays.flatMap((decay) => fAndDOf(decay, model, minimum)),
     ...tiedAngles(model, minimum),
@@ -36,9 +58,9 @@ export function derivedNumbers(model: Model, minimum: Fitted): DerivedNumber[] {
 }
 
 /** Mixing angles that follow another pair's, in the study's convention. */
-function tiedAngles({ mixing }: Model, minimum: Fitted): DerivedNumber[] {
+function tiedAngles({ mixing }: Model, minimum: Fitted): PlainNumber[] {
   return mixing.flatMap(({ states, rotations }) =>
-    rotations.flatMap((rotation): DerivedNumber[] => {
+    rotations.flatMap((rotation): PlainNumber[] => {
       const { sign, offset, parameter, tiedBy } = rotation;
       if (tiedBy === undefined) return [];
       const { value, slope } = rotationAngle(rotation, minimum.parameters);
@@ -50,7 +72,7 @@ function tiedAngles({ mixing }: Model, minimum: Fitted): DerivedNumber[] {
 }
 
 /** F, D and what is made of them, for a strong decay of an octet into two octets. */
-function fAndDOf(decay: Decay, model: Model, minimum: Fitted): DerivedNumber[] {
+function fAndDOf(decay: Decay, model: Model, minimum: Fitted): PlainNumber[] {
   if (!decayHasFAndD(decay)) return [];
   const rows = decay.couplingRows;
   const block = rows.map((a) => rows.map((b) => covarianceOf(a, b, minimum)));

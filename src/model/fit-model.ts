@@ -17,6 +17,8 @@ export interface FittedParameter {
   readonly value: number;
   /** Standard deviation from the covariance matrix, not scaled by chi2. */
   readonly error: number;
+  /** False where the data leave a combination of parameters free that it depends on: value and error mean nothing. */
+  readonly determined: boolean;
   readonly unit: string;
   readonly kind: Parameter["kind"] | "derived";
   /** What was given of it beforehand, with the pull of the fit against that; absent for what the data alone fix. */
@@ -231,6 +233,7 @@ function studyMinimum(
       name,
       value: minimum.parameters[k]!,
       error: Math.sqrt(Math.max(0, minimum.covariance[k]?.[k] ?? 0)),
+      determined: minimum.verdicts.degenerateDirections.every((direction) => Math.abs(direction[k]!) < 1e-6),
       unit,
       kind,
       ...(prior === undefined

@@ -1,3 +1,4 @@
+import { isDetermined } from "../fit/determined.js";
 import type { FitVerdicts } from "../fit/levenberg-marquardt.js";
 import { minimumNear } from "../fit/minima.js";
 import { chiSquareProblem } from "../model/chi-square-problem.js";
@@ -14,6 +15,8 @@ export interface ShiftedParameter {
   readonly kind: StudyQuantity["kind"];
   readonly value: number;
   readonly error: number;
+  /** False where the other observables leave it free: value, error and shift mean nothing. */
+  readonly determined: boolean;
   /** Value without the observable minus value with it. */
   readonly shift: number;
 }
@@ -23,6 +26,8 @@ export interface LeftOut {
   readonly observable: Observable;
   /** What the other observables predict for it. */
   readonly predicted: number;
+  /** False where they leave it free: prediction and pull mean nothing. */
+  readonly determined: boolean;
   /** (predicted - measured) / error of the measurement. */
   readonly pull: number;
   readonly chi2: number;
@@ -61,10 +66,17 @@ export function leaveOneOut(fit: Fit, options: LeaveOneOutOptions = {}): LeftOut
     const best = minima.reduce((a, b) => (b.chi2 < a.chi2 * (1 - 1e-6) ? b : a));
     const evaluation = new Evaluation(ready, best.parameters);
     const comparison = comparisons(evaluation, fitted)[index]!;
+    const { degenerateDirections } = best.verdicts;
+    const isFixed = (gradient: readonly number[], size: number) =>
+      degenerateDirections.every((direction) => {
+        const change = direction.reduce((sum, d, k) => sum + d * gradient[k]!, 0);
+        return isDetermined(change, size, best.parameters);
+      });
     options.onProgress?.(index + 1, fitted.length);
     return {
       observable,
       predicted: comparison.fitted,
+      determined: isFixed(comparison.gradient, 1),
       pull: comparison.residual,
       chi2: best.chi2,
       ndf: degreesOfFreedom(best, others),
@@ -73,7 +85,9 @@ export function leaveOneOut(fit: Fit, options: LeaveOneOutOptions = {}): LeftOut
         const { name, unit, kind } = quantity;
         const graded = quantity.of(evaluation);
         const shift = graded.value - quantity.of(full).value;
-        return { name, unit, kind, value: graded.value, error: linearError(graded, best.covariance), shift };
+        const error = linearError(graded, best.covariance);
+        const determined = isFixed(graded.gradient, graded.value);
+        return { name, unit, kind, value: graded.value, error, determined, shift };
       }),
     };
   });
