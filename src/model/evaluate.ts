@@ -1,15 +1,12 @@
 import { antisymmetricCouplingOfF, hasFAndD, symmetricCouplingOfD } from "../couplings/f-and-d.js";
 import { STRONG } from "../couplings/operator.js";
 import { rootToNumber } from "../exact/signed-root.js";
+import { dot, type Graded, quotient, scaled, times } from "./graded.js";
 import { type MixingMatrix, mixingMatrix } from "./mixing-matrix.js";
 import type { Component, Decay, Model, Observable, PriorTarget, Total, Wave, WidthSum } from "./model.js";
 import { type SharedAmplitudes, sharedAmplitudes } from "./shared-amplitudes.js";
 
-/** A value with its derivatives with respect to all parameters of the model. */
-export interface Graded {
-  readonly value: number;
-  readonly gradient: readonly number[];
-}
+export type { Graded } from "./graded.js";
 
 /** A model made ready for many evaluations: every component's exact form as a row of numbers, once. */
 export interface Evaluator {
@@ -111,16 +108,28 @@ export class Evaluation {
     return { value, gradient };
   }
 
-  /** Length |g| of the vector of reduced couplings behind a wave, in the coupling's unit. */
+  /**
+   * Length of the vector of reduced couplings behind a wave, in the coupling's unit: sqrt(sum over decays of U^2 |g|^2), with
+   * U the mixing factor by which the decay enters, 1 without mixing.
+   */
   couplingStrength(channel: number, wave: number): Graded {
     const gradient = this.#zero();
     let square = 0;
-    for (const decay of new Set(this.#wave(channel, wave).components.map((component) => component.decay))) {
-      for (const row of this.model.decays[decay]!.couplingRows) {
+    const seen = new Set<number>();
+    for (const component of this.#wave(channel, wave).components) {
+      // Two orders of the daughters are one state.
+      if (seen.has(component.decay)) continue;
+      seen.add(component.decay);
+      const factor = this.#mixingFactor(component);
+      let length = 0;
+      for (const row of this.model.decays[component.decay]!.couplingRows) {
         const g = dot(row, this.parameters);
-        square += g * g;
-        for (const [k, d] of row.entries()) gradient[k]! += g * d;
+        length += g * g;
+        for (const [k, d] of row.entries()) gradient[k]! += factor * factor * g * d;
       }
+      square += factor * factor * length;
+      for (const { parameter, factor: derivative } of this.#mixingDerivatives(component))
+        gradient[parameter]! += factor * derivative * length;
     }
     const value = Math.sqrt(square);
     return { value, gradient: value === 0 ? gradient.fill(0) : gradient.map((d) => d / value) };
@@ -313,27 +322,4 @@ export class Evaluation {
 /** Whether F and D are defined for a decay: a strong decay of an octet into two octets with both couplings. */
 export function decayHasFAndD(decay: Decay): boolean {
   return decay.reduced.length === 2 && hasFAndD({ ...decay, operator: STRONG });
-}
-
-function scaled(a: Graded, factor: number): Graded {
-  return { value: factor * a.value, gradient: a.gradient.map((d) => factor * d) };
-}
-
-function times(a: Graded, b: Graded): Graded {
-  return {
-    value: a.value * b.value,
-    gradient: a.gradient.map((d, k) => d * b.value + a.value * b.gradient[k]!),
-  };
-}
-
-function quotient(a: Graded, b: Graded): Graded {
-  if (a.value === 0 && b.value === 0) return { value: 0, gradient: a.gradient.map(() => 0) };
-  const value = a.value / b.value;
-  return { value, gradient: a.gradient.map((d, k) => (d - value * b.gradient[k]!) / b.value) };
-}
-
-function dot(row: readonly number[], parameters: readonly number[]): number {
-  let sum = 0;
-  for (let k = 0; k < row.length; k++) sum += row[k]! * parameters[k]!;
-  return sum;
 }

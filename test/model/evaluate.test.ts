@@ -14,6 +14,9 @@ const MODELS = {
   "octet with breaking in the fit": resolved(
     studyText("octet-3-2-alone").replace("measurements:", "fit: { theoryError: 0.2 }\nmeasurements:"),
   ),
+  "octet and singlet mixed, with breaking in the fit": resolved(
+    studyText("octet-3-2").replace("measurements:", "fit: { theoryError: 0.2 }\nmeasurements:"),
+  ),
   decuplet: resolved(studyText("decuplet")),
   "octet with amplitudes and a residue": resolved(
     `${studyText("octet-3-2-alone")}
@@ -79,4 +82,19 @@ describe.each(Object.entries(MODELS))("%s", (_, model) => {
       }
     }
   });
+});
+
+test("a mixed state has of each multiplet's coupling strength the part that it has of the multiplet", () => {
+  const model = MODELS["octet and singlet mixed"];
+  const angle = model.parameters.findIndex(({ kind }) => kind === "mixing angle");
+  const [channel, wave] = [model.channels.findIndex(({ id }) => id.startsWith("Lambda(1520) -> p K-")), 0];
+  const strength = (theta: number) => {
+    const parameters = model.parameters.map(({ start, kind }, k) =>
+      k === angle ? theta : kind === "coupling" ? 1 + k : start,
+    );
+    return new Evaluation(evaluator(model), parameters).couplingStrength(channel, wave).value;
+  };
+  const [bareOne, bareTwo] = [strength(0), strength(Math.PI / 2)];
+  expect(Math.abs(bareOne - bareTwo)).toBeGreaterThan(0.1);
+  expect(strength(0.4)).toBeCloseTo(Math.hypot(bareOne * Math.cos(0.4), bareTwo * Math.sin(0.4)), 12);
 });
