@@ -6,7 +6,9 @@ import {
   type Pull,
   type StudyMinimum,
 } from "../model/fit-model.js";
+import type { Model } from "../model/model.js";
 import { notesOfOpenChannels } from "../model/notes.js";
+import { overfullParents, overfullText } from "../model/overfull-parents.js";
 import { validityWarnings } from "../model/validity.js";
 import { asGiven, significant, withError } from "../tables/rounding.js";
 import { describeUncertainties } from "./describe-uncertainty.js";
@@ -75,12 +77,21 @@ export function describeFit(fit: Fit): string {
     const distance = minimum.chi2 - best!.chi2;
     const title = `Minimum ${k + 2}, chi2 higher by ${distance.toFixed(2)}`;
     parts.push(
-      distance < LISTED_DELTA_CHI2 ? describeMinimum(minimum, title) : `\n${title}: ${shortText(minimum)}\n`,
+      distance < LISTED_DELTA_CHI2
+        ? describeMinimum(minimum, title) + describeOverfull(fit.model, minimum)
+        : `\n${title}: ${shortText(minimum)}\n`,
     );
   }
   if (fit.minima.length === 1) parts.push("\nThere is no other minimum.\n");
   parts.push(...notesOfOpenChannels(fit.model).map((note) => `\nNote: ${note}\n`), describeWarnings(fit, 0));
   return parts.join("");
+}
+
+/** For minima beside the best, whose warnings are printed in full: what may exclude them. */
+function describeOverfull(model: Model, minimum: StudyMinimum): string {
+  return overfullParents(model, minimum)
+    .map((parent) => `  WARNING: ${parent.name}: ${overfullText(parent)}\n`)
+    .join("");
 }
 
 /** Where the numbers of a minimum should not be trusted, a paragraph for each reason. */

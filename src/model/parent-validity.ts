@@ -2,6 +2,7 @@ import { sumsOf } from "./breaking.js";
 import { Evaluation, evaluator } from "./evaluate.js";
 import { fittedObservables, type StudyMinimum } from "./fit-model.js";
 import type { Channel, Model, Observable } from "./model.js";
+import { overfullParents, overfullText } from "./overfull-parents.js";
 
 /** A width that is a larger part of the mass makes Breit-Wigner quantities a matter of definition. */
 const BROAD = 0.15;
@@ -38,7 +39,7 @@ interface IsospinChannel {
   readonly widthMeV: number;
 }
 
-/** Limits of validity that parents touch: broad ones, and ones whose predictions reach far in momentum. */
+/** Limits of validity that parents touch: overfull and broad ones, and ones whose predictions reach far in momentum. */
 export function parentWarnings(model: Model, minimum: StudyMinimum): ValidityWarning[] {
   const families = familiesOf(model, new Evaluation(evaluator(model), minimum.vector));
   const fitted = fittedObservables(model);
@@ -47,12 +48,17 @@ export function parentWarnings(model: Model, minimum: StudyMinimum): ValidityWar
   const momenta = families
     .flatMap(({ channels }) => channels)
     .filter(({ indices, momentumMeV }) => momentumMeV > 0 && indices.some((k) => isIn(k, sized)));
-  return families.flatMap((family) =>
+  const overfull = overfullParents(model, minimum).map((parent) => ({
+    parents: parent.hadrons,
+    text: `${parent.name}: ${overfullText(parent)}. Tables need a policy for it (\`conflicts\`); above some 1.5 times, breaking does not explain it: look at the other minima, the assignment and the width model.`,
+  }));
+  const others = families.flatMap((family) =>
     [...broad(family, fitted), ...farMomenta(family, momenta, model)].map((text) => ({
       parents: family.hadrons,
       text: `${family.name}: ${text}`,
     })),
   );
+  return [...overfull, ...others];
 }
 
 function familiesOf(model: Model, evaluation: Evaluation): Family[] {

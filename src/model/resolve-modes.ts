@@ -3,6 +3,7 @@ import { refuse } from "../require.js";
 import type { Study, StudyMode } from "../study/study.js";
 import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
 import { channelName } from "./channel-names.js";
+import { conjugateModes } from "./conjugate-modes.js";
 import { finalStates } from "./final-states.js";
 import { GROUND_STATE_SOURCE, groundStateModes } from "./ground-state-modes.js";
 import { doubleCounted, groundStateDecays, type NamedFinal } from "./inclusive.js";
@@ -49,6 +50,7 @@ export function resolveModes(
   );
   const resolver = new ModeResolver(study, particles, growing, problems);
   for (const written of study.modes) problems.attempt(written.path, () => resolver.add(written));
+  resolver.completeConjugates(plain);
   const builtIn = study.tables.daughters === "decayed" ? resolver.decayDaughters(channels) : false;
   for (const each of growing.values()) checkTogether(each, channels, growing, placed, problems);
   return {
@@ -89,14 +91,28 @@ class ModeResolver {
     }
   }
 
-  /** Built-in modes for every daughter that has some and is no parent, and for the daughters of these; true if any was. */
+  /** Gives each of two parents by the study's decays that are antiparticles of each other the modes of the other. */
+  completeConjugates(plain: readonly Parent[]): void {
+    for (const { hadron } of plain) {
+      const other = this.#growing.get(hadron.antiparticle ?? "");
+      if (other === undefined) continue;
+      const { modes } = this.#growing.get(hadron.name)!;
+      other.modes.push(...conjugateModes(modes, other.parent.hadron, other.modes, this.#particles));
+    }
+  }
+
+  /**
+   * Built-in modes for every daughter that has some and is no parent, and for the daughters of these; true if any was. The
+   * antiparticle of a parent decays as that one does.
+   */
   decayDaughters(channels: readonly Channel[]): boolean {
+    const conjugates = new Set([...this.#growing.values()].map(({ parent }) => parent.hadron.antiparticle));
     const queue = [...channels, ...[...this.#growing.values()].flatMap(({ modes }) => modes)].flatMap(
       ({ daughters }) => daughters.map(({ name }) => name),
     );
     let used = false;
     for (let name = queue.pop(); name !== undefined; name = queue.pop()) {
-      if (this.#growing.has(name)) continue;
+      if (this.#growing.has(name) || conjugates.has(name)) continue;
       for (const written of groundStateModes(name)) {
         used = true;
         this.#problems.attempt(written.path, () => this.add(written));
@@ -126,6 +142,11 @@ class ModeResolver {
         refuse("mode", "a parent with a measured total width, which leaves a remainder", hadron.name, mend);
       }
       return known;
+    }
+    const particle = this.#growing.get(hadron.antiparticle ?? "")?.parent;
+    if (particle !== undefined && particle.channels.length > 0) {
+      const mend = `Write the conjugate mode, of ${particle.hadron.name}.`;
+      refuse("mode", `${particle.hadron.name}, as whose antiparticle it decays`, hadron.name, mend);
     }
     if (hadron.widthMeV === null) {
       const mend = "Write it in a multiplet of the study, or under `particles`, with its width.";
