@@ -58,7 +58,7 @@ export function resolveStudy(study: Study, earlier: readonly StudyProblem[] = []
     channels,
     observables,
     modeValues: modes.values,
-    notes: notesOf(decays, groups, masses),
+    notes: [...notesOf(decays, groups, masses), ...notesOfThemselves(plain)],
     editions: [`hadrons: ${catalogueEdition().edition}, ${catalogueEdition().source}`, ...modes.editions],
   };
 }
@@ -91,11 +91,29 @@ function parentsOf(
         );
         continue;
       }
-      const mine = channels.flatMap(({ parent }, index) => (parent.name === hadron.name ? [index] : []));
+      const mine = channels.flatMap((channel, index) =>
+        channel.parent.name === hadron.name && !isOfItself(channel) ? [index] : [],
+      );
       parents.push({ hadron, multiplet: from.id, total, channels: mine, modes: [] });
     }
   }
   return parents;
+}
+
+/** Whether a daughter is in the isospin multiplet of the parent: a vertex with a coupling, but no decay. */
+function isOfItself({ isospinChannel }: Channel): boolean {
+  const [parent, daughters] = isospinChannel.split(" -> ") as [string, string];
+  return daughters.split(" ").includes(parent);
+}
+
+/** Says of which vertices nothing decays. */
+function notesOfThemselves(channels: readonly Channel[]): string[] {
+  const open = channels
+    .filter(isOfItself)
+    .filter(({ waves }) => waves.some(({ kinematicFactor }) => kinematicFactor > 0));
+  const names = [...new Set(open.map(({ isospinChannel }) => isospinChannel))];
+  if (names.length === 0) return [];
+  return [`${names.join("; ")}: a state does not decay into itself; these have couplings and no rows.`];
 }
 
 function totalOf(hadron: Hadron, summed: ReadonlySet<string>, study: Study): TotalWidth | undefined {

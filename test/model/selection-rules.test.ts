@@ -66,3 +66,22 @@ measurements:
   expect(Math.abs(amplitude("R+ -> p eta")) / unit).toBeCloseTo(0.2449489742783179 * Math.SQRT2, 9);
   expect(Math.abs(amplitude("R+ -> p eta'(958)")) / unit).toBeCloseTo(0.34641016151377535 * Math.SQRT2, 9);
 });
+
+test("a state does not decay into itself, for all that its width would allow; its coupling stays", () => {
+  const model = modelOf(`multiplets:
+  v: { irrep: 8, spinParity: 1--, members: [{ name: rho(770), place: rho }, { name: K*(892), place: K* }] }
+decays:
+  - { name: pp, from: v, to: ${PP}, L: 1, model: a }
+  - { name: vp, from: v, to: ${VP}, L: 1, model: a }
+measurements:
+  - { width: rho(770) -> pi pi, value: 147 +- 1 MeV, source: invented }
+  - { width: K*(892) -> rho(770) K, value: 0.01 +- 0.01 MeV, source: invented }
+`);
+  const rows = model.parents.flatMap(({ channels }) =>
+    channels.map((k) => model.channels[k]!.isospinChannel),
+  );
+  expect(model.channels.map(({ isospinChannel }) => isospinChannel)).toContain("K*(892) -> K*(892) pi");
+  expect(rows).not.toContain("K*(892) -> K*(892) pi");
+  expect(rows).toContain("K*(892) -> K pi");
+  expect(model.notes.join()).toContain("K*(892) -> K*(892) pi");
+});
