@@ -59,8 +59,12 @@ export function widthSumOf(
 /** The names in a written channel; noted at `path` if the text is not one. */
 export function writtenChannel(text: string, path: string, problems: Problems): WrittenChannel | undefined {
   const written = parseChannel(text);
-  if (written === undefined)
-    problems.add(path, `expected a channel such as \`N(1675) -> N pi\`, got ${JSON.stringify(text)}.`);
+  if (written === undefined) {
+    const mend = text.includes("c.c.")
+      ? " A state and its charge conjugate are two channels here, as wide as each other: give one of them half of their sum."
+      : "";
+    problems.add(path, `expected a channel such as \`N(1675) -> N pi\`, got ${JSON.stringify(text)}.${mend}`);
+  }
   return written;
 }
 
@@ -117,6 +121,9 @@ export function addUnknownHadron(
   problems: Problems,
 ): void {
   const near = nearestNames(name, [...new Set(known)]).join(", ");
-  const mend = near === "" ? "" : ` Did you mean ${near}?`;
+  const guess = near === "" ? "" : ` Did you mean ${near}?`;
+  const mend = /^K_?[SL]/.test(name)
+    ? " Measurements are of K0 and K0bar (of K_S0 K_L0 from a neutral meson, of K0 K0bar); tables split them: `neutralKaons`."
+    : guess;
   problems.add(path, `expected a hadron of this study, got ${JSON.stringify(name)}.${mend}`);
 }

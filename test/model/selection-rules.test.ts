@@ -85,3 +85,13 @@ measurements:
   expect(rows).toContain("K*(892) -> K pi");
   expect(model.notes.join()).toContain("K*(892) -> K*(892) pi");
 });
+
+test.each([
+  ["f2'(1525) -> K*(892) Kbar + c.c.", "give one of them half of their sum."],
+  ["a2(1320) -> K_S0 K", "Measurements are of K0 and K0bar"],
+])("a measurement of %s is refused with what to write", (channel, mend) => {
+  const lines = `decays: [{ from: tensor-octet, to: ${VP}, L: 2, model: a }]
+measurements: [{ width: "${channel}", value: 5 +- 1 MeV, source: invented }]
+`;
+  expect(() => modelOf(lines)).toThrow(mend);
+});
