@@ -1,13 +1,16 @@
 import { Matrix, SingularValueDecomposition } from "ml-matrix";
 import { FormMaker } from "../couplings/form.js";
 import { STRONG } from "../couplings/operator.js";
+import { reducedCouplings } from "../couplings/reduced-coupling.js";
 import { rootToNumber } from "../exact/signed-root.js";
+import type { Multiplet } from "../hadrons/multiplet.js";
 import { refuse } from "../require.js";
 import { su3ClebschGordan } from "../su3/clebsch-gordan.js";
 import { type Irrep, sameIrrep } from "../su3/irrep.js";
+import { decomposeProduct } from "../su3/product.js";
 import { conjugateState, type State, states } from "../su3/state.js";
 import type { UntiedDecay } from "./resolve-decays.js";
-import { exchangeSign } from "./selection-rules.js";
+import { chargeConjugationEven, exchangeSign, exchangeSymmetric } from "./selection-rules.js";
 
 /** Sizes below this, relative to 1, are rounding: coefficients here are ratios of small roots. */
 const NULL = 1e-9;
@@ -34,9 +37,14 @@ export interface QuarkLineCouplings {
  * @throws InputError if a meson multiplet is neither octet nor singlet, or every coupling vanishes
  */
 export function quarkLineCouplings(decays: readonly UntiedDecay[]): QuarkLineCouplings {
-  const columns = decays.flatMap(({ reduced }, decay) => reduced.map((_, r) => ({ decay, reduced: r })));
-  const equations = disconnectedAmplitudes(decays, columns);
-  const { pivots, rows } = rowReduced(nullSpace(equations, columns.length));
+  const whole = [...decays, ...missingPartners(decays)];
+  const columns = whole.flatMap(({ reduced }, decay) => reduced.map((_, r) => ({ decay, reduced: r })));
+  const equations = disconnectedAmplitudes(whole, columns);
+  const written = columns.findIndex(({ decay }) => decay === decays.length);
+  const solutions = nullSpace(equations, columns.length).map((row) =>
+    written < 0 ? row : row.slice(0, written),
+  );
+  const { pivots, rows } = rowReduced(solutions);
   if (pivots.length === 0) {
     const mend = "Every coupling vanishes; is a decay missing from the family?";
     refuse(
@@ -52,6 +60,65 @@ export function quarkLineCouplings(decays: readonly UntiedDecay[]): QuarkLineCou
     free: pivots.map((pivot) => columns[pivot]!),
     rows: decays.map(({ reduced }, d) => reduced.map((_, r) => rows.map((row) => row[column(d, r)]!))),
   };
+}
+
+/**
+ * Decays that make the nonets of a family whole, with couplings that nobody asked for: the rule speaks of whole nonets,
+ * and where a singlet is not declared its couplings are not 0 but unknown.
+ */
+function missingPartners(decays: readonly UntiedDecay[]): UntiedDecay[] {
+  const nonets = decays[0]!.from.baryonNumber === 0 ? [0, 1, 2] : [2];
+  const legs = ({ from, to }: UntiedDecay) => [from, ...to];
+  const isOctet = ({ irrep }: Multiplet) => irrep.p === 1;
+  const all = decays.flatMap((decay) => nonets.map((slot) => legs(decay)[slot]!));
+  const partner = (multiplet: Multiplet, slot: number): Multiplet => {
+    const alike = (decay: UntiedDecay) =>
+      (slot === 0
+        ? [decay.from]
+        : nonets.includes(1) && areAlike(decays)
+          ? decay.to
+          : [legs(decay)[slot]!]
+      ).filter((other) => isOctet(other) !== isOctet(multiplet));
+    const irrep = isOctet(multiplet) ? { p: 0, q: 0 } : { p: 1, q: 1 };
+    return decays.flatMap(alike)[0] ?? { ...multiplet, id: `partner of ${multiplet.id}`, irrep, members: [] };
+  };
+  if (all.some(({ irrep }) => irrep.p !== irrep.q || irrep.p > 1)) return [];
+  const choices = [0, 1, 2].map((slot) => {
+    const multiplet = legs(decays[0]!)[slot]!;
+    return nonets.includes(slot) ? [multiplet, partner(multiplet, slot)] : [multiplet];
+  });
+  const known = new Set(decays.flatMap((decay) => keysOf(legs(decay))));
+  const found: UntiedDecay[] = [];
+  for (const from of choices[0]!)
+    for (const first of choices[1]!)
+      for (const second of choices[2]!) {
+        const keys = keysOf([from, first, second]);
+        if (keys.some((key) => known.has(key))) continue;
+        for (const key of areAlike(decays) ? keys : keys.slice(0, 1)) known.add(key);
+        const { L, twoS } = decays[0]!;
+        const scheme = { from, to: [first, second] as const, operator: STRONG, L, twoS };
+        const product = decomposeProduct(first.irrep, second.irrep);
+        if (!product.some(({ irrep }) => sameIrrep(irrep, from.irrep))) continue;
+        const couplings = reducedCouplings(scheme, "");
+        const exchanged = first.id === second.id ? exchangeSymmetric(scheme, couplings) : couplings;
+        const reduced = chargeConjugationEven(scheme, exchanged, [from, first, second]);
+        if (reduced.length > 0) found.push({ ...decays[0]!, name: "", from, to: scheme.to, reduced });
+      }
+  return found;
+}
+
+/** A family's places of multiplets, as they are and with the daughters exchanged. */
+function keysOf([from, first, second]: readonly Multiplet[]): string[] {
+  return [
+    [first, second],
+    [second, first],
+  ].map((pair) => [from, ...pair].map((multiplet) => multiplet!.id).join(" "));
+}
+
+/** Whether both daughters are of one nonet; mesons of two, as vector and pseudoscalar, have each its place. */
+function areAlike(decays: readonly UntiedDecay[]): boolean {
+  const [firsts, seconds] = [0, 1].map((slot) => decays.map(({ to }) => to[slot]!.id));
+  return firsts!.some((id) => seconds!.includes(id));
 }
 
 /** A state of a slot in the quark basis: its quark lines, and its overlap with the states of each multiplet. */
@@ -71,6 +138,7 @@ function disconnectedAmplitudes(
     const multiplets = decays.map(({ from, to }) => [from, ...to][slot]!);
     return multiplets[0]!.baryonNumber === 0 ? mesonLines(multiplets) : baryonLines(multiplets);
   });
+  const exchanged = areAlike(decays);
   const makers = decays.map((decay) => new FormMaker({ ...decay, operator: STRONG }, decay.reduced));
   const equations: number[][] = [];
   for (const parent of slots[0]!) {
@@ -79,7 +147,9 @@ function disconnectedAmplitudes(
         if (isConnected(parent, first, second)) continue;
         const row = columns.map(() => 0);
         for (const [d, decay] of decays.entries()) {
-          for (const [a, b, weight] of orders(decay, first, second)) {
+          for (const [a, b, weight] of exchanged
+            ? orders(decay, first, second)
+            : [[first, second, 1] as const]) {
             for (const { reduced, value } of amplitude(makers[d]!, decay, parent, a, b)) {
               row[columns.findIndex((column) => column.decay === d && column.reduced === reduced)]! +=
                 weight * value;
@@ -94,12 +164,11 @@ function disconnectedAmplitudes(
 }
 
 /**
- * The ways two states can be the daughters of a decay, with weights: two mesons in both orders, as one normalised state
+ * The ways two states of one nonet can be the daughters of a decay, with weights: in both orders, as one normalised state
  * where they come from one multiplet.
  */
 function orders(decay: UntiedDecay, first: Lines, second: Lines): [Lines, Lines, number][] {
   const [a, b] = decay.to;
-  if (a.baryonNumber !== 0) return [[first, second, 1]];
   const norm = a.id === b.id ? Math.SQRT1_2 : 1;
   return [
     [first, second, norm],
@@ -204,5 +273,8 @@ function rowReduced(basis: readonly (readonly number[])[]): { pivots: number[]; 
     }
     pivots.push(column);
   }
-  return { pivots, rows: rows.map((row) => row.map((value) => (Math.abs(value) < NULL ? 0 : value))) };
+  return {
+    pivots,
+    rows: rows.slice(0, pivots.length).map((row) => row.map((value) => (Math.abs(value) < NULL ? 0 : value))),
+  };
 }

@@ -46,7 +46,7 @@ describe("what mixing leaves free of the choice of signs", () => {
     expect(ratio!.error / Math.abs(ratio!.value)).toBeCloseTo(Math.sqrt(square), 10);
   });
 
-  test("a coupling that C parity or a rule makes 0 is in no ratio", () => {
+  test("ratios of couplings that the quark-line rule ties together", () => {
     const text = `couplet: 1
 title: Axial mesons, invented
 multiplets:
@@ -66,7 +66,10 @@ measurements:
   - { fraction: K(1280) -> rho(770) K, value: 0.38 +- 0.13, source: invented }
   - { fraction: K(1410) -> K*(892) pi, value: 0.9 +- 0.1, source: invented }
 `;
-    expect(ratios(text).map(({ name }) => name)).toEqual(["b.g(8_1)/a.g(8_2) tan theta(K(1280), K(1410))"]);
+    expect(ratios(text).map(({ name }) => name)).toEqual([
+      "b.g(8_1)/a.g(8_2) tan theta(K(1280), K(1410))",
+      "b1.g(8)/b.g(8_1) tan theta(phi(1020), omega(782))",
+    ]);
   });
 
   test("mesons as daughters: theta of the meson convention, also where the quark basis is written", () => {

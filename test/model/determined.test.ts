@@ -10,12 +10,12 @@ const fitOf = (measurements: string) =>
     resolved(`couplet: 1
 title: What data determine, invented
 multiplets:
-  o: { irrep: 8, spinParity: 3/2-, members: [{ name: N(1700), place: N, mass: 1700 MeV, width: 100 MeV }, { name: Sigma(1800), place: Sigma, mass: 1800 MeV, width: 100 MeV }] }
+  o: { irrep: 8, spinParity: 3/2-, members: [{ name: N(1705), place: N, mass: 1700 MeV, width: 100 MeV }, { name: Sigma(1800), place: Sigma, mass: 1800 MeV, width: 100 MeV }] }
 decays: [{ from: o, to: [baryon-octet, pseudoscalar-octet], L: 2, model: a }]
 measurements:
 ${measurements}`),
   );
-const width = "  - { width: N(1700) -> N pi, value: 30 +- 3 MeV, source: invented }\n";
+const width = "  - { width: N(1705) -> N pi, value: 30 +- 3 MeV, source: invented }\n";
 const ratios = `  - { ratio: [Sigma(1800) -> Lambda pi, Sigma(1800) -> N Kbar], value: 0.5 +- 0.1, source: invented }
   - { ratio: [Sigma(1800) -> Sigma pi, Sigma(1800) -> N Kbar], value: 0.8 +- 0.1, source: invented }
 `;

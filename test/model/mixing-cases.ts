@@ -58,7 +58,7 @@ const amplitude = (parent: string, entrance: string, exit: string) =>
 export const SINGLET: Case = {
   name: "Lambda of an octet and a singlet",
   study: `multiplets:
-${octet("o", member("N(1700)", "N", 1700) + member("Sigma(1800)", "Sigma", 1800))}${octet("s", "", "3/2-", "1")}mixing:
+${octet("o", member("N(1705)", "N", 1700) + member("Sigma(1800)", "Sigma", 1800))}${octet("s", "", "3/2-", "1")}mixing:
 ${mix(
   ["o/Lambda", "s/Lambda"],
   [
@@ -70,7 +70,7 @@ ${mix(
 ${decay("o")}${decay("s")}`,
   truth: { "o.g(8_1)": 2, "o.g(8_2)": 1.1, "s.g(1)": 1.7, "angle(Lambda(1850), Lambda(1650))": 0.4 },
   measured: [
-    ...widths("N(1700)", "N pi"),
+    ...widths("N(1705)", "N pi"),
     ...widths("Sigma(1800)", "N Kbar", "Lambda pi"),
     ...widths("Lambda(1850)", "N Kbar", "Sigma pi"),
     ...widths("Lambda(1650)", "N Kbar", "Sigma pi"),
@@ -82,24 +82,24 @@ ${decay("o")}${decay("s")}`,
 export const DECUPLET: Case = {
   name: "Sigma of an octet and a decuplet",
   study: `multiplets:
-${octet("o", member("N(1700)", "N", 1700) + member("Lambda(1850)", "Lambda", 1850))}${octet("d", member("Delta(1700)", "Delta", 1700), "3/2-", "10")}mixing:
+${octet("o", member("N(1705)", "N", 1700) + member("Lambda(1850)", "Lambda", 1850))}${octet("d", member("Delta(1705)", "Delta", 1700), "3/2-", "10")}mixing:
 ${mix(
   ["o/Sigma", "d/Sigma"],
   [
-    ["Sigma(1750)", 1750],
+    ["Sigma(1755)", 1750],
     ["Sigma(1900)", 1900],
   ],
   "angle: free",
 )}decays:
 ${decay("o")}${decay("d")}`,
-  truth: { "o.g(8_1)": 2, "o.g(8_2)": 1.1, "d.g(10)": 1.6, "angle(Sigma(1750), Sigma(1900))": -0.5 },
+  truth: { "o.g(8_1)": 2, "o.g(8_2)": 1.1, "d.g(10)": 1.6, "angle(Sigma(1755), Sigma(1900))": -0.5 },
   measured: [
-    ...widths("N(1700)", "N pi"),
+    ...widths("N(1705)", "N pi"),
     ...widths("Lambda(1850)", "N Kbar"),
-    ...widths("Delta(1700)", "N pi"),
-    ...widths("Sigma(1750)", "N Kbar", "Lambda pi", "Sigma pi"),
+    ...widths("Delta(1705)", "N pi"),
+    ...widths("Sigma(1755)", "N Kbar", "Lambda pi", "Sigma pi"),
     ...widths("Sigma(1900)", "N Kbar", "Lambda pi", "Sigma pi"),
-    amplitude("Sigma(1750)", "N Kbar", "Lambda pi"),
+    amplitude("Sigma(1755)", "N Kbar", "Lambda pi"),
     amplitude("Sigma(1900)", "N Kbar", "Sigma pi"),
   ],
 };
@@ -128,19 +128,19 @@ ${octet("o", member("Sigma(1800)", "Sigma", 1800) + member("Lambda(1850)", "Lamb
 ${mix(
   ["o/N", "a/N"],
   [
-    ["N(1650)", 1650],
+    ["N(1655)", 1650],
     ["N(1800)", 1800],
   ],
   "angle: free",
 )}decays:
 ${decay("o", undefined, 1)}${decay("a", undefined, 1)}`,
-  truth: { "o.g(8_1)": 2, "o.g(8_2)": 1.1, "a.g(10bar)": 0.9, "angle(N(1650), N(1800))": 0.3 },
+  truth: { "o.g(8_1)": 2, "o.g(8_2)": 1.1, "a.g(10bar)": 0.9, "angle(N(1655), N(1800))": 0.3 },
   measured: [
     ...widths("Theta(1700)", "N K"),
     ...widths("Sigma(1800)", "Lambda pi", "Sigma pi", "N Kbar"),
-    ...widths("N(1650)", "N pi", "N eta"),
+    ...widths("N(1655)", "N pi", "N eta"),
     ...widths("N(1800)", "N pi", "N eta", "Lambda K"),
-    amplitude("N(1650)", "N pi", "N eta"),
+    amplitude("N(1655)", "N pi", "N eta"),
     amplitude("N(1800)", "N pi", "N eta"),
   ],
 };
@@ -148,7 +148,7 @@ ${decay("o", undefined, 1)}${decay("a", undefined, 1)}`,
 export const TWENTY_SEVEN: Case = {
   name: "Lambda of an octet and a 27",
   study: `multiplets:
-${octet("o", member("N(1700)", "N", 1700) + member("Sigma(1800)", "Sigma", 1800))}${octet("t", member("S(1750)", "Y=0 I=2", 1750), "3/2-", "27")}mixing:
+${octet("o", member("N(1705)", "N", 1700) + member("Sigma(1800)", "Sigma", 1800))}${octet("t", member("S(1750)", "Y=0 I=2", 1750), "3/2-", "27")}mixing:
 ${mix(
   ["o/Lambda", "t/Lambda"],
   [
@@ -160,7 +160,7 @@ ${mix(
 ${decay("o")}${decay("t")}`,
   truth: { "o.g(8_1)": 2, "o.g(8_2)": 1.1, "t.g(27)": 1.4, "angle(Lambda(1750), Lambda(1900))": 0.6 },
   measured: [
-    ...widths("N(1700)", "N pi"),
+    ...widths("N(1705)", "N pi"),
     ...widths("Sigma(1800)", "N Kbar", "Lambda pi"),
     ...widths("S(1750)", "Sigma pi"),
     ...widths("Lambda(1750)", "N Kbar", "Sigma pi"),

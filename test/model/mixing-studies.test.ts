@@ -97,11 +97,11 @@ describe("amplitudes of mixed states by hand", () => {
     const eta = rotated(0.3, -s * Math.sqrt(1 / 20) + a * Math.sqrt(1 / 4), 0.9 * Math.sqrt(1 / 4));
     const lambdaEta = rotated(0.6, -s * Math.sqrt(1 / 5), 1.4 * Math.sqrt(27 / 40));
     for (const k of [0, 1]) {
-      expect(isospin(DECUPLET, `${["Sigma(1750)", "Sigma(1900)"][k]}+ -> Lambda pi+`)).toBeCloseTo(
+      expect(isospin(DECUPLET, `${["Sigma(1755)", "Sigma(1900)"][k]}+ -> Lambda pi+`)).toBeCloseTo(
         lambda[k]!,
         12,
       );
-      expect(isospin(ANTIDECUPLET, `${["N(1650)", "N(1800)"][k]}+ -> p eta`)).toBeCloseTo(eta[k]!, 12);
+      expect(isospin(ANTIDECUPLET, `${["N(1655)", "N(1800)"][k]}+ -> p eta`)).toBeCloseTo(eta[k]!, 12);
       expect(isospin(TWENTY_SEVEN, `${["Lambda(1750)", "Lambda(1900)"][k]} -> Lambda eta`)).toBeCloseTo(
         lambdaEta[k]!,
         12,

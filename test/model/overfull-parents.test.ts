@@ -12,9 +12,9 @@ const fitOf = (width: string) =>
     resolved(`couplet: 1
 title: More than there is, invented
 multiplets:
-  d: { irrep: 10, spinParity: 3/2+, members: [{ name: Delta(1700), place: Delta, mass: 1700 MeV, width: 300 MeV }, { name: Sigma(1850), place: Sigma, mass: 1850 MeV, width: ${width} }] }
+  d: { irrep: 10, spinParity: 3/2+, members: [{ name: Delta(1705), place: Delta, mass: 1700 MeV, width: 300 MeV }, { name: Sigma(1850), place: Sigma, mass: 1850 MeV, width: ${width} }] }
 decays: [{ from: d, to: [baryon-octet, pseudoscalar-octet], L: 1, model: a }]
-measurements: [{ width: Delta(1700) -> N pi, value: 150 +- 10 MeV, source: invented }]
+measurements: [{ width: Delta(1705) -> N pi, value: 150 +- 10 MeV, source: invented }]
 `),
   );
 

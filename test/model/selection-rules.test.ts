@@ -67,6 +67,42 @@ measurements:
   expect(Math.abs(amplitude("R+ -> p eta'(958)")) / unit).toBeCloseTo(0.34641016151377535 * Math.SQRT2, 9);
 });
 
+test.each([
+  ["1--", "L: 1"],
+  ["1+-", "L: 0"],
+])(
+  "the quark-line rule for a %s octet to V and P: no phi pi at ideal mixing, whoever else is declared",
+  (jp, wave) => {
+    const lines = (from: string, more: string, family: string) => `multiplets:
+  x: { irrep: 8, spinParity: ${jp}, members: [{ name: X, place: rho, mass: 1700 MeV, width: sum }] }
+  y: { irrep: 1, spinParity: ${jp}, members: [{ name: Y, place: eta, mass: 1700 MeV, width: sum }] }
+mixing:
+  - bare: [vector-octet/phi, vector-singlet/omega]
+    states: [{ name: phi(1020) }, { name: omega(782) }]
+    convention: meson
+    angle: ${(Math.atan(Math.SQRT1_2) * 180) / Math.PI} deg
+decays:
+  - { name: vv, from: ${from}, to: ${VP}, ${wave}, model: a }
+  - { name: vw, from: ${from}, to: [vector-singlet, pseudoscalar-octet], ${wave}, model: a }
+${more}quarkLine: [[${family}]]
+measurements: [{ width: X -> omega(782) pi, value: 60 +- 1 MeV, source: invented }]
+`;
+    const singlet = `  - { name: wv, from: y, to: ${VP}, ${wave}, model: a }\n`;
+    for (const text of [lines("x", "", "vv, vw"), lines("x", singlet, "vv, vw, wv")]) {
+      const model = modelOf(text);
+      expect(model.couplingCount).toBe(1);
+      const evaluation = new Evaluation(
+        evaluator(model),
+        model.parameters.map(({ start }) => start),
+      );
+      const widthOf = (name: string) =>
+        evaluation.width(model.channels.findIndex(({ isospinChannel }) => isospinChannel === name)).value;
+      expect(widthOf("X -> omega(782) pi")).toBeGreaterThan(1e-3);
+      expect(widthOf("X -> phi(1020) pi")).toBeLessThan(1e-20);
+    }
+  },
+);
+
 test("a state does not decay into itself, for all that its width would allow; its coupling stays", () => {
   const model = modelOf(`multiplets:
   v: { irrep: 8, spinParity: 1--, members: [{ name: rho(770), place: rho }, { name: K*(892), place: K* }] }

@@ -20,11 +20,11 @@ const texts = (text: string) => warnings(text).map((warning) => warning.text);
 
 /** Two baryons that decay into the ground states, with what a case needs. */
 const study = ({
-  members = "{ name: N(1700), place: N, mass: 1700 MeV, width: 150 MeV }",
+  members = "{ name: N(1705), place: N, mass: 1700 MeV, width: 150 MeV }",
   spinParity = "5/2-",
   L = 2,
   more = "",
-  measurements = "{ width: N(1700) -> N pi, value: 60 +- 6 MeV, source: invented }",
+  measurements = "{ width: N(1705) -> N pi, value: 60 +- 6 MeV, source: invented }",
   to = "baryon-octet, pseudoscalar-octet",
   mixing = "",
   masses = "charge",
@@ -90,7 +90,7 @@ describe("warnings of a study as a whole", () => {
     expect(validityWarnings(fit, 0)[0]!.text).toBe(said(first, second));
     expect(validityWarnings(fit, 1)[0]!.text).toBe(said(second, first));
     expect(validityWarnings(fit, 0)[1]!.text).toBe(
-      "alpha_F rests on a single ratio, of N(1700) -> N pi and Sigma(1800) -> N Kbar: every such ratio has two solutions, and one wrong measurement moves alpha_F as far as it likes.",
+      "alpha_F rests on a single ratio, of N(1705) -> N pi and Sigma(1800) -> N Kbar: every such ratio has two solutions, and one wrong measurement moves alpha_F as far as it likes.",
     );
     const three = texts(plantedStudy(BASE));
     expect(three.filter((text) => /single ratio|do not choose/.test(text))).toEqual([]);
@@ -219,14 +219,14 @@ measurements:
 
   test("phases of residues with errors enter as signs, those of elastic ones not at all", () => {
     const residue = (exit: string, phase: string) =>
-      `{ residue: [N(1700) -> N pi, N(1700) -> ${exit}], value: 30 +- 3 MeV, ${phase}source: invented }`;
+      `{ residue: [N(1705) -> N pi, N(1705) -> ${exit}], value: 30 +- 3 MeV, ${phase}source: invented }`;
     const said = (exit: string, phase: string) =>
       texts(study({ measurements: residue(exit, phase) })).filter((text) => text.startsWith("phases"));
     expect(said("N eta", "phase: -20 +- 5 deg, ")).toEqual([
-      "phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: N(1700) -> N pi and N(1700) -> N eta.",
+      "phases of residues enter as signs alone, + up to 90 deg and - beyond, since couplings are real here; their values and errors are not fitted: N(1705) -> N pi and N(1705) -> N eta.",
     ]);
     expect(said("N pi", "phase: -20 +- 5 deg, ")).toEqual([
-      "phases of elastic residues are not used: the amplitude is a square here, and the phase that of the background: N(1700) -> N pi and N(1700) -> N pi. Where it is large, take the couplings as rough.",
+      "phases of elastic residues are not used: the amplitude is a square here, and the phase that of the background: N(1705) -> N pi and N(1705) -> N pi. Where it is large, take the couplings as rough.",
     ]);
     for (const exit of ["N eta", "N pi"])
       for (const phase of ["", "phase: 0 deg, "]) expect(said(exit, phase)).toEqual([]);
@@ -261,15 +261,15 @@ describe("warnings of parents, once an isospin multiplet", () => {
   });
 
   test("an S wave that opens within the width, and a fitted channel of any wave", () => {
-    const members = "{ name: N(1535), place: N, mass: 1530 MeV, width: 150 MeV }";
-    const measurements = "{ fraction: N(1535) -> N pi, value: 0.45 +- 0.05, source: invented }";
+    const members = "{ name: N(1530), place: N, mass: 1530 MeV, width: 150 MeV }";
+    const measurements = "{ fraction: N(1530) -> N pi, value: 0.45 +- 0.05, source: invented }";
     expect(texts(study({ members, measurements, spinParity: "1/2-", L: 0 }))).toContain(
-      "N(1535): N eta opens 43 MeV below its mass, within its width of 150 MeV; Lambda K opens 81 MeV above its mass, within its width of 150 MeV. Breit-Wigner widths and fractions depend on their definition there: prefer pole residues (`residue`).",
+      "N(1530): N eta opens 43 MeV below its mass, within its width of 150 MeV; Lambda K opens 81 MeV above its mass, within its width of 150 MeV. Breit-Wigner widths and fractions depend on their definition there: prefer pole residues (`residue`).",
     );
     const eta = measurements.replace("N pi", "N eta");
     const D = { members, spinParity: "3/2-", L: 2 };
     expect(texts(study({ ...D, measurements: eta }))).toContain(
-      "N(1535): N eta opens 43 MeV below its mass, within its width of 150 MeV. Breit-Wigner widths and fractions depend on their definition there: prefer pole residues (`residue`).",
+      "N(1530): N eta opens 43 MeV below its mass, within its width of 150 MeV. Breit-Wigner widths and fractions depend on their definition there: prefer pole residues (`residue`).",
     );
     expect(texts(study({ ...D, measurements })).filter((text) => text.includes("opens"))).toEqual([]);
   });
