@@ -1,11 +1,32 @@
 import { InputError, InternalError } from "./errors.js";
 
-/** Prints a value for an error message: short, quoted where it is text. */
-function shown(value: unknown): string {
-  if (typeof value === "string") return JSON.stringify(value);
-  if (typeof value === "bigint") return String(value);
-  if (typeof value === "object" && value !== null) return JSON.stringify(value);
-  return String(value);
+/** Longest value a message shows, in characters. */
+const MAX_SHOWN = 60;
+
+/** A value for an error message: as JSON, quoted where it is text, cut behind 60 characters; `nothing` for undefined. */
+export function shown(value: unknown): string {
+  if (value === undefined) return "nothing";
+  let text = "";
+  for (const piece of piecesOf(value)) {
+    text += piece;
+    if (text.length > MAX_SHOWN) return `${text.slice(0, MAX_SHOWN)}...`;
+  }
+  return text;
+}
+
+/** A value as JSON piece by piece: what contains itself, or repeats itself without end, is to be cut like the rest. */
+function* piecesOf(value: unknown): Generator<string> {
+  if (typeof value === "string") yield JSON.stringify(value);
+  else if (typeof value !== "object" || value === null) yield String(value);
+  else {
+    const isList = Array.isArray(value);
+    yield isList ? "[" : "{";
+    for (const [k, key] of Object.keys(value).entries()) {
+      yield `${k === 0 ? "" : ","}${isList ? "" : `${JSON.stringify(key)}:`}`;
+      yield* piecesOf((value as Readonly<Record<string, unknown>>)[key]);
+    }
+    yield isList ? "]" : "}";
+  }
 }
 
 /**

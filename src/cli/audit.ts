@@ -6,6 +6,7 @@ import { plannedChecks } from "../audit/plan.js";
 import storedBaseline from "../published/baseline.json";
 import { producerName } from "../version.js";
 import { integerOption } from "./integer-option.js";
+import { print, printJson } from "./print.js";
 import { progressBar } from "./progress.js";
 
 /** What `couplet audit` was asked for. */
@@ -37,7 +38,8 @@ export function runAudit(options: AuditOptions): void {
   } finally {
     bar.end();
   }
-  process.stdout.write(options.json ? `${JSON.stringify(asJson(checks), null, 2)}\n` : describe(checks));
+  if (options.json) printJson(asJson(checks));
+  else print(describe(checks));
   if (!allHold(checks)) process.exitCode = 1;
 }
 

@@ -8,8 +8,9 @@ import {
   type Thresholds,
 } from "../tables/compare.js";
 import { fieldOf, type Leaf } from "../tables/compare-leaves.js";
+import { readInput } from "../tables/read-input.js";
 import { significant } from "../tables/rounding.js";
-import { readInput } from "./read-input.js";
+import { print, printJson } from "./print.js";
 import { textTable } from "./text-table.js";
 
 /** Options of `couplet compare` as the command line gives them. */
@@ -24,11 +25,8 @@ export function runCompare(first: string, second: string, options: CompareOption
   const thresholds = thresholdsOf(options);
   const [a, b] = [first, second].map((file) => ({ file, bytes: readInput(file) }));
   const comparison = compareTables(a!, b!, thresholds);
-  process.stdout.write(
-    options.json
-      ? `${JSON.stringify({ first, second, thresholds, ...comparison }, null, 2)}\n`
-      : describeComparison(comparison, first, second, thresholds),
-  );
+  if (options.json) printJson({ first, second, thresholds, ...comparison });
+  else print(describeComparison(comparison, first, second, thresholds));
   if (comparison.counted > 0) process.exitCode = 1;
 }
 

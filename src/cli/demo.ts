@@ -1,13 +1,17 @@
+import { existsSync } from "node:fs";
 import { join } from "node:path";
+import { InputError } from "../errors.js";
 import { LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
 import { CAUTIONS } from "../tables/cautions.js";
 import { decodeDecays } from "../tables/decode-decays.js";
+import { readInput } from "../tables/read-input.js";
 import { withError } from "../tables/rounding.js";
 import { writeWhole } from "../tables/whole-file.js";
 import { DEMO_STUDY } from "./demo-study.js";
 import { describePulls } from "./fit.js";
 import { degreesText } from "./labels.js";
-import { readInput } from "./read-input.js";
+import { announceUnfinished } from "./own-thread.js";
+import { print } from "./print.js";
 import { fitStudyFile } from "./run-study.js";
 import { describeParent, ERROR_WORDS } from "./show.js";
 import { writeTables } from "./tables.js";
@@ -18,14 +22,14 @@ const SHOWN = "Sigma(1731)0";
 /** `couplet demo`: writes an invented study, runs it to a decay table, and says what to look at. */
 export function runDemo({ out }: { out: string }): void {
   const study = join(out, "larkfield.yaml");
-  writeWhole(study, DEMO_STUDY);
+  writeStudy(study, out);
   const fit = fitStudyFile(study);
   const [written] = writeTables(fit, study, out);
   const { file, parents, rows, bytes, couplings } = written!;
   const tables = decodeDecays(readInput(file), file);
   const shown = tables.parents.find(({ hadron }) => hadron?.name === SHOWN)!;
   const [best, ...others] = fit.minima as [StudyMinimum, ...StudyMinimum[]];
-  process.stdout.write(
+  print(
     [
       `${fit.model.study.title}\nEvery number in it is invented.\n`,
       describePulls(best),
@@ -41,6 +45,16 @@ export function runDemo({ out }: { out: string }): void {
       "(in this folder, `npx couplet` runs the command)\n",
     ].join(""),
   );
+}
+
+/** Writes the demo's study where there is none; one that is there stays, and must be the demo's for the demo to go on. */
+function writeStudy(study: string, out: string): void {
+  if (!existsSync(study)) writeWhole(study, DEMO_STUDY, announceUnfinished);
+  else if (readInput(study).toString() !== DEMO_STUDY) {
+    throw new InputError(
+      `${study}: expected the study of the demo or no file yet, got one that differs. It stays as it is; run it with \`couplet tables ${study} -o ${out}\`, or choose another folder with --out.`,
+    );
+  }
 }
 
 function otherMinimum(best: StudyMinimum, minimum: StudyMinimum): string {

@@ -75,7 +75,7 @@ const KINEMATICS = [
 ];
 const FLAGS: Readonly<Partial<Record<v1.Flag, string>>> = {
   [v1.Flag.FLAG_ISOSPIN_SPLIT]:
-    "isospin split: the measurement is of several charge states together; isospin and phase space divide it",
+    "isospin split: the measurement is of several charge states together, or of another one; isospin and phase space divide it",
   [v1.Flag.FLAG_UNDECAYABLE]: "undecayable: no daughters are named, a generator cannot decay this row",
   [v1.Flag.FLAG_NEAR_THRESHOLD]:
     "near threshold: the momentum is below 100 MeV or the threshold within one width; phase space rules the number",

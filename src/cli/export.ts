@@ -8,9 +8,12 @@ import { exportCouplingsLatex } from "../tables/export-couplings-latex.js";
 import { exportCouplingsCsv, exportDecaysCsv } from "../tables/export-csv.js";
 import { exportDecaysLatex } from "../tables/export-latex.js";
 import { parseOwnNumbers } from "../tables/export-numbers.js";
+import { readInput } from "../tables/read-input.js";
 import { checkSeal, type TableKind } from "../tables/sealed-bytes.js";
 import { writeWhole } from "../tables/whole-file.js";
-import { readInput } from "./read-input.js";
+import { requireOutputPlaces } from "./output-place.js";
+import { announceUnfinished } from "./own-thread.js";
+import { print } from "./print.js";
 
 /** Formats `couplet export` writes. */
 export const FORMATS = ["csv", "latex", "accord", "json"] as const;
@@ -30,12 +33,13 @@ export function runExport(path: string, options: ExportOptions): void {
   if (format !== "accord" && (options.number !== undefined || options.rescale)) {
     throw new InputError("--number and --rescale: expected with --to accord only. Leave them out.");
   }
+  if (options.out !== undefined) requireOutputPlaces([options.out], [path]);
   const bytes = readInput(path);
   const text = exported(format, checkSeal(bytes, path), bytes, path, options);
   if (options.out === undefined) process.stdout.write(text);
   else {
-    writeWhole(options.out, text);
-    process.stdout.write(`wrote ${options.out} (${Buffer.byteLength(text)} bytes)\n`);
+    writeWhole(options.out, text, announceUnfinished);
+    print(`wrote ${options.out} (${Buffer.byteLength(text)} bytes)\n`);
   }
 }
 

@@ -14,7 +14,9 @@ import { jsonPieces } from "../tables/json-pieces.js";
 import { sealedPieces } from "../tables/sealed-bytes.js";
 import { writeWholePieces } from "../tables/whole-file.js";
 import { copyName, fractionText, placeName, placeText } from "./labels.js";
+import { requireOutputPlaces } from "./output-place.js";
 import { announceUnfinished } from "./own-thread.js";
+import { print } from "./print.js";
 import { type Progress, type ProgressBar, progressBar } from "./progress.js";
 import { textTable } from "./text-table.js";
 
@@ -35,6 +37,7 @@ export async function runFactors(
   const { json, out } = options;
   const states = options.states === true;
   if (out === "") refuse("couplet factors: --out", "the name of a file", out);
+  if (out !== undefined) requireOutputPlaces([out]);
   const bar = progressBar("factors", out !== undefined && !json);
   try {
     const table = requestedTable(leftText, rightText, options, bar.report);
@@ -42,13 +45,15 @@ export async function runFactors(
       const pieces = sealedPieces(counted(encodedPieces(table, { states }), table, bar));
       const length = writeWholePieces(out, pieces, announceUnfinished);
       bar.end();
-      if (!json) process.stdout.write(`wrote ${out} (${length} bytes)\n`);
+      if (!json) print(`wrote ${out} (${length} bytes)\n`);
     }
     if (json) {
-      await print(counted(jsonPieces("couplet.v1.FactorTable", factorPieces(table, { states })), table, bar));
+      await printPieces(
+        counted(jsonPieces("couplet.v1.FactorTable", factorPieces(table, { states })), table, bar),
+      );
     } else if (out === undefined) {
       bar.end();
-      await print(states ? describeStates(table) : describeFactors(table));
+      await printPieces(states ? describeStates(table) : describeFactors(table));
     }
   } finally {
     bar.end();
@@ -80,7 +85,7 @@ function* counted<T>(pieces: Iterable<T>, table: IsoscalarTable, { report }: Pro
 }
 
 /** Writes text piece by piece, as fast as the reader takes it. */
-async function print(pieces: Iterable<string>): Promise<void> {
+async function printPieces(pieces: Iterable<string>): Promise<void> {
   for (const piece of pieces) if (!process.stdout.write(piece)) await once(process.stdout, "drain");
 }
 

@@ -19,6 +19,7 @@ import {
   uncertaintiesOf,
 } from "./fit-uncertainty.js";
 import { degreesText } from "./labels.js";
+import { print, printJson } from "./print.js";
 import { fitStudyFile } from "./run-study.js";
 import { textTable } from "./text-table.js";
 
@@ -32,11 +33,8 @@ export async function runFit(path: string, options: FitOptions): Promise<void> {
   toyOptions(options);
   const fit = fitStudyFile(path);
   const further = await uncertaintiesOf(fit, options);
-  process.stdout.write(
-    options.json
-      ? `${JSON.stringify({ ...fitJson(fit), ...uncertaintiesJson(fit, further) }, null, 2)}\n`
-      : describeFit(fit) + describeUncertainties(fit, further),
-  );
+  if (options.json) printJson({ ...fitJson(fit), ...uncertaintiesJson(fit, further) });
+  else print(describeFit(fit) + describeUncertainties(fit, further));
 }
 
 /** A fit as plain data for programs; minima best first. */

@@ -5,10 +5,12 @@ import { CoupletError } from "../errors.js";
 import { packageVersion } from "../version.js";
 import type { AuditOptions } from "./audit.js";
 import type { CompareOptions } from "./compare.js";
+import { errorText } from "./error-text.js";
 import type { ExportOptions } from "./export.js";
 import type { FactorsOptions } from "./factors.js";
 import type { FitOptions } from "./fit.js";
 import { needsOwnThread, runInOwnThread } from "./own-thread.js";
+import { printError } from "./print.js";
 import type { ProductOptions } from "./product.js";
 import type { ServeOptions } from "./serve.js";
 import type { ShowOptions } from "./show.js";
@@ -168,17 +170,19 @@ An irrep is written 8, 10, 10bar, 27 or p,q. Exit codes: 0 done; 1 a comparison 
 function report(error: unknown): number {
   if (error instanceof CommanderError) return error.exitCode === 0 ? 0 : 2;
   if (error instanceof CoupletError) {
-    process.stderr.write(`couplet: ${error.message}\n`);
+    printError(`${errorText(error.message)}\n`);
     return error.exitCode;
   }
   process.stderr.write(`couplet: this is a bug in Couplet; please report it with the command you ran.\n`);
-  process.stderr.write(`${error instanceof Error ? (error.stack ?? error.message) : String(error)}\n`);
+  printError(`${error instanceof Error ? (error.stack ?? error.message) : String(error)}\n`);
   return 70;
 }
 
 function run(): void {
   if (isMainThread) {
     process.on("SIGINT", () => process.exit(130));
+    // With nobody to tell, the exit code still says how it ended.
+    process.stderr.on("error", () => {});
     process.stdout.on("error", (error: NodeJS.ErrnoException) => {
       // A reader such as `head` may close the pipe early; that is no error.
       if (error.code === "EPIPE") process.exit(0);

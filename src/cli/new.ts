@@ -4,6 +4,7 @@ import { InputError } from "../errors.js";
 import { refuse } from "../require.js";
 import { studyJsonSchema } from "../study/json-schema.js";
 import { writeWhole } from "../tables/whole-file.js";
+import { print } from "./print.js";
 import { starterStudy } from "./starter-study.js";
 
 /**
@@ -25,13 +26,13 @@ export function runNew(name: string, options: { schema?: true }): void {
   const schemaText = `${JSON.stringify(studyJsonSchema(), null, 2)}\n`;
   if (options.schema) {
     writeWhole(schema, schemaText);
-    process.stdout.write(`wrote ${schema}, a JSON Schema of study files for editors\n`);
+    print(`wrote ${schema}, a JSON Schema of study files for editors\n`);
     return;
   }
   for (const file of [study, schema]) requireAbsent(file);
   writeWhole(schema, schemaText);
   writeWhole(study, starterStudy(title, basename(schema)));
-  process.stdout.write(
+  print(
     `wrote ${study}, a study to make your own: every number in it is invented\n` +
       `wrote ${schema}, from which editors complete and check its keys\n` +
       `\nTry next:\n  couplet fit ${study}\n  couplet tables ${study} -o ${title}-tables\n`,

@@ -6,6 +6,7 @@ import { canonicalJson } from "../tables/canonical-json.js";
 import { exactMessage } from "../tables/exact-message.js";
 import { COLOURS, constituents, describeContent, FLAVOURS, type Letters } from "./content.js";
 import { copyName } from "./labels.js";
+import { print, printJson } from "./print.js";
 import { textTable } from "./text-table.js";
 
 /** What `couplet product` was asked for. */
@@ -29,13 +30,13 @@ export function runProduct(texts: readonly string[], options: ProductOptions): v
   const letters = options.colour ? COLOURS : FLAVOURS;
   if (options.json) {
     const message = productMessage(irreps, paths, contents, letters);
-    process.stdout.write(`${JSON.stringify(canonicalJson("couplet.v1.Product", message), null, 2)}\n`);
+    printJson(canonicalJson("couplet.v1.Product", message));
     return;
   }
-  process.stdout.write(describe(irreps, paths, into));
+  print(describe(irreps, paths, into));
   if (options.content) {
     const byPath = ({ path }: PathContent) => pathText(irreps, path);
-    process.stdout.write(describeContent(contents, irreps, letters, byPath));
+    print(describeContent(contents, irreps, letters, byPath));
   }
 }
 

@@ -5,8 +5,8 @@ import { resolveStudy } from "../model/resolve-study.js";
 import { listProblems } from "../study/list-problems.js";
 import { draftStudy } from "../study/read-study.js";
 import { MAX_STUDY_BYTES } from "../study/syntax.js";
+import { readInput } from "../tables/read-input.js";
 import { progressBar } from "./progress.js";
-import { readInput } from "./read-input.js";
 
 /**
  * The study in a file, resolved.
@@ -14,7 +14,7 @@ import { readInput } from "./read-input.js";
  * @throws InputError with everything that is wrong in the file, from syntax to particle names
  */
 export function resolveStudyFile(path: string): Model {
-  const { study, problems } = draftStudy(readInput(path, MAX_STUDY_BYTES), path);
+  const { study, problems } = draftStudy(readInput(path, { maxBytes: MAX_STUDY_BYTES, what: "study" }), path);
   if (study === undefined) throw new InputError(listProblems(problems));
   return resolveStudy(study, problems);
 }

@@ -63,10 +63,12 @@ class Signals {
   #stopped: () => void = () => {};
 
   constructor(private readonly drainMs: number) {
-    // The command line's own handler leaves at once; here calls may run.
-    process.removeAllListeners("SIGINT");
-    process.on("SIGTERM", () => this.#stop(0));
+    // The command line's own handler leaves at once; here calls may run. A signal may wait for it since the modules were
+    // loaded, and would be lost if for a moment nobody listened.
+    const others = process.listeners("SIGINT");
     process.on("SIGINT", () => this.#stop(130));
+    for (const other of others) process.off("SIGINT", other);
+    process.on("SIGTERM", () => this.#stop(0));
     process.on("SIGHUP", () => this.#sidecar?.replaceTables());
   }
 

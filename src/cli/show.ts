@@ -5,13 +5,14 @@ import { canonicalJson } from "../tables/canonical-json.js";
 import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
 import { decodeFactors } from "../tables/decode-factors.js";
+import { readInput } from "../tables/read-input.js";
 import { significant, withError } from "../tables/rounding.js";
 import { checkSeal, digestOf, type TableKind } from "../tables/sealed-bytes.js";
 import { describeCouplings } from "./describe-couplings.js";
 import { describeRow, rowNamed } from "./describe-row.js";
 import { counted, degreesText } from "./labels.js";
 import { totalWidthText, totalWords, withErrors } from "./parent-words.js";
-import { readInput } from "./read-input.js";
+import { print, printJson } from "./print.js";
 import { textTable } from "./text-table.js";
 
 import v1 = couplet.v1;
@@ -29,30 +30,22 @@ export function runShow(path: string, options: ShowOptions): void {
   const kind = checkSeal(bytes, path);
   if (options.row !== undefined) {
     const found = rowNamed(decodeDecays(bytes, path), options.row, path);
-    process.stdout.write(
-      options.json
-        ? `${JSON.stringify(canonicalJson("couplet.v1.Row", found.row), null, 2)}\n`
-        : describeRow(found),
-    );
+    if (options.json) printJson(canonicalJson("couplet.v1.Row", found.row));
+    else print(describeRow(found));
   } else if (options.parent !== undefined) {
     const tables = decodeDecays(bytes, path);
     const parent = parentNamed(tables, options.parent, path);
-    process.stdout.write(
-      options.json
-        ? `${JSON.stringify(canonicalJson("couplet.v1.Parent", parent), null, 2)}\n`
-        : describeHeader(tables, path, digestOf(bytes)) + describeParent(parent),
-    );
+    if (options.json) printJson(canonicalJson("couplet.v1.Parent", parent));
+    else print(describeHeader(tables, path, digestOf(bytes)) + describeParent(parent));
   } else if (options.json) {
-    process.stdout.write(`${JSON.stringify(canonicalJson(kind, decoded(kind, bytes, path)), null, 2)}\n`);
+    printJson(canonicalJson(kind, decoded(kind, bytes, path)));
   } else if (kind === "couplet.v1.DecayTables") {
     const tables = decodeDecays(bytes, path);
-    process.stdout.write(
-      describeHeader(tables, path, digestOf(bytes)) + tables.parents.map(describeParent).join(""),
-    );
+    print(describeHeader(tables, path, digestOf(bytes)) + tables.parents.map(describeParent).join(""));
   } else if (kind === "couplet.v1.CouplingTables") {
     const tables = decodeCouplings(bytes, path);
-    process.stdout.write(`${describeCouplings(tables, path)}sha256 ${digestOf(bytes)}\n`);
-  } else process.stdout.write(describeFactorFile(decodeFactors(bytes, path), path, digestOf(bytes)));
+    print(`${describeCouplings(tables, path)}sha256 ${digestOf(bytes)}\n`);
+  } else print(describeFactorFile(decodeFactors(bytes, path), path, digestOf(bytes)));
 }
 
 function decoded(kind: TableKind, bytes: Uint8Array, path: string): object {
@@ -176,20 +169,29 @@ export function describeParent(parent: v1.Parent): string {
       closed
         ? "closed"
         : withErrors(percent(fraction?.value), percent(fraction?.plus), percent(fraction?.minus)),
-      integratedText(row),
       parts
         .flatMap(([name, part]) => (closed || !part ? [] : [`${name} ${significant(percent(part), 2)}`]))
         .join("  "),
+      integratedText(row),
       significant(withoutRoundingZero(fraction?.value ?? 0) === 0 ? 0 : (row.width?.value ?? 0), 4),
       String(row.partsPerBillion),
       ORIGIN_WORDS[row.origin ?? 0]!,
       (row.flags ?? []).map((flag) => FLAG_WORDS[flag]).join(", "),
     ];
   });
-  const titles = ["channel", "percent", "over line shape", "", "MeV", "parts per 10^9", "origin", ""];
+  const titles = [
+    "channel",
+    "percent",
+    "its other errors",
+    "over line shape",
+    "MeV",
+    "parts per 10^9",
+    "origin",
+    "",
+  ];
   return (
     head +
-    textTable([titles, ...rows], { indent: 2, right: [1, 2, 4, 5] }) +
+    textTable([titles, ...rows], { indent: 2, right: [1, 3, 4, 5] }) +
     (parent.warnings ?? []).map((w) => `  WARNING: ${w}\n`).join("")
   );
 }

@@ -10,7 +10,9 @@ import { digestOf } from "../tables/sealed-bytes.js";
 import { writeAllWhole } from "../tables/whole-file.js";
 import { describeMinimum, describePulls, describeWarnings } from "./fit.js";
 import { counted } from "./labels.js";
+import { requireOutputPlaces } from "./output-place.js";
 import { announceUnfinished } from "./own-thread.js";
+import { print, printJson } from "./print.js";
 import { fitStudyFile } from "./run-study.js";
 
 /** A decay table file that was written. */
@@ -36,8 +38,8 @@ export interface Written {
 export function runTables(path: string, options: { out: string; json?: true }): void {
   const fit = fitStudyFile(path);
   const written = writeTables(fit, path, options.out);
-  if (options.json) process.stdout.write(`${JSON.stringify({ written }, null, 2)}\n`);
-  else process.stdout.write(describeWritten(fit, written));
+  if (options.json) printJson({ written });
+  else print(describeWritten(fit, written));
 }
 
 /**
@@ -54,10 +56,12 @@ export function writeTables(fit: Fit, studyPath: string, folder: string): Writte
     const couplingFile = { path: `${stem}${suffix}.couplings.pb`, bytes: encodeCouplings(couplings) };
     return { decays, couplings, decayFile, couplingFile };
   });
-  writeAllWhole(
-    tables.flatMap(({ decayFile, couplingFile }) => [decayFile, couplingFile]),
-    announceUnfinished,
+  const files = tables.flatMap(({ decayFile, couplingFile }) => [decayFile, couplingFile]);
+  requireOutputPlaces(
+    files.map((file) => file.path),
+    [studyPath],
   );
+  writeAllWhole(files, announceUnfinished);
   return tables.map(({ decays, couplings, decayFile, couplingFile }) => ({
     ...described(decayFile),
     minimum: decays.minimum,

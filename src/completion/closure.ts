@@ -16,10 +16,12 @@ const FLIES_MM = 1;
  * Every daughter that is no parent of the tables, in the order of the rows, with what becomes of it.
  *
  * Together with the parents they are all hadrons that the rows name. Unstable ones carry the line shape they were averaged
- * over. What decays at once is left open: a generator must know its decays.
+ * over; the antiparticle of a parent, which decays as that one does, with the parent's. What else decays at once is left
+ * open: a generator must know its decays.
  */
 export function closureOf(parents: readonly ParentTable[], model: Model, shapes: DaughterShapes): External[] {
-  const known = new Set(parents.map(({ parent }) => parent.hadron.name));
+  const known = new Map(parents.map(({ parent, lineShape }) => [parent.hadron.name, lineShape]));
+  const implied = model.study.tables.antiparticles === "implied";
   const shaped = new Map<string, LineShape>();
   for (const { waves } of model.channels) {
     for (const placed of waves.flatMap(({ kinematics }) => kinematics.legs.slice(1))) {
@@ -30,6 +32,15 @@ export function closureOf(parents: readonly ParentTable[], model: Model, shapes:
   const externals = new Map<string, External>();
   for (const hadron of parents.flatMap(({ rows }) => rows.flatMap(({ daughters }) => daughters))) {
     if (known.has(hadron.name) || externals.has(hadron.name)) continue;
+    if (implied && hadron.antiparticle !== null && known.has(hadron.antiparticle)) {
+      const lineShape = known.get(hadron.antiparticle);
+      externals.set(hadron.name, {
+        hadron,
+        life: "conjugate",
+        ...(lineShape === undefined ? {} : { lineShape }),
+      });
+      continue;
+    }
     const shape = shaped.get(hadron.name) ?? shaped.get(hadron.antiparticle ?? "");
     externals.set(hadron.name, {
       hadron,

@@ -7,6 +7,7 @@ import { alternativesOf, withErrorParts } from "./alternatives.js";
 import { withAntiparticles } from "./antiparticle-tables.js";
 import { checkRows } from "./check-rows.js";
 import { closureOf } from "./closure.js";
+import { commonNormalisations } from "./common-normalisations.js";
 import { entriesOf, measuredWidths } from "./entries.js";
 import { withShortAndLongKaons } from "./neutral-kaons.js";
 import { parentTable } from "./parent-table.js";
@@ -32,11 +33,12 @@ export function complete(fit: Fit, minimum: number): Tables {
   const predictions = predict(fit, minimum);
   const measured = measuredWidths(predictions);
   const values = [...measured.observables, ...model.modeValues];
+  const normalisations = commonNormalisations(model, values);
   const alternatives = alternativesOf(fit, minimum);
   const { replicas: count, seed } = policies;
   const replicas = new ReplicaRows(
     predictions,
-    count === 0 ? [] : worlds({ predictions, values, alternatives, count, seed }),
+    count === 0 ? [] : worlds({ predictions, values, normalisations, alternatives, count, seed }),
   );
   const warnings = validityWarnings(fit, minimum);
   const shapes = new DaughterShapes();
@@ -49,6 +51,7 @@ export function complete(fit: Fit, minimum: number): Tables {
     const completed = completeParent(parent, entries, {
       covariance: predictions.minimum.covariance,
       values,
+      normalisations,
       conflicts: policies.conflicts,
     });
     if ("conflict" in completed) problems.push(`${file}: ${completed.conflict}`);

@@ -1,7 +1,8 @@
 import { InputError } from "../errors.js";
-import type { Channel, Model, Observable, Parent, Quantum } from "../model/model.js";
+import type { Model, Observable, Parent, Quantum } from "../model/model.js";
 import { measuredModes } from "./mode-rows.js";
 import type { Predictions } from "./predictions.js";
+import { chargeWeight, withRelatedCharges } from "./related-charges.js";
 import type { Entry } from "./total-width.js";
 
 /** The measurements that settle rows, and what they settle. */
@@ -10,16 +11,18 @@ export interface Measured {
   readonly byChannel: ReadonlyMap<number, MeasuredShare>;
 }
 
-interface MeasuredShare {
+/** What a measurement says of a channel. */
+export interface MeasuredShare {
   /** Index into `Measured.observables`. */
   readonly observable: number;
-  /** Part of the measured value that belongs to the channel. */
+  /** The channel's number over the measured value: its part of a sum, or by SU(2) from another charge state. */
   readonly share: number;
-  /** True if the measurement is of more than this one channel of the parent. */
+  /** True if the measurement is not of this one channel of the parent alone. */
   readonly split: boolean;
 }
 
-type Settling = Observable & { readonly quantum: Extract<Quantum, { kind: "width" | "fraction" }> };
+/** A measurement that settles rows. */
+export type Settling = Observable & { readonly quantum: Extract<Quantum, { kind: "width" | "fraction" }> };
 
 /** Whether a measurement stands in the table: a width or fraction of whole channels that the study puts there. */
 function settlesRows(observable: Observable): observable is Settling {
@@ -32,11 +35,16 @@ function settlesRows(observable: Observable): observable is Settling {
 }
 
 /**
- * The channels that measurements settle, and how each measured sum splits into charge states.
+ * The channels that measurements settle, how each measured sum splits into charge states, and the charge states that are
+ * not measured and follow by SU(2) from one that is.
  *
  * @throws InputError where two measurements settle one channel, or one is of channels that are closed
  */
-export function measuredWidths({ fit: { model }, channels: predicted }: Predictions): Measured {
+export function measuredWidths(predictions: Predictions): Measured {
+  const {
+    fit: { model },
+    channels: predicted,
+  } = predictions;
   const observables = model.observables.filter(settlesRows);
   const byChannel = new Map<number, MeasuredShare>();
   for (const [index, observable] of observables.entries()) {
@@ -57,16 +65,7 @@ export function measuredWidths({ fit: { model }, channels: predicted }: Predicti
       }
     }
   }
-  return { observables, byChannel };
-}
-
-/** Relative width of a charge channel within its isospin channel: isospin times phase space, wave by wave. */
-function chargeWeight(channel: Channel, amplitudes: readonly number[]): number {
-  const known = amplitudes.some((amplitude) => amplitude !== 0);
-  return channel.waves.reduce((sum, wave, w) => {
-    const square = known ? amplitudes[w]! ** 2 : channel.isospinCoefficient ** 2;
-    return sum + channel.identicalFactor * square * wave.kinematicFactor;
-  }, 0);
+  return { observables, byChannel: withRelatedCharges(predictions, observables, byChannel) };
 }
 
 function refuseTwice(model: Model, channel: number, first: Observable, second: Observable): never {

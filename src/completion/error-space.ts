@@ -1,21 +1,31 @@
 import type { Parent, TableValue } from "../model/model.js";
+import type { CommonNormalisation } from "./common-normalisations.js";
 import type { Estimate } from "./tables.js";
 import type { Entry } from "./total-width.js";
 
-/** A gradient over model parameters, then measured values (by their index), then the total width. */
+/** A gradient over model parameters, then measured values (by their index), then the total width, then common normalisations. */
 export type Gradient = readonly number[];
+
+type MeasuredEntry = Exclude<Entry, { readonly kind: "predicted" }>;
 
 /** Linear error propagation for one parent: fitted parameters with their covariance, all else independent. */
 export class ErrorSpace {
   private readonly size: number;
+  /** Index of the total width. */
+  private readonly totalIndex: number;
+  private readonly normalisationNames: readonly string[];
 
   constructor(
     private readonly parent: Parent,
     private readonly covariance: readonly (readonly number[])[],
     private readonly values: readonly TableValue[],
     private readonly parameterCount: number,
+    /** Of each value. */
+    private readonly normalisations: readonly (CommonNormalisation | undefined)[],
   ) {
-    this.size = parameterCount + values.length + 1;
+    this.normalisationNames = [...new Set(normalisations.flatMap((common) => common?.name ?? []))];
+    this.totalIndex = parameterCount + values.length;
+    this.size = this.totalIndex + 1 + this.normalisationNames.length;
   }
 
   private zero(): number[] {
@@ -31,20 +41,28 @@ export class ErrorSpace {
   private width(entry: Entry): number[] {
     const gradient = this.zero();
     if (entry.kind === "predicted") for (const [k, d] of entry.gradient.entries()) gradient[k] = d;
-    else if (entry.kind === "measured width") gradient[this.parameterCount + entry.observable] = entry.share;
+    else if (entry.kind === "measured width") this.addMeasured(gradient, entry);
     return gradient;
   }
 
   private fixedFraction(entry: Entry): number[] {
     const gradient = this.zero();
-    if (entry.kind === "measured fraction") gradient[this.parameterCount + entry.observable] = entry.share;
+    if (entry.kind === "measured fraction") this.addMeasured(gradient, entry);
     return gradient;
+  }
+
+  /** A row's part of a measured value moves with the value, and with the normalisation it shares with others. */
+  private addMeasured(gradient: number[], entry: MeasuredEntry): void {
+    gradient[this.parameterCount + entry.observable] = entry.share;
+    const common = this.normalisations[entry.observable];
+    if (common === undefined) return;
+    gradient[this.totalIndex + 1 + this.normalisationNames.indexOf(common.name)] = entry.value * common.error;
   }
 
   /** Gradient of a total width that is given. */
   givenTotal(): Gradient {
     const gradient = this.zero();
-    gradient[this.size - 1] = 1;
+    gradient[this.totalIndex] = 1;
     return gradient;
   }
 
@@ -120,7 +138,12 @@ export class ErrorSpace {
 
   private sides(): { plus: number; minus: number }[] {
     const { plusMeV, minusMeV } = this.parent.total;
-    return [...this.values.map(({ measured }) => measured), { plus: plusMeV, minus: minusMeV }];
+    const normalisations = this.normalisationNames.map(() => ({ plus: 1, minus: 1 }));
+    return [
+      ...this.values.map(({ measured }) => measured),
+      { plus: plusMeV, minus: minusMeV },
+      ...normalisations,
+    ];
   }
 
   /** Standard deviation upwards (+1) or downwards (-1): measured values and the total may have different sides. */

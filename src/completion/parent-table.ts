@@ -2,6 +2,7 @@ import type { DaughterShapes } from "../model/daughter-shapes.js";
 import type { WaveKinematics } from "../model/kinematics.js";
 import type { Channel, Mode, Parent, TableValue } from "../model/model.js";
 import { widthModel } from "../widths/width-model.js";
+import { constrainedWarning } from "./constrained-warning.js";
 import { integratedEstimates, type OtherAnswer } from "./integrated-fractions.js";
 import { leftovers, measuredModes, modeFlags, modeRow, modeRunning } from "./mode-rows.js";
 import { partsPerBillion } from "./parts-per-billion.js";
@@ -115,7 +116,7 @@ export function parentTable(
             draw: running.draw,
           },
         }),
-    warnings: warningsOf(parent, completed),
+    warnings: [...warningsOf(parent, completed), ...constrainedWarning(parent, entries, completed)],
   };
 }
 

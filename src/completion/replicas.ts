@@ -3,6 +3,7 @@ import { normalNumbers } from "../fit/random-normal.js";
 import { Evaluation, type Evaluator, evaluator } from "../model/evaluate.js";
 import type { Parent, TableValue } from "../model/model.js";
 import { type Alternative, alternativeEntries } from "./alternatives.js";
+import type { CommonNormalisation } from "./common-normalisations.js";
 import { leadingWave, type Predictions } from "./predictions.js";
 import type { Replica } from "./tables.js";
 import type { Entry } from "./total-width.js";
@@ -23,6 +24,8 @@ export interface WorldOptions {
   readonly predictions: Predictions;
   /** Measured values that entries refer to. */
   readonly values: readonly TableValue[];
+  /** The normalisation that each of them shares with others. */
+  readonly normalisations: readonly (CommonNormalisation | undefined)[];
   readonly alternatives: readonly Alternative[];
   /** Draws of each kind. */
   readonly count: number;
@@ -35,7 +38,8 @@ export interface WorldOptions {
  * and each alternative once.
  *
  * Data: the parameters by the fit's covariance; every measured value of a row and every total width by its own errors, two
- * half-Gaussians where they have two sides; all independent of each other, as quoted errors have it. Breaking: in each
+ * half-Gaussians where they have two sides; all independent of each other, as quoted errors have it, but for the factor that
+ * values of one normalisation share. Breaking: in each
  * isospin channel and wave A -> A + breaking |g| z, z common to the charge states and to the charge conjugates.
  */
 export function worlds(options: WorldOptions): World[] {
@@ -57,7 +61,7 @@ function streamOf(seed: number, kind: 0 | 1, draw: number): () => number {
 }
 
 function dataWorld(
-  { predictions, values, seed }: WorldOptions,
+  { predictions, values, normalisations, seed }: WorldOptions,
   ready: Evaluator,
   root: Matrix,
   draw: number,
@@ -76,13 +80,22 @@ function dataWorld(
     const key = totalKey(parent);
     if (!totals.has(key)) totals.set(key, drawn(widthMeV, plusMeV, minusMeV, normal()));
   }
+  // Last, so that studies without them have the numbers they had.
+  const factors = new Map<string, number>();
+  for (const common of normalisations)
+    if (common !== undefined && !factors.has(common.name))
+      factors.set(common.name, Math.max(0, 1 + common.error * normal()));
+  const factorOf = (value: number) => factors.get(normalisations[value]?.name ?? "") ?? 1;
   return {
     replica: { ...ownReplica(predictions), part: "data", draw },
     entries: (parent, _, own) =>
       own.map((entry, k) =>
         entry.kind === "predicted"
           ? { ...entry, widthMeV: evaluation.width(parent.channels[k]!).value }
-          : { ...entry, value: measured[entry.observable]! * entry.share },
+          : {
+              ...entry,
+              value: measured[entry.observable]! * factorOf(entry.observable) * entry.share,
+            },
       ),
     totalMeV: (parent) => totals.get(totalKey(parent))!,
     closedSquare: (channel) => evaluation.amplitude(channel, leadingWaveOf(predictions, channel)).value ** 2,

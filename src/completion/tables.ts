@@ -137,8 +137,11 @@ export interface External {
   readonly life: Life;
 }
 
-/** What becomes of a hadron that is not decayed here: it is stable, it flies on before it decays, or it decays at once. */
-export type Life = "stable" | "flies" | "decays";
+/**
+ * What becomes of a hadron that has no rows: it is stable, it flies on before it decays, it decays at once; or as its
+ * antiparticle, which has rows.
+ */
+export type Life = "stable" | "flies" | "decays" | "conjugate";
 
 /** What one replica of the tables is. */
 export interface Replica {

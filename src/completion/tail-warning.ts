@@ -1,6 +1,6 @@
 import type { ParentTable } from "./tables.js";
 
-/** Integrated over nominal fraction from which on the tail of a line shape rules a row, and the least fractions that matter. */
+/** Integrated over nominal fraction from which on the tail of a line shape rules a row, and the least integrated ones that matter. */
 const TAIL_RATIO = 2;
 const LEAST_FRACTION = 1e-3;
 
@@ -9,8 +9,9 @@ export function withTailWarning(table: ParentTable): ParentTable {
   const { lineShape, parent, rows, warnings } = table;
   if (lineShape === undefined) return table;
   const ruled = rows.filter(
+    // What is closed at the nominal mass is all tail: the nominal fraction says nothing of how much it matters.
     ({ fraction, integrated }) =>
-      fraction.value > LEAST_FRACTION && (integrated?.value ?? 0) > TAIL_RATIO * fraction.value,
+      (integrated?.value ?? 0) > Math.max(LEAST_FRACTION, TAIL_RATIO * fraction.value),
   );
   if (ruled.length === 0) return table;
   const names = ruled.map(({ id }) => id).join(", ");

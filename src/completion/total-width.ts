@@ -1,4 +1,5 @@
 import type { Parent, TableValue } from "../model/model.js";
+import type { CommonNormalisation } from "./common-normalisations.js";
 import { constrainedFractions, smallestConflict } from "./constrained-fractions.js";
 import { ErrorSpace, type Gradient } from "./error-space.js";
 import { groupOf, type LinearFraction, RelativeChanges } from "./relative-changes.js";
@@ -22,7 +23,7 @@ export type Entry =
       readonly kind: "measured width" | "measured fraction";
       /** Index into the list of values that settle rows. */
       readonly observable: number;
-      /** The row's part of the measured value. */
+      /** The row's part of the measured value; above 1 where the value is of a narrower charge state. */
       readonly share: number;
       /** The part itself: a width in MeV or a fraction. */
       readonly value: number;
@@ -55,6 +56,8 @@ export interface CompletionOptions {
   readonly covariance: readonly (readonly number[])[];
   /** Measured values that entries refer to. */
   readonly values: readonly TableValue[];
+  /** The normalisation that each of them shares with others; undefined for one of its own. */
+  readonly normalisations: readonly (CommonNormalisation | undefined)[];
   readonly conflicts: "refuse" | "constrained";
 }
 
@@ -69,7 +72,7 @@ const CONSTRAINED_SIGMAS = 2;
  *
  * A measured total width fixes the scale and leaves a remainder; `sum` makes the total the sum of the rows:
  * T = (sum of widths) / (1 - sum of measured fractions). Errors are linear, in the space of the model's parameters
- * (with the fit's covariance), the measured values and the total width (each independent). Fractions that add up to more
+ * (with the fit's covariance), the measured values, their common normalisations and the total width (each independent). Fractions that add up to more
  * than 1 of a measured total are a conflict, unless the policy `constrained` brings them to 1 with a chi2 up to 4; then
  * every row keeps its old value beside the new one.
  *
@@ -78,7 +81,7 @@ const CONSTRAINED_SIGMAS = 2;
 export function completeParent(
   parent: Parent,
   entries: readonly Entry[],
-  { covariance, values, conflicts }: CompletionOptions,
+  { covariance, values, normalisations, conflicts }: CompletionOptions,
 ): Completed | { conflict: string } {
   const widths = entries.map((entry) =>
     entry.kind === "predicted" ? entry.widthMeV : entry.kind === "measured width" ? entry.value : 0,
@@ -93,7 +96,7 @@ export function completeParent(
   const isConflict = !(excess <= ROUNDING);
   if (isConflict && (isSum || conflicts === "refuse"))
     return { conflict: conflictText(parent, entries, fractions, values, totalMeV) };
-  const space = new ErrorSpace(parent, covariance, values, covariance.length);
+  const space = new ErrorSpace(parent, covariance, values, covariance.length, normalisations);
   const total = isSum ? space.summedTotal(entries, fractionTotal, totalMeV) : space.givenTotal();
   const gradients = entries.map((entry, k) => space.fraction(entry, fractions[k]!, totalMeV, total));
   const breaking = entries.map((entry) => (entry.kind === "predicted" ? entry.breakingMeV / totalMeV : 0));

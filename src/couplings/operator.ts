@@ -24,14 +24,3 @@ export const STRONG: Operator = {
   parts: [{ state: { irrep: { p: 0, q: 0 }, threeY: 0, twoI: 0, twoI3: 0 }, weight: 1 }],
   complex: false,
 };
-
-/**
- * First-order breaking by the mass of the strange quark: the component Y = 0, I = 0 of an octet.
- *
- * Source: M. Muraskin and S. L. Glashow, Phys. Rev. 132 (1963) 482 (provenance: memory).
- */
-export const MASS_BREAKING: Operator = {
-  name: "mass-breaking",
-  parts: [{ state: { irrep: { p: 1, q: 1 }, threeY: 0, twoI: 0, twoI3: 0 }, weight: 1 }],
-  complex: false,
-};

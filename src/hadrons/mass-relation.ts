@@ -22,7 +22,8 @@ const DETERMINED = 1e-9;
  * Source: M. Gell-Mann, Caltech report CTSL-20 (1961); S. Okubo, Prog. Theor. Phys. 27 (1962) 949. Provenance: memory.
  * @param known - members with masses > 0
  * @param power - 1 for baryons, 2 for mesons
- * @throws InputError if the known masses do not fix the one wanted
+ * @returns the mass; for baryons <= 0 where the known masses are far from obeying it
+ * @throws InputError if the known masses do not fix the one wanted, or its square would not be > 0
  * @example gellMannOkuboMassMeV([N, Lambda, Sigma], { threeY: -3, twoI: 1 }, 1)
  */
 export function gellMannOkuboMassMeV(
@@ -44,7 +45,8 @@ export function gellMannOkuboMassMeV(
     );
   }
   const sum = weights.to1DArray().reduce((total, w, k) => total + w * known[k]!.massMeV ** power, 0);
-  if (!(sum > 0)) refuse("mass relation", "a mass > 0", sum, "Check the masses of the other members.");
+  if (power === 2 && !(sum > 0))
+    refuse("mass relation", "a squared mass > 0", sum, "Check the masses of the other members.");
   return sum ** (1 / power);
 }
 

@@ -60,8 +60,9 @@ const PLACES: Readonly<Record<string, readonly [number, number]>> = {
  * @example placeOf({ p: 1, q: 1 }, "Xi(1820)") // { threeY: -3, twoI: 1 }
  */
 export function placeOf(irrep: Irrep, name: string): IsospinMultiplet {
+  const found = findPlace(irrep, name);
+  if (found !== undefined) return found;
   const place = placeFromLabels(name) ?? placeFromName(name);
-  if (place !== undefined && hasMultiplet(irrep, place)) return place;
   const there = isospinMultiplets(irrep).map(placeWithNames).join(", ");
   const meaning = place === undefined ? "" : `${name} stands for ${placeText(place)}. `;
   refuse(
@@ -70,6 +71,12 @@ export function placeOf(irrep: Irrep, name: string): IsospinMultiplet {
     name,
     `${meaning}It has: ${there}.`,
   );
+}
+
+/** The isospin multiplet of an irrep that a name stands for, as `placeOf` reads it, or undefined. */
+export function findPlace(irrep: Irrep, name: string): IsospinMultiplet | undefined {
+  const place = placeFromLabels(name) ?? placeFromName(name);
+  return place !== undefined && hasMultiplet(irrep, place) ? place : undefined;
 }
 
 const BARYON = /^(N|Lambda|Sigma|Xi|Delta|Omega|Theta)$/;

@@ -3,6 +3,7 @@ import type { Quantity, Study, StudyMeasurement } from "../study/study.js";
 import { axialRow } from "./axial.js";
 import type { Decay, Observable, Parameter, Parent, Quantum, Total, WidthSum } from "./model.js";
 import type { Problems } from "./problems.js";
+import { noteRepeated } from "./repeated-measurements.js";
 import { hadronsNamed, type Known, widthSumOf } from "./width-sums.js";
 
 /** A phase this near to 90 degrees, in radians, has no sign. */
@@ -18,9 +19,12 @@ export interface Context extends Known {
 
 /** Ties every measurement to the channels it is about; what cannot be tied is noted. */
 export function resolveMeasurements(context: Context, problems: Problems): Observable[] {
-  return context.study.measurements
-    .map((measurement) => resolveMeasurement(measurement, context, problems))
-    .filter((observable) => observable !== undefined);
+  const written = context.study.measurements.flatMap((measurement) => {
+    const observable = resolveMeasurement(measurement, context, problems);
+    return observable === undefined ? [] : [{ path: measurement.path, observable }];
+  });
+  noteRepeated(written, problems);
+  return written.map(({ observable }) => observable);
 }
 
 function resolveMeasurement(

@@ -13,6 +13,7 @@ import type { Mixing, Parameter, Rotation } from "./model.js";
 import type { Problems } from "./problems.js";
 import { memberParticles, resolveMultiplet, type StudyBoundMultiplet } from "./resolve-multiplets.js";
 import { tiedRatio } from "./tied-mixing.js";
+import { noteWideStates } from "./wide-states.js";
 
 /** Place of a bare state: an isospin multiplet of an irrep. */
 export interface BareState {
@@ -23,6 +24,8 @@ export interface BareState {
 
 /** A mixing group, resolved: its matrix, its bare states and the physical hadrons. */
 export interface MixedStates {
+  /** Path in the file, for messages. */
+  readonly path: string;
   readonly mixing: Mixing;
   readonly bare: readonly BareState[];
   readonly members: readonly Member[];
@@ -45,7 +48,10 @@ export function resolveMixing(
     const known = bare.filter((state) => state !== undefined);
     if (known.length < bare.length) continue;
     const resolved = problems.attempt(path, () => mixedStates(group, known, firstParameter, angles, earlier));
-    if (resolved !== undefined) earlier.push(resolved);
+    if (resolved === undefined) continue;
+    for (const [k, { hadrons }] of resolved.members.entries())
+      noteWideStates(group.states[k]!, hadrons, `${path}/states/${k}`, problems);
+    earlier.push(resolved);
   }
   return { groups: earlier, angles };
 }
@@ -118,7 +124,7 @@ function mixedStates(
     [],
   );
   const mixed = members.map((member, k) => withContent(member, bare, start.value[k]!));
-  return { mixing, bare, members: mixed, summed: new Set(summed) };
+  return { path: group.path, mixing, bare, members: mixed, summed: new Set(summed) };
 }
 
 /** A physical member as the superposition of bare states. */

@@ -7,14 +7,17 @@ import {
   type MemberParticles,
   type Multiplet,
   type MultipletQuantumNumbers,
+  placeText,
 } from "../hadrons/multiplet.js";
 import { antiparticleName, type Particle } from "../hadrons/particle.js";
-import { placeOf } from "../hadrons/place.js";
+import { findPlace, placeOf } from "../hadrons/place.js";
 import { nearestNames } from "../nearest-names.js";
-import { refuse } from "../require.js";
+import { refuse, requirePositive } from "../require.js";
 import type { StudyChargeState, StudyMember, StudyMultiplet, StudyState } from "../study/study.js";
-import { type IsospinMultiplet, parseIrrep } from "../su3/irrep.js";
+import { type Irrep, type IsospinMultiplet, parseIrrep } from "../su3/irrep.js";
 import type { Problems } from "./problems.js";
+import { requireOwnName } from "./taken-names.js";
+import { noteWideStates } from "./wide-states.js";
 
 /** A multiplet with what only a study knows of it. */
 export interface StudyBoundMultiplet {
@@ -58,6 +61,7 @@ export function studyMultiplet(
   const resolve = (member: StudyMember, k: number): MemberParticles | undefined =>
     problems.attempt(`${path}/members/${k}`, () => {
       const place = placeOf(irrep, member.place);
+      requirePlaceOfItsOwn(place, k, written.members, irrep);
       if (member.mass === "relation") return filledMember(place, quantum, member, known);
       const { mass, ...rest } = member;
       const particles = memberParticles(place, quantum, { ...rest, mass });
@@ -71,6 +75,10 @@ export function studyMultiplet(
   const members = written.members.map((member, k) =>
     member.mass === "relation" ? resolve(member, k) : measured[k],
   );
+  for (const [k, member] of members.entries()) {
+    if (member !== undefined)
+      noteWideStates(written.members[k]!, member.particles, `${path}/members/${k}`, problems);
+  }
   const usable = members.filter((member) => member !== undefined);
   if (usable.length < members.length) return undefined;
   const multiplet = problems.attempt(path, () =>
@@ -88,6 +96,23 @@ export function studyMultiplet(
   return { multiplet, summed: new Set(summed) };
 }
 
+/** Refuses a place that an earlier member has; a place that the irrep does not have is for that member to say. */
+function requirePlaceOfItsOwn(
+  place: IsospinMultiplet,
+  k: number,
+  members: readonly StudyMember[],
+  irrep: Irrep,
+): void {
+  const taken = members.slice(0, k).find((earlier) => {
+    const other = findPlace(irrep, earlier.place);
+    return other?.threeY === place.threeY && other.twoI === place.twoI;
+  });
+  if (taken === undefined) return;
+  const { name } = members[k]!;
+  const mend = "An irrep has one isospin multiplet at each place.";
+  refuse(name, `a place that ${taken.name} has not taken`, placeText(place), mend);
+}
+
 /** A meson multiplet's C parity is that of every member that is its own antiparticle. */
 function withCParity(member: MemberParticles, cParity: StudyMultiplet["cParity"]): MemberParticles {
   if (cParity === null) return member;
@@ -97,7 +122,7 @@ function withCParity(member: MemberParticles, cParity: StudyMultiplet["cParity"]
   return { ...member, particles };
 }
 
-function meanMassMeV({ particles }: MemberParticles): number {
+function meanMassMeV({ particles }: Pick<MemberParticles, "particles">): number {
   return particles.reduce((sum, { massMeV }) => sum + massMeV, 0) / particles.length;
 }
 
@@ -109,6 +134,7 @@ function filledMember(
   known: readonly KnownMass[],
 ): MemberParticles {
   const value = gellMannOkuboMassMeV(known, place, quantum.baryonNumber === 0 ? 2 : 1);
+  requirePositive(`mass of ${name} by the relation`, value, "Check the masses of the other members.");
   const mass = { value, plus: RELATION_ERROR_MEV, minus: RELATION_ERROR_MEV, unit: "MeV" } as const;
   const particles = memberParticles(place, quantum, { name, ...rest, mass });
   const note = `The mass of ${name}, ${value.toFixed(1)} +- ${RELATION_ERROR_MEV} MeV, is filled by the relation of Gell-Mann and Okubo from unmixed members.`;
@@ -122,7 +148,7 @@ function quantumNumbers({ twoJ, parity, baryonNumber }: StudyMultiplet) {
 /**
  * The charge states of a member of a study, with the catalogue's values where the study gives none.
  *
- * @throws InputError where neither has a mass or a width
+ * @throws InputError where neither has a mass or a width, and for the name of another particle of the catalogue
  */
 export function memberParticles(
   place: IsospinMultiplet,
@@ -143,6 +169,7 @@ export function memberParticles(
   const particles = states.map((state) =>
     particleOf(state, member, member.chargeStates[state.name] ?? { mcAliases: [] }),
   );
+  requireOwnName(member.name, place, quantum, meanMassMeV({ particles }));
   return { name: member.name, particles };
 }
 

@@ -2,6 +2,7 @@ import type { Study } from "../study/study.js";
 import { decayHasFAndD } from "./evaluate.js";
 import type { Decay, Observable, Parameter, PriorTarget } from "./model.js";
 import type { Problems } from "./problems.js";
+import { noteRepeated, type WrittenObservable } from "./repeated-measurements.js";
 
 const RATIOS = ["D", "F", "F/D", "alpha_F", "alpha_D"] as const;
 
@@ -13,7 +14,7 @@ export function resolvePriors(
   problems: Problems,
 ): Observable[] {
   const targets = targetsOf(decays, parameters);
-  return study.priors.flatMap(({ path, parameter, value, source }): Observable[] => {
+  const written = study.priors.flatMap(({ path, parameter, value, source }): WrittenObservable[] => {
     const target = targets.get(parameter);
     if (target === undefined) {
       problems.add(
@@ -27,18 +28,19 @@ export function resolvePriors(
       return [];
     }
     const position = problems.positionOf(path);
-    return [
-      {
-        label: `prior ${parameter}`,
-        quantum: { kind: "parameter", parameter: target },
-        measured: value,
-        signOnly: false,
-        source,
-        use: "fit",
-        position,
-      },
-    ];
+    const observable: Observable = {
+      label: `prior ${parameter}`,
+      quantum: { kind: "parameter", parameter: target },
+      measured: value,
+      signOnly: false,
+      source,
+      use: "fit",
+      position,
+    };
+    return [{ path, observable }];
   });
+  noteRepeated(written, problems);
+  return written.map(({ observable }) => observable);
 }
 
 function targetsOf(decays: readonly Decay[], parameters: readonly Parameter[]): Map<string, PriorTarget> {

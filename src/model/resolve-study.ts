@@ -5,6 +5,7 @@ import type { Study, StudyProblem } from "../study/study.js";
 import { withBreaking } from "./breaking.js";
 import { channelsOf } from "./channels.js";
 import { checkMeasurements } from "./check-measurements.js";
+import { noteRepeatedNames } from "./distinct-members.js";
 import { massParameters } from "./masses.js";
 import type { Channel, Decay, Model, Parameter, Parent, TotalWidth } from "./model.js";
 import { notesOf } from "./notes.js";
@@ -34,6 +35,7 @@ export function resolveStudy(study: Study, earlier: readonly StudyProblem[] = []
   }
   const { decays, couplings } = resolveDecays(study, own, problems);
   const { groups, angles } = resolveMixing(study.mixing, own, couplings.length, problems);
+  noteRepeatedNames(own, groups, problems);
   if (problems.has()) refuseWithMeasurements(study, problems);
   const parameters: Parameter[] = [...couplings, ...angles];
   const masses = massParameters(study, decays, groups, own, parameters);

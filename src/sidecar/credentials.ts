@@ -1,8 +1,11 @@
 import { X509Certificate } from "node:crypto";
-import { readFileSync } from "node:fs";
 import { createSecureContext } from "node:tls";
 import { ServerCredentials } from "@grpc/grpc-js";
-import { InputError, systemReason } from "../errors.js";
+import { InputError } from "../errors.js";
+import { readInput } from "../tables/read-input.js";
+
+/** All authorities of an operating system take a quarter of it. */
+const MAX_PEM_BYTES = 2 ** 20;
 
 /** Files for TLS, in PEM. */
 export interface TlsFiles {
@@ -54,11 +57,5 @@ function requireValidNow(file: string, certificate: Buffer): Date {
 }
 
 function readPem(option: string, file: string): Buffer {
-  try {
-    return readFileSync(file);
-  } catch (cause) {
-    throw new InputError(`${option}: ${file} could not be read: ${systemReason(cause)}. Check the path.`, {
-      cause,
-    });
-  }
+  return readInput(file, { where: `${option}: ${file}`, maxBytes: MAX_PEM_BYTES });
 }

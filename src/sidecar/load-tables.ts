@@ -1,7 +1,7 @@
-import { readFileSync } from "node:fs";
-import { InputError, systemReason } from "../errors.js";
+import { InputError } from "../errors.js";
 import { decodeCouplings } from "../tables/decode-couplings.js";
 import { decodeDecays } from "../tables/decode-decays.js";
+import { readInput } from "../tables/read-input.js";
 import { checkSeal } from "../tables/sealed-bytes.js";
 import { groundStateTables } from "./ground-state-tables.js";
 import { Served, type ServedCouplings, type ServedDecays } from "./served.js";
@@ -19,7 +19,7 @@ export function loadTables(files: readonly string[]): Served {
   const sources =
     files.length === 0
       ? groundStateTables().map((bytes) => ({ file: BUILT_IN, bytes }))
-      : files.map((file) => ({ file, bytes: read(file) }));
+      : files.map((file) => ({ file, bytes: readInput(file) }));
   const decays: ServedDecays[] = [];
   const couplings: ServedCouplings[] = [];
   const seen = new Map<string, string>();
@@ -45,14 +45,4 @@ export function loadTables(files: readonly string[]): Served {
 
 function opened<Message extends { sha256: Uint8Array | null }>(file: string, message: Message) {
   return { file, sha256: message.sha256!, message };
-}
-
-function read(file: string): Uint8Array {
-  try {
-    return readFileSync(file);
-  } catch (cause) {
-    throw new InputError(`${file}: could not be read: ${systemReason(cause)}. Check the path.`, {
-      cause,
-    });
-  }
 }

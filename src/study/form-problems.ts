@@ -1,4 +1,5 @@
 import type { z } from "zod";
+import { shown } from "../require.js";
 import type { StudyProblem } from "./study.js";
 import type { StudySyntax } from "./syntax.js";
 
@@ -75,15 +76,6 @@ function issueText(issue: Issue, value: unknown): string {
     default:
       return `${issue.message}, got ${got}`;
   }
-}
-
-/** Longest value a message shows. */
-const MAX_SHOWN = 60;
-
-function shown(value: unknown): string {
-  if (value === undefined) return "nothing";
-  const text = typeof value === "number" ? String(value) : JSON.stringify(value);
-  return text.length > MAX_SHOWN ? `${text.slice(0, MAX_SHOWN)}...` : text;
 }
 
 function count(limit: number | bigint, origin: string): string {

@@ -12,6 +12,9 @@ const LIMIT = new RegExp(
   String.raw`^\s*<\s*(?<limit>${UNSIGNED})${UNIT}\s+at\s+(?<level>${UNSIGNED})\s*%\s*$`,
 );
 
+/** A limit that does not say how sure it is. */
+const BARE_LIMIT = new RegExp(String.raw`^\s*<\s*(?<limit>${UNSIGNED})${UNIT}\s*$`);
+
 const FORMS: Readonly<Record<Quantity["unit"], string>> = {
   MeV: "a number with its unit such as `58 +- 3 MeV`",
   rad: "an angle with its unit such as `-15.4 +- 1 deg`",
@@ -38,7 +41,7 @@ export interface QuantityProblem {
  */
 export function parseQuantity(text: string, unit: Quantity["unit"]): Quantity | QuantityProblem {
   const groups = VALUE.exec(text)?.groups ?? RANGE.exec(text)?.groups ?? LIMIT.exec(text)?.groups;
-  if (groups === undefined) return { problem: `expected ${quantityForm(unit)}, got ${JSON.stringify(text)}` };
+  if (groups === undefined) return { problem: formProblem(text, unit) };
   const tooLarge = { problem: `expected a number that fits a double, got ${JSON.stringify(text)}` };
   const { unit: _, ...numbers } = groups;
   if (Object.values(numbers).some((digits) => digits !== undefined && !Number.isFinite(Number(digits)))) {
@@ -53,6 +56,12 @@ export function parseQuantity(text: string, unit: Quantity["unit"]): Quantity | 
   if (!(confidence > 0 && confidence < 1)) {
     return { problem: `expected a confidence between 0 and 100 %, got ${JSON.stringify(text)}` };
   }
+  if (groups["low"] !== undefined && quantity.plus < 0) {
+    const turned = [groups["high"], "to", groups["low"], groups["unit"] ?? ""].join(" ").trim();
+    return {
+      problem: `expected a range with the smaller value first, got ${JSON.stringify(text)}. Write \`${turned}\``,
+    };
+  }
   const hasError = ["both", "plus", "low", "limit"].some((name) => groups[name] !== undefined);
   if (hasError && !(quantity.plus > 0 && quantity.minus > 0)) {
     return {
@@ -60,6 +69,16 @@ export function parseQuantity(text: string, unit: Quantity["unit"]): Quantity | 
     };
   }
   return quantity;
+}
+
+/** What is wrong with a text of no known form. */
+function formProblem(text: string, unit: Quantity["unit"]): string {
+  const got = `got ${JSON.stringify(text)}`;
+  const limit = BARE_LIMIT.exec(text)?.groups;
+  if (limit === undefined) return `expected ${quantityForm(unit)}, ${got}`;
+  const factor = unitFactor(limit["unit"]?.trim() ?? "", unit);
+  if (typeof factor !== "number") return `${factor.problem} in ${JSON.stringify(text)}`;
+  return `expected an upper limit with its confidence, ${got}. Write \`${text.trim()} at 90 %\` if that is its confidence`;
 }
 
 function quantityOf(

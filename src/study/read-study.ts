@@ -1,5 +1,6 @@
 import { InputError, type SourcePosition } from "../errors.js";
 import { type FormProblem, formProblems } from "./form-problems.js";
+import { keyProblems } from "./key-problems.js";
 import { listProblems } from "./list-problems.js";
 import { type StudyDocument, studySchema } from "./schema.js";
 import type {
@@ -41,10 +42,11 @@ export function draftStudy(bytes: Uint8Array, file: string): StudyDraft {
   const syntax = readSyntax(bytes, file);
   const { plain } = syntax;
   const parsed = studySchema.safeParse(plain);
-  if (parsed.success) {
+  const badKeys = keyProblems(syntax);
+  if (parsed.success && badKeys.length === 0) {
     return { study: toStudy(parsed.data, everyEntry(plain), syntax, file), problems: syntax.problems };
   }
-  const problems = formProblems(parsed.error.issues, syntax);
+  const problems = [...badKeys, ...(parsed.success ? [] : formProblems(parsed.error.issues, syntax))];
   const { data, kept } = withoutFaults(plain, problems);
   const rest = studySchema.safeParse(data);
   return {

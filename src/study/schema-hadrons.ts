@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { mapping, mass, mcAliases, nonNegative, quantity, spin, spinParity, width } from "./schema-values.js";
+import { anyMass, hadronName, mapping, mass, mcAliases, spin, spinParity, width } from "./schema-values.js";
 
 const chargeState = mapping({
   mass: mass.optional(),
@@ -9,7 +9,7 @@ const chargeState = mapping({
 }).describe("What one charge state has of its own");
 
 export const member = mapping({
-  name: z.string().min(1).describe("Name of the isospin multiplet, e.g. `Lambda(1830)`"),
+  name: hadronName.describe("Name of the isospin multiplet, e.g. `Lambda(1830)`"),
   place: z
     .string()
     .min(1)
@@ -41,12 +41,8 @@ export const multiplet = mapping({
 });
 
 export const particle = mapping({
-  name: z
-    .string()
-    .min(1)
-    .regex(/^\S+$/, { error: "expected a name without blanks" })
-    .describe("Its name with its charge, such as `a1(1260)+`; its antiparticle comes with it"),
-  mass: quantity("MeV", nonNegative),
+  name: hadronName.describe("Its name with its charge, such as `a1(1260)+`; its antiparticle comes with it"),
+  mass: anyMass,
   width: width.optional().describe("Absent for a stable particle"),
   charge: z.int().describe("In units of the proton charge"),
   spinParity,

@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { mapping, mass, nonNegative, quantity, source } from "./schema-values.js";
+import { mapping, nonNegative, quantity, source, threshold } from "./schema-values.js";
 import type { Quantity } from "./study.js";
 
 const use = z.enum(["fit", "table", "both"]).default("both").describe("Where the value counts");
@@ -97,7 +97,7 @@ const modeForm = {
     .describe(
       "The width grows as the distance from threshold to this power. Default: (3n - 5)/2 for n daughters, 3 with one photon",
     ),
-  threshold: mass.optional().describe("Default: the sum of the daughters' masses"),
+  threshold: threshold.optional().describe("Default: the sum of the daughters' masses"),
   weak: z.boolean().default(false).describe("Whether strangeness and charm may change"),
   phase: quantity("rad").optional().describe("Phase of a weak amplitude, where neutral kaons interfere"),
   source,

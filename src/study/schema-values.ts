@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { nearestNames } from "../nearest-names.js";
+import { NAME_PATTERN, nameProblem } from "./names.js";
 import { parseQuantity, type QuantityProblem, quantityForm } from "./quantity.js";
 import type { Quantity } from "./study.js";
 
@@ -24,21 +25,29 @@ export function mapping<T extends z.core.$ZodLooseShape>(shape: T) {
   });
 }
 
+/** What a value should have been, and how to mend it. */
+interface Unfit {
+  readonly expected: string;
+  readonly mend: string;
+}
+
+function inWords(unfit: Unfit | string, input: string | number): string {
+  const got = `got ${JSON.stringify(input)}`;
+  return typeof unfit === "string" ? `${unfit}, ${got}` : `${unfit.expected}, ${got}. ${unfit.mend}`;
+}
+
 /** A quantity in `unit`; `check` says what else it must be, in words, or undefined. */
 export function quantity(
   unit: Quantity["unit"],
-  check: (q: Quantity) => string | undefined = () => undefined,
+  check: (q: Quantity) => Unfit | string | undefined = () => undefined,
 ) {
   return z
     .union([z.string(), z.number()], { error: `expected ${quantityForm(unit)}` })
     .transform((input, context): Quantity => {
       const read = parseQuantity(String(input), unit);
-      const problem = isProblem(read) ? read.problem : check(read);
-      if (problem === undefined) return read as Quantity;
-      context.addIssue({
-        code: "custom",
-        message: isProblem(read) ? problem : `${problem}, got ${JSON.stringify(input)}`,
-      });
+      const unfit = isProblem(read) ? undefined : check(read);
+      if (!isProblem(read) && unfit === undefined) return read;
+      context.addIssue({ code: "custom", message: isProblem(read) ? read.problem : inWords(unfit!, input) });
       return z.NEVER;
     })
     .describe(DESCRIPTIONS[unit]);
@@ -48,9 +57,39 @@ export function isProblem(read: Quantity | QuantityProblem): read is QuantityPro
   return "problem" in read;
 }
 
-const positive = (what: string) => (q: Quantity) => (q.value > 0 ? undefined : `expected a ${what} > 0`);
-export const mass = quantity("MeV", positive("mass"));
+/** Masses and widths of hadrons lie below this, in MeV; what lies above has the wrong unit. */
+const LARGEST_MEV = 20_000;
+/** Masses of hadrons lie above this, in MeV: the pion's is 135. */
+const SMALLEST_MEV = 100;
+
+const positive = (what: string) => (q: Quantity) =>
+  q.value > 0 ? belowLargest(what)(q) : `expected a ${what} > 0`;
+const belowLargest = (what: string) => (q: Quantity) =>
+  q.value < LARGEST_MEV
+    ? undefined
+    : {
+        expected: `expected a ${what} below ${LARGEST_MEV / 1000} GeV`,
+        mend: "Check whether its unit is MeV",
+      };
+const hadronMass = (q: Quantity) =>
+  q.value > 0 && q.value < SMALLEST_MEV
+    ? { expected: `expected a mass above ${SMALLEST_MEV} MeV`, mend: "Check whether its unit is GeV" }
+    : positive("mass")(q);
+export const threshold = quantity("MeV", positive("threshold"));
+/** Mass of a hadron. */
+export const mass = quantity("MeV", hadronMass);
+/** Mass of any particle, such as a photon or a lepton. */
+export const anyMass = quantity("MeV", (q) => nonNegative(q) ?? belowLargest("mass")(q));
 export const width = quantity("MeV", positive("width"));
+
+/** The name of a hadron. */
+export const hadronName = z
+  .string()
+  .superRefine((name, context) => {
+    const message = nameProblem(name);
+    if (message !== undefined) context.addIssue({ code: "custom", message });
+  })
+  .meta({ pattern: NAME_PATTERN });
 
 const SPIN_PARITY = /^(?<number>\d+)(?<half>\/2)?(?<sign>[+-])(?<charge>[+-])?$/;
 

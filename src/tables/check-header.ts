@@ -24,14 +24,19 @@ export function requireKnownHeader(
 /**
  * Checks the schema version of a table alone.
  *
- * @throws TableError if it is too new
+ * @throws TableError if it is too new, or missing
  */
 export function requireKnownVersion(
   header: Pick<couplet.v1.Header.$Properties, "schemaMinor"> | null | undefined,
   newestMinor: number,
   file: string,
 ): void {
-  const minor = header?.schemaMinor ?? Number.NaN;
+  if (header?.schemaMinor == null) {
+    throw new TableError(
+      `${file}: expected a header with the schema version, got a table without one. The file was written by something else; write it again.`,
+    );
+  }
+  const minor = header.schemaMinor;
   if (minor <= newestMinor) return;
   throw new TableError(
     `${file}: expected schema version 1.${newestMinor} or older, got 1.${minor}. Read it with a newer Couplet.`,

@@ -1,11 +1,12 @@
 import { createHash } from "node:crypto";
 import { closeSync, fstatSync, openSync, readSync } from "node:fs";
 import { Reader } from "protobufjs/minimal";
-import { InputError, systemReason, TableError } from "../errors.js";
+import { InputError, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { requireKnownHeader } from "./check-header.js";
 import { requireWhole } from "./decode-decays.js";
 import { DECAYS_SCHEMA_MINOR } from "./encode-decays.js";
+import { unreadable } from "./read-input.js";
 import { requireSealed, SEAL_LENGTH, sealOf } from "./sealed-bytes.js";
 
 import v1 = couplet.v1;
@@ -79,9 +80,7 @@ function opened(path: string): number {
     if (fstatSync(file).isFile()) return file;
     closeSync(file);
   } catch (cause) {
-    throw new InputError(`${path}: could not be read: ${systemReason(cause)}. Check the path.`, {
-      cause,
-    });
+    throw unreadable(path, cause);
   }
   throw new InputError(`${path}: expected a file, got a folder or a device. Check the path.`);
 }

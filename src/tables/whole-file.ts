@@ -1,3 +1,4 @@
+import { randomBytes } from "node:crypto";
 import {
   chmodSync,
   chownSync,
@@ -13,8 +14,7 @@ import {
   writeSync,
 } from "node:fs";
 import { basename, dirname, join } from "node:path";
-import writeFileAtomic from "write-file-atomic";
-import { CoupletError, InputError } from "../errors.js";
+import { CoupletError, InputError, systemReason } from "../errors.js";
 
 /** What to do about the operating system's reasons, by their codes. */
 const MENDS: Readonly<Record<string, string>> = {
@@ -27,19 +27,19 @@ const MENDS: Readonly<Record<string, string>> = {
   ENAMETOOLONG: "Choose a shorter name",
 };
 
+/** Told the name of a file beside before it is made, and again once it is gone: a process that is stopped can remove it. */
+export type WatchBeside = (beside: string, exists: boolean) => void;
+
 /**
  * Writes a file whole or not at all: beside its place, synced, then renamed. An old file stays until then, and stays
- * intact if anything fails; a killed run may leave the file beside it, whose name ends in a number. Makes the folder if
- * it is missing.
+ * intact if anything fails; a killed run may leave the file beside it, `.NAME.` and 16 hexadecimal digits. Makes the
+ * folder if it is missing.
  *
  * @throws InputError if the place cannot be written, with the reason of the operating system
  */
-export function writeWhole(path: string, bytes: Uint8Array | string): void {
-  inItsPlace(path, () => writeFileAtomic.sync(path, Buffer.from(bytes as Uint8Array), { fsync: true }));
+export function writeWhole(path: string, bytes: Uint8Array | string, watch?: WatchBeside): void {
+  writeWholePieces(path, [Buffer.from(bytes as Uint8Array)], watch);
 }
-
-/** Told the name of a file beside before it is made, and again once it is gone: a process that is stopped can remove it. */
-export type WatchBeside = (beside: string, exists: boolean) => void;
 
 /** A file to be written: its place, and all of it. */
 export interface WholeFile {
@@ -129,12 +129,13 @@ function withBeside<T>(
   path: string,
   pieces: Iterable<Uint8Array>,
   then: (file: { beside: string; place: string; length: number }) => T,
-  watch: WatchBeside = () => {},
+  watch: WatchBeside,
 ): T {
   const old = statSync(path, { throwIfNoEntry: false });
   // Behind a link, the file it points to is the one to replace.
   const place = old === undefined ? path : realpathSync(path);
-  const beside = join(dirname(place), `.${basename(place)}.${process.pid}`);
+  // No two writers, in whatever thread or container, take the same name, and nobody can lay a link there beforehand.
+  const beside = join(dirname(place), `.${basename(place)}.${randomBytes(8).toString("hex")}`);
   watch(beside, true);
   try {
     const length = writePieces(beside, pieces);
@@ -153,7 +154,7 @@ function withBeside<T>(
 }
 
 function writePieces(path: string, pieces: Iterable<Uint8Array>): number {
-  const file = openSync(path, "w", 0o666);
+  const file = openSync(path, "wx", 0o666);
   let length = 0;
   try {
     for (const piece of pieces) {
@@ -186,9 +187,9 @@ function inItsPlace<T>(path: string, write: () => T): T {
 }
 
 function unwritten(path: string, cause: unknown, outcome = "Nothing was changed."): InputError {
-  const { code, message } = cause as NodeJS.ErrnoException;
+  const { code } = cause as NodeJS.ErrnoException;
   const mend = MENDS[code ?? ""] ?? "Choose another folder";
-  return new InputError(`${path}: could not be written: ${reasonOf(message)}. ${mend}. ${outcome}`, {
+  return new InputError(`${path}: could not be written: ${systemReason(cause)}. ${mend}. ${outcome}`, {
     cause,
   });
 }
@@ -221,9 +222,4 @@ function attempt(action: () => void): void {
   } catch {
     // Clearing up is a courtesy; the error that led here is the one to report.
   }
-}
-
-/** `ENOSPC: no space left on device, write` without the name of a file beside the one that was asked for. */
-function reasonOf(message: string): string {
-  return message.replace(/, \w+( '.*)?$/, "");
 }

@@ -125,7 +125,7 @@ describe("couplet audit", () => {
     const { status, stderr } = run("--grid", "9");
     expect([status, stderr]).toEqual([
       2,
-      "couplet: couplet audit: --grid: expected an integer from 0 to 4, got 9. It bounds p + q of both factors.\n",
+      "couplet audit: --grid: expected an integer from 0 to 4, got 9. It bounds p + q of both factors.\n",
     ]);
   });
 });

@@ -131,7 +131,7 @@ describe("signs", () => {
 
   test("two resonances of one reaction share its sign", () => {
     const second = (text: string) =>
-      text.replaceAll("(1700)", "(1701)").replaceAll("(1800)", "(1801)").replaceAll("(1850)", "(1851)");
+      text.replaceAll("(1705)", "(1706)").replaceAll("(1800)", "(1801)").replaceAll("(1850)", "(1851)");
     const lines = [
       ...BASE,
       line("width: Sigma(1800) -> N Kbar", `${S("N Kbar")} +- 0.5 MeV`),

@@ -74,7 +74,7 @@ describe("one ratio of reduced widths leaves two values of alpha_F", () => {
     const planted = { alpha: 0.4, g: 1 };
     const line = (name: string, parent: string, to: string) =>
       `  - { width: ${name} -> ${to}, value: ${rootWidth(parent, to, planted) ** 2} +- 0.1 MeV, source: invented }`;
-    const study = plantedStudy([line("N(1700)", "N", "N pi"), line("Sigma(1800)", "Sigma", channel)]);
+    const study = plantedStudy([line("N(1705)", "N", "N pi"), line("Sigma(1800)", "Sigma", channel)]);
     const found = fitOf(study).minima.map((minimum) => parameterValue(minimum, "alpha_F"));
     expect(found).toHaveLength(2);
     for (const [k, alpha] of [...found].sort((a, b) => a - b).entries())

@@ -57,7 +57,7 @@ export const openMeV = (parent: string) =>
 
 /** Lines that fix both couplings, but for the second solution for alpha. */
 export const BASE = [
-  `  - { width: N(1700) -> N pi, value: ${widthMeV("N", "N pi")} +- 3 MeV, source: invented }`,
+  `  - { width: N(1705) -> N pi, value: ${widthMeV("N", "N pi")} +- 3 MeV, source: invented }`,
   `  - { width: Lambda(1850) -> N Kbar, value: ${widthMeV("Lambda", "N Kbar")} +- 2 MeV, source: invented }`,
   `  - { width: Lambda(1850) -> Sigma pi, value: ${widthMeV("Lambda", "Sigma pi")} +- 2 MeV, source: invented }`,
 ];
@@ -71,7 +71,7 @@ multiplets:
     irrep: 8
     spinParity: 5/2-
     members:
-      - { name: N(1700), place: N, mass: 1700 MeV, width: 150 MeV }
+      - { name: N(1705), place: N, mass: 1700 MeV, width: 150 MeV }
       - { name: Sigma(1800), place: Sigma, mass: 1800 MeV, width: ${sigmaWidth} }
       - { name: Lambda(1850), place: Lambda, mass: 1850 MeV, width: 110 MeV }
 decays:

@@ -29,9 +29,10 @@ export function couplet(folder: string, ...args: readonly string[]): Run {
   return { code: status, out: stdout, error: stderr };
 }
 
-/** A refusal: one message, nothing printed, exit code 2. */
+/** A refusal: one message, which names the program once, nothing printed, exit code 2. */
 export function refusal(message: string, code = 2): Run {
-  return { code, out: "", error: `couplet: ${message}\n` };
+  const error = message.startsWith("couplet ") ? message : `couplet: ${message}`;
+  return { code, out: "", error: `${error}\n` };
 }
 
 /** An empty folder, filled with some files; `remove` takes it away. */

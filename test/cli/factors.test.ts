@@ -36,7 +36,7 @@ describe("couplet factors", () => {
     const { status, stderr } = run("factors", "9,9", "9,9", "--out", join(folder, "large.pb"));
     expect([status, stderr]).toEqual([
       4,
-      "couplet: isoscalarTable: expected at most 20000000 factors, got 23920150 in 1000 x 1000. Choose smaller irreps, or ask for one irrep with `into`.\n",
+      "couplet: expected at most 20000000 factors, got 23920150 in 1000 x 1000. Choose smaller irreps, or ask for one irrep with `into`.\n",
     ]);
   });
 
@@ -50,7 +50,7 @@ describe("couplet factors", () => {
     const seen = readdirSync(own);
     child.kill("SIGINT");
     expect(await ended).toBe(130);
-    expect(seen).toEqual([`.x.pb.${child.pid}`]);
+    expect(seen).toEqual([expect.stringMatching(/^\.x\.pb\.[0-9a-f]{16}$/)]);
     expect(readdirSync(own)).toEqual([]);
   });
 });

@@ -84,15 +84,15 @@ describe("couplet fit", () => {
     {
       options: ["--seed", "3"],
       message:
-        "couplet: couplet fit: --seed belongs to --toys, which is not there. Add --toys <n>, or leave it out.\n",
+        "couplet fit: --seed belongs to --toys, which is not there. Add --toys <n>, or leave it out.\n",
     },
     {
       options: ["--toys", "many"],
-      message: 'couplet: couplet fit: --toys: expected an integer from 1 to 100000000, got "many".\n',
+      message: 'couplet fit: --toys: expected an integer from 1 to 100000000, got "many".\n',
     },
     {
       options: ["--toys", "5", "--workers", "0"],
-      message: "couplet: couplet fit: --workers: expected an integer from 1 to 256, got 0.\n",
+      message: "couplet fit: --workers: expected an integer from 1 to 256, got 0.\n",
     },
   ])("refuses $options with exit code 2", ({ options, message }) => {
     const { status, stdout, stderr } = run(study("decuplet"), ...options);

@@ -61,6 +61,22 @@ describe("couplet show", () => {
   });
 });
 
+test("the other errors of a percentage stand beside it, before the column over the line shape", () => {
+  const [parent] = decodeDecays(bytes, "t.pb").parents;
+  const row = {
+    ...parent!.rows[0]!,
+    fraction: { value: 0.5, plus: 0.1, minus: 0.1, breaking: 0.07, model: 0.2 },
+  };
+  Object.assign(row, { integratedFraction: 0.25, integrated: null });
+  const text = describeParent(Object.assign(Object.create(parent!), { rows: [row] }));
+  const [titles, line] = text.split("\n").slice(2);
+  const cell = (title: string, length: number) => line!.slice(titles!.indexOf(title)).slice(0, length);
+  expect(cell("its other errors", 18)).toBe("br. 7.0  mod. 20  ");
+  const titlesOf = titles!.trim().split(/ {2,}/);
+  expect(titlesOf.slice(0, 4)).toEqual(["channel", "percent", "its other errors", "over line shape"]);
+  expect(line!.trim().split(/ {2,}/).slice(1, 5)).toEqual(["50 +- 10", "br. 7.0", "mod. 20", "25.0"]);
+});
+
 describe("a parent's head", () => {
   const head = (text: string, name: string) => {
     const { parents } = decodeDecays(encodeDecays(tablesOf(text)), "t.pb");

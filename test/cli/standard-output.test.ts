@@ -31,6 +31,21 @@ test
   },
 );
 
+test.runIf(process.platform === "linux")(
+  "a refusal that cannot be printed keeps its exit code: 1 would say that tables differ",
+  () => {
+    const full = openSync("/dev/full", "w");
+    for (const args of [["compare", "no.pb", "none.pb"], ["compare"], ["serve", "no.pb"]]) {
+      const { status } = spawnSync(process.execPath, [COMMAND, ...args], {
+        stdio: ["ignore", "ignore", full],
+        timeout: 60_000,
+      });
+      expect([args, status]).toEqual([args, 2]);
+    }
+    closeSync(full);
+  },
+);
+
 test("a reader that ends early is no error", () => {
   const script = 'set -o pipefail; "$@" | head -n 1';
   const { status, stdout, stderr } = spawnSync(

@@ -1,6 +1,7 @@
 import { writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { afterAll, describe, expect, test } from "vitest";
+import { errorText } from "../../src/cli/error-text.js";
 import { fitStudyFile } from "../../src/cli/run-study.js";
 import { CoupletError } from "../../src/errors.js";
 import { catalogueMultipletIds } from "../../src/hadrons/catalogue-multiplet.js";
@@ -26,7 +27,8 @@ function said(text: string): Run {
     fitStudyFile(file);
   } catch (error) {
     if (!(error instanceof CoupletError)) throw error;
-    return refusal(error.message.replaceAll(file, "s.yaml"), error.exitCode);
+    const text = errorText(error.message.replaceAll(file, "s.yaml"));
+    return { code: error.exitCode, out: "", error: `${text}\n` };
   }
   throw new Error("the study was not refused");
 }
@@ -59,7 +61,7 @@ describe("an unknown name is refused with the nearest ones", () => {
   test("of a width model", () => {
     expect(said(changed("model: a", "model: breit-wigner"))).toEqual(
       refusal(
-        's.yaml:4:83: decays/0/model: widthModel: id: expected one of a, b, c, d, e, got "breit-wigner". Choose from: a (power of the momentum), b (momentum with a range), c (centrifugal barrier), d (effective Lagrangian, baryon to spin-1/2 baryon and spinless meson), e (effective Lagrangian, mesons).',
+        's.yaml:4:83: decays/0/model: expected one of a, b, c, d, e, got "breit-wigner". Choose from: a (power of the momentum), b (momentum with a range), c (centrifugal barrier), d (effective Lagrangian, baryon to spin-1/2 baryon and spinless meson), e (effective Lagrangian, mesons).',
       ),
     );
   });
@@ -152,7 +154,7 @@ decays:`,
   test("of an irrep whose dimension means several", () => {
     expect(said(withMultiplet("15"))).toEqual(
       refusal(
-        's.yaml:5:12: multiplets/mine/irrep: parseIrrep: expected 15(2,1) or 15(4,0), got "15". Dimension 15 belongs to several irreps; write the labels.',
+        's.yaml:5:12: multiplets/mine/irrep: expected 15(2,1) or 15(4,0), got "15". Dimension 15 belongs to several irreps; write the labels.',
       ),
     );
   });
@@ -222,7 +224,7 @@ measurements:
         's.yaml:10:42: multiplets/octet/members/0/mass: expected a unit such as MeV or GeV, got none in "1675".',
         's.yaml:11:69: multiplets/octet/members/1/width: expected a width > 0, got "-90 MeV".',
         "s.yaml:12:76: multiplets/octet/members/2: expected keys among name, place, mass, width, chargeStates, got `colour`.",
-        's.yaml:14:12: multiplets/other/irrep: parseIrrep: expected 15(2,1) or 15(4,0), got "15". Dimension 15 belongs to several irreps; write the labels.',
+        's.yaml:14:12: multiplets/other/irrep: expected 15(2,1) or 15(4,0), got "15". Dimension 15 belongs to several irreps; write the labels.',
         `s.yaml:19:22: decays/1/from: expected a multiplet of this study (it has none) or of the catalogue (${MULTIPLETS}), got "barion-decuplet". Did you mean baryon-decuplet?`,
         "s.yaml:20:5: decays/2: L: expected a wave that spin and parity allow, got 2. They allow: L=1 S=1/2.",
         's.yaml:21:43: decays/3/to: expected at least 2 entries, got ["baryon-octet"].',

@@ -60,7 +60,7 @@ const invented: fc.Arbitrary<Invented> = fc
   })
   .map(({ summed, relativeError, lambdaPi, xiPi, ...rest }) => ({
     ...rest,
-    totals: summed.map((sum) => (sum ? undefined : 5000)) as unknown as Invented["totals"],
+    totals: summed.map((sum) => (sum ? undefined : 1200)) as unknown as Invented["totals"],
     deltaError: (rest.deltaWidth * relativeError) / 100,
     ...(lambdaPi === undefined ? {} : { lambdaPi: lambdaPi / 1000 }),
     ...(xiPi === undefined ? {} : { xiPi }),

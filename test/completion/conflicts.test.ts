@@ -63,6 +63,35 @@ describe("fractions that add up to more than 1", () => {
     expect(open.warnings).not.toContain(warning);
   });
 
+  test("the parent says by how much, of the predicted widths and of the measured", () => {
+    const sum = (origin: string, of: (row: (typeof rows)[number]) => number) =>
+      rows.filter((row) => row.origin === origin).reduce((total, row) => total + of(row), 0);
+    const newMeV = (row: (typeof rows)[number]) => row.widthMeV.value;
+    const oldMeV = (row: (typeof rows)[number]) => (row.unadjusted?.widthMeV ?? row.widthMeV).value;
+    const scales = rows
+      .filter((row) => row.origin === "predicted" && oldMeV(row) > 0)
+      .map((row) => newMeV(row) / oldMeV(row));
+    const mean = sum("predicted", newMeV) / sum("predicted", oldMeV);
+    const [scale, least, most] = [mean, Math.min(...scales), Math.max(...scales)].map((x) => x.toFixed(2));
+    expect(Number(least)).toBeLessThan(Number(most));
+    const [p, left, m, moved] = [
+      sum("predicted", oldMeV),
+      145 - sum("measured", newMeV),
+      sum("measured", oldMeV),
+      sum("measured", newMeV),
+    ].map((x) => (x >= 100 ? x.toFixed(0) : String(Number(x.toPrecision(3)))));
+    const warnings = (from: typeof tables) =>
+      parentOf(from, "N(1675)+").warnings.filter((text) => text.includes("(constrained)"));
+    expect(warnings(tables)).toEqual([
+      `N(1675)+: ${p} MeV of predicted widths were scaled by ${scale} (rows by ${least} to ${most}) into the ${left} MeV that are left, ${m} MeV of measured widths were moved to ${moved} MeV, of a total width of 145 MeV (constrained).`,
+    ]);
+    expect(warnings(tablesOf(study("0.10 +- 0.06", "constrained")))).toEqual([]);
+    const [parent] = decodeDecays(encodeDecays(tables), "f").parents.filter(
+      ({ hadron }) => hadron?.name === "N(1675)+",
+    );
+    expect(parent!.warnings).toContain(warnings(tables)[0]);
+  });
+
   test("old values are in the file", () => {
     const read = decodeDecays(encodeDecays(tables), "made.pb");
     const row = read.parents[0]!.rows.find(({ id }) => id === "N(1675)+ -> Delta(1232)+ pi0")!;

@@ -140,7 +140,9 @@ describe("the finite difference of a study", () => {
 describe("the warning of a tail", () => {
   // A lighter Sigma makes the couplings larger, so that Lambda K matters in the decays of N.
   const tables = tablesOf(
-    octetStudy("tables: { antiparticles: rows }\n").replace("mass: 1775 MeV", "mass: 1475 MeV"),
+    octetStudy("tables: { antiparticles: rows }\n")
+      .replace("mass: 1775 MeV", "mass: 1475 MeV")
+      .replaceAll("Sigma(1775)", "Sigma(1475)"),
   );
   const warnings = (name: string) =>
     parentOf(tables, name).warnings.filter((text) => text.includes("tail of the line shape"));
@@ -151,16 +153,35 @@ describe("the warning of a tail", () => {
     expect(integrated!.value).toBeCloseTo(0.00897, 5);
     const [low, high] = parentOf(tables, "N(1675)+").lineShape!.windowMeV.map(Math.round);
     expect(warnings("N(1675)+")).toEqual([
-      `N(1675)+: fractions over the line shape more than 2 times those at the nominal mass: N(1675)+ -> Lambda K+. They depend on the tail of the line shape within the window of ${low} to ${high} MeV.`,
+      `N(1675)+: fractions over the line shape more than 2 times those at the nominal mass: N(1675)+ -> Sigma+ K0, N(1675)+ -> Sigma0 K+, N(1675)+ -> Lambda K+. They depend on the tail of the line shape within the window of ${low} to ${high} MeV.`,
     ]);
-    expect(warnings("N(1675)+bar")[0]).toContain(": N(1675)+bar -> Lambdabar K-. They");
+    expect(warnings("N(1675)+bar")[0]).toContain(", N(1675)+bar -> Lambdabar K-. They");
+  });
+
+  test("counts the fraction over the line shape, above 0.001: rows that are closed or tiny at the nominal mass are named", () => {
+    const [tiny] = ["N(1675)+ -> Sigma+ K0"].map((id) => rowOf(tables, id));
+    expect(tiny!.fraction.value).toBeLessThan(1e-3);
+    expect(tiny!.integrated!.value).toBeGreaterThan(1e-3);
+    const lighter = tablesOf(octetStudy("").replace("mass: 1675 MeV", "mass: 1600 MeV"));
+    const closed = rowOf(lighter, "N(1675)+ -> Lambda K+");
+    expect([closed.kinematics, closed.fraction.value]).toEqual(["closed", 0]);
+    const { warnings: texts, rows } = parentOf(lighter, "N(1675)+");
+    const ruled = rows.filter(
+      ({ fraction, integrated }) => integrated!.value > 1e-3 && integrated!.value > 2 * fraction.value,
+    );
+    const silent = rows.filter((row) => !ruled.includes(row));
+    expect(silent.some((row) => row.integrated!.value > 2 * row.fraction.value)).toBe(true);
+    expect(texts.find((text) => text.includes("tail of the line shape"))).toContain(
+      `: ${ruled.map(({ id }) => id).join(", ")}. They`,
+    );
+    expect(ruled.some(({ kinematics }) => kinematics === "closed")).toBe(true);
   });
 
   test("is not given where no row does", () => {
-    const { rows } = parentOf(tables, "Sigma(1775)0");
+    const { rows } = parentOf(tables, "Sigma(1475)0");
     expect(
-      rows.filter((row) => row.fraction.value > 1e-3 && row.integrated!.value > 2 * row.fraction.value),
+      rows.filter((row) => row.integrated!.value > 1e-3 && row.integrated!.value > 2 * row.fraction.value),
     ).toEqual([]);
-    expect(warnings("Sigma(1775)0")).toEqual([]);
+    expect(warnings("Sigma(1475)0")).toEqual([]);
   });
 });

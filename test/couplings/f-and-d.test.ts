@@ -203,7 +203,7 @@ describe("F and D", () => {
     );
     expect(() => fAndD(1, Number.NaN, NO_ERRORS)).toThrow(
       new InputError(
-        "fAndD: expected two finite couplings and their 2 x 2 covariance, got [1,null,[[0,0],[0,0]]].",
+        "fAndD: expected two finite couplings and their 2 x 2 covariance, got [1,NaN,[[0,0],[0,0]]].",
       ),
     );
   });

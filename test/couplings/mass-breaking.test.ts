@@ -1,7 +1,6 @@
 import { EigenvalueDecomposition, Matrix } from "ml-matrix";
 import { describe, expect, test } from "vitest";
 import type { FormMaker } from "../../src/couplings/form.js";
-import { MASS_BREAKING } from "../../src/couplings/operator.js";
 import { addRoots } from "../../src/exact/root-sum.js";
 import {
   divideRoots,
@@ -13,7 +12,7 @@ import {
 } from "../../src/exact/signed-root.js";
 import { hasMultiplet, type IsospinMultiplet, isospinMultiplets, parseIrrep } from "../../src/su3/irrep.js";
 import { isoscalarFactor } from "../../src/su3/isoscalar-factors.js";
-import { BARYONS, DECUPLET, MESONS, makerOf, placeOfMember } from "./schemes.js";
+import { BARYONS, DECUPLET, MASS_BREAKING, MESONS, makerOf, placeOfMember } from "./schemes.js";
 
 /** Rows: isospin channels; columns: symmetric couplings, then those of first-order breaking. */
 function channelMatrix(from: string, to: string[]): number[][] {

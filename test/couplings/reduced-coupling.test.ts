@@ -1,11 +1,11 @@
 import { describe, expect, test } from "vitest";
-import { MASS_BREAKING, type Operator, STRONG } from "../../src/couplings/operator.js";
+import { type Operator, STRONG } from "../../src/couplings/operator.js";
 import { reducedCouplings } from "../../src/couplings/reduced-coupling.js";
 import { InputError } from "../../src/errors.js";
 import { parseIrrep, sameIrrep } from "../../src/su3/irrep.js";
 import { irrepMultiplicities } from "../../src/su3/product.js";
 import { states } from "../../src/su3/state.js";
-import { schemeOf } from "./schemes.js";
+import { MASS_BREAKING, schemeOf } from "./schemes.js";
 
 const names = (...scheme: Parameters<typeof schemeOf>) =>
   reducedCouplings(schemeOf(...scheme)).map(({ name }) => name);

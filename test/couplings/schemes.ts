@@ -36,3 +36,14 @@ export function placeOfMember(multiplet: Multiplet, name: string): { threeY: num
   const { threeY, twoI } = multiplet.members.find((member) => member.name === name)!;
   return { threeY, twoI };
 }
+
+/**
+ * First-order breaking by the mass of the strange quark: the component Y = 0, I = 0 of an octet.
+ *
+ * Source: M. Muraskin and S. L. Glashow, Phys. Rev. 132 (1963) 482 (provenance: memory).
+ */
+export const MASS_BREAKING: Operator = {
+  name: "mass-breaking",
+  parts: [{ state: { irrep: { p: 1, q: 1 }, threeY: 0, twoI: 0, twoI3: 0 }, weight: 1 }],
+  complex: false,
+};

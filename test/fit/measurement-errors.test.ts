@@ -1,26 +1,6 @@
 import { expect, test } from "vitest";
 import { InputError } from "../../src/errors.js";
-import { asymmetricSigma, scaledAverage, upperLimitSigma } from "../../src/fit/measurement-errors.js";
-
-test("10, 12, 14 with errors 1 have mean 12, chi-square 8 and scale factor 2, by exact algebra", () => {
-  const average = scaledAverage([10, 12, 14], [1, 1, 1]);
-  expect(average.mean).toBeCloseTo(12, 12);
-  expect(average.sigma).toBeCloseTo(1 / Math.sqrt(3), 12);
-  expect(average.chi2).toBeCloseTo(8, 12);
-  expect(average.scale).toBeCloseTo(2, 12);
-});
-
-test("measurements that agree are never scaled below 1, and one alone has scale 1", () => {
-  expect(scaledAverage([1, 1.1], [1, 1]).scale).toBe(1);
-  expect(scaledAverage([5], [1]).scale).toBe(1);
-});
-
-test("a measurement with an error above 3 sqrt(N) times that of the mean has no part in the scale factor", () => {
-  const average = scaledAverage([10, 12, 14, 1000], [1, 1, 1, 100]);
-  expect(average.used).toEqual([0, 1, 2]);
-  expect(average.scale).toBeCloseTo(2, 2);
-  expect(average.chi2).toBeGreaterThan(100);
-});
+import { asymmetricSigma, upperLimitSigma } from "../../src/fit/measurement-errors.js";
 
 test("the asymmetric error is the lower one below the measurement, the upper one above, and linear between", () => {
   expect(asymmetricSigma(10, 1, 3, 5)).toBe(1);
@@ -40,13 +20,6 @@ test("an upper limit of 1 is a half-Gaussian of sigma 0.607957 at 90 % and 0.510
 
 test("errors that are no errors are refused with their row", () => {
   const cases: [() => unknown, string][] = [
-    [() => scaledAverage([], []), "scaledAverage: values: expected at least one measurement, got 0."],
-    [() => scaledAverage([1, 2], [1]), "scaledAverage: sigmas: expected 2 errors, one per value, got 1."],
-    [() => scaledAverage([1, 2], [1, 0]), "scaledAverage: sigmas 1: expected a finite number > 0, got 0."],
-    [
-      () => scaledAverage([1, Number.NaN], [1, 1]),
-      "scaledAverage: values 1: expected a finite number, got NaN.",
-    ],
     [() => asymmetricSigma(1, 0, 1, 1), "asymmetricSigma: below: expected a finite number > 0, got 0."],
     [() => asymmetricSigma(1, 1, -1, 1), "asymmetricSigma: above: expected a finite number > 0, got -1."],
     [() => upperLimitSigma(0, 0.9), "upperLimitSigma: limit: expected a finite number > 0, got 0."],

@@ -46,3 +46,16 @@ test("masses that do not fix the one wanted are refused", () => {
     'mass relation: expected members whose masses fix that of Y=-1 I=1/2, got "Y=1 I=1/2, Y=0 I=0". Give the mass, or add members.',
   );
 });
+
+test("masses far from obeying it give a baryon a mass below 0, and a meson none", () => {
+  const heavy = [
+    { ...N, massMeV: 2000 },
+    { ...Lambda, massMeV: 500 },
+    { ...Sigma, massMeV: 500 },
+  ];
+  // 2(N + Xi) = 3 Lambda + Sigma.
+  expect(gellMannOkuboMassMeV(heavy, Xi, 1)).toBeCloseTo(-1000, 9);
+  expect(() => gellMannOkuboMassMeV(heavy, Xi, 2)).toThrow(
+    /^mass relation: expected a squared mass > 0, got -3[45]\d+.*\. Check the masses of the other members\.$/,
+  );
+});

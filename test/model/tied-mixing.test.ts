@@ -30,7 +30,7 @@ function study(
 ) {
   const group = (place: string, states: ReturnType<typeof diagonal>, written: string) =>
     `  - bare: [o/${place}, b/${place}]
-    states: [${states.map(({ massMeV }, k) => `{ name: ${place}${k}, mass: ${massMeV} MeV, width: 100 MeV }`).join(", ")}]
+    states: [${states.map(({ massMeV }, k) => `{ name: ${place}_${k}, mass: ${massMeV} MeV, width: 100 MeV }`).join(", ")}]
     angle: ${written}\n`;
   const text = `couplet: 1
 title: Tied pairs, invented
@@ -38,10 +38,10 @@ multiplets:
   o: { irrep: 8, spinParity: 3/2-, members: [] }
   b: { irrep: ${irrep}, spinParity: 3/2-, members: [] }
 mixing:
-${group(first, pairs[0]!, angle)}${group(second, pairs[1]!, `tied to ${first}0`)}decays:
+${group(first, pairs[0]!, angle)}${group(second, pairs[1]!, `tied to ${first}_0`)}decays:
   - { name: o, from: o, to: [baryon-octet, pseudoscalar-octet], L: 2, model: a }
   - { name: b, from: b, to: [baryon-octet, pseudoscalar-octet], L: 2, model: a }
-measurements: [{ width: ${first}0 -> ${first === "Lambda" ? "Sigma" : first} pi, value: 20 +- 2 MeV, source: invented }]
+measurements: [{ width: ${first}_0 -> ${first === "Lambda" ? "Sigma" : first} pi, value: 20 +- 2 MeV, source: invented }]
 `;
   return resolveStudy(readStudy(Buffer.from(text), "study.yaml"));
 }

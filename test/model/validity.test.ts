@@ -357,6 +357,9 @@ describe("warnings reach people and tables", () => {
     expect(nucleon.warnings).toEqual([
       `N(1675)+: ${percent} % of the width has no channel in this study; do not rely on the fractions as a set.`,
       all.find(({ parents }) => parents.includes("N(1675)+"))!.text,
+      expect.stringMatching(
+        /^N\(1675\)\+: fractions over the line shape .*: N\(1675\)\+ -> Sigma\+ K0, N\(1675\)\+ -> Sigma0 K\+\. They/,
+      ),
     ]);
     expect(describeParent(nucleon).match(/^ {2}WARNING: .*$/gm)).toEqual(
       nucleon.warnings.map((text) => `  WARNING: ${text}`),

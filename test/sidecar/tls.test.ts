@@ -93,7 +93,7 @@ test("an expired certificate, a key of another one and files that are none are r
     /^TLS: expected a certificate and its key in PEM/,
   );
   await expect(running({ tls: { certificate: "/nowhere/a.crt", key: "/nowhere/a.key" } })).rejects.toThrow(
-    "--tls-cert: /nowhere/a.crt could not be read: ENOENT: no such file or directory, open '/nowhere/a.crt'. Check the path.",
+    "--tls-cert: /nowhere/a.crt: could not be read: ENOENT: no such file or directory. Check the path.",
   );
 });
 

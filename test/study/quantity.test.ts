@@ -61,6 +61,16 @@ describe("a quantity with a unit", () => {
     ["1e999", 'expected a number that fits a double, got "1e999"'],
     ["1e308 GeV", 'expected a number that fits a double, got "1e308 GeV"'],
     ["58 +- 1e999 MeV", 'expected a number that fits a double, got "58 +- 1e999 MeV"'],
+    [
+      "70 to 60 MeV",
+      'expected a range with the smaller value first, got "70 to 60 MeV". Write `60 to 70 MeV`',
+    ],
+    ["60 to 60 MeV", 'expected errors > 0, got "60 to 60 MeV"; leave the error out if there is none'],
+    [
+      "< 5 MeV",
+      'expected an upper limit with its confidence, got "< 5 MeV". Write `< 5 MeV at 90 %` if that is its confidence',
+    ],
+    ["< 5 parsec", 'expected an energy unit such as MeV or GeV, got "parsec" in "< 5 parsec"'],
     ["Infinity MeV", 'expected a number with its unit such as `58 +- 3 MeV`, got "Infinity MeV"'],
     ["NaN MeV", 'expected a number with its unit such as `58 +- 3 MeV`, got "NaN MeV"'],
   ])("refuses %s", (text, problem) => {
@@ -82,6 +92,12 @@ describe("a pure number", () => {
   test("with a unit of energy is refused", () => {
     expect(pure("0.2 +- 0.1 MeV")).toBe(
       'expected a pure number or %, got the unit "MeV" in "0.2 +- 0.1 MeV"',
+    );
+    expect(pure("0.7 to 0.6")).toBe(
+      'expected a range with the smaller value first, got "0.7 to 0.6". Write `0.6 to 0.7`',
+    );
+    expect(pure("< 5 %")).toBe(
+      'expected an upper limit with its confidence, got "< 5 %". Write `< 5 % at 90 %` if that is its confidence',
     );
     expect(pure("half")).toBe('expected a number such as `0.40 +- 0.05` or `40 +- 5 %`, got "half"');
   });

@@ -91,6 +91,20 @@ describe("a reader refuses", () => {
     );
   });
 
+  test("a table without a header, or without the version in it", () => {
+    const message =
+      "t.pb: expected a header with the schema version, got a table without one. The file was written by something else; write it again.";
+    const bare = rewritten(decays, (tables) => {
+      Object.assign(tables, { header: null });
+    });
+    expect(thrown(() => decodeDecays(bare, "t.pb"))).toEqual(new TableError(message));
+    const table = v1.FactorTable.decode(factors);
+    const unversioned = sealBytes(
+      v1.FactorTable.encode({ ...table, schemaMinor: null, sha256: null }).finish(),
+    );
+    expect(thrown(() => decodeFactors(unversioned, "t.pb"))).toEqual(new TableError(message));
+  });
+
   test("a kind of table it does not know, if it is whole", () => {
     const kind = "couplet.v2.DecayTables";
     const whole = sealBytes(Buffer.concat([Buffer.from([0x0a, kind.length]), Buffer.from(kind)]));

@@ -58,10 +58,43 @@ describe("a file is written", () => {
 
   test("past a stale file of a killed run, which is never taken for it", () => {
     const path = join(folder, "t.pb");
-    writeFileSync(`${path}.123456`, "half");
+    const stale = join(folder, ".t.pb.0123456789abcdef");
+    writeFileSync(stale, "half");
     writeWhole(path, "new");
     expect(readFileSync(path, "utf8")).toBe("new");
-    expect(readFileSync(`${path}.123456`, "utf8")).toBe("half");
+    expect(readFileSync(stale, "utf8")).toBe("half");
+  });
+
+  test("past a link laid at a name that could be foreseen", () => {
+    const [path, other] = [join(folder, "t.pb"), join(folder, "precious")];
+    writeFileSync(other, "precious");
+    for (const name of [`.t.pb.${process.pid}`, `t.pb.${process.pid}`])
+      symlinkSync(other, join(folder, name));
+    writeWhole(path, "new");
+    expect([readFileSync(path, "utf8"), readFileSync(other, "utf8")]).toEqual(["new", "precious"]);
+  });
+
+  test("whole by each of two writers at the same time in processes of the same number, the later one last", () => {
+    const path = join(folder, "t.pb");
+    const seen: string[] = [];
+    function* pieces() {
+      yield Buffer.from("first, ");
+      // What a thread, or a process in another container, does meanwhile.
+      writeWhole(path, "second");
+      seen.push(readFileSync(path, "utf8"));
+      yield Buffer.from("and slow");
+    }
+    writeWholePieces(path, pieces());
+    expect([...seen, readFileSync(path, "utf8")]).toEqual(["second", "first, and slow"]);
+    expect(readdirSync(folder)).toEqual(["t.pb"]);
+  });
+
+  test("under a name beside it that a watcher is told before and after", () => {
+    const told: [string, boolean][] = [];
+    writeWhole(join(folder, "t.pb"), "new", (beside, exists) => told.push([beside, exists]));
+    expect(told.map(([, exists]) => exists)).toEqual([true, false]);
+    expect(told[0]![0]).toMatch(/\/\.t\.pb\.[0-9a-f]{16}$/);
+    expect(told[1]![0]).toBe(told[0]![0]);
   });
 });
 

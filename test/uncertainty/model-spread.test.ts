@@ -22,10 +22,10 @@ function study(decays: string): string {
   return `couplet: 1
 title: Octets, every number invented
 multiplets:
-${has("half") ? octet("half", "1/2-", 1550) : ""}${has("high") ? octet("high", "5/2-", 1670) : ""}decays:
+${has("half") ? octet("half", "1/2-", 1550) : ""}${has("high") ? octet("high", "5/2-", 1665) : ""}decays:
 ${decays}fit: { mirrors: best }
 measurements:
-${has("half") ? measured(1550) : ""}${has("high") ? measured(1670) : ""}`;
+${has("half") ? measured(1550) : ""}${has("high") ? measured(1665) : ""}`;
 }
 
 const compared = (decays: string) => {

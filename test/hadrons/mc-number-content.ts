@@ -1,4 +1,4 @@
-import { refuse } from "../require.js";
+import { refuse } from "../../src/require.js";
 
 /** Charges in units of e/3 of the quarks d u s c b t, numbered 1 to 6 in Monte Carlo numbers. */
 const THREE_CHARGE = [0, -1, 2, -1, 2, -1, 2];
@@ -37,10 +37,8 @@ export function mcNumberContent(mcNumber: number): McNumberContent {
   refuse("mcNumberContent: mcNumber", "the Monte Carlo number of a meson or baryon", mcNumber);
 }
 
-/** Monte Carlo number of the short-lived neutral kaon, K_S0. */
-export const K_SHORT_MC_NUMBER = 310;
 /** Monte Carlo number of the long-lived neutral kaon, K_L0. */
-export const K_LONG_MC_NUMBER = 130;
+const K_LONG_MC_NUMBER = 130;
 
 function mesonContent(heavier: number, lighter: number, nJ: number, sign: number): McNumberContent {
   const flip = sign * (heavier % 2 === 0 ? 1 : -1);

@@ -1,6 +1,6 @@
 import { describe, expect, test } from "vitest";
 import { InputError } from "../../src/errors.js";
-import { mcNumberContent } from "../../src/hadrons/mc-number.js";
+import { mcNumberContent } from "./mc-number-content.js";
 
 describe("content of a Monte Carlo number", () => {
   test.each([
