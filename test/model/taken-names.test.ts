@@ -165,12 +165,12 @@ describe("masses and widths that cannot be", () => {
       's.yaml:8:59: multiplets/mine/members/0/width: expected a width below 20 GeV, got "120 GeV". Check whether its unit is MeV.',
     ],
     [
-      "mass: 1577 MeV, width: 1.7 GeV",
-      "s.yaml:8:59: multiplets/mine/members/0/width: expected a width below the mass of X(1577)+, 1577 MeV, got 1700 MeV. Check the units of both.",
+      "mass: 1577 MeV, width: 3.7 GeV",
+      "s.yaml:8:59: multiplets/mine/members/0/width: expected a width below twice the mass of X(1577)+, 1577 MeV, got 3700 MeV. Check the units of both.",
     ],
     [
-      "mass: 1577 MeV, width: sum, chargeStates: { X(1577)0: { width: 2 GeV } }",
-      "s.yaml:8:99: multiplets/mine/members/0/chargeStates/X(1577)0/width: expected a width below the mass of X(1577)0, 1577 MeV, got 2000 MeV. Check the units of both.",
+      "mass: 1577 MeV, width: sum, chargeStates: { X(1577)0: { width: 4 GeV } }",
+      "s.yaml:8:99: multiplets/mine/members/0/chargeStates/X(1577)0/width: expected a width below twice the mass of X(1577)0, 1577 MeV, got 4000 MeV. Check the units of both.",
     ],
   ])("%s", (values, words) => {
     expect(refusal(alone("3/2-", `name: X(1577), place: N, ${values}`))).toEqual([words]);
