@@ -1,11 +1,12 @@
 import { type Fit, type FittedParameter, LISTED_DELTA_CHI2 } from "../model/fit-model.js";
-import { asGiven, significant, withError } from "../tables/rounding.js";
+import { significant, withError } from "../tables/rounding.js";
 import type { ErrorParts } from "../uncertainty/error-parts.js";
 import type { LeftOut } from "../uncertainty/leave-one-out.js";
 import type { ModelFit, ModelSpread } from "../uncertainty/model-spread.js";
 import type { QuantityProfile } from "../uncertainty/profile.js";
 import type { PseudoExperiments } from "../uncertainty/pseudo-experiments.js";
 import type { Uncertainties } from "./fit-uncertainty.js";
+import { measuredText } from "./measured-text.js";
 import { textTable } from "./text-table.js";
 
 /** Further errors of a fit in words and tables. */
@@ -76,7 +77,6 @@ function describeLeaveOneOut(left: readonly LeftOut[]): string {
     kind === "coupling" || kind === "mixing angle" || /(^|\.)alpha_F$/.test(name);
   const names = left[0]!.parameters.filter(({ name, kind }) => shown(name, kind)).map(({ name }) => name);
   const rows = left.map(({ observable, predicted, determined, pull, chi2, verdicts, parameters }) => {
-    const { value, plus, minus } = observable.measured;
     const shifts = parameters
       .filter(({ name }) => names.includes(name))
       .map(({ value: now, error, determined: isFixed, shift }) =>
@@ -85,7 +85,7 @@ function describeLeaveOneOut(left: readonly LeftOut[]): string {
     const mark = verdicts.degenerateDirections.length > 0 ? "<- not fixed by the others" : "";
     return [
       observable.label,
-      observable.signOnly ? (value > 0 ? "+" : "-") : asGiven(value, plus, minus),
+      measuredText(observable),
       determined ? significant(predicted, 4) : "free",
       determined ? pull.toFixed(2) : "",
       chi2.toFixed(2),

@@ -1,11 +1,5 @@
-import { gaussianDeviations, scaleFactor } from "../fit/chi-square.js";
-import {
-  type Fit,
-  type FittedParameter,
-  LISTED_DELTA_CHI2,
-  type Pull,
-  type StudyMinimum,
-} from "../model/fit-model.js";
+import { scaleFactor } from "../fit/chi-square.js";
+import { type Fit, type FittedParameter, LISTED_DELTA_CHI2, type StudyMinimum } from "../model/fit-model.js";
 import type { Model } from "../model/model.js";
 import { notesOfOpenChannels } from "../model/notes.js";
 import { overfullParents, overfullText } from "../model/overfull-parents.js";
@@ -19,6 +13,7 @@ import {
   uncertaintiesOf,
 } from "./fit-uncertainty.js";
 import { degreesText } from "./labels.js";
+import { measuredText } from "./measured-text.js";
 import { print, printJson } from "./print.js";
 import { fitStudyFile } from "./run-study.js";
 import { textTable } from "./text-table.js";
@@ -211,14 +206,6 @@ export function describePulls({ pulls, parameters }: StudyMinimum): string {
       ? ""
       : `  ${rest === 1 ? "the pull of 1 given mass, total width or angle is" : `pulls of ${rest} given masses, total widths or angles are`} below ${LISTED_PULL}\n`
   }`;
-}
-
-/** A measurement as it was written: a value, a sign alone, or a limit, which chi2 takes as a half-Gaussian at 0. */
-function measuredText({ measured: { value, plus, minus, limit }, signOnly }: Pull["observable"]): string {
-  if (signOnly) return value > 0 ? "+" : "-";
-  if (limit === undefined) return asGiven(value, plus, minus);
-  const upper = plus * gaussianDeviations(limit.confidence);
-  return `< ${asGiven(upper, 0, 0)} at ${asGiven(100 * limit.confidence, 0, 0)} %`;
 }
 
 function pullLine(label: string, measured: string, unit: string, fitted: number, pull: number): string[] {
