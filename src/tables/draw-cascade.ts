@@ -6,13 +6,13 @@ import { drawMassesJointly, lowestDrawnMeV, type MassSource } from "../widths/dr
 import { drawMass } from "../widths/draw-mass.js";
 import {
   daughterOf,
-  type Factor,
   factorOf,
   type HadronsByName,
   type RowsEvaluator,
   rowsEvaluator,
   tableHadrons,
 } from "./evaluate-rows.js";
+import type { Factor } from "./row-laws.js";
 
 import v1 = couplet.v1;
 

@@ -1,10 +1,10 @@
 import { InputError, TableError } from "../errors.js";
 import { couplet } from "../gen/couplet.js";
 import { refuse, requirePositive } from "../require.js";
-import { breakupMomentumMeV, momentumOfMeV } from "../widths/breakup-momentum.js";
-import { gridWidth } from "../widths/mass-grid.js";
+import { breakupMomentumMeV } from "../widths/breakup-momentum.js";
 import { widthModel, widthModelDefinitions } from "../widths/width-model.js";
-import type { Kinematics, Vertex } from "../widths/width-model-definition.js";
+import type { Vertex } from "../widths/width-model-definition.js";
+import { ClosedForm, type Factor, PowerOfDistance, type RowWidth, Tabulated } from "./row-laws.js";
 import { optionValues } from "./wave-options.js";
 
 import v1 = couplet.v1;
@@ -65,12 +65,13 @@ export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByN
       widths.fill(0, 0, count * rows.length);
       totals.fill(0, 0, count);
       for (let row = 0; row < rows.length; row++) {
-        const { thresholdMeV, widthMeV } = rows[row]!;
+        const law = rows[row]!;
+        const { thresholdMeV } = law;
         if (!(largestMeV > thresholdMeV)) continue;
         for (let k = 0, at = row; k < count; k++, at += rows.length) {
           const massMeV = massesMeV[k]!;
           if (!(massMeV > thresholdMeV)) continue;
-          const width = widthMeV(massMeV);
+          const width = law.widthMeV(massMeV);
           widths[at] = width;
           totals[k]! += width;
         }
@@ -81,8 +82,8 @@ export function rowsEvaluator(parent: v1.Parent.$Properties, hadrons: HadronsByN
       requirePositive("mass of the parent", massMeV, "Give the mass in MeV.");
       let total = 0;
       for (let k = 0; k < rows.length; k++) {
-        const { thresholdMeV, widthMeV } = rows[k]!;
-        const width = massMeV > thresholdMeV ? widthMeV(massMeV) : 0;
+        const law = rows[k]!;
+        const width = massMeV > law.thresholdMeV ? law.widthMeV(massMeV) : 0;
         widths[offset + k] = width;
         total += width;
       }
@@ -102,17 +103,6 @@ export function fractionsAt(evaluator: RowsEvaluator, massMeV: number): number[]
   const total = evaluator.widthsInto(massMeV, widths, 0);
   return total > 0 ? widths.map((width) => width / total) : widths;
 }
-
-/** Partial width of one row against the parent's mass, both in MeV. */
-interface RowWidth {
-  /** The width is 0 up to here. */
-  readonly thresholdMeV: number;
-  /** Asked above the threshold; may still be 0. */
-  widthMeV(massMeV: number): number;
-}
-
-/** K in MeV over the square of the amplitude's unit, above threshold. */
-export type Factor = (kinematics: Kinematics) => number;
 
 function rowWidth(
   parent: v1.Parent.$Properties,
@@ -144,17 +134,7 @@ function rowWidth(
     factor,
     scale: scaleOf(row, wave, atNominal),
   }));
-  const [heavyMeV, lightMeV] = [Math.max(firstMeV, secondMeV), Math.min(firstMeV, secondMeV)];
-  const widthMeV = (massMeV: number) => {
-    const momentum = momentumOfMeV(massMeV, heavyMeV, lightMeV);
-    if (momentum === 0) return 0;
-    const kinematics = { parentMeV: massMeV, firstMeV, secondMeV, momentumMeV: momentum };
-    let width = 0;
-    for (let k = 0; k < scaled.length; k++) width += scaled[k]!.scale * scaled[k]!.factor(kinematics);
-    return width;
-  };
-  // A sum of masses is rounded, the momentum is exact there: it decides.
-  return { thresholdMeV: (heavyMeV + lightMeV) * (1 - 1e-12), widthMeV };
+  return new ClosedForm(scaled, firstMeV, secondMeV);
 }
 
 /** True for a row whose width has no closed form. */
@@ -181,9 +161,7 @@ function gridOf(row: v1.Row.$Properties): RowWidth {
   const x = grid.distancesMeV;
   const sizes = x.length >= 2 && grid.logWidths.length === x.length && grid.slopes.length === x.length;
   const ascending = x.every((distance, k) => distance > (k === 0 ? 0 : x[k - 1]!));
-  if (sizes && ascending && Number.isFinite(threshold)) {
-    return { thresholdMeV: grid.thresholdMeV, widthMeV: gridWidth(grid).widthMeV };
-  }
+  if (sizes && ascending && Number.isFinite(threshold)) return new Tabulated(grid);
   throw new TableError(`${row.id}: expected a grid of two points or more in ascending order, got another`);
 }
 
@@ -196,7 +174,7 @@ function constantWidth(row: v1.Row.$Properties, lowestMeV: number, nominalMeV: n
   // A remainder of a parent below its lowest threshold is all there is of its width.
   const takesLowest = (row.daughters ?? []).length === 0 && lowestMeV < nominalMeV;
   const threshold = takesLowest ? lowestMeV : own;
-  return { thresholdMeV: threshold, widthMeV: () => width };
+  return new PowerOfDistance(threshold, width, 1, 0);
 }
 
 /** A daughter's hadron; TableError where the table lacks it or its mass. */
@@ -219,10 +197,7 @@ function powerOfDistance(row: v1.Row.$Properties, power: number, nominalMeV: num
       `${row.id}: expected a width, a threshold below the parent's mass and a power >= 0, got others`,
     );
   }
-  return {
-    thresholdMeV: threshold,
-    widthMeV: (massMeV) => width * ((massMeV - threshold) / distance) ** power,
-  };
+  return new PowerOfDistance(threshold, width, distance, power);
 }
 
 /** Part of a row's width at the nominal mass that a wave has, in MeV. */
