@@ -245,3 +245,9 @@ measurements:
     expect(study?.measurements.map(({ path }) => path)).toEqual(["measurements/2"]);
   });
 });
+
+test("a study that contains itself is refused by its form", () => {
+  expect(() => readStudy(Buffer.from("couplet: &a [*a]\ntitle: x\n"), "s.yaml")).toThrow(
+    "s.yaml:1:13: couplet: expected 1, got [[[",
+  );
+});
